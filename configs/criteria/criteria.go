@@ -1,0 +1,71 @@
+// Package criteria holds the numbers the analyses judge by, each with its
+// published source. The numbers live in presets (embedded YAML); a site file
+// may replace any of them.
+package criteria
+
+// Settings are the numbers in force for one audit. All are plain values so
+// that analyses read them without lookups; Notes says where each came from.
+type Settings struct {
+	Preset string
+
+	// Suited (design: "How a step is judged").
+	OutdoorLowC     float64 // coldest outdoor air that suits, default 12.8
+	RiseK           float64 // margin below the upper comfort limit, default 1
+	DewPointMaxC    float64 // humidity limit, default 17
+	WindMaxMS       float64 // mean wind limit, default 10
+	RainDryMin      float64 // minutes after rain that do not suit, default 30
+	OutdoorPM25Max  float64 // ug/m3, only where logged
+	MinSuitedRunMin float64 // shortest run of suited steps, default 30
+	// Plain outdoor band, the second method.
+	BandLowC, BandHighC float64
+
+	// Running states.
+	OpenThreshold      float64 // open share above which a zone is open, default 0.05
+	AiringMin          float64 // longest opening that is a short airing, default 15
+	ValveOpenPct       float64 // valve position that means conditioning, default 5
+	DamperOpenPct      float64 // zone damper position that means air, default 5
+	FlowOnM3hPerM2     float64 // zone air flow that means air moves
+	StepCoverageMin    float64 // least covered share of a step that counts, default 0.5
+	InterruptionMin    float64 // interruptions of an episode that are bridged, default 15
+	EpisodeMin         float64 // shortest missed episode listed, default 15
+	FewRoomShare       float64 // share of people outside comfort below which a change to mechanical is few-room
+	ReopenDelayMin     float64 // delay after plant stops or weather suits that counts as slow
+	PurgeFromH         float64 // local hour night purge may begin, default 22
+	PurgeToH           float64 // local hour it ends, default 7
+	PurgeIndoorMinC    float64 // indoors warm enough to purge
+	PurgeDifferenceK   float64 // outdoors cooler than indoors by
+	PurgeOutdoorMinC   float64 // not colder than this outdoors
+	PlantOvernightMinH float64 // plant left on overnight: at least so long
+
+	// Comfort.
+	Headline        string  // "en16798-1" (default) | "ashrae55" | "en15251" | "imac-mm"
+	Category        string  // "I" | "II" | "III"
+	ASHRAE55Percent int     // 80 or 90
+	AdaptiveAfterH  float64 // hours after plant stopped before adaptive applies, default 1
+	FanSpeedMS      float64 // air speed of suited_fan, default 0.9
+	MetabolicMet    float64
+	ClothingClo     float64 // NaN: from the outdoor temperature at 06:00
+	AirSpeedMS      float64 // still air indoors, default 0.1
+	RunningMeanMinD float64 // least days behind a running mean
+
+	// Fresh air.
+	CO2Category        string  // "I" | "II" | "III"
+	CO2AboveOutdoorPPM float64 // limit above outdoors of CO2Category
+	OutdoorCO2PPM      float64 // when not logged and not given by the site
+	OutdoorCO2DoubtPPM float64
+	CO2PerPersonLs     float64
+	DecayStartAbovePPM float64 // a decay event starts at least so far above outdoors
+	MinDecayEvents     int
+
+	Notes map[string]Note
+}
+
+// Note says where a number comes from.
+type Note struct {
+	Key, Unit, Words string
+	Value            string
+	Source           string
+	// Standing: "published" (read in a public text), "from memory",
+	// "our assumption", "common practice", or "site file".
+	Standing string
+}

@@ -1,0 +1,171 @@
+package site
+
+import "time"
+
+// Layout is how a log file arranges its points.
+type Layout string
+
+// Layouts.
+const (
+	// Wide: one row per instant, one column per point.
+	Wide Layout = "wide"
+	// Long: one row per reading; key columns name the point. With one value
+	// column the point's column is the key (several keys joined by "/"); with
+	// several value columns it is key + "/" + value column.
+	Long Layout = "long"
+	// PerPoint: one file per point, an instant and a value per row. The
+	// point's column is the file's name without folder and endings.
+	PerPoint Layout = "per_point"
+)
+
+// DateOrder is the order of day, month and year in written dates.
+type DateOrder string
+
+// Date orders. ProveOrder means: prove it from the data or refuse.
+const (
+	YMD        DateOrder = "ymd"
+	DMY        DateOrder = "dmy"
+	MDY        DateOrder = "mdy"
+	ProveOrder DateOrder = ""
+)
+
+// Log is one group of log files that were written the same way.
+type Log struct {
+	// Path is relative to the site file; it may hold * and ? and may name a
+	// folder or a zip, gzip or xlsx file. Points refer to it by Name.
+	Path string
+	// Name is what the source column of points.csv says: the log's name, or
+	// one file's base name, or a glob of either.
+	Name   string
+	Layout Layout
+	// Sheet of a workbook; empty means the first.
+	Sheet string
+	// HeaderRow is the 1-based row that holds the column names; 0 means found
+	// by looking, -1 means there is none (columns are then called 1, 2, ...).
+	HeaderRow int
+	// TimeColumn, or DateColumn and ClockColumn together; empty means found
+	// by looking.
+	TimeColumn, DateColumn, ClockColumn string
+	// KeyColumns and ValueColumns serve the long layout.
+	KeyColumns, ValueColumns []string
+	// Separator 0 means found by looking. Decimal is '.' or ',' or 0.
+	Separator, Decimal rune
+	// Encoding: utf-8, utf-16, windows-1252 or empty (found by looking).
+	Encoding  string
+	DateOrder DateOrder
+	// TimeFormat is a reference-time layout for unusual timestamps; empty
+	// means the known forms.
+	TimeFormat string
+	Clock      Clock
+	// Missing lists further markers of a missing value.
+	Missing []string
+	Line    int
+}
+
+// ClockKind says what the written times of a log mean.
+type ClockKind string
+
+// Clock kinds.
+const (
+	ClockLocal    ClockKind = "local"    // the site's zone with daylight saving
+	ClockUTC      ClockKind = "utc"      // universal time
+	ClockStandard ClockKind = "standard" // the site's standard time all year
+	ClockOffset   ClockKind = "offset"   // a fixed offset, see OffsetS
+	ClockZone     ClockKind = "zone"     // another named zone, see Zone
+)
+
+// Clock says how written times become instants.
+type Clock struct {
+	Kind    ClockKind
+	OffsetS int
+	Zone    *time.Location
+	// OverruleOffset ignores an offset written in the timestamps and applies
+	// Kind to the wall-clock part.
+	OverruleOffset bool
+	// ShiftS is added to every instant: a known clock error.
+	ShiftS int
+	// Shifts are corrections for part of the time (a logger that ran an hour
+	// off for a month); half-open in the log's own written time.
+	Shifts []ClockShift
+}
+
+// ClockShift is a correction of a log's clock between two written local days.
+type ClockShift struct {
+	From, To Date // inclusive
+	ShiftS   int
+}
+
+// Logging says how a point logs.
+type Logging string
+
+// Ways of logging.
+const (
+	Sampled Logging = "sampled"
+	COV     Logging = "cov"
+)
+
+// Stamp says which instant of its interval a sampled value is stamped with.
+type Stamp string
+
+// Stamps.
+const (
+	StampInstant Stamp = "instant"
+	StampStart   Stamp = "start"
+	StampEnd     Stamp = "end"
+)
+
+// Placement says where a sensor hangs.
+type Placement string
+
+// Placements.
+const (
+	PlacementUnknown Placement = ""
+	PlacementRoom    Placement = "room"
+	PlacementReturn  Placement = "return_duct"
+	PlacementWindow  Placement = "by_window"
+)
+
+// OwnerKind says what a point belongs to.
+type OwnerKind uint8
+
+// Owners.
+const (
+	OwnerSite OwnerKind = iota
+	OwnerZone
+	OwnerPlant
+)
+
+// Point is one row of points.csv: a logged column mapped to a quantity.
+type Point struct {
+	Source, Column string
+	// BelongsTo is the id as written; Owner and Index resolve it (Index into
+	// Site.Zones or Site.Plant).
+	BelongsTo string
+	Owner     OwnerKind
+	Index     int
+	Quantity  Quantity
+	// Unit as written; Conversion turns logged numbers into the canonical one.
+	Unit       string
+	Conversion Conversion
+	Logging    Logging
+	Stamp      Stamp
+	// Hold is how long a value holds at most; 0 means the default (sampled:
+	// three times the usual interval; change of value: 1 h for numbers, 25 h
+	// for states).
+	Hold time.Duration
+	// OpenValue is the text that means open (or on) for a Switch quantity;
+	// every other known word means shut.
+	OpenValue string
+	// Values maps status text (as written, compared without case) to
+	// off, on, vent, heat, cool (plant) or open, shut, on, off.
+	Values    map[string]string
+	Placement Placement
+	// Share is the share of the zone's opening area this window stands for;
+	// NaN means equal shares.
+	Share float64
+	Note  string
+	Line  int
+}
+
+// ID names a point in messages and tables.
+func (p *Point) ID() string { return p.Source + ":" + p.Column }

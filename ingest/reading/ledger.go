@@ -1,0 +1,125 @@
+package reading
+
+import "sashlog/configs/site"
+
+// Ledger counts what became of every cell.
+type Ledger struct {
+	Points []PointLedger
+	Files  []FileLedger
+	// Unmapped rows of long files, by the name they carried.
+	Unmapped map[string]int64
+	Issues   []Issue
+	// IssuesDropped counts issues beyond the cap.
+	IssuesDropped int64
+	Checks        []Check
+	Clock         []ClockNote
+}
+
+// PointLedger is the account of one point (same index as Site.Points).
+// RowsRead equals the sum over Counts.
+type PointLedger struct {
+	RowsRead          int64
+	Counts            [NumReasons]int64 // Counts[Accepted] are the accepted readings
+	FirstUTC, LastUTC int64             // of accepted readings; 0,0 when none
+	Gaps              int
+	LongestGapS       int64
+	// IntervalS is the usual time between readings, 0 when unknown.
+	IntervalS int64
+	// HoldS is the hold limit in force.
+	HoldS int64
+	// Coverage is the covered share of the period's steps' time.
+	Coverage float64
+	// Examples holds the first few rejected texts, for messages.
+	Examples []Issue
+	// Min, Max, Mean of accepted readings in the canonical unit; NaN if none.
+	Min, Max, Mean float64
+	// Disordered is true when readings came out of time order and were sorted.
+	Disordered bool
+}
+
+// Rejected returns the number of rejected cells.
+func (p *PointLedger) Rejected() int64 { return p.RowsRead - p.Counts[Accepted] }
+
+// FileLedger is the account of one input.
+type FileLedger struct {
+	Path   string // relative to the site file
+	SHA256 string
+	Bytes  int64
+	Rows   int64
+	// What was found out about it, in words: encoding, separator, date order
+	// and its proof, time column.
+	Dialect []string
+}
+
+// CheckKind names a check on readings, in the order they run.
+type CheckKind string
+
+// Checks.
+const (
+	CheckUnit          CheckKind = "unit mistaken"
+	CheckClock         CheckKind = "clock"
+	CheckRange         CheckKind = "out of range"
+	CheckFrozen        CheckKind = "frozen"
+	CheckSpike         CheckKind = "spike"
+	CheckDuplicate     CheckKind = "duplicates"
+	CheckOrder         CheckKind = "out of order"
+	CheckGap           CheckKind = "gaps"
+	CheckCO2Low        CheckKind = "CO2 below outdoor air"
+	CheckCO2Drift      CheckKind = "CO2 baseline drifts"
+	CheckNeverChanges  CheckKind = "contact never changes"
+	CheckInverted      CheckKind = "contact looks inverted"
+	CheckSuspectGroup  CheckKind = "contacts suspiciously alike"
+	CheckChatter       CheckKind = "contact chatters"
+	CheckPlantContra   CheckKind = "plant status contradicts supply air"
+	CheckReturnDuct    CheckKind = "return-duct sensor, fan off"
+	CheckHoliday       CheckKind = "looks like undeclared holidays"
+	CheckDisagree      CheckKind = "sensors of one zone disagree"
+	CheckDeclaredFault CheckKind = "declared fault"
+)
+
+// Effect says what a check did.
+type Effect string
+
+// Effects.
+const (
+	EffectWarned    Effect = "warned"
+	EffectRemoved   Effect = "removed"
+	EffectCorrected Effect = "corrected"
+)
+
+// Check is one verdict on one point (or several) with its evidence.
+type Check struct {
+	Kind   CheckKind
+	Points []int // indexes into Site.Points
+	Zone   int   // index into Site.Zones, -1 when none
+	Effect Effect
+	// FromUTC, ToUTC bound the time concerned, unix seconds, half-open; 0,0
+	// means the whole record.
+	FromUTC, ToUTC int64
+	// Readings removed or corrected.
+	Readings int64
+	// Evidence is a sentence with numbers; DoNext says what to do.
+	Evidence, DoNext string
+}
+
+// ClockNote reports what a source's clock met: skipped or repeated hours.
+type ClockNote struct {
+	File      string
+	Text      string
+	Skipped   int64 // readings in skipped local hours
+	Repeated  int64 // readings in repeated hours that order resolved
+	Ambiguous int64 // those it did not
+}
+
+// Title returns a name for a point that a reader recognises.
+func Title(s *site.Site, point int) string {
+	if point < 0 || point >= len(s.Points) {
+		return ""
+	}
+	p := &s.Points[point]
+	t, _ := p.Quantity.Trait()
+	if p.Owner == site.OwnerSite {
+		return t.Words
+	}
+	return p.BelongsTo + " " + t.Words
+}
