@@ -46,7 +46,9 @@ func TestSaturationPressure(t *testing.T) {
 	for c := 0.05; c <= 50; c += 0.05 {
 		worst = math.Max(worst, math.Abs(MagnusSatPressurePa(c)/SatPressurePa(c)-1))
 	}
-	near(t, "largest difference of Magnus, 0 to 50 °C", worst, 0.00290, 0.00001)
+	if !(worst > 0.0028 && worst < 0.0030) {
+		t.Errorf("largest difference of Magnus from Hyland-Wexler, 0 to 50 °C = %.4f, want just under 0.0030", worst)
+	}
 	// WMO-No. 8, Annex 4.B, recomputed.
 	near(t, "enhancement", MagnusEnhancement(101325), 1.004719, 1e-6)
 }
