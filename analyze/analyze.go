@@ -1,0 +1,55 @@
+// Package analyze turns the grid into answers. Run asks the questions in this
+// order, once, for all verbs:
+//
+//  1. outdoor: what was it like outside?
+//  2. indoor: what was it like in each zone?
+//  3. running: when was each zone occupied, and what was it doing?
+//  4. exceedance: which comfort limits apply, and how long were they exceeded?
+//  5. potential: when did the weather suit open mode?
+//  6. hours: where did the occupied hours go?
+//  7. freshair: was the air fresh enough in each running state?
+//  8. lost: which hours were missed, in which episodes, and why?
+//  9. afterhours: what ran or stood open when nobody was there?
+//  10. answerable: what can these logs answer at all?
+//  11. advice: what should be done first?
+package analyze
+
+import (
+	"sashlog/analyze/advice"
+	"sashlog/analyze/afterhours"
+	"sashlog/analyze/answerable"
+	"sashlog/analyze/exceedance"
+	"sashlog/analyze/freshair"
+	"sashlog/analyze/hours"
+	"sashlog/analyze/indoor"
+	"sashlog/analyze/lost"
+	"sashlog/analyze/outdoor"
+	"sashlog/analyze/potential"
+	"sashlog/analyze/running"
+	"sashlog/configs/criteria"
+	"sashlog/configs/site"
+	"sashlog/ingest/grid"
+)
+
+// Input is everything the analyses may look at.
+type Input struct {
+	Site     *site.Site
+	Criteria criteria.Settings
+	Grid     *grid.Grid
+}
+
+// Results holds every answer; nothing in it is computed again further right.
+type Results struct {
+	Outdoor    *outdoor.Outdoor
+	Indoor     []indoor.Zone
+	Running    *running.Result
+	Exceedance *exceedance.Result
+	Potential  *potential.Result
+	Hours      *hours.Record
+	Summary    *hours.Summary
+	FreshAir   *freshair.Result
+	Lost       *lost.Result
+	AfterHours *afterhours.Result
+	Answerable []answerable.Question
+	Findings   []advice.Finding
+}
