@@ -1,0 +1,47 @@
+package chart
+
+import (
+	"os"
+	"path/filepath"
+	"testing"
+	"time"
+)
+
+// figure is one sample drawing by name.
+type figure struct {
+	name string
+	draw func(Options) (SVG, error)
+}
+
+func jan1() time.Time { return time.Date(2025, 1, 1, 0, 0, 0, 0, time.UTC) }
+
+func figures() []figure {
+	return []figure{
+		{"carpet", func(o Options) (SVG, error) { return Carpet(sampleCarpet(jan1(), 365), o) }},
+		{"carpet-2days", func(o Options) (SVG, error) { return Carpet(sampleCarpet(jan1().AddDate(0, 7, 6), 2), o) }},
+		{"carpet-400days", func(o Options) (SVG, error) { return Carpet(sampleCarpet(jan1().AddDate(0, 2, 14), 400), o) }},
+		{"monthly-stack", func(o Options) (SVG, error) { return MonthlyStack(sampleMonths(12), o) }},
+		{"monthly-stack-1", func(o Options) (SVG, error) { return MonthlyStack(sampleMonths(1), o) }},
+		{"monthly-stack-40", func(o Options) (SVG, error) { return MonthlyStack(sampleMonths(40), o) }},
+		{"where-hours-went", func(o Options) (SVG, error) { return WhereHoursWent(sampleWaterfall(), o) }},
+	}
+}
+
+// TestWriteSamples writes the sample figures to the folder named by
+// CHART_SAMPLES, to be looked at.
+func TestWriteSamples(t *testing.T) {
+	dir := os.Getenv("CHART_SAMPLES")
+	if dir == "" {
+		t.Skip("CHART_SAMPLES names no folder to write sample figures to")
+	}
+	for _, f := range figures() {
+		svg, err := f.draw(Options{ID: f.name})
+		if err != nil {
+			t.Fatalf("%s: %v", f.name, err)
+		}
+		if err := os.WriteFile(filepath.Join(dir, f.name+".svg"), []byte(svg), 0o644); err != nil {
+			t.Fatal(err)
+		}
+		t.Logf("%-20s %6d bytes", f.name, len(svg))
+	}
+}
