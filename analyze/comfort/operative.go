@@ -1,0 +1,93 @@
+package comfort
+
+import (
+	"math"
+
+	"sashlog/analyze/method"
+)
+
+// OperativeDoc documents [OperativeISO] and [OperativeASHRAE].
+var OperativeDoc = method.Doc{
+	Title:    "Operative temperature (ISO 7726, ASHRAE 55)",
+	Question: "Which one temperature stands for the air and the surfaces together?",
+	Formula: "ISO 7726: (t_a sqrt(10 v) + t_r) / (1 + sqrt(10 v)); " +
+		"ASHRAE 55: A t_a + (1 - A) t_r, A = 0.5 below 0.2 m/s, 0.6 to below 0.6 m/s, 0.7 to 1.0 m/s",
+	Limits:   []string{"air speed up to 1 m/s", "a globe thermometer in still air reads close to it"},
+	Sources:  []string{method.Public("ISO 7726:1998; CIBSE Guide A"), method.Public("ASHRAE 55-2023")},
+	Standing: method.Published,
+}
+
+// OperativeISO returns the operative temperature from air and mean radiant
+// temperature and air speed. ISO 7726. NaN for negative speeds.
+func OperativeISO(airC, radiantC, airSpeedMS float64) float64 {
+	r := math.Sqrt(10 * airSpeedMS)
+	return (airC*r + radiantC) / (1 + r)
+}
+
+// OperativeASHRAE returns the operative temperature from air and mean radiant
+// temperature and air speed, 0 to 1 m/s; NaN outside. ASHRAE 55.
+func OperativeASHRAE(airC, radiantC, airSpeedMS float64) float64 {
+	var a float64
+	switch v := airSpeedMS; {
+	case !(v >= 0 && v <= 1):
+		return math.NaN()
+	case v < 0.2:
+		a = 0.5
+	case v < 0.6:
+		a = 0.6
+	default:
+		a = 0.7
+	}
+	return a*airC + (1-a)*radiantC
+}
+
+// ClothingDoc documents [ClothingClo].
+var ClothingDoc = method.Doc{
+	Title:    "Clothing from the outdoor temperature (Schiavon & Lee)",
+	Question: "How warmly are people likely to be dressed today?",
+	Formula: "t outdoors at 06:00: below -5 °C 1.00 clo; to 5 °C 0.818 - 0.0364 t; " +
+		"to 26 °C 10^(-0.1635 - 0.0066 t); from 26 °C 0.46 clo",
+	Limits:   []string{"offices with free choice of dress", "a typical person, not everybody"},
+	Sources:  []string{method.Memory("Schiavon & Lee 2013, Building and Environment 59:250; ASHRAE 55-2017")},
+	Standing: method.FromMemory,
+}
+
+// ClothingClo returns the clothing insulation from the outdoor air temperature
+// at 06:00 of the day.
+func ClothingClo(outdoorAtSixC float64) float64 {
+	switch t := outdoorAtSixC; {
+	case math.IsNaN(t):
+		return math.NaN()
+	case t < -5:
+		return 1.00
+	case t < 5:
+		return 0.818 - 0.0364*t
+	case t < 26:
+		return math.Pow(10, -0.1635-0.0066*t)
+	default:
+		return 0.46
+	}
+}
+
+// DraughtDoc documents [DraughtRate].
+var DraughtDoc = method.Doc{
+	Title:    "Draught rate (ISO 7730)",
+	Question: "How many people would be bothered by the draught?",
+	Formula:  "DR = (34 - t_a)(v - 0.05)^0.62 (0.37 v Tu + 3.14) %, v at least 0.05 m/s, DR at most 100 %",
+	Limits: []string{
+		"near-sedentary people close to thermally neutral", "air temperature 20 to 26 °C",
+		"mean air speed below 0.5 m/s", "turbulence 10 to 60 %; 40 % when unknown",
+		"a wanted breeze is no draught",
+	},
+	Sources:  []string{method.Recomputed("ISO 7730:2005 eq. 6"), method.Memory("its ranges")},
+	Standing: method.Published,
+}
+
+// DraughtRate returns the percentage of people dissatisfied by draught, 0 to
+// 100, from the local air temperature, mean speed and turbulence intensity in
+// per cent.
+func DraughtRate(airC, airSpeedMS, turbulencePct float64) float64 {
+	v := math.Max(airSpeedMS, 0.05)
+	dr := (34 - airC) * math.Pow(v-0.05, 0.62) * (0.37*v*turbulencePct + 3.14)
+	return math.Max(0, math.Min(100, dr))
+}
