@@ -54,4 +54,6 @@ type TypicalPotential struct {
 	Name                        string
 	TypicalH, MeasuredH         float64 // occupied hours in the band, per year of occupied time
 	TypicalMeanC, MeasuredMeanC float64
+	// Months are the calendar months compared, those with measured weather.
+	Months int
 }

@@ -59,4 +59,8 @@ type Zone struct {
 type Result struct {
 	Zones    []Zone
 	Schedule string // in words: how occupied time was established
+	// Weights are the zones' weights in the building's figures, summing to 1
+	// over zones with openings; WeightedBy says by what.
+	Weights    []float64
+	WeightedBy string
 }

@@ -1,0 +1,82 @@
+package indoor
+
+import (
+	"math"
+
+	"sashlog/configs/criteria"
+	"sashlog/configs/site"
+	"sashlog/ingest/grid"
+)
+
+// Combine brings each zone's sensors together, one Zone per Site.Zones.
+func Combine(s *site.Site, c criteria.Settings, g *grid.Grid) []Zone {
+	zones := make([]Zone, len(s.Zones))
+	for z := range zones {
+		of := func(q site.Quantity) []float32 { return prefer(s, g, z, q, c.StepCoverageMin) }
+		in := &zones[z]
+		in.AirTempC = of(site.AirTemp)
+		in.ThermostatC = of(site.ThermostatTemp)
+		in.RHPct = of(site.Humidity)
+		in.CO2PPM = of(site.CO2)
+		in.People = of(site.People)
+		in.Presence = of(site.Presence)
+		in.AirSpeedMS = of(site.AirSpeed)
+		in.operative(of(site.OperativeTemp), of(site.GlobeTemp))
+	}
+	return zones
+}
+
+// prefer averages a zone's sensors of one quantity, step by step from the best
+// placement that has a value: in the room, then unknown, by a window, and the
+// return duct last.
+func prefer(s *site.Site, g *grid.Grid, z int, q site.Quantity, minShare float64) []float32 {
+	order := []site.Placement{site.PlacementRoom, site.PlacementUnknown, site.PlacementWindow, site.PlacementReturn}
+	var out []float32
+	for _, place := range order {
+		var idx []int
+		for i := range s.Points {
+			p := &s.Points[i]
+			if p.Owner == site.OwnerZone && p.Index == z && p.Quantity == q && p.Placement == place {
+				idx = append(idx, i)
+			}
+		}
+		avg := g.Average(idx, minShare)
+		if out == nil {
+			out = avg
+			continue
+		}
+		for i := range avg {
+			if math.IsNaN(float64(out[i])) {
+				out[i] = avg[i]
+			}
+		}
+	}
+	return out
+}
+
+// operative settles what comfort is judged on: a logged operative temperature,
+// else the mean of air and globe temperature (ISO 7726: at low air speed the
+// operative temperature lies midway between air and radiant; a globe reads
+// close to it), else air temperature alone, else the thermostat.
+func (z *Zone) operative(logged, globe []float32) {
+	switch {
+	case logged != nil:
+		z.OperativeC, z.TempNote = logged, "operative temperature as logged"
+	case globe != nil && z.AirTempC != nil:
+		z.OperativeC, z.TempNote = mean(z.AirTempC, globe), "mean of air and globe temperature"
+	case z.AirTempC != nil:
+		z.OperativeC, z.TempNote = z.AirTempC, "air temperature stands for operative temperature"
+	case globe != nil:
+		z.OperativeC, z.TempNote = globe, "globe temperature stands for operative temperature"
+	case z.ThermostatC != nil:
+		z.OperativeC, z.TempNote = z.ThermostatC, "the thermostat's reading stands for operative temperature"
+	}
+}
+
+func mean(a, b []float32) []float32 {
+	out := make([]float32, len(a))
+	for i := range out {
+		out[i] = (a[i] + b[i]) / 2
+	}
+	return out
+}

@@ -1,0 +1,126 @@
+package outdoor
+
+import (
+	"fmt"
+	"math"
+
+	"sashlog/analyze/calendar"
+	"sashlog/analyze/comfort"
+	"sashlog/configs/criteria"
+	"sashlog/configs/site"
+	"sashlog/ingest/grid"
+	"sashlog/internal/physics/air"
+)
+
+// dayCoverageMin is the share of a day that must be covered for its mean to
+// count. Our assumption.
+const dayCoverageMin = 0.8
+
+// prevailingDays is the length of the prevailing mean: the shortest ASHRAE 55
+// allows, so that short records can be judged too. Our choice.
+const prevailingDays = 7
+
+// Measure collects the measured weather of the site.
+func Measure(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Calendar) *Outdoor {
+	of := func(q site.Quantity) []float32 {
+		var idx []int
+		for i := range s.Points {
+			if s.Points[i].Owner == site.OwnerSite && s.Points[i].Quantity == q {
+				idx = append(idx, i)
+			}
+		}
+		return g.Average(idx, c.StepCoverageMin)
+	}
+	o := &Outdoor{
+		TempC: of(site.OutdoorTemp), RHPct: of(site.OutdoorHumidity), DewPointC: of(site.OutdoorDewPoint),
+		WindMS: of(site.WindSpeed), WindDirDeg: of(site.WindDirection), RainMMH: of(site.Rain),
+		SolarWm2: of(site.Solar), CO2PPM: of(site.OutdoorCO2), PM25: of(site.OutdoorPM25),
+		DayOf: cal.DayOf,
+	}
+	o.Measured = o.TempC != nil
+	o.humidity(g.N)
+	o.CO2DefaultPPM, o.CO2Source = c.OutdoorCO2PPM, "default for the year, from memory"
+	if !math.IsNaN(s.OutdoorCO2PPM) {
+		o.CO2DefaultPPM, o.CO2Source = s.OutdoorCO2PPM, "site file"
+	}
+	if o.CO2PPM != nil {
+		o.CO2Source = fmt.Sprintf("measured; where missing %.0f ppm (%s)", o.CO2DefaultPPM, o.CO2Source)
+	}
+	o.days(g, cal)
+	return o
+}
+
+// humidity derives whichever of dew point and relative humidity was not
+// logged from the other and the temperature.
+func (o *Outdoor) humidity(n int) {
+	o.HumidityLogged = o.DewPointC != nil || o.RHPct != nil
+	if o.TempC == nil || !o.HumidityLogged {
+		return
+	}
+	derive := func(have []float32, f func(tempC, x float64) float64) []float32 {
+		out := make([]float32, n)
+		lastT, lastX, lastY := float32(math.NaN()), float32(math.NaN()), float32(math.NaN())
+		for i := range out {
+			if o.TempC[i] != lastT || have[i] != lastX {
+				lastT, lastX = o.TempC[i], have[i]
+				lastY = float32(f(float64(lastT), float64(lastX)))
+			}
+			out[i] = lastY
+		}
+		return out
+	}
+	switch {
+	case o.DewPointC == nil:
+		o.DewPointC = derive(o.RHPct, air.DewPointC)
+	case o.RHPct == nil:
+		o.RHPct = derive(o.DewPointC, air.RelHumidityPct)
+	}
+}
+
+// days fills the daily means and both running means.
+func (o *Outdoor) days(g *grid.Grid, cal *calendar.Calendar) {
+	o.Days = make([]Day, len(cal.Days))
+	daily := make([]float64, len(cal.Days))
+	for d, day := range cal.Days {
+		o.Days[d] = Day{Date: day.Date, FromStep: day.FromStep, ToStep: day.ToStep, SixAMC: math.NaN()}
+		daily[d] = math.NaN()
+		if o.TempC == nil {
+			continue
+		}
+		var sum float64
+		n := 0
+		for i := day.FromStep; i < day.ToStep; i++ {
+			if v := float64(o.TempC[i]); !math.IsNaN(v) {
+				sum += v
+				n++
+			}
+			if cal.MinuteOfDay[i] == 360 {
+				o.Days[d].SixAMC = float64(o.TempC[i])
+			}
+		}
+		whole := day.Date.Next().Start(g.Loc).Unix() - day.Date.Start(g.Loc).Unix()
+		if float64(int64(n)*g.StepS) >= dayCoverageMin*float64(whole) {
+			daily[d] = sum / float64(n)
+		}
+	}
+	en := comfort.RunningMeanEN(daily)
+	ashrae, err := comfort.PrevailingMean(daily, prevailingDays)
+	if err != nil {
+		panic(err) // prevailingDays is within the standard's range
+	}
+	for d := range o.Days {
+		o.Days[d].MeanC = daily[d]
+		o.Days[d].RunningMeanENC = en[d]
+		o.Days[d].RunningMeanASHRAEC = ashrae[d]
+	}
+}
+
+// OutdoorCO2 is the outdoor level in force at a step, ppm.
+func (o *Outdoor) OutdoorCO2(step int) float64 {
+	if o.CO2PPM != nil {
+		if v := float64(o.CO2PPM[step]); !math.IsNaN(v) {
+			return v
+		}
+	}
+	return o.CO2DefaultPPM
+}
