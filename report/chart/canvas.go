@@ -213,7 +213,7 @@ func (c *canvas) FillString(f font.Face, pt vg.Point, text string) {
 // whole of a shortened name.
 func (c *canvas) fillText(f font.Face, pt vg.Point, text, full string) {
 	text = clean(text)
-	if text == "" || f.Font.Size <= 0 || !finite(float64(pt.X)) || !finite(float64(pt.Y)) {
+	if strings.TrimSpace(text) == "" || f.Font.Size <= 0 || !finite(float64(pt.X)) || !finite(float64(pt.Y)) {
 		return
 	}
 	c.flush()

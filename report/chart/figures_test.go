@@ -24,6 +24,20 @@ func figures() []figure {
 		{"monthly-stack-1", func(o Options) (SVG, error) { return MonthlyStack(sampleMonths(1), o) }},
 		{"monthly-stack-40", func(o Options) (SVG, error) { return MonthlyStack(sampleMonths(40), o) }},
 		{"where-hours-went", func(o Options) (SVG, error) { return WhereHoursWent(sampleWaterfall(), o) }},
+		{"outdoor-dots", func(o Options) (SVG, error) { return OutdoorQuadrants(sampleOutdoor(2900, DewPointC), o) }},
+		{"outdoor-bins", func(o Options) (SVG, error) { return OutdoorQuadrants(sampleOutdoor(8700, RelativePC), o) }},
+		{"outdoor-few", func(o Options) (SVG, error) { return OutdoorQuadrants(sampleOutdoor(12, DewPointC), o) }},
+		{"exceedance-9", func(o Options) (SVG, error) { return Exceedance(sampleExceedance(9), o) }},
+		{"exceedance-200", func(o Options) (SVG, error) { return Exceedance(sampleExceedance(200), o) }},
+		{"exceedance-1", func(o Options) (SVG, error) { return Exceedance(sampleExceedance(1), o) }},
+		{"league-12", func(o Options) (SVG, error) { return ZoneLeague(sampleLeague(12), o) }},
+		{"league-60", func(o Options) (SVG, error) { return ZoneLeague(sampleLeague(60), o) }},
+		{"co2-1", func(o Options) (SVG, error) { return CO2Duration(sampleCO2(1), o) }},
+		{"co2-12", func(o Options) (SVG, error) { return CO2Duration(sampleCO2(12), o) }},
+		{"strip-1", func(o Options) (SVG, error) { return EpisodeStrip(sampleStrip(1), o) }},
+		{"strip-3", func(o Options) (SVG, error) { return EpisodeStrip(sampleStrip(3), o) }},
+		{"exceedance-curve", func(o Options) (SVG, error) { return ExceedanceCurve(sampleCurve(), o) }},
+		{"rose", func(o Options) (SVG, error) { return SpeedRose(sampleRose(), o) }},
 	}
 }
 

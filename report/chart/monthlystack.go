@@ -135,8 +135,6 @@ func monthNames(months []MonthHours, room vg.Length) plot.ConstantTicks {
 		// The year stands on a second line so that all names share one row.
 		if years && (i == 0 || m.Month == time.January) && len(months)-i >= 2 {
 			name += at.Format("\n2006")
-		} else if years {
-			name += "\n "
 		}
 		ticks = append(ticks, plot.Tick{Value: float64(i) + 0.5, Label: name})
 	}

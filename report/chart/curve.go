@@ -1,0 +1,112 @@
+package chart
+
+import (
+	"image/color"
+	"math"
+
+	"gonum.org/v1/plot"
+	"gonum.org/v1/plot/vg"
+	"gonum.org/v1/plot/vg/draw"
+)
+
+// lineLook is how a class is drawn as a line: dark enough for white paper, and
+// with a dash of its own as the second channel.
+func lineLook(c Class) (ink color.RGBA, dash []vg.Length) {
+	switch c {
+	case Open:
+		return rgb(0x0072B2), nil
+	case Mech:
+		return rgb(0xC77F00), []vg.Length{6, 2}
+	case Both:
+		return rgb(0xB0508A), []vg.Length{2, 1.5}
+	case Shut:
+		return rgb(0x6E6E6E), []vg.Length{7, 1.5, 1.5, 1.5}
+	case Unknown, Unjudged:
+		return rgb(0x8C8C8C), []vg.Length{0.8, 1.8}
+	case None:
+		return inkText, nil
+	}
+	return c.Look().Fill, nil
+}
+
+// strokeCurve draws points in data units, broken where a value is not known
+// and cut off at the edges of the plot. Points closer than a third of a point
+// on paper are left out, since print cannot show them.
+func strokeCurve(c draw.Canvas, p *plot.Plot, pts []XY, sty draw.LineStyle) {
+	fx, fy := p.Transforms(&c)
+	var run []vg.Point
+	var skipped *vg.Point
+	end := func() {
+		if skipped != nil {
+			run = append(run, *skipped)
+			skipped = nil
+		}
+		if len(run) == 1 {
+			// A lone known value between gaps is shown as a short dash.
+			run = append(run, vg.Point{X: run[0].X + 0.8, Y: run[0].Y})
+		}
+		if len(run) > 1 {
+			c.StrokeLines(sty, c.ClipLinesXY(run)...)
+		}
+		run = nil
+	}
+	for _, q := range pts {
+		if !finite(q.X) || !finite(q.Y) {
+			end()
+			continue
+		}
+		at := vg.Point{X: fx(q.X), Y: fy(q.Y)}
+		if n := len(run); n > 0 && math.Hypot(float64(at.X-run[n-1].X), float64(at.Y-run[n-1].Y)) < 0.35 {
+			skipped = &at
+			continue
+		}
+		skipped = nil
+		run = append(run, at)
+	}
+	end()
+}
+
+// drawLevels draws level guide lines with their words at the right end, above
+// the line; a word that would stand on the one before is left out of the
+// drawing but its line stays.
+func drawLevels(cv *canvas, c draw.Canvas, p *plot.Plot, limits []Limit) {
+	_, fy := p.Transforms(&c)
+	sty := align(sans(smallSize, inkFaint), -1, 0)
+	for _, l := range limits {
+		if y := fy(l.Value); c.ContainsY(y) {
+			c.StrokeLine2(hline(inkFaint, 0.6, 1, 1.6), c.Min.X, y, c.Max.X, y)
+		}
+	}
+	var taken []vg.Length
+	for _, l := range limits {
+		y := fy(l.Value)
+		free := c.ContainsY(y) && y+9 < c.Max.Y
+		for _, t := range taken {
+			free = free && math.Abs(float64(t-y)) > 8.5
+		}
+		if free {
+			taken = append(taken, y)
+			halo(cv, sty, c.Max.X-2, y+0.8, fit(l.Label, sty, c.Max.X-c.Min.X-6))
+		}
+	}
+}
+
+// alignSides draws plots below each other so that their data areas begin and
+// end at the same places.
+func alignSides(plots []*plot.Plot, boxes []draw.Canvas) {
+	for range 3 { // each pass moves the sides closer; labels shift a little with them
+		left, right := vg.Length(math.Inf(-1)), vg.Length(math.Inf(1))
+		for i, p := range plots {
+			d := p.DataCanvas(boxes[i])
+			left, right = max(left, d.Min.X), min(right, d.Max.X)
+		}
+		for i, p := range plots {
+			d := p.DataCanvas(boxes[i])
+			boxes[i].Min.X += left - d.Min.X
+			boxes[i].Max.X -= d.Max.X - right
+		}
+	}
+	for i, p := range plots {
+		p.Draw(boxes[i])
+	}
+}
