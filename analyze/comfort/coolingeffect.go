@@ -49,7 +49,7 @@ func CoolingEffectK(c Conditions, o SETOptions) (ceK float64, found bool) {
 	if atLow == 0 {
 		return 0, true
 	}
-	ce := low
+	ce, side := low, 0
 	for range 100 {
 		next := (low*atHigh - high*atLow) / (atHigh - atLow)
 		moved := math.Abs(next - ce)
@@ -60,10 +60,16 @@ func CoolingEffectK(c Conditions, o SETOptions) (ceK float64, found bool) {
 		}
 		if at > 0 {
 			low, atLow = ce, at
-			atHigh /= 2
+			if side == +1 {
+				atHigh /= 2
+			}
+			side = +1
 		} else {
 			high, atHigh = ce, at
-			atLow /= 2
+			if side == -1 {
+				atLow /= 2
+			}
+			side = -1
 		}
 	}
 	return ce, true

@@ -15,6 +15,7 @@ var SETDoc = method.Doc{
 	Limits: []string{
 		"two generations differ: form A (ASHRAE 55-2010 to 2020) and form B (2023, activity raises convection in both " +
 			"environments); at 2 met and more they differ by 4 to 5.6 K",
+		"not smooth once sweating reaches the greatest skin wettedness: hot and heavily dressed or active people",
 		"form B uses posture; dilation constant 120 in form A, 200 in form B",
 	},
 	Sources: []string{

@@ -53,12 +53,12 @@ func TM52InSeason(month int, southern bool) bool {
 // TM52 gathers the three criteria over occupied time. The zero value is ready.
 // Feed it occupied steps in order of day with [TM52.Add].
 type TM52 struct {
-	seasonH, exceededH   float64
-	day                  int
-	dayKh, worstKh       float64
-	maxExcessK           float64
-	judged               bool
-	unknownH, worstDayID float64
+	seasonH, exceededH float64
+	unknownH           float64
+	day, worstDay      int
+	dayKh, worstKh     float64
+	maxExcessK         float64
+	judged             bool
 }
 
 // Add counts an occupied step: a day number that never falls, whether the day
@@ -86,7 +86,7 @@ func (t *TM52) Add(day int, inSeason bool, occupiedH, operativeC, maxC float64) 
 	if excess > 0 {
 		t.dayKh += occupiedH * excess
 		if t.dayKh > t.worstKh {
-			t.worstKh, t.worstDayID = t.dayKh, float64(day)
+			t.worstKh, t.worstDay = t.dayKh, day
 		}
 	}
 }
@@ -109,7 +109,7 @@ type TM52Result struct {
 func (t *TM52) Result() TM52Result {
 	r := TM52Result{
 		SeasonH: t.seasonH, ExceededH: t.exceededH, ExceededShare: math.NaN(),
-		WorstDayKh: t.worstKh, WorstDay: int(t.worstDayID), MaxExcessK: math.NaN(),
+		WorstDayKh: t.worstKh, WorstDay: t.worstDay, MaxExcessK: math.NaN(),
 		UnknownH: t.unknownH, AnythingJudged: t.judged,
 	}
 	if t.seasonH > 0 {
