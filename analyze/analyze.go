@@ -18,6 +18,7 @@ import (
 	"sashlog/analyze/advice"
 	"sashlog/analyze/afterhours"
 	"sashlog/analyze/answerable"
+	"sashlog/analyze/calendar"
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
@@ -40,6 +41,7 @@ type Input struct {
 
 // Results holds every answer; nothing in it is computed again further right.
 type Results struct {
+	Calendar   *calendar.Calendar
 	Outdoor    *outdoor.Outdoor
 	Indoor     []indoor.Zone
 	Running    *running.Result

@@ -1,0 +1,43 @@
+package analyze
+
+import (
+	"sashlog/analyze/advice"
+	"sashlog/analyze/afterhours"
+	"sashlog/analyze/answerable"
+	"sashlog/analyze/calendar"
+	"sashlog/analyze/exceedance"
+	"sashlog/analyze/freshair"
+	"sashlog/analyze/hours"
+	"sashlog/analyze/indoor"
+	"sashlog/analyze/lost"
+	"sashlog/analyze/outdoor"
+	"sashlog/analyze/potential"
+	"sashlog/analyze/running"
+)
+
+// Run answers every question, in the order of the package comment.
+func Run(in Input) *Results {
+	s, c, g := in.Site, in.Criteria, in.Grid
+	r := &Results{Calendar: calendar.Of(g)}
+	clockHours, hourOf := hours.Clock(g, r.Calendar)
+
+	r.Outdoor = outdoor.Measure(s, c, g, r.Calendar)
+	r.Indoor = indoor.Combine(s, c, g)
+	r.Running = running.Judge(s, c, g, r.Calendar, r.Indoor)
+	r.Exceedance = exceedance.Limit(s, c, g, r.Outdoor, r.Running)
+	r.Exceedance.Count(s, c, g, r.Outdoor, r.Indoor, r.Running, hourOf)
+	r.Potential = potential.Judge(s, c, g, r.Calendar, r.Outdoor, r.Running, r.Exceedance)
+	r.Hours = hours.Make(hours.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor,
+		Running: r.Running, Exceedance: r.Exceedance, Potential: r.Potential, Calendar: r.Calendar, Hours: clockHours})
+	r.Summary = hours.Sum(r.Hours, g, r.Calendar, r.Running)
+	r.FreshAir = freshair.Assess(freshair.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running})
+	r.Lost = lost.Find(lost.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
+		Exceedance: r.Exceedance, Potential: r.Potential, Record: r.Hours, Summary: r.Summary})
+	r.AfterHours = afterhours.Look(afterhours.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor,
+		Running: r.Running, Record: r.Hours, Summary: r.Summary})
+	r.Answerable = answerable.Ask(s, g)
+	r.Findings = advice.Advise(advice.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
+		Exceedance: r.Exceedance, Potential: r.Potential, Record: r.Hours, Summary: r.Summary, FreshAir: r.FreshAir,
+		Lost: r.Lost, AfterHours: r.AfterHours})
+	return r
+}
