@@ -86,9 +86,13 @@ func TestCoolingEffect(t *testing.T) {
 			near(t, k.name, got, k.want, 0.03)
 		}
 	}
-	hot := Conditions{AirC: 45, RadiantC: 45, AirSpeedMS: 1, RHPct: 10, Met: 1, Clo: 0.5}
-	if got, found := CoolingEffectK(hot, SETOptions{Form: SETFormB}); found && got < 0 {
-		t.Errorf("air at 45 °C: cooling effect %g", got)
+	// Saturated air warmer than the skin heats the more the faster it moves.
+	hot := Conditions{AirC: 42, RadiantC: 42, AirSpeedMS: 1, RHPct: 100, Met: 1, Clo: 0.5}
+	if got, found := CoolingEffectK(hot, SETOptions{Form: SETFormB}); found || got != 0 {
+		t.Errorf("saturated air at 42 °C: cooling effect %g, found %v", got, found)
+	}
+	if got := PMVElevated(hot, SETOptions{Form: SETFormB}); !math.IsNaN(got) {
+		t.Errorf("saturated air at 42 °C: PMV %g, want NaN", got)
 	}
 	if got, found := CoolingEffectK(Conditions{AirC: math.NaN()}, SETOptions{}); found || got != 0 {
 		t.Errorf("unknown air temperature: %g, %v", got, found)
