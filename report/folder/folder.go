@@ -1,0 +1,79 @@
+// Package folder writes a set of outputs so that a reader never meets half of
+// one: everything goes to temporary names first and is renamed at the end.
+package folder
+
+import (
+	"bufio"
+	"errors"
+	"fmt"
+	"io"
+	"os"
+	"path/filepath"
+)
+
+// Folder is an output folder being filled. It is not safe for concurrent use.
+type Folder struct {
+	dir     string
+	pending []*pendingFile
+}
+
+type pendingFile struct {
+	name, temp string
+	file       *os.File
+	buffered   *bufio.Writer
+}
+
+// Open makes the folder if need be.
+func Open(dir string) (*Folder, error) {
+	if err := os.MkdirAll(dir, 0o755); err != nil {
+		return nil, fmt.Errorf("cannot make the output folder %q: %w; hint: name another with --into", dir, err)
+	}
+	return &Folder{dir: dir}, nil
+}
+
+// Path returns where an output will stand after Commit.
+func (f *Folder) Path(name string) string { return filepath.Join(f.dir, name) }
+
+// Write fills one output through fill. The file appears under its own name
+// only at Commit; an earlier file of that name stays until then.
+func (f *Folder) Write(name string, fill func(io.Writer) error) error {
+	file, err := os.CreateTemp(f.dir, "."+name+".*.part")
+	if err != nil {
+		return fmt.Errorf("cannot write %q: %w", f.Path(name), err)
+	}
+	p := &pendingFile{name: name, temp: file.Name(), file: file, buffered: bufio.NewWriterSize(file, 1<<18)}
+	f.pending = append(f.pending, p)
+	if err := fill(p.buffered); err != nil {
+		return fmt.Errorf("cannot write %q: %w", f.Path(name), err)
+	}
+	if err := errors.Join(p.buffered.Flush(), file.Chmod(0o644), file.Close()); err != nil {
+		return fmt.Errorf("cannot write %q: %w", f.Path(name), err)
+	}
+	p.file = nil
+	return nil
+}
+
+// Commit gives every output its own name.
+func (f *Folder) Commit() error {
+	for _, p := range f.pending {
+		if err := os.Rename(p.temp, f.Path(p.name)); err != nil {
+			return fmt.Errorf("cannot write %q: %w", f.Path(p.name), err)
+		}
+		p.temp = ""
+	}
+	f.pending = nil
+	return nil
+}
+
+// Discard removes whatever was not committed; it does nothing after Commit.
+func (f *Folder) Discard() {
+	for _, p := range f.pending {
+		if p.file != nil {
+			p.file.Close()
+		}
+		if p.temp != "" {
+			os.Remove(p.temp)
+		}
+	}
+	f.pending = nil
+}
