@@ -112,9 +112,10 @@ func CO2Duration(d CO2DurationData, o Options) (SVG, error) {
 					ink, dash := lineLook(cu.State)
 					strokeCurve(c, p, cu.Points, hline(ink, lineBold, dash...))
 				}
-				drawLevels(cv, c, p, d.Limits)
-				if !anyKnown(z.Curves) {
-					write(cv, align(sans(textSize, inkFaint), -0.5, -0.5), c.Center().X, c.Center().Y, "no CO₂ readings")
+				if anyKnown(z.Curves) {
+					drawLevels(cv, c, p, d.Limits)
+				} else {
+					halo(cv, align(sans(textSize, inkFaint), -0.5, -0.5), c.Center().X, c.Center().Y, "no CO₂ readings")
 				}
 			}))
 			p.Draw(draw.Crop(box, 0, -2, 3, -name))

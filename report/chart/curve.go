@@ -30,23 +30,17 @@ func lineLook(c Class) (ink color.RGBA, dash []vg.Length) {
 }
 
 // strokeCurve draws points in data units, broken where a value is not known
-// and cut off at the edges of the plot. Points closer than a third of a point
-// on paper are left out, since print cannot show them.
+// and cut off at the edges of the plot.
 func strokeCurve(c draw.Canvas, p *plot.Plot, pts []XY, sty draw.LineStyle) {
 	fx, fy := p.Transforms(&c)
 	var run []vg.Point
-	var skipped *vg.Point
 	end := func() {
-		if skipped != nil {
-			run = append(run, *skipped)
-			skipped = nil
-		}
 		if len(run) == 1 {
 			// A lone known value between gaps is shown as a short dash.
 			run = append(run, vg.Point{X: run[0].X + 0.8, Y: run[0].Y})
 		}
 		if len(run) > 1 {
-			c.StrokeLines(sty, c.ClipLinesXY(run)...)
+			c.StrokeLines(sty, c.ClipLinesXY(thin(run, 0.12))...)
 		}
 		run = nil
 	}
@@ -55,15 +49,50 @@ func strokeCurve(c draw.Canvas, p *plot.Plot, pts []XY, sty draw.LineStyle) {
 			end()
 			continue
 		}
-		at := vg.Point{X: fx(q.X), Y: fy(q.Y)}
-		if n := len(run); n > 0 && math.Hypot(float64(at.X-run[n-1].X), float64(at.Y-run[n-1].Y)) < 0.35 {
-			skipped = &at
-			continue
-		}
-		skipped = nil
-		run = append(run, at)
+		run = append(run, vg.Point{X: fx(q.X), Y: fy(q.Y)})
 	}
 	end()
+}
+
+// thin leaves out points that lie within tolerance of the line drawn without
+// them: Douglas and Peucker, "Algorithms for the reduction of the number of
+// points required to represent a digitized line", Cartographica 10 (1973).
+func thin(pts []vg.Point, tolerance float64) []vg.Point {
+	keep := make([]bool, len(pts))
+	keep[0], keep[len(pts)-1] = true, true
+	todo := [][2]int{{0, len(pts) - 1}}
+	for len(todo) > 0 {
+		a, b := todo[len(todo)-1][0], todo[len(todo)-1][1]
+		todo = todo[:len(todo)-1]
+		far, at := tolerance, -1
+		for i := a + 1; i < b; i++ {
+			if d := offLine(pts[i], pts[a], pts[b]); d > far {
+				far, at = d, i
+			}
+		}
+		if at >= 0 {
+			keep[at] = true
+			todo = append(todo, [2]int{a, at}, [2]int{at, b})
+		}
+	}
+	var out []vg.Point
+	for i, p := range pts {
+		if keep[i] {
+			out = append(out, p)
+		}
+	}
+	return out
+}
+
+// offLine is the distance of p from the segment between a and b.
+func offLine(p, a, b vg.Point) float64 {
+	dx, dy := float64(b.X-a.X), float64(b.Y-a.Y)
+	px, py := float64(p.X-a.X), float64(p.Y-a.Y)
+	if l := dx*dx + dy*dy; l > 0 {
+		t := math.Min(1, math.Max(0, (px*dx+py*dy)/l))
+		px, py = px-t*dx, py-t*dy
+	}
+	return math.Hypot(px, py)
 }
 
 // drawLevels draws level guide lines with their words at the right end, above

@@ -80,7 +80,7 @@ func EpisodeStrip(d EpisodeStripData, o Options) (SVG, error) {
 	height := legendH + titleRow + tempH + barsH + axisH
 	hasCO2 := anyFinite(d.CO2PPM)
 	if hasCO2 {
-		height += titleRow + co2H
+		height += titleRow + 2 + co2H
 	}
 	return f.render(height, func(cv *canvas, area draw.Canvas) {
 		drawLegend(cv, 0, area.Max.Y, f.width, legend)
@@ -101,8 +101,8 @@ func EpisodeStrip(d EpisodeStripData, o Options) (SVG, error) {
 		y -= barsH
 		last := bars
 		if hasCO2 {
-			drawYTitle(cv, 0, y, "CO₂ (ppm)", f.width)
-			y -= titleRow
+			drawYTitle(cv, 0, y-2, "CO₂ (ppm)", f.width)
+			y -= titleRow + 2
 			last = s.co2(cv)
 			box.Rectangle = rect(0, 0, f.width-6, y)
 			plots, boxes = append(plots, last), append(boxes, box)
@@ -183,7 +183,7 @@ func (s strip) legend() []legendEntry {
 	if len(s.d.Missed) > 0 {
 		out = append(out, legendEntry{label: Missed.Label(), band: inkShade})
 	}
-	return out
+	return append(out, s.stateKeys()...)
 }
 
 // hour is the place of the start of a step on the axis.
@@ -226,7 +226,7 @@ func (s strip) temperature(cv *canvas) *plot.Plot {
 	}
 	p.Y.Min, p.Y.Max = math.Floor(lo-0.5), math.Ceil(hi+0.5)
 	p.Y.Tick.Marker = niceTicks{want: 6}
-	p.Add(s.shade(cv), s.band(cv), grid(false, true), s.upright(), plotterFunc(func(c draw.Canvas, p *plot.Plot) {
+	p.Add(s.band(cv), s.shade(cv), grid(false, true), s.upright(), plotterFunc(func(c draw.Canvas, p *plot.Plot) {
 		strokeCurve(c, p, s.series(s.d.OutdoorC), hline(inkOutdor, lineData, 5, 1.5))
 		strokeCurve(c, p, s.series(s.d.IndoorC), hline(inkIndoor, lineData))
 	}))

@@ -76,7 +76,7 @@ func Exceedance(d ExceedanceData, o Options) (SVG, error) {
 	if warmMost+coolMost == 0 {
 		rows.lo, rows.hi = 0, 1
 	}
-	rows.ticks = absoluteTicks{niceTicks{want: 6}}
+	rows.most, rows.sided = 6, true
 	rows.draw = func(cv *canvas, c draw.Canvas, p *plot.Plot, from, to int, y func(int) vg.Length, h vg.Length) {
 		fx, _ := p.Transforms(&c)
 		var bars []bar

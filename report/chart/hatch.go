@@ -38,7 +38,7 @@ func drawBars(cv *canvas, bars []bar) {
 		}
 		cv.SetColor(look.Ink)
 		for _, b := range bars {
-			if b.class == c {
+			if b.class == c && min(b.Max.X-b.Min.X, b.Max.Y-b.Min.Y) > 2 {
 				hatch(cv, b.Rectangle, look.Hatch)
 			}
 		}

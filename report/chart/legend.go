@@ -14,6 +14,7 @@ type legendEntry struct {
 	width vg.Length
 	dash  []vg.Length
 	band  color.Color // when not nil, a plain swatch in this colour
+	dot   bool        // a round dot in the colour of the class
 }
 
 const (
@@ -64,7 +65,7 @@ func drawLegend(cv *canvas, left, top, width vg.Length, entries []legendEntry) {
 	var bars []bar
 	for i, e := range entries {
 		x := left + places[i].x
-		if e.line == nil && e.band == nil {
+		if e.line == nil && e.band == nil && !e.dot {
 			bars = append(bars, bar{e.class, rect(x, mid(i)-swatchH/2, x+swatchW, mid(i)+swatchH/2)})
 		}
 	}
@@ -74,6 +75,10 @@ func drawLegend(cv *canvas, left, top, width vg.Length, entries []legendEntry) {
 		if e.band != nil {
 			cv.SetColor(e.band)
 			cv.Fill(rect(x, mid(i)-swatchH/2, x+swatchW, mid(i)+swatchH/2).Path())
+		}
+		if e.dot {
+			cv.SetColor(e.class.Look().Fill)
+			dot(cv, x+swatchW/2, mid(i), 2.6)
 		}
 		if e.line != nil {
 			cv.SetColor(e.line)

@@ -65,12 +65,13 @@ func MonthlyStack(d MonthlyStackData, o Options) (SVG, error) {
 		p.Add(grid(false, true), plotterFunc(func(c draw.Canvas, p *plot.Plot) {
 			fx, fy := p.Transforms(&c)
 			var bars []bar
+			half := min((fx(1)-fx(0))*0.36, 25)
 			for i, m := range d.Months {
 				sum := 0.0
 				for k, h := range m.Hours {
 					if h > 0 {
 						bars = append(bars, bar{d.Classes[k],
-							rect(fx(float64(i)+0.14), fy(sum), fx(float64(i)+0.86), fy(sum+h))})
+							rect(fx(float64(i)+0.5)-half, fy(sum), fx(float64(i)+0.5)+half, fy(sum+h))})
 						sum += h
 					}
 				}
@@ -114,26 +115,27 @@ func (f frame) checkMonths(d MonthlyStackData) (tallest float64, used []Class, p
 	return tallest, used, partial, nil
 }
 
-// monthNames names each column, with the year where it changes, as far as the
-// column is wide enough.
+// monthNames names each column as far as it is wide enough: "Jan", then "J",
+// then every third "J". The year stands under the first and under each January.
 func monthNames(months []MonthHours, room vg.Length) plot.ConstantTicks {
 	sty := sans(textSize, inkText)
 	var ticks plot.ConstantTicks
-	years := len(months) > 0 && months[0].Year != months[len(months)-1].Year
+	long := sty.Width("Mar*")+2 <= room
 	for i, m := range months {
 		at := time.Date(m.Year, m.Month, 1, 0, 0, 0, 0, time.UTC)
 		name := at.Format("Jan")
+		if !long {
+			name = name[:1]
+		}
 		if m.Partial {
 			name += "*"
 		}
-		if sty.Width(name)+1 > room {
-			name = name[:1]
-			if room < 7 && i%3 != 0 {
-				name = " "
-			}
+		if sty.Width(name) > room && i%3 != 0 {
+			name = " "
 		}
-		// The year stands on a second line so that all names share one row.
-		if years && (i == 0 || m.Month == time.January) && len(months)-i >= 2 {
+		near := sty.Width("2000")+4 > room*vg.Length(len(months)-i) && i > 0
+		crowded := i > 0 && m.Month == time.January && sty.Width("2000")+4 > room*vg.Length(i)
+		if (i == 0 || m.Month == time.January) && !near && !crowded {
 			name += at.Format("\n2006")
 		}
 		ticks = append(ticks, plot.Tick{Value: float64(i) + 0.5, Label: name})

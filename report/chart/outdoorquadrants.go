@@ -2,6 +2,7 @@ package chart
 
 import (
 	"cmp"
+	"image/color"
 	"math"
 	"slices"
 
@@ -81,13 +82,18 @@ func OutdoorQuadrants(d OutdoorQuadrantsData, o Options) (SVG, error) {
 			classes = append(classes, c)
 		}
 	}
+	binned := len(pts) > maxDots
 	entries := classLegend(classes)
+	for i, c := range classes {
+		if !binned && c.Look().Fill != dotColour(c) {
+			entries[i].band = dotColour(c)
+		}
+	}
 	_, legendH := layLegend(entries, f.width)
 	yTitle := "outdoor dew point (°C)"
 	if d.Humidity == RelativePC {
 		yTitle = "outdoor relative humidity (%)"
 	}
-	binned := len(pts) > maxDots
 	note := vg.Length(0)
 	if binned {
 		note = 10
@@ -170,23 +176,36 @@ func outdoorRange(p *plot.Plot, pts []OutdoorPoint, d OutdoorQuadrantsData) {
 	p.X.Tick.Marker, p.Y.Tick.Marker = niceTicks{want: 10}, niceTicks{want: 7}
 }
 
+// dotColour is the fill of a class, or its ink where the fill is white.
+func dotColour(c Class) color.RGBA {
+	if l := c.Look(); luminance(l.Fill) > 0.95 {
+		return l.Ink
+	}
+	return c.Look().Fill
+}
+
+// dotRank is the order in which classes are drawn, the last on top: what needs
+// attention must not be hidden by what does not.
+func dotRank(c Class) int {
+	order := []Class{ClosedUnsuited, NoOpening, Unjudged, NotNeeded, AchievedUnassessed,
+		AchievedOK, AchievedCool, AchievedWarm, AchievedStale, IllTimed, Missed}
+	return slices.Index(order, c)
+}
+
 // drawDots draws square dots class by class; sorted by place, so that the
 // steps between them are short numbers.
 func drawDots(cv *canvas, c draw.Canvas, p *plot.Plot, pts []OutdoorPoint) {
-	const size = vg.Length(2)
+	const size = vg.Length(1.8)
 	fx, fy := p.Transforms(&c)
 	sorted := slices.Clone(pts)
 	slices.SortStableFunc(sorted, func(a, b OutdoorPoint) int {
-		return cmp.Or(cmp.Compare(a.Class, b.Class), cmp.Compare(a.TempC, b.TempC), cmp.Compare(a.Humidity, b.Humidity))
+		return cmp.Or(cmp.Compare(dotRank(a.Class), dotRank(b.Class)), cmp.Compare(a.Class, b.Class),
+			cmp.Compare(a.TempC, b.TempC), cmp.Compare(a.Humidity, b.Humidity))
 	})
 	cv.SetLineWidth(size)
 	cv.SetLineDash(nil, 0)
 	for _, q := range sorted {
-		col := q.Class.Look().Fill
-		if q.Class == Unjudged || q.Class == Unknown {
-			col = q.Class.Look().Ink
-		}
-		cv.SetColor(col)
+		cv.SetColor(dotColour(q.Class))
 		// A tenth of a point is finer than print shows, and shorter to write.
 		x := vg.Length(math.Round(float64(fx(q.TempC))*10) / 10)
 		y := vg.Length(math.Round(float64(fy(q.Humidity))*10) / 10)
@@ -198,7 +217,9 @@ func drawDots(cv *canvas, c draw.Canvas, p *plot.Plot, pts []OutdoorPoint) {
 func drawBins(cv *canvas, c draw.Canvas, p *plot.Plot, pts []OutdoorPoint) {
 	const pitch = 7.0
 	fx, fy := p.Transforms(&c)
-	nx := int(float64(c.Size().X)/pitch) + 1
+	nx, ny := max(1, int(float64(c.Size().X)/pitch)), max(1, int(float64(c.Size().Y)/pitch))
+	// Bins are a little wider than the pitch so that they fill the plot.
+	px, py := float64(c.Size().X)/float64(nx), float64(c.Size().Y)/float64(ny)
 	type bin struct {
 		count [classCount]int
 		total int
@@ -206,7 +227,8 @@ func drawBins(cv *canvas, c draw.Canvas, p *plot.Plot, pts []OutdoorPoint) {
 	bins := map[int]*bin{}
 	most := 0
 	for _, q := range pts {
-		i, j := int(float64(fx(q.TempC)-c.Min.X)/pitch), int(float64(fy(q.Humidity)-c.Min.Y)/pitch)
+		i := min(nx-1, max(0, int(float64(fx(q.TempC)-c.Min.X)/px)))
+		j := min(ny-1, max(0, int(float64(fy(q.Humidity)-c.Min.Y)/py)))
 		b := bins[j*nx+i]
 		if b == nil {
 			b = &bin{}
@@ -230,8 +252,8 @@ func drawBins(cv *canvas, c draw.Canvas, p *plot.Plot, pts []OutdoorPoint) {
 				class = cl
 			}
 		}
-		x := c.Min.X + vg.Length((float64(k%nx)+0.5)*pitch)
-		y := c.Min.Y + vg.Length((float64(k/nx)+0.5)*pitch)
+		x := c.Min.X + vg.Length((float64(k%nx)+0.5)*px)
+		y := c.Min.Y + vg.Length((float64(k/nx)+0.5)*py)
 		half := vg.Length(math.Max(0.5, (pitch-0.6)/2*math.Sqrt(float64(b.total)/float64(most))))
 		bars = append(bars, bar{class, rect(x-half, y-half, x+half, y+half)})
 	}
@@ -265,7 +287,7 @@ func drawOutdoorLimits(cv *canvas, c draw.Canvas, p *plot.Plot, d OutdoorQuadran
 	xs, ys = append(xs, c.Max.X), append(ys, c.Max.Y)
 	sty := sans(textSize, inkText)
 	// Names of the limits: upright ones at the top, beside their line; level
-	// ones at the right end, above it; the curve where it leaves the plot.
+	// ones at the right end, below it, clear of the hours of the field above.
 	for i, l := range d.TempLimits {
 		x := fx(l.Value)
 		w := sty.Width(clean(l.Label))
@@ -276,17 +298,9 @@ func drawOutdoorLimits(cv *canvas, c draw.Canvas, p *plot.Plot, d OutdoorQuadran
 		}
 	}
 	for _, l := range d.HumidityLimits {
-		halo(cv, align(sty, -1, 0), c.Max.X-3, fy(l.Value)+1.5, l.Label)
+		halo(cv, align(sty, -1, -1), c.Max.X-3, fy(l.Value)-2, l.Label)
 	}
-	if n := len(curve); n > 0 && clean(d.CurveLabel) != "" {
-		at := curve[n-1]
-		for _, q := range curve {
-			if c.Contains(q) {
-				at = q
-			}
-		}
-		halo(cv, align(sty, -1, 0), min(at.X, c.Max.X)-3, clampLen(at.Y+2, c.Min.Y+2, c.Max.Y-22), d.CurveLabel)
-	}
+	nameCurve(cv, c, curve, d.CurveLabel)
 	strong := bold(sty)
 	for j, row := range d.Hours {
 		for i, h := range row {
@@ -300,5 +314,24 @@ func drawOutdoorLimits(cv *canvas, c draw.Canvas, p *plot.Plot, d OutdoorQuadran
 			}
 			halo(cv, strong, xs[i]+4, ys[j]+3, text)
 		}
+	}
+}
+
+// nameCurve writes the words of a limit curve beside its right part, on the
+// side the curve leaves free: above a falling one, below a rising one.
+func nameCurve(cv *canvas, c draw.Canvas, curve []vg.Point, label string) {
+	sty := sans(textSize, inkText)
+	w := sty.Width(clean(label))
+	for i := len(curve) - 1; i > 0; i-- {
+		at := curve[i]
+		if !c.Contains(at) || at.X+w+8 > c.Max.X || at.Y+14 > c.Max.Y {
+			continue
+		}
+		if curve[i-1].Y > at.Y {
+			halo(cv, align(sty, 0, 0), at.X+5, at.Y+3, label)
+		} else {
+			halo(cv, align(sty, 0, -1), at.X+5, at.Y-3, label)
+		}
+		return
 	}
 }

@@ -101,13 +101,13 @@ func (c Class) Look() Look {
 	case Missed:
 		return Look{rgb(0xD55E00), black, Solid, "could have been open"}
 	case NotNeeded:
-		return Look{rgb(0x8FD3BF), black, Solid, "open mode not needed"}
+		return Look{rgb(0x4DB596), black, Solid, "open mode not needed"}
 	case IllTimed:
 		return Look{rgb(0xCC79A7), black, Crossed, "open outside limits"}
 	case ClosedUnsuited:
-		return Look{rgb(0xC4C4C4), black, Solid, "closed, weather unsuitable"}
+		return Look{rgb(0xD4D4D4), black, Solid, "closed, weather unsuitable"}
 	case NoOpening:
-		return Look{rgb(0xE9E2D0), rgb(0x8A7A50), Falling, "zone has no opening"}
+		return Look{rgb(0xF1E3BF), rgb(0x8A7A50), Falling, "zone has no opening"}
 	case Unjudged:
 		return Look{rgb(0xFFFFFF), rgb(0x707070), Rising, "cannot be assessed"}
 	case Open:
@@ -117,7 +117,7 @@ func (c Class) Look() Look {
 	case Both:
 		return Look{rgb(0xCC79A7), black, Crossed, "windows open with plant running"}
 	case Shut:
-		return Look{rgb(0xC4C4C4), black, Solid, "window shut, plant off"}
+		return Look{rgb(0xCECECE), black, Solid, "window shut, plant off"}
 	case Unknown:
 		return Look{rgb(0xFFFFFF), rgb(0x707070), Rising, "unknown"}
 	case TooWarm:
@@ -148,7 +148,7 @@ var (
 	inkGrid   = rgb(0xDEDEDE)
 	inkFaint  = rgb(0x5C5C5C)
 	inkBand   = rgb(0xE3EEF5)
-	inkShade  = rgb(0xF9DFCC)
+	inkShade  = color.NRGBA{R: 0xD5, G: 0x5E, A: 46} // lies over the comfort band
 	inkIndoor = rgb(0xB34700)
 	inkOutdor = rgb(0x0072B2)
 )

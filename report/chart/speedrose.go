@@ -73,9 +73,8 @@ func SpeedRose(d SpeedRoseData, o Options) (SVG, error) {
 			sin, cos := math.Sincos(float64(i) * math.Pi / 2)
 			write(cv, bold(sty), mid.X+(outer+9)*vg.Length(sin), mid.Y+(outer+9)*vg.Length(cos), name)
 		}
-		// Ring labels stand between two of the main directions.
+		a := emptiest(d.Sectors)
 		for s := step; s <= rim+step*1e-6; s += step {
-			a := 67.5 * math.Pi / 180
 			r := radius(s)
 			halo(cv, align(sans(smallSize, inkFaint), -0.5, -0.5), mid.X+r*vg.Length(math.Sin(a)), mid.Y+r*vg.Length(math.Cos(a)),
 				number(s, decimalsOf(step))+" %")
@@ -128,19 +127,41 @@ func (f frame) longestPetal(d SpeedRoseData) (float64, error) {
 	return longest, nil
 }
 
-// speedColours runs from pale to dark blue in even steps of lightness.
+// speedColours runs from pale to dark blue, through the blues of the palette.
 func speedColours(n int) []color.RGBA {
-	pale, dark := [3]float64{0xC9, 0xE3, 0xF2}, [3]float64{0x00, 0x2F, 0x56}
+	anchors := [][3]float64{{0xD3, 0xEA, 0xF7}, {0x7F, 0xC2, 0xE8}, {0x00, 0x72, 0xB2}, {0x00, 0x2A, 0x4E}}
 	out := make([]color.RGBA, n)
 	for i := range out {
 		t := 0.0
 		if n > 1 {
-			t = float64(i) / float64(n-1)
+			t = float64(i) / float64(n-1) * float64(len(anchors)-1)
 		}
-		mix := func(k int) uint8 { return uint8(math.Round(pale[k] + t*(dark[k]-pale[k]))) }
+		k := min(int(t), len(anchors)-2)
+		mix := func(ch int) uint8 {
+			return uint8(math.Round(anchors[k][ch] + (t-float64(k))*(anchors[k+1][ch]-anchors[k][ch])))
+		}
 		out[i] = color.RGBA{mix(0), mix(1), mix(2), 255}
 	}
 	return out
+}
+
+// emptiest is the compass angle between two sectors whose petals are short,
+// where the ring labels hide least.
+func emptiest(sectors [][]float64) float64 {
+	n := len(sectors)
+	sum := func(i int) (s float64) {
+		for _, v := range sectors[i%n] {
+			s += known(v)
+		}
+		return s
+	}
+	best := 0
+	for i := range n {
+		if math.Max(sum(i), sum(i+1)) < math.Max(sum(best), sum(best+1)) {
+			best = i
+		}
+	}
+	return 2 * math.Pi * (float64(best) + 0.5) / float64(n)
 }
 
 // drawPetals draws band by band, so that each band is one path.

@@ -1,6 +1,7 @@
 package chart
 
 import (
+	"slices"
 	"time"
 
 	"gonum.org/v1/plot"
@@ -40,6 +41,25 @@ func plantBar(p PlantMode) (Class, string) {
 		return TooCool, "cooling"
 	}
 	return Unknown, "unknown"
+}
+
+// stateKeys explains the coloured bars that occur, for those too short to hold
+// a word.
+func (s strip) stateKeys() []legendEntry {
+	var out []legendEntry
+	if slices.Contains(s.d.Window, WindowOpen) {
+		out = append(out, legendEntry{label: "window open", class: Open})
+	}
+	for _, p := range []PlantMode{PlantOn, PlantVent, PlantHeat, PlantCool} {
+		if slices.Contains(s.d.Plant, p) {
+			class, word := plantBar(p)
+			out = append(out, legendEntry{label: "plant " + word, class: class})
+		}
+	}
+	if slices.Contains(s.d.Window, WindowUnknown) || slices.Contains(s.d.Plant, PlantUnknown) {
+		out = append(out, legendEntry{label: Unknown.Label(), class: Unknown})
+	}
+	return out
 }
 
 func (s strip) bars(cv *canvas) *plot.Plot {

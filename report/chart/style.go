@@ -84,6 +84,11 @@ func (n niceTicks) Ticks(lo, hi float64) []plot.Tick {
 	return ticks
 }
 
+// ticksFor is the number of ticks that fit a width, at most most.
+func ticksFor(width vg.Length, most int) niceTicks {
+	return niceTicks{want: max(1, min(most, int(width/30)))}
+}
+
 func niceStep(lo, hi float64, want int) float64 {
 	span := hi - lo
 	if !(span > 0) || !finite(span) || want < 1 {

@@ -65,7 +65,7 @@ func WhereHoursWent(d WhereHoursWentData, o Options) (SVG, error) {
 		if p.X.Label.Text == "" {
 			p.X.Label.Text = "hours (h)"
 		}
-		p.X.Tick.Marker = niceTicks{want: 8}
+		p.X.Tick.Marker = ticksFor(f.width-left-right, 8)
 		p.Add(grid(true, false), plotterFunc(func(c draw.Canvas, p *plot.Plot) {
 			fx, fy := p.Transforms(&c)
 			var bars []bar

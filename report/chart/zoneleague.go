@@ -63,11 +63,11 @@ func ZoneLeague(d ZoneLeagueData, o Options) (SVG, error) {
 	slices.SortStableFunc(zones, func(a, b ZoneShare) int {
 		return cmp.Compare(key(a), key(b))
 	})
-	rows := zoneRows{xTitle: d.XTitle, lo: 0, hi: 100, ticks: niceTicks{want: 5}}
+	rows := zoneRows{xTitle: d.XTitle, lo: 0, hi: 100, most: 5}
 	if clean(rows.xTitle) == "" {
 		rows.xTitle = "achieved share of the hours that could have been open (%)"
 	}
-	rows.legend = []legendEntry{{label: "achieved share", class: AchievedOK}, {label: "least and greatest it could be", line: inkText, width: 0.8}}
+	rows.legend = []legendEntry{{label: "achieved share", class: AchievedOK, dot: true}, {label: "least and greatest it could be", line: inkText, width: 0.8}}
 	if finite(d.Building) {
 		rows.legend = append(rows.legend, legendEntry{label: "building " + number(d.Building*100, 0) + " %", line: inkFaint, width: 0.8, dash: []vg.Length{3, 2}})
 	}

@@ -35,7 +35,8 @@ type zoneRows struct {
 	extra  int // zones left out
 	xTitle string
 	lo, hi float64
-	ticks  plot.Ticker
+	most   int  // ticks along a row, as far as they fit
+	sided  bool // both sides of zero are labelled without a sign
 	legend []legendEntry
 	// right is the room kept on the right of each row for words.
 	right vg.Length
@@ -74,6 +75,12 @@ func (z zoneRows) render(f frame) SVG {
 		if note != "" {
 			put(cv, sans(smallSize, inkFaint), vg.Point{X: 0, Y: 1}, note, f.width)
 		}
+		titleH := vg.Length(0)
+		if columns > 1 {
+			// One title for both columns, so that it may be as wide as the figure.
+			put(cv, align(sans(textSize, inkText), -0.5, 0), vg.Point{X: f.width / 2, Y: noteH + 1}, z.xTitle, f.width)
+			titleH = 11
+		}
 		sty := align(sans(textSize, inkText), -1, -0.5)
 		gap := vg.Length(16)
 		colW := (f.width - gap*vg.Length(columns-1)) / vg.Length(columns)
@@ -89,8 +96,13 @@ func (z zoneRows) render(f frame) SVG {
 			p.X.Min, p.X.Max = z.lo, z.hi
 			p.Y.Min, p.Y.Max = 0, float64(perColumn)
 			p.HideY()
-			p.X.Tick.Marker = z.ticks
-			p.X.Label.Text = fit(z.xTitle, sans(textSize, inkText), colW-left-z.right)
+			p.X.Tick.Marker = ticksFor(colW-left-z.right-5, z.most)
+			if z.sided {
+				p.X.Tick.Marker = absoluteTicks{p.X.Tick.Marker}
+			}
+			if columns == 1 {
+				p.X.Label.Text = fit(z.xTitle, sans(textSize, inkText), colW-left-z.right)
+			}
 			p.Add(grid(true, false), plotterFunc(func(c draw.Canvas, p *plot.Plot) {
 				_, fy := p.Transforms(&c)
 				y := func(i int) vg.Length { return fy(float64(perColumn-(i-from)) - 0.5) }
@@ -101,7 +113,7 @@ func (z zoneRows) render(f frame) SVG {
 			}))
 			box := area
 			box.Min.X, box.Max.X = x0+left+5, x0+colW-z.right
-			p.Draw(draw.Crop(box, 0, 0, noteH, -legendH-3))
+			p.Draw(draw.Crop(box, 0, 0, noteH+titleH, -legendH-3))
 		}
 	})
 }
