@@ -1,0 +1,191 @@
+package main
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"io"
+	"path/filepath"
+	"strings"
+	"time"
+
+	"github.com/spf13/cobra"
+
+	"sashlog/analyze"
+	"sashlog/configs"
+	"sashlog/configs/criteria"
+	"sashlog/configs/site"
+	"sashlog/ingest"
+	"sashlog/report/folder"
+	"sashlog/report/page"
+	"sashlog/report/provenance"
+	"sashlog/report/table"
+	"sashlog/report/words"
+)
+
+// auditJob is one audit as the command line asked for it.
+type auditJob struct {
+	siteFile string
+	into     string // empty: sashlog-report beside the site file
+	from, to site.Date
+	quiet    bool
+	command  string // as shown in the report
+}
+
+func newAudit(p process) *cobra.Command {
+	var job auditJob
+	var from, to string
+	cmd := &cobra.Command{
+		Use:   "audit SITE.yaml",
+		Short: "audit a building from its logs and write the report",
+		Long: `audit reads the site file and the logs it names, checks every reading, works out
+where the occupied hours went, and writes into the output folder:
+
+  report.html      the whole report in one file; open it in a browser and print it
+  results.json     every figure with its bounds, for other programs
+  hours.csv        the hourly record: one row per zone and hour (also hours.parquet)
+  comfort.parquet  hours outside each comfort criterion
+  episodes.csv     the missed episodes and their causes
+  readings.csv     what became of every logged point's readings
+
+It ends with 1 when more readings were rejected than the site file tolerates.`,
+		Example: `  sashlog audit building/site.yaml
+  sashlog audit building/site.yaml --from 2025-05-01 --to 2025-09-30 --into summer`,
+		Args: oneSite,
+		RunE: func(c *cobra.Command, args []string) error {
+			job.siteFile = args[0]
+			job.quiet, _ = c.Flags().GetBool("quiet")
+			var err error
+			if job.from, err = dateFlag("--from", from); err != nil {
+				return err
+			}
+			if job.to, err = dateFlag("--to", to); err != nil {
+				return err
+			}
+			job.command = "sashlog audit " + filepath.Base(job.siteFile) + flagWords(" --from ", from) + flagWords(" --to ", to)
+			return job.run(c.Context(), p)
+		},
+	}
+	cmd.Flags().StringVar(&job.into, "into", "", "output folder (default: sashlog-report beside the site file)")
+	cmd.Flags().StringVar(&from, "from", "", "first local day of the period, as 2025-05-01")
+	cmd.Flags().StringVar(&to, "to", "", "last local day of the period, inclusive")
+	return cmd
+}
+
+func flagWords(name, value string) string {
+	if value == "" {
+		return ""
+	}
+	return name + value
+}
+
+// dateFlag reads a local day.
+func dateFlag(name, text string) (site.Date, error) {
+	if text == "" {
+		return site.Date{}, nil
+	}
+	t, err := time.Parse("2006-01-02", text)
+	if err != nil {
+		return site.Date{}, fail(exitUsage, fmt.Errorf("%s %q is not a day; hint: write it as 2025-05-01", name, text))
+	}
+	return site.DateOf(t), nil
+}
+
+// run does the audit: load, read, analyse, write, say.
+func (job auditJob) run(ctx context.Context, p process) error {
+	loaded, err := configs.Load(job.siteFile, p.env)
+	if err != nil {
+		return err
+	}
+	if !job.quiet {
+		for _, warning := range loaded.Warnings {
+			fmt.Fprintln(p.stderr, printable("note: "+warning.Error()))
+		}
+	}
+	if job.into == "" {
+		job.into = filepath.Join(filepath.Dir(job.siteFile), "sashlog-report")
+	}
+
+	bar := newProgress(p.stderr, job.quiet, p.env)
+	g, ledger, err := ingest.Read(ctx, loaded.Site, ingest.Options{Progress: bar.at, From: job.from, To: job.to})
+	bar.end()
+	if err != nil {
+		return sourceFailure(err)
+	}
+	if err := ctx.Err(); err != nil {
+		return err
+	}
+	results := analyze.Run(analyze.Input{Site: loaded.Site, Criteria: loaded.Criteria, Grid: g})
+	if err := ctx.Err(); err != nil {
+		return err
+	}
+
+	origin := provenance.Provenance{Version: versionWords(), Generated: p.now().UTC().Format(time.RFC3339), Command: job.command,
+		CriteriaHash: criteria.Hash(loaded.Criteria)}
+	for _, f := range loaded.Files {
+		origin.ConfigFiles = append(origin.ConfigFiles, provenance.File{Path: f.Path, SHA256: f.SHA256, Bytes: f.Bytes})
+	}
+	tables := table.Input{Site: loaded.Site, Criteria: loaded.Criteria, Grid: g, Ledger: ledger, Results: results, Provenance: origin}
+	pages := page.Input{Site: loaded.Site, Criteria: loaded.Criteria, Grid: g, Ledger: ledger, Results: results, Provenance: origin}
+	out, err := writeAll(ctx, job.into, tables, pages)
+	if err != nil {
+		return err
+	}
+	fmt.Fprintln(p.stdout, out)
+	if !job.quiet {
+		for _, line := range words.Summary(words.Input{Site: loaded.Site, Grid: g, Ledger: ledger, Results: results}) {
+			fmt.Fprintln(p.stderr, printable(line))
+		}
+	}
+	if share := ledger.RejectedShare(); share > loaded.Site.RejectedShareMax {
+		return fail(exitRejected, fmt.Errorf("%.1f %% of the readings were rejected, more than the site's tolerance of %.1f %%; the report was written all the same; hint: readings.csv says which and why",
+			100*share, 100*loaded.Site.RejectedShareMax))
+	}
+	return nil
+}
+
+// sourceFailure gives a failure to read its exit code.
+func sourceFailure(err error) error {
+	var problems configs.Problems
+	if errors.Is(err, context.Canceled) || errors.As(err, &problems) {
+		return err
+	}
+	return fail(exitSource, err)
+}
+
+// writeAll writes every output and returns the report's path.
+func writeAll(ctx context.Context, into string, tables table.Input, pages page.Input) (reportPath string, err error) {
+	out, err := folder.Open(into)
+	if err != nil {
+		return "", fail(exitWrite, err)
+	}
+	defer out.Discard()
+	outputs := []struct {
+		name string
+		fill func(io.Writer) error
+	}{
+		{"hours.csv", func(w io.Writer) error { return table.WriteHoursCSV(w, tables) }},
+		{"hours.parquet", func(w io.Writer) error { return table.WriteHoursParquet(w, tables) }},
+		{"comfort.parquet", func(w io.Writer) error { return table.WriteComfortParquet(w, tables) }},
+		{"episodes.csv", func(w io.Writer) error { return table.WriteEpisodesCSV(w, tables) }},
+		{"readings.csv", func(w io.Writer) error { return table.WriteReadingsCSV(w, tables) }},
+		{"results.json", func(w io.Writer) error { return table.WriteJSON(w, tables) }},
+		{"results.schema.json", func(w io.Writer) error { _, err := w.Write(table.Schema()); return err }},
+		{"report.html", func(w io.Writer) error { return page.Write(w, pages) }},
+	}
+	for _, o := range outputs {
+		if err := ctx.Err(); err != nil {
+			return "", err
+		}
+		if err := out.Write(o.name, o.fill); err != nil {
+			return "", fail(exitWrite, err)
+		}
+	}
+	if err := ctx.Err(); err != nil {
+		return "", err
+	}
+	if err := out.Commit(); err != nil {
+		return "", fail(exitWrite, err)
+	}
+	return strings.TrimPrefix(out.Path("report.html"), "./"), nil
+}

@@ -1,0 +1,43 @@
+package main
+
+import (
+	"fmt"
+	"path/filepath"
+
+	"github.com/spf13/cobra"
+
+	"sashlog/ingest/demo"
+)
+
+func newDemo(p process) *cobra.Command {
+	var into string
+	var seed uint64
+	cmd := &cobra.Command{
+		Use:   "demo",
+		Short: "write an invented building's logs and audit them",
+		Long: `demo simulates a year of an invented mixed-mode building in an invented place,
+writes its logs, site file and weather the way real exports look (faults
+included), and audits them. It needs nothing but this program. The folder is a
+good model for a site file of your own.`,
+		Example: `  sashlog demo
+  sashlog demo --into somewhere --seed 7`,
+		Args: noArguments,
+		RunE: func(c *cobra.Command, _ []string) error {
+			quiet, _ := c.Flags().GetBool("quiet")
+			if !quiet {
+				fmt.Fprintf(p.stderr, "inventing a building and a year of its logs in %s (nothing in it is real)\n", printable(into))
+			}
+			options := demo.Defaults()
+			options.Seed = seed
+			if _, err := demo.Write(into, options); err != nil {
+				return fail(exitWrite, fmt.Errorf("the demo building could not be written: %w", err))
+			}
+			job := auditJob{siteFile: filepath.Join(into, "site.yaml"), into: filepath.Join(into, "sashlog-report"), quiet: quiet,
+				command: fmt.Sprintf("sashlog demo --seed %d", seed)}
+			return job.run(c.Context(), p)
+		},
+	}
+	cmd.Flags().StringVar(&into, "into", "sashlog-demo", "folder for the invented building and its report")
+	cmd.Flags().Uint64Var(&seed, "seed", 1, "another seed gives other weather and people")
+	return cmd
+}
