@@ -1,0 +1,154 @@
+package criteria
+
+import (
+	"fmt"
+	"math"
+	"strconv"
+	"strings"
+)
+
+// field ties a key of presets and site files to its place in Settings. Low and
+// high bound what a site file may say (both included); words lists the allowed
+// values of a text.
+type field struct {
+	key       string
+	at        func(*Settings) any // *float64, *int or *string
+	low, high float64
+	words     []string
+}
+
+var categories = []string{"I", "II", "III"}
+
+// fields lists every number in the order reports print them.
+var fields = []field{
+	{key: "outdoor_low_c", at: func(s *Settings) any { return &s.OutdoorLowC }, low: -20, high: 30},
+	{key: "rise_k", at: func(s *Settings) any { return &s.RiseK }, low: 0, high: 10},
+	{key: "dew_point_max_c", at: func(s *Settings) any { return &s.DewPointMaxC }, low: 0, high: 35},
+	{key: "wind_max_m_s", at: func(s *Settings) any { return &s.WindMaxMS }, low: 0, high: 40},
+	{key: "rain_dry_min", at: func(s *Settings) any { return &s.RainDryMin }, low: 0, high: 1440},
+	{key: "outdoor_pm25_max_ug_m3", at: func(s *Settings) any { return &s.OutdoorPM25Max }, low: 0, high: 1000},
+	{key: "min_suited_run_min", at: func(s *Settings) any { return &s.MinSuitedRunMin }, low: 0, high: 1440},
+	{key: "band_low_c", at: func(s *Settings) any { return &s.BandLowC }, low: -20, high: 40},
+	{key: "band_high_c", at: func(s *Settings) any { return &s.BandHighC }, low: -20, high: 45},
+
+	{key: "open_threshold", at: func(s *Settings) any { return &s.OpenThreshold }, low: 0, high: 1},
+	{key: "airing_min", at: func(s *Settings) any { return &s.AiringMin }, low: 0, high: 240},
+	{key: "valve_open_pct", at: func(s *Settings) any { return &s.ValveOpenPct }, low: 0, high: 100},
+	{key: "damper_open_pct", at: func(s *Settings) any { return &s.DamperOpenPct }, low: 0, high: 100},
+	{key: "flow_on_m3_h_m2", at: func(s *Settings) any { return &s.FlowOnM3hPerM2 }, low: 0, high: 100},
+	{key: "step_coverage_min", at: func(s *Settings) any { return &s.StepCoverageMin }, low: 0, high: 1},
+	{key: "interruption_min", at: func(s *Settings) any { return &s.InterruptionMin }, low: 0, high: 1440},
+	{key: "episode_min", at: func(s *Settings) any { return &s.EpisodeMin }, low: 0, high: 1440},
+	{key: "few_room_share", at: func(s *Settings) any { return &s.FewRoomShare }, low: 0, high: 1},
+	{key: "reopen_delay_min", at: func(s *Settings) any { return &s.ReopenDelayMin }, low: 0, high: 1440},
+	{key: "purge_from_h", at: func(s *Settings) any { return &s.PurgeFromH }, low: 0, high: 24},
+	{key: "purge_to_h", at: func(s *Settings) any { return &s.PurgeToH }, low: 0, high: 24},
+	{key: "purge_indoor_min_c", at: func(s *Settings) any { return &s.PurgeIndoorMinC }, low: 10, high: 40},
+	{key: "purge_difference_k", at: func(s *Settings) any { return &s.PurgeDifferenceK }, low: 0, high: 20},
+	{key: "purge_outdoor_min_c", at: func(s *Settings) any { return &s.PurgeOutdoorMinC }, low: -10, high: 30},
+	{key: "plant_overnight_min_h", at: func(s *Settings) any { return &s.PlantOvernightMinH }, low: 0, high: 24},
+
+	{key: "headline", at: func(s *Settings) any { return &s.Headline }, words: []string{"en16798-1", "ashrae55", "en15251", "imac-mm"}},
+	{key: "category", at: func(s *Settings) any { return &s.Category }, words: categories},
+	{key: "ashrae55_percent", at: func(s *Settings) any { return &s.ASHRAE55Percent }, words: []string{"80", "90"}},
+	{key: "adaptive_after_h", at: func(s *Settings) any { return &s.AdaptiveAfterH }, low: 0, high: 48},
+	{key: "fan_speed_m_s", at: func(s *Settings) any { return &s.FanSpeedMS }, low: 0, high: 3},
+	{key: "metabolic_met", at: func(s *Settings) any { return &s.MetabolicMet }, low: 0.8, high: 4},
+	{key: "clothing_clo", at: func(s *Settings) any { return &s.ClothingClo }, low: 0, high: 2},
+	{key: "air_speed_m_s", at: func(s *Settings) any { return &s.AirSpeedMS }, low: 0, high: 1},
+	{key: "running_mean_min_d", at: func(s *Settings) any { return &s.RunningMeanMinD }, low: 1, high: 30},
+
+	{key: "co2_category", at: func(s *Settings) any { return &s.CO2Category }, words: categories},
+	{key: "co2_above_outdoor_ppm", at: func(s *Settings) any { return &s.CO2AboveOutdoorPPM }, low: 100, high: 5000},
+	{key: "outdoor_co2_ppm", at: func(s *Settings) any { return &s.OutdoorCO2PPM }, low: 300, high: 1000},
+	{key: "outdoor_co2_doubt_ppm", at: func(s *Settings) any { return &s.OutdoorCO2DoubtPPM }, low: 0, high: 300},
+	{key: "co2_per_person_l_s", at: func(s *Settings) any { return &s.CO2PerPersonLs }, low: 0.0005, high: 0.02},
+	{key: "decay_start_above_ppm", at: func(s *Settings) any { return &s.DecayStartAbovePPM }, low: 50, high: 2000},
+	{key: "min_decay_events", at: func(s *Settings) any { return &s.MinDecayEvents }, low: 1, high: 1000},
+}
+
+// auto is how files write a clothing that follows the outdoor temperature.
+const auto = "auto"
+
+// Keys lists every key a site file may set, in the order of reports.
+func Keys() []string {
+	out := make([]string, len(fields))
+	for i := range fields {
+		out[i] = fields[i].key
+	}
+	return out
+}
+
+func fieldOf(key string) *field {
+	for i := range fields {
+		if fields[i].key == key {
+			return &fields[i]
+		}
+	}
+	return nil
+}
+
+// put reads text into the field of s. The error states the rule.
+func (f *field) put(s *Settings, text string) error {
+	if len(f.words) > 0 {
+		return f.putWord(s, text)
+	}
+	to, isFloat := f.at(s).(*float64)
+	if f.key == "clothing_clo" && text == auto {
+		*to = math.NaN()
+		return nil
+	}
+	v, err := strconv.ParseFloat(text, 64)
+	if err != nil || math.IsNaN(v) || math.IsInf(v, 0) {
+		if f.key == "clothing_clo" {
+			return fmt.Errorf("must be a number of clo or %s", auto)
+		}
+		return fmt.Errorf("must be a number")
+	}
+	if v < f.low || v > f.high {
+		return fmt.Errorf("must lie between %s and %s", number(f.low), number(f.high))
+	}
+	if isFloat {
+		*to = v
+		return nil
+	}
+	if v != math.Trunc(v) {
+		return fmt.Errorf("must be a whole number")
+	}
+	*f.at(s).(*int) = int(v)
+	return nil
+}
+
+func (f *field) putWord(s *Settings, text string) error {
+	for _, w := range f.words {
+		if w != text {
+			continue
+		}
+		switch to := f.at(s).(type) {
+		case *string:
+			*to = w
+		case *int:
+			*to, _ = strconv.Atoi(w)
+		}
+		return nil
+	}
+	return fmt.Errorf("must be one of %s", strings.Join(f.words, ", "))
+}
+
+// text is the inverse of put.
+func (f *field) text(s *Settings) string {
+	switch v := f.at(s).(type) {
+	case *float64:
+		if math.IsNaN(*v) {
+			return auto
+		}
+		return number(*v)
+	case *int:
+		return strconv.Itoa(*v)
+	case *string:
+		return *v
+	}
+	return ""
+}
+
+func number(v float64) string { return strconv.FormatFloat(v, 'g', -1, 64) }
