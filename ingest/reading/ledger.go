@@ -123,3 +123,18 @@ func Title(s *site.Site, point int) string {
 	}
 	return p.BelongsTo + " " + t.Words
 }
+
+// RejectedShare is the share of rejected among all readings; empty cells and
+// missing markers say that nothing was measured and do not count.
+func (l *Ledger) RejectedShare() float64 {
+	var all, rejected int64
+	for i := range l.Points {
+		p := &l.Points[i]
+		all += p.RowsRead - p.Counts[Missing]
+		rejected += p.Rejected() - p.Counts[Missing]
+	}
+	if all <= 0 {
+		return 0
+	}
+	return float64(rejected) / float64(all)
+}

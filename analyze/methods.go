@@ -1,0 +1,17 @@
+package analyze
+
+import (
+	"sashlog/analyze/comfort"
+	"sashlog/analyze/exceedance"
+	"sashlog/analyze/hours"
+	"sashlog/analyze/method"
+	"sashlog/analyze/potential"
+	"sashlog/analyze/running"
+)
+
+// Methods lists the documentation of every method in use, in the order the
+// analyses run; the report's appendix and the list of methods print from it.
+func Methods() []method.Doc {
+	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc}
+	return append(docs, comfort.Docs()...)
+}
