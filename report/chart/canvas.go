@@ -138,7 +138,7 @@ func (c *canvas) Fill(p vg.Path) { c.add(paint("fill", c.top().color), p) }
 // with a coordinate that is not a number is left out: it has no place.
 func (c *canvas) add(style string, p vg.Path) {
 	for _, s := range p {
-		if !finite(float64(s.Pos.X)) || !finite(float64(s.Pos.Y)) {
+		if !drawable(float64(s.Pos.X)) || !drawable(float64(s.Pos.Y)) {
 			return
 		}
 	}
@@ -213,7 +213,7 @@ func (c *canvas) FillString(f font.Face, pt vg.Point, text string) {
 // whole of a shortened name.
 func (c *canvas) fillText(f font.Face, pt vg.Point, text, full string) {
 	text = clean(text)
-	if strings.TrimSpace(text) == "" || f.Font.Size <= 0 || !finite(float64(pt.X)) || !finite(float64(pt.Y)) {
+	if strings.TrimSpace(text) == "" || f.Font.Size <= 0 || !drawable(float64(pt.X)) || !drawable(float64(pt.Y)) {
 		return
 	}
 	c.flush()
@@ -265,4 +265,6 @@ func (c *canvas) content() string {
 	return c.body.String()
 }
 
-func finite(v float64) bool { return !math.IsNaN(v) && !math.IsInf(v, 0) }
+// drawable tells whether a number has a place on paper: it is a number, and
+// not beyond a thousand million either way, where no quantity of a building lies.
+func drawable(v float64) bool { return math.Abs(v) <= 1e9 }

@@ -50,7 +50,7 @@ func CO2Duration(d CO2DurationData, o Options) (SVG, error) {
 				return "", f.errorf("zone %q: class %d is not known", z.Zone, c.State)
 			}
 			for _, q := range c.Points {
-				if finite(q.X) && finite(q.Y) && math.Abs(q.Y) < 1e6 {
+				if drawable(q.X) && drawable(q.Y) && math.Abs(q.Y) < 1e6 {
 					seen[c.State] = true
 					lo, hi = math.Min(lo, q.Y), math.Max(hi, q.Y)
 				}
@@ -61,7 +61,7 @@ func CO2Duration(d CO2DurationData, o Options) (SVG, error) {
 		return "", f.noData()
 	}
 	for _, l := range d.Limits {
-		if finite(l.Value) && l.Value < hi*2 {
+		if drawable(l.Value) && l.Value < hi*2 {
 			hi = math.Max(hi, l.Value)
 		}
 	}
@@ -126,7 +126,7 @@ func CO2Duration(d CO2DurationData, o Options) (SVG, error) {
 func anyKnown(curves []CO2Curve) bool {
 	for _, c := range curves {
 		for _, q := range c.Points {
-			if finite(q.X) && finite(q.Y) {
+			if drawable(q.X) && drawable(q.Y) {
 				return true
 			}
 		}

@@ -45,7 +45,7 @@ func strokeCurve(c draw.Canvas, p *plot.Plot, pts []XY, sty draw.LineStyle) {
 		run = nil
 	}
 	for _, q := range pts {
-		if !finite(q.X) || !finite(q.Y) {
+		if !drawable(q.X) || !drawable(q.Y) {
 			end()
 			continue
 		}

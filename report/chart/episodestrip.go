@@ -162,7 +162,7 @@ func (f frame) stripSteps(d EpisodeStripData) (int, error) {
 
 func anyFinite(v []float64) bool {
 	for _, x := range v {
-		if finite(x) {
+		if drawable(x) {
 			return true
 		}
 	}
@@ -216,7 +216,7 @@ func (s strip) temperature(cv *canvas) *plot.Plot {
 	lo, hi := math.Inf(1), math.Inf(-1)
 	for _, v := range [][]float64{s.d.IndoorC, s.d.OutdoorC, s.d.ComfortLowC, s.d.ComfortHighC} {
 		for _, x := range v {
-			if finite(x) && math.Abs(x) < 1000 {
+			if drawable(x) && math.Abs(x) < 1000 {
 				lo, hi = math.Min(lo, x), math.Max(hi, x)
 			}
 		}
@@ -245,7 +245,7 @@ func (s strip) band(cv *canvas) plot.Plotter {
 		}
 		cv.SetColor(inkBand)
 		for i := 0; i < s.n; {
-			if !finite(low[i]) || !finite(high[i]) {
+			if !drawable(low[i]) || !drawable(high[i]) {
 				i++
 				continue
 			}
@@ -277,12 +277,12 @@ func (s strip) co2(cv *canvas) *plot.Plot {
 	p := newPlot()
 	lo, hi := 400.0, 800.0
 	for _, x := range s.d.CO2PPM {
-		if finite(x) && math.Abs(x) < 1e6 {
+		if drawable(x) && math.Abs(x) < 1e6 {
 			lo, hi = math.Min(lo, x), math.Max(hi, x)
 		}
 	}
 	limit := s.d.CO2LimitPPM
-	if limit > 0 && finite(limit) {
+	if limit > 0 && limit < 1e5 {
 		hi = math.Max(hi, limit*1.15)
 	}
 	step := niceStep(lo, hi, 4)
@@ -290,7 +290,7 @@ func (s strip) co2(cv *canvas) *plot.Plot {
 	p.Y.Tick.Marker = niceTicks{want: 4}
 	p.Add(s.shade(cv), grid(false, true), s.upright(), plotterFunc(func(c draw.Canvas, p *plot.Plot) {
 		strokeCurve(c, p, s.series(s.d.CO2PPM), hline(inkText, lineData))
-		if limit > 0 && finite(limit) {
+		if limit > 0 && limit < 1e5 {
 			drawLevels(cv, c, p, []Limit{{limit, "limit " + number(limit, 0) + " ppm"}})
 		}
 	}))

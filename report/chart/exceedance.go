@@ -37,10 +37,10 @@ func Exceedance(d ExceedanceData, o Options) (SVG, error) {
 	zones, unknown := []ZoneExceedance{}, 0
 	warmMost, coolMost := 0.0, 0.0
 	for _, z := range d.Zones {
-		if z.TooWarm.Value < 0 || z.TooCool.Value < 0 {
-			return "", f.errorf("zone %q: %v too warm, %v too cool: must be 0 or more", z.Zone, z.TooWarm.Value, z.TooCool.Value)
+		if outside(z.TooWarm.Value) || outside(z.TooCool.Value) {
+			return "", f.errorf("zone %q: %v too warm, %v too cool: must be 0 to 1e9", z.Zone, z.TooWarm.Value, z.TooCool.Value)
 		}
-		if !finite(z.TooWarm.Value) && !finite(z.TooCool.Value) {
+		if !drawable(z.TooWarm.Value) && !drawable(z.TooCool.Value) {
 			unknown++
 			continue
 		}
@@ -91,10 +91,10 @@ func Exceedance(d ExceedanceData, o Options) (SVG, error) {
 		drawBars(cv, bars)
 		c.StrokeLine2(hline(inkText, lineAxis), fx(0), c.Min.Y, fx(0), c.Max.Y)
 		for i := from; i < to; i++ {
-			if b := zones[i].TooWarm; b.hasBounds() && finite(b.Value) {
+			if b := zones[i].TooWarm; b.hasBounds() && drawable(b.Value) {
 				whisker(cv, c, fx(b.Low), fx(b.High), y(i), h*0.35, inkText)
 			}
-			if b := zones[i].TooCool; b.hasBounds() && finite(b.Value) {
+			if b := zones[i].TooCool; b.hasBounds() && drawable(b.Value) {
 				whisker(cv, c, fx(-b.High), fx(-b.Low), y(i), h*0.35, inkText)
 			}
 		}
@@ -102,8 +102,11 @@ func Exceedance(d ExceedanceData, o Options) (SVG, error) {
 	return rows.render(f), nil
 }
 
+// outside tells of a known value that no zone can have.
+func outside(v float64) bool { return v < 0 || v > 1e9 }
+
 func known(v float64) float64 {
-	if !finite(v) {
+	if !drawable(v) {
 		return 0
 	}
 	return v

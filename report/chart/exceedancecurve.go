@@ -51,7 +51,7 @@ func ExceedanceCurve(d ExceedanceCurveData, o Options) (SVG, error) {
 		styles[i] = hline(ink, lineBold, dash...)
 		legend = append(legend, legendEntry{label: c.Name, line: ink, width: lineBold, dash: dash})
 		for _, q := range c.Points {
-			if finite(q.X) && finite(q.Y) && math.Abs(q.X) < 1000 {
+			if drawable(q.X) && drawable(q.Y) && math.Abs(q.X) < 1000 {
 				lo, hi, top = math.Min(lo, q.X), math.Max(hi, q.X), math.Max(top, q.Y)
 			}
 		}

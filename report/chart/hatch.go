@@ -58,6 +58,7 @@ func paleFill(c Class) bool { return luminance(c.Look().Fill) > 0.7 }
 // hatch draws the lines of a hatch inside a rectangle. Lines lie on one lattice
 // for the whole drawing, so that neighbouring bars join up.
 func hatch(cv *canvas, r vg.Rectangle, h Hatch) {
+	r = rect(clampLen(r.Min.X, 0, cv.w), clampLen(r.Min.Y, 0, cv.h), clampLen(r.Max.X, 0, cv.w), clampLen(r.Max.Y, 0, cv.h))
 	switch h {
 	case Rising:
 		slant(cv, r, 1, hatchPitch)

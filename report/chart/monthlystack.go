@@ -94,8 +94,8 @@ func (f frame) checkMonths(d MonthlyStackData) (tallest float64, used []Class, p
 		partial = partial || m.Partial
 		sum := 0.0
 		for k, h := range m.Hours {
-			if h < 0 || h > 1e9 {
-				return 0, nil, false, f.errorf("%s %d: %v hours of %q: must be 0 or more", m.Month, m.Year, h, d.Classes[k].Label())
+			if outside(h) {
+				return 0, nil, false, f.errorf("%s %d: %v hours of %q: must be 0 to 1e9", m.Month, m.Year, h, d.Classes[k].Label())
 			}
 			if h > 0 {
 				seen[k] = true

@@ -151,10 +151,10 @@ func (f frame) outdoorPoints(d OutdoorQuadrantsData) ([]OutdoorPoint, error) {
 func outdoorRange(p *plot.Plot, pts []OutdoorPoint, d OutdoorQuadrantsData) {
 	x0, x1, y0, y1 := math.Inf(1), math.Inf(-1), math.Inf(1), math.Inf(-1)
 	grow := func(x, y float64) {
-		if finite(x) {
+		if math.Abs(x) < 200 {
 			x0, x1 = math.Min(x0, x), math.Max(x1, x)
 		}
-		if finite(y) {
+		if math.Abs(y) < 1000 {
 			y0, y1 = math.Min(y0, y), math.Max(y1, y)
 		}
 	}
@@ -276,7 +276,7 @@ func drawOutdoorLimits(cv *canvas, c draw.Canvas, p *plot.Plot, d OutdoorQuadran
 	}
 	var curve []vg.Point
 	for _, q := range d.LimitCurve {
-		if finite(q.X) && finite(q.Y) {
+		if drawable(q.X) && drawable(q.Y) {
 			curve = append(curve, vg.Point{X: fx(q.X), Y: fy(q.Y)})
 		}
 	}
@@ -304,7 +304,7 @@ func drawOutdoorLimits(cv *canvas, c draw.Canvas, p *plot.Plot, d OutdoorQuadran
 	strong := bold(sty)
 	for j, row := range d.Hours {
 		for i, h := range row {
-			if !finite(h) {
+			if !drawable(h) {
 				continue
 			}
 			text := hoursText(h) + " h"

@@ -4,6 +4,8 @@ import (
 	"math"
 	"math/rand/v2"
 	"time"
+
+	"gonum.org/v1/plot/vg"
 )
 
 // The samples are invented and have the shape of real results: a year of a
@@ -227,4 +229,13 @@ func sampleRose() SpeedRoseData {
 		d.Sectors = append(d.Sectors, []float64{1.2 + a*0.4, 1 + a, a * 0.8, a * a * 0.35})
 	}
 	return d
+}
+
+func sampleLine(n int) []vg.Point {
+	var pts []vg.Point
+	for i := range n {
+		x := float64(i) / 4
+		pts = append(pts, vg.Point{X: vg.Length(x), Y: vg.Length(30 * math.Sin(x/40))})
+	}
+	return pts
 }

@@ -78,7 +78,7 @@ func (n niceTicks) Ticks(lo, hi float64) []plot.Tick {
 	}
 	var ticks []plot.Tick
 	decimals := int(math.Max(0, -math.Floor(math.Log10(step)+1e-9)))
-	for i := math.Ceil(lo/step - 1e-9); i*step <= hi+step*1e-9; i++ {
+	for i := math.Ceil(lo/step - 1e-9); i*step <= hi+step*1e-9 && len(ticks) < 100; i++ {
 		ticks = append(ticks, plot.Tick{Value: i * step, Label: number(i*step, decimals)})
 	}
 	return ticks
@@ -89,9 +89,11 @@ func ticksFor(width vg.Length, most int) niceTicks {
 	return niceTicks{want: max(1, min(most, int(width/30)))}
 }
 
+// niceStep is the least step of 1, 2 or 5 times a power of ten that makes at
+// most want steps; 0 when the span is too small or too great to label.
 func niceStep(lo, hi float64, want int) float64 {
 	span := hi - lo
-	if !(span > 0) || !finite(span) || want < 1 {
+	if !(span > 1e-6) || !drawable(span) || !drawable(lo) || want < 1 {
 		return 0
 	}
 	raw := span / float64(want)
@@ -116,7 +118,7 @@ func ceilNice(hi float64, want int) float64 {
 
 // number writes a figure with a comma between thousands and a true minus sign.
 func number(v float64, decimals int) string {
-	if !finite(v) {
+	if !drawable(v) {
 		return "unknown"
 	}
 	s := strconv.FormatFloat(math.Abs(v), 'f', decimals, 64)

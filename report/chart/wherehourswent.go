@@ -127,8 +127,8 @@ func (f frame) runningEnds(steps []HoursStep) ([]float64, error) {
 	remain, slack := steps[0].Hours, steps[0].Hours*0.005
 	ends := make([]float64, len(steps))
 	for i, s := range steps {
-		if !(s.Hours >= 0) || !finite(s.Hours) {
-			return nil, f.errorf("step %q: %v hours: must be 0 or more", s.Label, s.Hours)
+		if outside(s.Hours) || !drawable(s.Hours) {
+			return nil, f.errorf("step %q: %v hours: must be 0 to 1e9", s.Label, s.Hours)
 		}
 		if s.Total {
 			if math.Abs(s.Hours-remain) > slack {

@@ -45,7 +45,7 @@ func ZoneLeague(d ZoneLeagueData, o Options) (SVG, error) {
 				return "", f.errorf("zone %q: share %v: must be 0 to 1", z.Zone, v)
 			}
 		}
-		if !finite(z.Share.Value) && !z.Share.hasBounds() {
+		if !drawable(z.Share.Value) && !z.Share.hasBounds() {
 			empty++
 			continue
 		}
@@ -55,7 +55,7 @@ func ZoneLeague(d ZoneLeagueData, o Options) (SVG, error) {
 		return "", f.noData()
 	}
 	key := func(z ZoneShare) float64 {
-		if finite(z.Share.Value) {
+		if drawable(z.Share.Value) {
 			return z.Share.Value
 		}
 		return 2
@@ -68,7 +68,7 @@ func ZoneLeague(d ZoneLeagueData, o Options) (SVG, error) {
 		rows.xTitle = "achieved share of the hours that could have been open (%)"
 	}
 	rows.legend = []legendEntry{{label: "achieved share", class: AchievedOK, dot: true}, {label: "least and greatest it could be", line: inkText, width: 0.8}}
-	if finite(d.Building) {
+	if drawable(d.Building) {
 		rows.legend = append(rows.legend, legendEntry{label: "building " + number(d.Building*100, 0) + " %", line: inkFaint, width: 0.8, dash: []vg.Length{3, 2}})
 	}
 	if len(zones) > maxZoneRows {
@@ -89,7 +89,7 @@ func ZoneLeague(d ZoneLeagueData, o Options) (SVG, error) {
 	rows.right = max(rows.right, 8)
 	rows.draw = func(cv *canvas, c draw.Canvas, p *plot.Plot, from, to int, y func(int) vg.Length, h vg.Length) {
 		fx, _ := p.Transforms(&c)
-		if finite(d.Building) {
+		if drawable(d.Building) {
 			x := fx(d.Building * 100)
 			c.StrokeLine2(hline(inkFaint, 0.8, 3, 2), x, c.Min.Y, x, c.Max.Y)
 		}
@@ -100,7 +100,7 @@ func ZoneLeague(d ZoneLeagueData, o Options) (SVG, error) {
 		}
 		cv.SetColor(AchievedOK.Look().Fill)
 		for i := from; i < to; i++ {
-			if v := zones[i].Share.Value; finite(v) {
+			if v := zones[i].Share.Value; drawable(v) {
 				dot(cv, fx(v*100), y(i), 2.6)
 			}
 		}
@@ -113,10 +113,10 @@ func ZoneLeague(d ZoneLeagueData, o Options) (SVG, error) {
 
 func shareText(z ZoneShare) string {
 	t := "–"
-	if finite(z.Share.Value) {
+	if drawable(z.Share.Value) {
 		t = number(z.Share.Value*100, 0) + " %"
 	}
-	if finite(z.Hours) {
+	if drawable(z.Hours) {
 		t += " of " + hoursText(z.Hours) + " h"
 	}
 	return t

@@ -15,7 +15,7 @@ import (
 type Bounded struct{ Value, Low, High float64 }
 
 func (b Bounded) hasBounds() bool {
-	return finite(b.Low) && finite(b.High) && b.High-b.Low > 1e-9
+	return drawable(b.Low) && drawable(b.High) && b.High-b.Low > 1e-9
 }
 
 func (b Bounded) top() float64 {
