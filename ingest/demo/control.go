@@ -54,7 +54,7 @@ func (u *unit) command(d *day, minuteOfDay int, out *outdoorNow) {
 	worst := math.Inf(-1)
 	for _, r := range u.rooms {
 		coldest, warmest = math.Min(coldest, r.airC), math.Max(warmest, r.airC)
-		r.coolCall = r.airC > r.spec.coolOnC-pick(r.coolCall, 0.8, 0)
+		r.coolCall = r.airC > r.spec.coolOnC-pick(r.coolCall, 0.8, 0) && (!r.spec.meeting || r.people > 0)
 		r.heatCall = r.airC < 20.3+pick(r.heatCall, 0.8, 0)
 		anyHeat = anyHeat || r.heatCall
 		if r.coolCall {

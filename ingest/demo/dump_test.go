@@ -64,6 +64,13 @@ func report(t *testing.T, tr *Truth) {
 		c := float64(hi - lo)
 		fmt.Printf("  month %d: T %.1f (min %.1f max %.1f) dew %.1f G %.0f wind %.1f\n", m+1, s/c, dmin/nd, dmax/nd, dd/c, g/c, w/c)
 	}
+	var total, totalS float64
+	weight := map[string]float64{}
+	for _, z := range zoneSpecs {
+		if z.drive != noWindows || z.through != "" {
+			weight[z.id] = float64(z.people)
+		}
+	}
 	for zi := range tr.Zones {
 		z := &tr.Zones[zi]
 		var occ, suited, ach, both, mech, shut, warm, people, illt, hi1225 float64
@@ -144,11 +151,18 @@ func report(t *testing.T, tr *Truth) {
 				fmt.Printf(" %s %.2f", Reason(r), c/suited)
 			}
 		}
-		if zi == 0 {
-			fmt.Print(why, occ)
+		callers := map[string]int{}
+		for i := 0; i < n; i++ {
+			if z.Occupied[i] == 1 && suit[i] && z.CalledBy[i] >= 0 {
+				callers[tr.Zones[z.CalledBy[i]].ID]++
+			}
 		}
+		fmt.Print(" callers ", callers)
+		total += ach * weight[z.ID]
+		totalS += suited * weight[z.ID]
 		fmt.Println()
 	}
+	fmt.Printf("building achieved/suited %.3f\n", total/totalS)
 	for _, f := range tr.Faults {
 		fmt.Println(f)
 	}

@@ -230,7 +230,7 @@ func (s *simulation) minute(now int64, minuteOfDay int, d *day, out *outdoorNow,
 	for _, r := range s.rooms {
 		if r.through != nil {
 			r.share = r.through.share
-			r.throughLs = 260 * math.Sqrt(r.share)
+			r.throughLs = 380 * math.Sqrt(r.share)
 		}
 	}
 	for k := range s.links {

@@ -29,15 +29,15 @@ type weather struct {
 // The invented climate: means and swings. A mild, rather damp place with
 // modest summers.
 const (
-	seasonMeanC    = 9.6
-	seasonSwingC   = 6.6
+	seasonMeanC    = 11.4
+	seasonSwingC   = 6.3
 	warmestDay     = 203.0
 	synopticC      = 2.9
-	slowC          = 1.3
-	sunWarmsK      = 0.0145 // K per W/m² of global irradiance, before lag
-	nightCoolsK    = 1.7    // under a clear sky
+	slowC          = 1.0
+	sunWarmsK      = 0.021 // K per W/m² of global irradiance, before lag
+	nightCoolsK    = 3.4   // under a clear sky
 	diurnalLagS    = 4.3 * 3600
-	dewBelowMeanK  = 1.5
+	dewBelowMeanK  = 2.6
 	rainThreshold  = 0.88
 	clearTurbidity = 0.94
 )
@@ -91,8 +91,8 @@ func makeWeather(seed uint64, start int64, n int) *weather {
 		diurnal = target + (diurnal-target)*lag
 		wetness := 0.55*wet.next() + 0.55*shower.next() + 0.85*cl
 		rain, rate := 0.0, burst.next()
-		if cloud > rainThreshold && wetness > 1.05 {
-			rain = math.Exp(0.1+0.8*rate) * (1 + 0.3*season)
+		if cloud > rainThreshold && wetness > 1.42 {
+			rain = math.Exp(-0.05+0.8*rate) * (1 + 0.3*season)
 		}
 		swing := synopticC * (1 - 0.12*season)
 		temp := seasonMeanC + seasonSwingC*season + slowC*sl + swing*1.15*syn + diurnal - 0.9*fr*(0.5+0.5*season)

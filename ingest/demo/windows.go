@@ -100,7 +100,7 @@ func (r *room) decide(rng *rand.Rand, t int64, out *outdoorNow, l lamp, before i
 		p := r.habit * openChance(r.airC, out.tempC)
 		switch {
 		case l == lampGreen:
-			p *= 5.5
+			p *= 13
 		case l == lampRed:
 			p *= 0.12
 		case running:
