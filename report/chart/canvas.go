@@ -237,7 +237,22 @@ func (c *canvas) fillText(f font.Face, pt vg.Point, text, full string) {
 	if full = clean(full); full != "" {
 		full = "<title>" + html.EscapeString(full) + "</title>"
 	}
-	fmt.Fprintf(&c.body, "<text %s>%s%s</text>\n", place, full, html.EscapeString(text))
+	fmt.Fprintf(&c.body, "<text %s>%s%s</text>\n", place, full, lowered(text, float64(f.Font.Size)*st.m.scale()))
+}
+
+// lowered escapes text and sets a subscript two as a small lowered digit: older
+// releases of Liberation Sans have no glyph for it, and a browser would take
+// that one character from another font.
+func lowered(text string, size float64) string {
+	parts := strings.Split(html.EscapeString(text), "₂")
+	s, drop := parts[0], short(size*0.15)
+	for _, rest := range parts[1:] {
+		s += fmt.Sprintf(`<tspan dy="%s" font-size="%s">2</tspan>`, drop, short(size*0.68))
+		if rest != "" {
+			s += fmt.Sprintf(`<tspan dy="-%s">%s</tspan>`, drop, rest)
+		}
+	}
+	return s
 }
 
 // DrawImage places an image stretched over the rectangle, each pixel a sharp

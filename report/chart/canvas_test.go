@@ -101,11 +101,13 @@ func TestTextIsText(t *testing.T) {
 	cv := newCanvas(100, 100)
 	face := plot.DefaultTextHandler.Cache().Lookup(sans(8, inkText).Font, 8)
 	cv.FillString(face, vg.Point{X: 1, Y: 2}, "a < b & c")
+	cv.FillString(face, vg.Point{X: 1, Y: 22}, "CO₂ (ppm)")
 	cv.FillString(face, vg.Point{X: 1, Y: 12}, "next")
 	cv.Rotate(math.Pi / 2)
 	cv.FillString(face, vg.Point{X: 30, Y: -9}, "up")
 	want := `<g fill="#000000" font-size="8">
 <text x="1" y="98">a &lt; b &amp; c</text>
+<text x="1" y="78">CO<tspan dy="1.2" font-size="5.44">2</tspan><tspan dy="-1.2"> (ppm)</tspan></text>
 <text x="1" y="88">next</text>
 <text transform="translate(9 70)rotate(-90)">up</text>
 </g>
@@ -122,5 +124,19 @@ func TestImageFillsItsRectangle(t *testing.T) {
 	want := `<image x="10" y="50" width="50" height="30" preserveAspectRatio="none" image-rendering="pixelated" href="data:image/png;base64,`
 	if got := cv.content(); !strings.HasPrefix(got, want) {
 		t.Errorf("got %.200s", got)
+	}
+}
+
+// TestSwatch: the key in an HTML legend has the colours of the figures.
+func TestSwatch(t *testing.T) {
+	for c := None + 1; c < classCount; c++ {
+		look, svg := c.Look(), string(Swatch(c))
+		parse(t, SVG(svg))
+		if !strings.Contains(svg, `fill="`+look.Hex()+`"`) || !strings.Contains(svg, `aria-hidden="true"`) {
+			t.Errorf("%s: %s", look.Label, svg)
+		}
+		if hatched := strings.Contains(svg, `stroke="`+look.InkHex()+`"`); hatched != (look.Hatch != Solid) {
+			t.Errorf("%s: hatch drawn %v", look.Label, hatched)
+		}
 	}
 }

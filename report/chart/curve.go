@@ -14,7 +14,7 @@ import (
 func lineLook(c Class) (ink color.RGBA, dash []vg.Length) {
 	switch c {
 	case Open:
-		return rgb(0x0072B2), nil
+		return rgb(0x00508A), nil
 	case Mech:
 		return rgb(0xC77F00), []vg.Length{6, 2}
 	case Both:

@@ -109,7 +109,7 @@ func EpisodeStrip(d EpisodeStripData, o Options) (SVG, error) {
 		}
 		for _, p := range plots {
 			p.X.Min, p.X.Max = 0, s.hours
-			p.X.Tick.Marker = unlabelled{s.timeTicks()}
+			p.X.Tick.Marker = plot.ConstantTicks(nil) // only the lowest panel names the hours
 			p.X.Tick.Length = 0
 		}
 		last.X.Tick.Marker = s.timeTicks()
@@ -117,11 +117,6 @@ func EpisodeStrip(d EpisodeStripData, o Options) (SVG, error) {
 		alignSides(plots, boxes)
 	}), nil
 }
-
-// unlabelled keeps the places of ticks for the grid without their words.
-type unlabelled struct{ plot.Ticker }
-
-func (u unlabelled) Ticks(lo, hi float64) []plot.Tick { return nil }
 
 type strip struct {
 	d     EpisodeStripData

@@ -92,7 +92,7 @@ func TestDocument(t *testing.T) {
 				ids[id]++
 			}
 			switch e.name {
-			case "svg", "title", "desc", "path", "g", "text", "image":
+			case "svg", "title", "desc", "path", "g", "text", "tspan", "image":
 			default:
 				t.Errorf("%s: element %q", f.name, e.name)
 			}

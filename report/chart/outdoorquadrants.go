@@ -195,7 +195,10 @@ func dotRank(c Class) int {
 // drawDots draws square dots class by class; sorted by place, so that the
 // steps between them are short numbers.
 func drawDots(cv *canvas, c draw.Canvas, p *plot.Plot, pts []OutdoorPoint) {
-	const size = vg.Length(1.8)
+	size := vg.Length(1.8)
+	if len(pts) < 300 {
+		size = 3
+	}
 	fx, fy := p.Transforms(&c)
 	sorted := slices.Clone(pts)
 	slices.SortStableFunc(sorted, func(a, b OutdoorPoint) int {

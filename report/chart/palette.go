@@ -81,15 +81,16 @@ func rgb(v uint32) color.RGBA {
 func (c Class) Label() string { return c.Look().Label }
 
 // Look returns the house style of the class. Hues are those of Okabe and Ito,
-// "Color Universal Design" (2008), some lightened so that neighbours in a
-// stack differ in luminance; where they do not, a hatch tells them apart.
+// "Color Universal Design" (2008), some lightened or darkened so that
+// neighbours in a stack differ in luminance, and hours achieved from hours
+// missed even in a grey print of the carpet; where they do not, a hatch tells them apart.
 func (c Class) Look() Look {
 	black := rgb(0x3A3A3A)
 	switch c {
 	case Unoccupied:
 		return Look{rgb(0xFFFFFF), black, Solid, "not occupied"}
 	case AchievedOK:
-		return Look{rgb(0x0072B2), black, Solid, "ran open, comfortable and fresh"}
+		return Look{rgb(0x00508A), black, Solid, "ran open, comfortable and fresh"}
 	case AchievedWarm:
 		return Look{rgb(0xE69F00), black, Rising, "ran open, too warm"}
 	case AchievedCool:
@@ -111,7 +112,7 @@ func (c Class) Look() Look {
 	case Unjudged:
 		return Look{rgb(0xFFFFFF), rgb(0x707070), Rising, "cannot be assessed"}
 	case Open:
-		return Look{rgb(0x0072B2), black, Solid, "window open, plant off"}
+		return Look{rgb(0x00508A), black, Solid, "window open, plant off"}
 	case Mech:
 		return Look{rgb(0xE69F00), black, Solid, "mechanical"}
 	case Both:

@@ -113,6 +113,19 @@ func TestNeighboursDiffer(t *testing.T) {
 	}
 }
 
+// TestAchievedFromMissedInGrey: cells of the carpet carry no hatch, and the two
+// classes that matter most must differ in a grey print: by 15 in L*, a step of
+// a grey scale of seven.
+func TestAchievedFromMissedInGrey(t *testing.T) {
+	grey := func(c Class) float64 { return lab(c.Look().Fill, blindness["full colour vision"])[0] }
+	if d := math.Abs(grey(AchievedOK) - grey(Missed)); d < 15 {
+		t.Errorf("achieved and missed differ by %.1f in L*", d)
+	}
+	if d := math.Abs(grey(Open) - grey(Mech)); d < 15 {
+		t.Errorf("open and mechanical differ by %.1f in L*", d)
+	}
+}
+
 // TestCarpetColoursDiffer: cells of the carpet are too small for a hatch, so
 // there the fills alone must differ, by 9 under any colour vision.
 func TestCarpetColoursDiffer(t *testing.T) {

@@ -76,6 +76,9 @@ func parse(t *testing.T, svg SVG) parsed {
 				p.labels = append(p.labels, measure(t, e, inherited("font-size"), inherited("font-weight")))
 			}
 			stack = stack[:len(stack)-1]
+			if e.name == "tspan" {
+				stack[len(stack)-1].text += e.text
+			}
 			p.elements = append(p.elements, e)
 			if e.name == "svg" {
 				p.root = e.attr
