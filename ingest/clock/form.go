@@ -1,0 +1,40 @@
+package clock
+
+// Form is what kind of time a text looks like.
+type Form uint8
+
+// Forms.
+const (
+	FormNone  Form = iota
+	FormStamp      // date and time of day
+	FormDate       // a date alone
+	FormClock      // a time of day alone
+)
+
+// FormOf says what kind of time a text looks like, whatever the order of day
+// and month. Plain numbers are none.
+func FormOf(b []byte) Form {
+	b = trim(b)
+	if len(b) == 0 || serial(b) && len(b) != 12 && len(b) != 14 {
+		return FormNone
+	}
+	d, rest, ok := cutDate(skipWeekday(b))
+	if ok && (d.na == 4 || d.sep == 'm' || d.a <= 31 && d.b <= 31) {
+		if len(rest) == 0 {
+			return FormDate
+		}
+		if _, _, _, f := clockOf(rest); f == Fine || f == Abbreviation {
+			return FormStamp
+		}
+		if _, ok := compactClock(rest); ok {
+			return FormStamp
+		}
+		return FormNone
+	}
+	if len(b) >= 4 && b[0]-'0' <= 9 {
+		if _, _, _, f := clockOf(append([]byte{' '}, b...)); f == Fine && digits(b) <= 2 {
+			return FormClock
+		}
+	}
+	return FormNone
+}
