@@ -73,6 +73,9 @@ func (c *crowd) officeDay(zone int, d *day) {
 	case d.weekday == time.Tuesday || d.weekday == time.Wednesday:
 		comes = 0.85
 	}
+	if d.date.Month == time.December && d.date.Day > 20 {
+		comes *= 0.45
+	}
 	leave := 0.010
 	if d.date.Month == time.July || (d.date.Month == time.August && d.date.Day < 15) {
 		leave = 0.022

@@ -33,7 +33,6 @@ type room struct {
 	co2, ratio                            float64
 	meanAirC, meanCO2, meanRatio          float64 // over the last minute
 	linkW, linkCO2, linkRatio             float64 // from neighbours, this minute
-	linkLs                                float64
 	heatAirW, heatMassW, vapourKgS, co2Ls float64
 	openLs, leakLs, throughLs             float64
 	supplyLs, supplyC, supplyCO2          float64

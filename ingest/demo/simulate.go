@@ -225,9 +225,19 @@ func (s *simulation) minute(now int64, minuteOfDay int, d *day, out *outdoorNow,
 		}
 		r.openLs = r.openingFlowLs(out.tempC, out.windMS, out.windDeg)
 		r.leakLs = r.leakFlowLs(out.tempC, out.windMS)
-		r.linkW, r.linkCO2, r.linkRatio, r.linkLs, r.throughLs = 0, 0, 0, 0, 0
 	}
+	s.exchange(doors)
+	for k, r := range s.rooms {
+		r.advance(outside, minuteS)
+		acc.room(k, r, r.unit, s.reasonOf(r, out))
+	}
+}
+
+// exchange sets heat, CO2 and vapour that pass between rooms this minute: what
+// one loses the other gains.
+func (s *simulation) exchange(doors bool) {
 	for _, r := range s.rooms {
+		r.linkW, r.linkCO2, r.linkRatio, r.throughLs = 0, 0, 0, 0
 		if r.through != nil {
 			r.share = r.through.share
 			r.throughLs = 380 * math.Sqrt(r.share)
@@ -244,10 +254,6 @@ func (s *simulation) minute(now int64, minuteOfDay int, d *day, out *outdoorNow,
 		c, w := q*(l.a.co2-l.b.co2), q*(l.a.ratio-l.b.ratio)
 		l.a.linkCO2, l.b.linkCO2 = l.a.linkCO2-c, l.b.linkCO2+c
 		l.a.linkRatio, l.b.linkRatio = l.a.linkRatio-w, l.b.linkRatio+w
-	}
-	for k, r := range s.rooms {
-		r.advance(outside, minuteS)
-		acc.room(k, r, r.unit, s.reasonOf(r, out))
 	}
 }
 

@@ -64,10 +64,13 @@ func (r *room) decide(rng *rand.Rand, t int64, out *outdoorNow, l lamp, before i
 			switch {
 			case r.airingUntil > 0 && t >= r.airingUntil:
 				p = 1
-			case r.people == 0 && before > 0:
-				p = 0.55
-			case r.people == 0 && minuteOfDay >= 1065:
-				p = 0.30
+			case r.people == 0 && before > 0: // the last to leave
+				p = 0.4
+				if minuteOfDay >= 960 {
+					p = 0.85
+				}
+			case r.people == 0 && minuteOfDay >= 1065 && minuteOfDay < 1200:
+				p = 0.05 // a colleague or the cleaners; some stay open overnight
 			case r.people == 0:
 				p = 0
 			default:

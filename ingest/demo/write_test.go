@@ -1,6 +1,403 @@
 package demo
 
-import "testing"
+import (
+	"bytes"
+	"compress/gzip"
+	"encoding/csv"
+	"io"
+	"io/fs"
+	"maps"
+	"math"
+	"os"
+	"path/filepath"
+	"slices"
+	"strconv"
+	"strings"
+	"sync"
+	"testing"
+	"time"
+
+	"github.com/xuri/excelize/v2"
+	"go.yaml.in/yaml/v3"
+
+	"sashlog/configs/site"
+)
+
+// year is the default demo, written once for all tests.
+var year = sync.OnceValue(func() (y struct {
+	dir   string
+	truth Truth
+	err   error
+}) {
+	if y.dir, y.err = os.MkdirTemp("", "demo"); y.err == nil {
+		y.truth, y.err = Write(y.dir, Defaults())
+	}
+	return y
+})
+
+func TestMain(m *testing.M) {
+	code := m.Run()
+	if y := year(); y.dir != "" {
+		os.RemoveAll(y.dir)
+	}
+	os.Exit(code)
+}
+
+func wholeYear(t testing.TB) (string, *Truth) {
+	t.Helper()
+	y := year()
+	if y.err != nil {
+		t.Fatal(y.err)
+	}
+	return y.dir, &y.truth
+}
+
+// table reads a delimited log of the demo by the plainest means.
+func table(t testing.TB, dir, name string, comma rune) (head map[string]int, rows [][]string) {
+	t.Helper()
+	raw, err := os.ReadFile(filepath.Join(dir, name))
+	if err != nil {
+		t.Fatal(err)
+	}
+	var in io.Reader = bytes.NewReader(raw)
+	if strings.HasSuffix(name, ".gz") {
+		if in, err = gzip.NewReader(in); err != nil {
+			t.Fatal(err)
+		}
+	}
+	r := csv.NewReader(in)
+	r.Comma = comma
+	all, err := r.ReadAll()
+	if err != nil {
+		t.Fatalf("%s: %v", name, err)
+	}
+	head = map[string]int{}
+	for i, c := range all[0] {
+		head[c] = i
+	}
+	return head, all[1:]
+}
+
+func number(t testing.TB, s string) float64 {
+	t.Helper()
+	if s == "---" {
+		return math.NaN()
+	}
+	x, err := strconv.ParseFloat(strings.Replace(s, ",", ".", 1), 64)
+	if err != nil {
+		t.Fatal(err)
+	}
+	return x
+}
+
+func contents(t *testing.T, dir string) map[string]string {
+	t.Helper()
+	out := map[string]string{}
+	err := filepath.WalkDir(dir, func(path string, d fs.DirEntry, err error) error {
+		if err != nil || d.IsDir() {
+			return err
+		}
+		b, err := os.ReadFile(path)
+		rel, _ := filepath.Rel(dir, path)
+		out[filepath.ToSlash(rel)] = string(b)
+		return err
+	})
+	if err != nil {
+		t.Fatal(err)
+	}
+	return out
+}
+
+func TestSameSeedSameBytes(t *testing.T) {
+	o := Defaults()
+	o.From, o.Days, o.WriteTruth = site.Date{Year: 2025, Month: 3, Day: 24}, 10, true
+	write := func(o Options) map[string]string {
+		dir := t.TempDir()
+		if _, err := Write(dir, o); err != nil {
+			t.Fatal(err)
+		}
+		return contents(t, dir)
+	}
+	a, b := write(o), write(o)
+	for name := range a {
+		if a[name] != b[name] {
+			t.Errorf("%s differs between two runs of one seed", name)
+		}
+	}
+	o.Seed = 2
+	c := write(o)
+	if len(a) != len(c) {
+		t.Errorf("another seed writes %d files, want %d", len(c), len(a))
+	}
+	for _, name := range []string{"logs/weather.csv", "logs/floor1.csv", "logs/windows.csv", "logs/plant_status.csv", "typical.epw", "truth.csv.gz"} {
+		if a[name] == "" || a[name] == c[name] {
+			t.Errorf("%s is empty or the same for another seed", name)
+		}
+	}
+}
+
+func TestOptions(t *testing.T) {
+	for _, o := range []Options{{Days: -1}, {Zones: 17}, {Zones: -1}, {Days: 5000}, {From: site.Date{Year: 1800, Month: 1, Day: 1}}} {
+		if _, err := Simulate(o); err == nil {
+			t.Errorf("%+v was accepted", o)
+		}
+	}
+	for zones := 1; zones <= len(zoneSpecs); zones += 5 {
+		tr, err := Write(t.TempDir(), Options{Seed: 3, Days: 2, Zones: zones, Faults: true})
+		if err != nil {
+			t.Fatal(err)
+		}
+		if len(tr.Zones) != zones || tr.N != 2*288 || tr.Zone("L1.01") == nil || tr.Zone("nowhere") != nil {
+			t.Errorf("%d zones: got %d zones, %d steps", zones, len(tr.Zones), tr.N)
+		}
+	}
+}
+
+// The site file says what the logs hold: every log exists, every point's
+// column is there, every quantity and zone is known.
+func TestFolderFitsTogether(t *testing.T) {
+	dir, _ := wholeYear(t)
+	raw, err := os.ReadFile(filepath.Join(dir, "site.yaml"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	var s map[string]any
+	if err := yaml.Unmarshal(raw, &s); err != nil {
+		t.Fatal(err)
+	}
+	keys := slices.Sorted(maps.Keys(s))
+	want := []string{"criteria", "diary", "logs", "occupancy", "period", "plant", "points", "privacy", "site", "step_min", "tolerance", "weather", "zones"}
+	if !slices.Equal(keys, want) {
+		t.Errorf("site.yaml has %v, want %v", keys, want)
+	}
+	known := map[string]bool{"site": true}
+	for _, z := range s["zones"].([]any) {
+		known[z.(map[string]any)["id"].(string)] = true
+	}
+	if len(known) != 17 {
+		t.Errorf("%d zones, want 16", len(known)-1)
+	}
+	for _, p := range s["plant"].([]any) {
+		m := p.(map[string]any)
+		known[m["id"].(string)] = true
+		for _, z := range m["serves"].([]any) {
+			if !known[z.(string)] {
+				t.Errorf("%v serves unknown zone %v", m["id"], z)
+			}
+		}
+	}
+	columns := map[string]map[string]bool{}
+	for _, l := range s["logs"].([]any) {
+		m := l.(map[string]any)
+		has := map[string]bool{}
+		columns[m["name"].(string)] = has
+		path := m["path"].(string)
+		if strings.HasSuffix(path, ".xlsx") {
+			book, err := excelize.OpenFile(filepath.Join(dir, path))
+			if err != nil {
+				t.Fatal(err)
+			}
+			rows, err := book.GetRows(m["sheet"].(string))
+			if err != nil || len(rows) != 8761 {
+				t.Fatalf("%s: %d rows, %v", path, len(rows), err)
+			}
+			for _, c := range rows[0] {
+				has[c] = true
+			}
+			book.Close()
+			continue
+		}
+		comma, _ := m["separator"].(string)
+		head, rows := table(t, dir, path, rune(comma[0]))
+		if m["layout"] == "long" {
+			k := head[m["key_columns"].([]any)[0].(string)]
+			for _, r := range rows {
+				has[r[k]] = true
+			}
+		} else {
+			for c := range head {
+				has[c] = true
+			}
+		}
+		for _, key := range []string{"time_column", "date_column", "clock_column"} {
+			if c, ok := m[key].(string); ok {
+				if _, there := head[c]; !there {
+					t.Errorf("%s has no column %q", path, c)
+				}
+			}
+		}
+	}
+	head, rows := table(t, dir, "points.csv", ',')
+	for _, r := range rows {
+		source, column := r[head["source"]], r[head["column"]]
+		if !columns[source][column] {
+			t.Errorf("points.csv: %s has no column %q", source, column)
+		}
+		if q := site.Quantity(r[head["quantity"]]); true {
+			if _, ok := q.Trait(); !ok {
+				t.Errorf("points.csv: unknown quantity %q", q)
+			}
+		}
+		if !known[r[head["belongs_to"]]] {
+			t.Errorf("points.csv: %q belongs to nothing", r[head["belongs_to"]])
+		}
+	}
+	if len(rows) < 80 {
+		t.Errorf("points.csv has %d points", len(rows))
+	}
+	readme, _ := os.ReadFile(filepath.Join(dir, "README.txt"))
+	if !bytes.Contains(readme, []byte("does not exist")) || s["site"].(map[string]any)["invented"] != true {
+		t.Error("the folder does not say that the building is invented")
+	}
+	epw, _ := os.ReadFile(filepath.Join(dir, "typical.epw"))
+	lines := strings.Split(strings.TrimSpace(string(epw)), "\r\n")
+	if len(lines) != 8768 {
+		t.Fatalf("typical.epw has %d lines, want 8 and 8760", len(lines))
+	}
+	for _, l := range lines[8:] {
+		if n := strings.Count(l, ","); n != 34 {
+			t.Fatalf("typical.epw: %d fields, want 35: %s", n+1, l)
+		}
+	}
+}
+
+// Local clocks skip an hour in spring and repeat one in autumn; UTC and
+// standard time do neither.
+func TestClockChanges(t *testing.T) {
+	dir, tr := wholeYear(t)
+	if tr.N != 365*288 {
+		t.Errorf("%d steps, want %d", tr.N, 365*288)
+	}
+	count := func(name, prefix string) int {
+		raw, err := os.ReadFile(filepath.Join(dir, name))
+		if err != nil {
+			t.Fatal(err)
+		}
+		return bytes.Count(raw, []byte("\n"+prefix))
+	}
+	for _, c := range []struct {
+		file, prefix string
+		want         int
+	}{
+		{"logs/floor1.csv", "30.03.2025 01:", 12}, {"logs/floor1.csv", "30.03.2025 02:", 0}, {"logs/floor1.csv", "30.03.2025 03:", 12},
+		{"logs/floor1.csv", "26.10.2025 02:", 24}, {"logs/floor2.csv", "26.10.2025;02:", 24},
+		{"logs/logger206.csv", "2025-03-30 02:", 0}, {"logs/logger206.csv", "2025-10-26 02:", 24},
+		{"logs/weather.csv", "2025-03-30T01:", 12}, {"logs/weather.csv", "2025-10-26T00:", 12}, {"logs/weather.csv", "2024-12-01T", 288},
+		{"logs/plant_temps.csv", "2025-03-30 02:", 6}, {"logs/plant_temps.csv", "2025-10-26 02:", 6},
+	} {
+		if got := count(c.file, c.prefix); got != c.want {
+			t.Errorf("%s: %d rows begin %q, want %d", c.file, got, c.prefix, c.want)
+		}
+	}
+	loc, _ := time.LoadLocation(zoneName)
+	clock := zoneClock{loc: loc}
+	for i := 0; i < tr.N; i += 7 {
+		at := tr.StartUTC + int64(i)*tr.StepS
+		local := time.Unix(at, 0).In(loc)
+		if got, want := clock.minuteOfDay(at), local.Hour()*60+local.Minute(); got != want {
+			t.Fatalf("%v: minute %d, want %d", local, got, want)
+		}
+	}
+}
+
+// The window logs, read back by holding each record until the next, give the
+// truth's open shares.
+func TestWindowLogsTellTheTruth(t *testing.T) {
+	dir, tr := wholeYear(t)
+	loc, _ := time.LoadLocation(zoneName)
+	share := map[string][]float64{}
+	spec := map[string]struct {
+		zone  string
+		share float64
+	}{}
+	for _, z := range zoneSpecs {
+		if len(z.windows) > 0 {
+			share[z.id] = make([]float64, tr.N)
+		}
+		for _, w := range z.windows {
+			spec[w.key] = struct {
+				zone  string
+				share float64
+			}{z.id, w.share}
+		}
+	}
+	for _, f := range []struct {
+		name  string
+		comma rune
+	}{{"logs/windows.csv", ','}, {"logs/window_drives.csv", ';'}} {
+		_, rows := table(t, dir, f.name, f.comma)
+		last := map[string]struct {
+			at   int64
+			open float64
+		}{}
+		hold := func(key string, until int64) {
+			l, s := last[key], spec[key]
+			for at := l.at; at < until; {
+				i := (at - tr.StartUTC) / stepS
+				end := min(until, tr.StartUTC+(i+1)*stepS)
+				share[s.zone][i] += s.share * l.open * float64(end-at) / stepS
+				at = end
+			}
+		}
+		previous := int64(0)
+		for _, r := range rows {
+			local, err := time.ParseInLocation("2006-01-02 15:04:05", r[0], loc)
+			if err != nil {
+				t.Fatal(err)
+			}
+			at := local.Unix()
+			if at < previous-1 && previous-at <= 3600 { // second pass of the repeated hour
+				at += 3600
+			}
+			previous = at
+			open := 0.0
+			switch r[2] {
+			case "Open":
+				open = 1
+			case "Closed":
+			default:
+				open = number(t, r[2]) / 100
+			}
+			if _, ok := last[r[1]]; ok {
+				hold(r[1], at)
+			}
+			last[r[1]] = struct {
+				at   int64
+				open float64
+			}{at, open}
+		}
+		for key := range last {
+			hold(key, tr.StartUTC+int64(tr.N)*stepS)
+		}
+	}
+	for id, got := range share {
+		z := tr.Zone(id)
+		moved, worst := 0.0, 0.0
+		for i, x := range got {
+			if id == "L2.05" { // wired the wrong way round
+				x = 1 - x
+			}
+			worst = math.Max(worst, math.Abs(x-float64(z.OpenShare[i])))
+			moved += x
+		}
+		if worst > 1e-5 {
+			t.Errorf("%s: open share differs by %.3g from the truth", id, worst)
+		}
+		if moved == 0 {
+			t.Errorf("%s never opens, not even for cleaning", id)
+		}
+	}
+	// The reception opens on two days only.
+	open := map[int]bool{}
+	for i, x := range tr.Zone("L1.04").OpenShare {
+		if x > 0 {
+			open[i/288] = true
+		}
+	}
+	if len(open) != 2 {
+		t.Errorf("L1.04 opens on %d days, want 2", len(open))
+	}
+}
 
 func BenchmarkWriteYear(b *testing.B) {
 	for b.Loop() {
