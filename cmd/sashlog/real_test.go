@@ -283,4 +283,3 @@ func demoFacts(t *testing.T, dir string) map[string]zoneFacts {
 	}
 	return facts
 }
-
