@@ -38,10 +38,15 @@ type Options struct {
 	// Days is the length of the period; 0 means to the end of From's year.
 	Days int
 	// Zones is how many zones take part, in the order of the site file; 0
-	// means all (16).
+	// means all (16). The rest of the building is then not there.
 	Zones int
 	// Faults plants log faults. Defaults sets it.
 	Faults bool
+	// Declared describes the planted faults in the site file, points table and
+	// diary as a careful site would once it knew of them: unit, wiring, clock
+	// shift, dates of the frozen sensor. The logs stay as they are. The drift of
+	// the CO2 sensor and the undeclared day off stay undeclared.
+	Declared bool
 	// WriteTruth also writes truth.csv.gz.
 	WriteTruth bool
 }

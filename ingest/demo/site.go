@@ -100,7 +100,7 @@ func (b *building) logLines() []string {
 		out = append(out, fmt.Sprintf(`name: floor%d, path: %s, layout: wide, %s, separator: ";", decimal: ",", date_order: dmy, clock: local`, floor, floorFile(floor), times))
 	}
 	if b.hasZone(ownLoggerZone) {
-		out = append(out, `name: logger206, path: logs/logger206.csv, layout: wide, time_column: datetime, separator: ",", decimal: ".", date_order: ymd, clock: local`)
+		out = append(out, `name: logger206, path: logs/logger206.csv, layout: wide, time_column: datetime, separator: ",", decimal: ".", date_order: ymd, clock: `+b.ownClock())
 	}
 	out = append(out,
 		`name: windows, path: logs/windows.csv, layout: long, time_column: Time, key_columns: [Contact], value_columns: [State], separator: ",", date_order: ymd, clock: local`)
@@ -116,6 +116,24 @@ func (b *building) logLines() []string {
 	return append(out,
 		`name: power, path: logs/power.xlsx, layout: wide, sheet: Power, time_column: Hour, clock: standard`,
 		`name: weather, path: logs/weather.csv, layout: wide, time_column: time_utc, separator: ",", decimal: ".", date_order: ymd, clock: utc`)
+}
+
+// ownClock is how the site file describes the own logger's clock.
+func (b *building) ownClock() string {
+	for _, f := range b.truth.Faults {
+		if f.Kind == FaultClock && b.options.Declared {
+			from, last := time.Unix(f.FromUTC, 0).In(b.loc), time.Unix(f.ToUTC-1, 0).In(b.loc)
+			return fmt.Sprintf("{is: local, shifts: [{from: %s, to: %s, shift_min: -60}]}", from.Format(time.DateOnly), last.Format(time.DateOnly))
+		}
+	}
+	return "local"
+}
+
+// declared reports whether the site's description knows of a zone's fault.
+func (b *building) declared(kind FaultKind, zone string) bool {
+	return b.options.Declared && slices.ContainsFunc(b.truth.Faults, func(f Fault) bool {
+		return f.Kind == kind && slices.Contains(f.Zones, zone)
+	})
 }
 
 func (b *building) hasZone(id string) bool {
@@ -141,6 +159,9 @@ func (b *building) writePoints(dir string) error {
 				if c.kind == 'p' {
 					quantity = "people"
 				}
+				if c.kind == 't' && b.declared(FaultFahrenheit, b.zones[c.zone].id) {
+					unit = "degF"
+				}
 				row(fmt.Sprintf("floor%d", floor), c.name, b.zones[c.zone].id, quantity, unit, "sampled", "start", "", "", "", placement, "", "")
 			}
 		}
@@ -157,9 +178,13 @@ func (b *building) writePoints(dir string) error {
 				}
 				if win.position {
 					row("window_drives", win.key, b.zones[i].id, "window_opening", "%", "cov", "", "25h", "", "", "", share, "")
-				} else {
-					row("windows", win.key, b.zones[i].id, "window", "", "cov", "", "25h", "Open", "Open=open;Closed=shut", "", share, "")
+					continue
 				}
+				open, words := "Open", "Open=open;Closed=shut"
+				if b.declared(FaultInverted, b.zones[i].id) {
+					open, words = "Closed", "Open=shut;Closed=open"
+				}
+				row("windows", win.key, b.zones[i].id, "window", "", "cov", "", "25h", open, words, "", share, "")
 			}
 		}
 		for _, u := range b.units {
@@ -182,55 +207,6 @@ func (b *building) writePoints(dir string) error {
 		for _, c := range [][3]string{{"temp_c", "outdoor_temp", "degC"}, {"rh_pct", "outdoor_humidity", "%"}, {"wind_ms", "wind_speed", "m/s"},
 			{"wind_dir_deg", "wind_direction", "deg"}, {"rain_mm_h", "rain", "mm/h"}, {"global_wm2", "solar", "W/m2"}} {
 			row("weather", c[0], "site", c[1], c[2], "sampled", "end", "", "", "", "", "", "roof station")
-		}
-		cw.Flush()
-		return cw.Error()
-	})
-}
-
-// writeDiary writes events.csv: what a site would have noted.
-func (b *building) writeDiary(dir string) error {
-	return writeFile(dir, "events.csv", func(w *bufio.Writer) error {
-		cw := csv.NewWriter(w)
-		cw.Write([]string{"from", "to", "zones", "kind", "note"})
-		note := func(from, to time.Time, zones []string, kind, text string) {
-			if to.Before(b.from.Start(b.loc)) || from.After(b.to.Start(b.loc)) {
-				return
-			}
-			cw.Write([]string{from.Format("2006-01-02"), to.Format("2006-01-02"), strings.Join(zones, ";"), kind, text})
-		}
-		on := func(m time.Month, d int) time.Time { return time.Date(b.from.Year, m, d, 0, 0, 0, 0, b.loc) }
-		note(on(6, 10), on(6, 10), nil, "setting", "night purge of the second floor switched on for the summer (AHU-3)")
-		note(on(9, 7), on(9, 7), nil, "setting", "night purge switched off (AHU-3)")
-		for _, m := range []time.Month{4, 10} {
-			d := on(m, 1)
-			for d.Weekday() != time.Thursday {
-				d = d.AddDate(0, 0, 1)
-			}
-			if b.hasZone("L1.04") {
-				note(d, d, []string{"L1.04"}, "works", "window cleaning, reception")
-			}
-		}
-		for i := range b.truth.Faults {
-			f := &b.truth.Faults[i]
-			if !f.InDiary {
-				continue
-			}
-			from, last := time.Unix(f.FromUTC, 0).In(b.loc), time.Unix(f.ToUTC-1, 0).In(b.loc)
-			end := time.Unix(f.ToUTC, 0).In(b.loc)
-			switch f.Kind {
-			case FaultMissing:
-				note(from, last, f.Zones, "other", "trend storage of the ground floor full; rows lost until it was emptied")
-			case FaultClock:
-				note(from, from, f.Zones, "other", "battery of the tenant's logger changed")
-				if f.ToUTC < b.truth.StartUTC+int64(b.truth.N)*stepS {
-					note(last, last, f.Zones, "other", "tenant's logger found one hour ahead since the battery change; set right")
-				}
-			case FaultCO2Drift:
-				if f.ToUTC < b.truth.StartUTC+int64(b.truth.N)*stepS {
-					note(end, end, f.Zones, "sensor_swap", "CO2 sensor changed, the old one read too high")
-				}
-			}
 		}
 		cw.Flush()
 		return cw.Error()

@@ -23,33 +23,33 @@ import (
 	"sashlog/configs/site"
 )
 
-// year is the default demo, written once for all tests.
-var year = sync.OnceValue(func() (y struct {
-	dir   string
-	truth Truth
-	err   error
-}) {
-	if y.dir, y.err = os.MkdirTemp("", "demo"); y.err == nil {
-		y.truth, y.err = Write(y.dir, Defaults())
-	}
-	return y
-})
+var (
+	yearOnce  sync.Once
+	yearDir   string
+	yearTruth Truth
+	yearErr   error
+)
 
 func TestMain(m *testing.M) {
 	code := m.Run()
-	if y := year(); y.dir != "" {
-		os.RemoveAll(y.dir)
+	if yearDir != "" {
+		os.RemoveAll(yearDir)
 	}
 	os.Exit(code)
 }
 
+// wholeYear is the default demo, written once for all tests.
 func wholeYear(t testing.TB) (string, *Truth) {
 	t.Helper()
-	y := year()
-	if y.err != nil {
-		t.Fatal(y.err)
+	yearOnce.Do(func() {
+		if yearDir, yearErr = os.MkdirTemp("", "demo"); yearErr == nil {
+			yearTruth, yearErr = Write(yearDir, Defaults())
+		}
+	})
+	if yearErr != nil {
+		t.Fatal(yearErr)
 	}
-	return y.dir, &y.truth
+	return yearDir, &yearTruth
 }
 
 // table reads a delimited log of the demo by the plainest means.
@@ -149,6 +149,56 @@ func TestOptions(t *testing.T) {
 		}
 		if len(tr.Zones) != zones || tr.N != 2*288 || tr.Zone("L1.01") == nil || tr.Zone("nowhere") != nil {
 			t.Errorf("%d zones: got %d zones, %d steps", zones, len(tr.Zones), tr.N)
+		}
+	}
+}
+
+// A folder that cannot be made is an error, not a panic.
+func TestUnwritableFolder(t *testing.T) {
+	path := filepath.Join(t.TempDir(), "file")
+	if err := os.WriteFile(path, nil, 0o666); err != nil {
+		t.Fatal(err)
+	}
+	if _, err := Write(path, Options{Days: 1, Zones: 1}); err == nil {
+		t.Error("wrote into a file")
+	}
+}
+
+// Declared faults change the description of the site, never its logs.
+func TestDeclaredFaults(t *testing.T) {
+	o := Defaults()
+	o.From, o.Days = site.Date{Year: 2025, Month: 5, Day: 1}, 75
+	plain, told := t.TempDir(), t.TempDir()
+	if _, err := Write(plain, o); err != nil {
+		t.Fatal(err)
+	}
+	o.Declared = true
+	if _, err := Write(told, o); err != nil {
+		t.Fatal(err)
+	}
+	a, b := contents(t, plain), contents(t, told)
+	for name := range a {
+		if strings.HasPrefix(name, "logs/") && a[name] != b[name] {
+			t.Errorf("%s differs", name)
+		}
+	}
+	for name, text := range map[string]string{
+		"points.csv": "F1_R01_TMP [°C],L1.01,air_temp,degF", "site.yaml": "shifts: [{from: 2025-06-10, to: 2025-07-09, shift_min: -60}]",
+		"events.csv": "2025-05-12,2025-06-07,L1.02,fault,",
+	} {
+		if strings.Contains(a[name], text) || !strings.Contains(b[name], text) {
+			t.Errorf("%s: %q should stand only in the declared folder", name, text)
+		}
+	}
+	if !strings.Contains(b["points.csv"], "F2-R05-W1,L2.05,window,,cov,,25h,Closed,Open=shut;Closed=open") {
+		t.Error("the inverted contact is not declared")
+	}
+	for _, line := range strings.Split(strings.TrimSpace(b["events.csv"]), "\n")[1:] {
+		kind := site.EventKind(strings.Split(line, ",")[3])
+		switch kind {
+		case site.EventWorks, site.EventSetting, site.EventSensorSwap, site.EventFault, site.EventOther:
+		default:
+			t.Errorf("events.csv: unknown kind %q", kind)
 		}
 	}
 }
