@@ -180,11 +180,11 @@ func (b *building) writePoints(dir string) error {
 					row("window_drives", win.key, b.zones[i].id, "window_opening", "%", "cov", "", "25h", "", "", "", share, "")
 					continue
 				}
-				open, words := "Open", "Open=open;Closed=shut"
+				words := "Open=open;Closed=shut"
 				if b.declared(FaultInverted, b.zones[i].id) {
-					open, words = "Closed", "Open=shut;Closed=open"
+					words = "Open=shut;Closed=open"
 				}
-				row("windows", win.key, b.zones[i].id, "window", "", "cov", "", "25h", open, words, "", share, "")
+				row("windows", win.key, b.zones[i].id, "window", "", "cov", "", "25h", "", words, "", share, "")
 			}
 		}
 		for _, u := range b.units {
@@ -194,14 +194,14 @@ func (b *building) writePoints(dir string) error {
 			}
 			row("plant_status", u.spec.id, u.spec.id, "plant_status", "", "cov", "", "25h", "", words, "", "", "")
 			if u.spec.kind == airHandler {
-				row("plant_status", u.spec.id+" windows", u.spec.id, "mode_signal", "", "cov", "", "25h", "Released", "Released=on;Locked=off", "", "", "signal lamp and release of the drives")
+				row("plant_status", u.spec.id+" windows", u.spec.id, "mode_signal", "", "cov", "", "25h", "", "Released=on;Locked=off", "", "", "signal lamp and release of the drives")
 			}
 			row("plant_temps", u.spec.id+" SUP", u.spec.id, "supply_air_temp", "degC", "sampled", "instant", "", "", "", "", "", "")
 			row("power", u.spec.id+" kW", u.spec.id, "electric_power", "kW", "sampled", "start", "", "", "", "", "", "")
 		}
 		for _, id := range presenceZones {
 			if b.hasZone(id) {
-				row("presence", "PIR "+id, id, "presence", "", "cov", "", "25h", "Occupied", "Occupied=on;Vacant=off", "", "", "")
+				row("presence", "PIR "+id, id, "presence", "", "cov", "", "25h", "", "Occupied=on;Vacant=off", "", "", "")
 			}
 		}
 		for _, c := range [][3]string{{"temp_c", "outdoor_temp", "degC"}, {"rh_pct", "outdoor_humidity", "%"}, {"wind_ms", "wind_speed", "m/s"},

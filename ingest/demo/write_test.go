@@ -190,7 +190,7 @@ func TestDeclaredFaults(t *testing.T) {
 			t.Errorf("%s: %q should stand only in the declared folder", name, text)
 		}
 	}
-	if !strings.Contains(b["points.csv"], "F2-R05-W1,L2.05,window,,cov,,25h,Closed,Open=shut;Closed=open") {
+	if !strings.Contains(b["points.csv"], "F2-R05-W1,L2.05,window,,cov,,25h,,Open=shut;Closed=open") {
 		t.Error("the inverted contact is not declared")
 	}
 	for _, line := range strings.Split(strings.TrimSpace(b["events.csv"]), "\n")[1:] {
