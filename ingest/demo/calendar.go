@@ -1,6 +1,7 @@
 package demo
 
 import (
+	"math"
 	"time"
 
 	"sashlog/configs/site"
@@ -84,4 +85,31 @@ func calendarOf(from, to site.Date, loc *time.Location) []day {
 		})
 	}
 	return out
+}
+
+// zoneClock turns instants into local clock time, quickly for instants in
+// rising order.
+type zoneClock struct {
+	loc        *time.Location
+	offsetS    int64
+	validUntil int64
+	known      bool
+}
+
+// offset returns local time less UTC in seconds.
+func (c *zoneClock) offset(t int64) int64 {
+	if !c.known || t >= c.validUntil {
+		at := time.Unix(t, 0).In(c.loc)
+		_, off := at.Zone()
+		_, end := at.ZoneBounds()
+		c.offsetS, c.validUntil, c.known = int64(off), math.MaxInt64, true
+		if !end.IsZero() {
+			c.validUntil = end.Unix()
+		}
+	}
+	return c.offsetS
+}
+
+func (c *zoneClock) minuteOfDay(t int64) int {
+	return int((t + c.offset(t)) % 86400 / 60)
 }

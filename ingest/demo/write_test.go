@@ -153,6 +153,25 @@ func TestOptions(t *testing.T) {
 	}
 }
 
+// Periods across the turn of the year and over a leap day keep their calendar.
+func TestOddPeriods(t *testing.T) {
+	tr, err := Simulate(Options{Seed: 5, From: site.Date{Year: 2023, Month: 12, Day: 20}, Days: 75, Zones: 2, Faults: true})
+	if err != nil {
+		t.Fatal(err)
+	}
+	occupied := 0
+	for _, o := range tr.Zones[0].Occupied {
+		occupied += int(o)
+	}
+	// 2023-12-20 to 2024-03-03: 53 weekdays less 25, 26 December, 1, 2 January.
+	if tr.N != 75*288 || occupied != 49*120 {
+		t.Errorf("%d steps, %d occupied, want %d and %d", tr.N, occupied, 75*288, 49*120)
+	}
+	if tr.Outdoor.Lead != 30*288 || len(tr.Outdoor.TempC) != tr.N+tr.Outdoor.Lead {
+		t.Errorf("lead-in of %d steps", tr.Outdoor.Lead)
+	}
+}
+
 // A folder that cannot be made is an error, not a panic.
 func TestUnwritableFolder(t *testing.T) {
 	path := filepath.Join(t.TempDir(), "file")
