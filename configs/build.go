@@ -108,6 +108,9 @@ func (b *builder) missing(path, hint string) {
 	}
 	where := "in the site file"
 	if p := parent(path); p != "" {
+		if b.tree.reported(p) && b.tree.kinds[p] != "a group of keys" {
+			return // not a group of keys at all
+		}
 		where = "in " + p
 	}
 	b.tree.at(path, hint, "%s is missing %s", last(path), where)

@@ -7,6 +7,7 @@ import (
 	"fmt"
 	"reflect"
 	"sort"
+	"strconv"
 	"strings"
 
 	"github.com/go-viper/mapstructure/v2"
@@ -14,9 +15,8 @@ import (
 )
 
 // environment lists the settings that may come from the environment instead
-// of the file. Secrets do not belong here: they never enter a site file.
+// of the file; Loaded says which did. Secrets and privacy do not belong here.
 var environment = []struct{ path, name string }{
-	{"privacy", "SASHLOG_PRIVACY"},
 	{"step_min", "SASHLOG_STEP_MIN"},
 	{"tolerance" + delim + "rejected_share", "SASHLOG_REJECTED_SHARE"},
 	{"criteria" + delim + "preset", "SASHLOG_CRITERIA_PRESET"},
@@ -62,7 +62,8 @@ func decode(t *tree, text []byte, env func(string) string) rawSite {
 				val = json.Number(s)
 			}
 			v.Set(e.path, val)
-			t.written[strings.ReplaceAll(e.path, delim, ".")] = s
+			path := strings.ReplaceAll(e.path, delim, ".")
+			t.written[path], t.fromEnv[path] = s, e.name
 		}
 	}
 	err := v.Unmarshal(&raw, func(c *mapstructure.DecoderConfig) {
@@ -101,8 +102,8 @@ func (t *tree) typeErrors(err error) {
 		}
 		return
 	}
-	var de *mapstructure.DecodeError
-	if !errors.As(err, &de) {
+	de, ok := err.(*mapstructure.DecodeError)
+	if !ok {
 		if inner := errors.Unwrap(err); inner != nil {
 			t.typeErrors(inner)
 			return
@@ -110,22 +111,22 @@ func (t *tree) typeErrors(err error) {
 		t.addAt(1, 1, "cannot be understood: "+err.Error(), "")
 		return
 	}
-	if inner, ok := de.Unwrap().(interface{ Unwrap() []error }); ok {
-		for _, e := range inner.Unwrap() {
-			t.typeErrors(e)
-		}
-		return
-	}
 	path := strings.ToLower(strings.ReplaceAll(de.Name(), delim, "."))
 	path = strings.ReplaceAll(path, ".(word)", "")
 	want := wanted(path)
-	got := "something else"
-	if s, ok := t.written[path]; ok {
-		got = fmt.Sprintf("%q", s)
-	} else if t.has(path) {
-		got = "a list or a group of keys"
+	got, hint := t.kinds[path], ""
+	if text, ok := t.written[path]; ok {
+		got = fmt.Sprintf("%q", text)
+		if _, err := strconv.ParseFloat(text, 64); err == nil && want == "must be a number" {
+			hint = "remove the quotes"
+		}
 	}
-	t.at(path, "", "%s is %s: %s", last(path), got, want)
+	if want == "must be a list" && t.kinds[path] != "" {
+		hint = "begin each entry with a dash"
+	}
+	if !t.reported(path) {
+		t.at(path, hint, "%s is %s: %s", last(path), got, want)
+	}
 }
 
 // wanted says what kind of value a path takes.

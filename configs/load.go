@@ -21,6 +21,7 @@ import (
 	"os"
 	"path/filepath"
 	"slices"
+	"strings"
 
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
@@ -38,6 +39,8 @@ type Loaded struct {
 	Criteria criteria.Settings
 	// Files are the files read, the site file first.
 	Files []FileSum
+	// FromEnvironment lists settings the environment replaced, as NAME=value.
+	FromEnvironment []string
 	// Warnings do not stop an audit but limit what it can say.
 	Warnings Problems
 }
@@ -72,8 +75,7 @@ const (
 
 // Load reads the site file at path with its points table and diary. env looks
 // up the environment (nil means none); the few settings it may replace are
-// SASHLOG_PRIVACY, SASHLOG_STEP_MIN, SASHLOG_REJECTED_SHARE and
-// SASHLOG_CRITERIA_PRESET. The error, if any, is of type Problems and holds
+// SASHLOG_STEP_MIN, SASHLOG_REJECTED_SHARE and SASHLOG_CRITERIA_PRESET. The error, if any, is of type Problems and holds
 // every mistake found.
 func Load(path string, env func(string) string) (*Loaded, error) {
 	file := filepath.ToSlash(path)
@@ -102,6 +104,11 @@ func build(t *tree, text []byte, env func(string) string) *builder {
 	t.check()
 	b := &builder{tree: t, out: &Loaded{Site: &site.Site{}}}
 	b.raw = decode(t, text, env)
+	for _, e := range environment {
+		if path := strings.ReplaceAll(e.path, delim, "."); t.fromEnv[path] != "" {
+			b.out.FromEnvironment = append(b.out.FromEnvironment, e.name+"="+t.written[path])
+		}
+	}
 	b.head()
 	b.occupancy()
 	b.zones()

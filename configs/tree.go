@@ -26,8 +26,11 @@ type tree struct {
 	file   string
 	root   *yaml.Node
 	places map[string]place
-	// written holds the text of single values, for messages.
-	written  map[string]string
+	// written holds the text of single values, for messages; kinds says what
+	// else stands at a path: a list or a group of keys.
+	written, kinds map[string]string
+	// fromEnv names the environment variable that set a path.
+	fromEnv  map[string]string
 	problems Problems
 }
 
@@ -44,7 +47,8 @@ func parse(file string, text []byte) (*tree, *Problem) {
 		}
 		return nil, notYAML(file, err)
 	}
-	t := &tree{file: file, root: &doc, places: map[string]place{}, written: map[string]string{}}
+	t := &tree{file: file, root: &doc, places: map[string]place{},
+		written: map[string]string{}, kinds: map[string]string{}, fromEnv: map[string]string{}}
 	if len(doc.Content) != 1 || doc.Content[0].Kind != yaml.MappingNode {
 		return nil, &Problem{File: file, Line: max(doc.Line, 1), Col: max(doc.Column, 1),
 			Text: "the site file must be a list of keys with values", Hint: "start from the commented sample"}
@@ -79,6 +83,9 @@ func (t *tree) at(path, hint, format string, args ...any) {
 }
 
 func (t *tree) problem(path, hint, format string, args ...any) Problem {
+	if name := t.fromEnv[path]; name != "" {
+		return Problem{File: "environment variable " + name, Text: fmt.Sprintf(format, args...), Hint: hint}
+	}
 	line, col := t.where(path)
 	return Problem{t.file, line, col, fmt.Sprintf(format, args...), hint}
 }
@@ -121,8 +128,10 @@ func (t *tree) walk(n *yaml.Node, path string, as reflect.Type) {
 	}
 	switch n.Kind {
 	case yaml.MappingNode:
+		t.kinds[path] = "a group of keys"
 		t.walkMap(n, path, as)
 	case yaml.SequenceNode:
+		t.kinds[path] = "a list"
 		var of reflect.Type
 		if as != nil && as.Kind() == reflect.Slice {
 			of = as.Elem()
@@ -237,8 +246,9 @@ func plain(n *yaml.Node) any {
 	case yaml.MappingNode:
 		m := map[string]any{}
 		for i := 0; i+1 < len(n.Content); i += 2 {
-			if n.Content[i].Kind == yaml.ScalarNode {
-				m[n.Content[i].Value] = plain(n.Content[i+1])
+			low := strings.ToLower(n.Content[i].Value)
+			if _, twice := m[low]; n.Content[i].Kind == yaml.ScalarNode && !twice {
+				m[low] = plain(n.Content[i+1])
 			}
 		}
 		return m

@@ -68,6 +68,11 @@ func (b *builder) id(path, id string, seen map[string]string) {
 
 // hasTimes reports a zone whose occupied time nothing establishes.
 func (b *builder) hasTimes(path string, z *site.Zone) {
+	for _, p := range []string{path, path + ".occupied", "occupancy", "occupancy.source", "occupancy.times"} {
+		if b.tree.reported(p) {
+			return
+		}
+	}
 	o := &b.out.Site.Occupancy
 	source := z.OccupancySource
 	if source == "" {
