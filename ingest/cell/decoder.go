@@ -59,6 +59,9 @@ func NewDecoder(point int, p *site.Point, style Style, markers []string) *Decode
 	d.extra = map[string]bool{}
 	for _, m := range markers {
 		d.extra[Fold(m)] = true
+		if v, rest, ok := style.Number([]byte(m)); ok && len(rest) == 0 {
+			d.extra[strconv.FormatFloat(v, 'f', -1, 64)] = true
+		}
 	}
 	switch t.Kind {
 	case site.Switch, site.Status:

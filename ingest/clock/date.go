@@ -199,11 +199,7 @@ func (p *Parser) number(b []byte) (st Stamp, f Fault, isNumber bool) {
 	case 8:
 		return st, Fine, false
 	case 10, 13, 16, 19:
-		v := atoi(b[:n])
-		for k := n; k > 10; k -= 3 {
-			v /= 1000
-		}
-		return Stamp{WallS: v, HasOffset: true}, Fine, true
+		return Stamp{WallS: atoi(b[:10]), HasOffset: true}, Fine, true
 	case 12, 14:
 		d, rest, _ := cutDate8(b)
 		day, f := d.day(site.YMD)

@@ -16,6 +16,7 @@ import (
 	"sashlog/ingest/clock"
 	"sashlog/ingest/logfile"
 	"sashlog/ingest/reading"
+	"sashlog/ingest/sheet"
 	"sashlog/ingest/tabular"
 )
 
@@ -185,7 +186,7 @@ func (o *opener) open(log *site.Log, f *logfile.File, points []int) (looked, err
 	case logfile.Parquet:
 		return nil, errors.New("Parquet files cannot be read as a log yet; export CSV or XLSX")
 	case logfile.Workbook:
-		return nil, errors.New("workbook")
+		return sheet.Open(o.site, log, f, wanted)
 	}
 	return tabular.Open(o.site, log, f, wanted)
 }

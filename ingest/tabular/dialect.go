@@ -25,7 +25,17 @@ type Dialect struct {
 }
 
 // Unsettled is a log that could be read if its site file said more.
-type Unsettled struct{ error }
+type Unsettled struct{ Cause error }
+
+func (u Unsettled) Error() string { return u.Cause.Error() }
+
+// Unwrap returns the cause.
+func (u Unsettled) Unwrap() error { return u.Cause }
+
+// NotSettled makes an Unsettled from a message.
+func NotSettled(format string, args ...any) Unsettled {
+	return Unsettled{fmt.Errorf(format, args...)}
+}
 
 // headSize is how much of a file is looked at.
 const headSize = 256 << 10

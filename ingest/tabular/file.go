@@ -17,26 +17,14 @@ import (
 	"io"
 
 	"sashlog/configs/site"
-	"sashlog/ingest/clock"
 	"sashlog/ingest/logfile"
 	"sashlog/ingest/reading"
 )
 
 // File is one delimited text file as a source of readings.
 type File struct {
-	site    *site.Site
-	log     *site.Log
-	file    *logfile.File
+	Looked
 	dialect Dialect
-	matches []Match
-	points  []int
-	order   site.DateOrder
-	proof   string
-	prover  clock.Prover
-	head    []HeadRow
-
-	ledger reading.FileLedger
-	notes  []reading.ClockNote
 }
 
 // maxRow bounds one row of text.
@@ -50,92 +38,32 @@ func Open(s *site.Site, log *site.Log, f *logfile.File, wanted []string) (*File,
 		return nil, err
 	}
 	defer r.Close()
-	t := &File{site: s, log: log, file: f, order: log.DateOrder}
-	if t.dialect, t.head, err = Look(r, log, wanted); err != nil {
+	d, head, err := Look(r, log, wanted)
+	if err != nil {
 		if _, ok := err.(logfile.Failure); ok {
 			return nil, err
 		}
 		return nil, logfile.Failure{Name: f.Name, Err: err}
 	}
-	fr := &t.dialect.Frame
-	tc := max(fr.Time, fr.Date)
-	for _, row := range t.head {
-		if row.Line >= fr.DataLine && tc < len(row.Cells) {
-			t.prover.Add([]byte(row.Cells[tc]), row.Line)
-		}
-	}
-	return t, nil
+	return &File{Looked: NewLooked(s, log, f, d.Frame, d.Style, head), dialect: d}, nil
 }
-
-// Frame is the frame found in the file's head.
-func (t *File) Frame() *Frame { return &t.dialect.Frame }
-
-// Head is the rows looked at.
-func (t *File) Head() []HeadRow { return t.head }
-
-// SetMatches names the points the file may yield.
-func (t *File) SetMatches(ms []Match) {
-	t.matches, t.points = ms, nil
-	for _, m := range ms {
-		t.points = append(t.points, m.Point)
-	}
-}
-
-// Prover holds what the dates of the head prove about their order.
-func (t *File) Prover() *clock.Prover { return &t.prover }
-
-// SetOrder sets the order of day and month and how it was proven.
-func (t *File) SetOrder(o site.DateOrder, proof string) { t.order, t.proof = o, proof }
 
 // ScanOrder reads the time column of the whole file until its dates prove
 // their order.
 func (t *File) ScanOrder(ctx context.Context) error {
-	fr := &t.dialect.Frame
-	tc := max(fr.Time, fr.Date)
-	var last []byte
-	return t.rows(ctx, nil, func(line int64, cells [][]byte, _ []int) bool {
-		if tc >= len(cells) || bytes.Equal(last, cells[tc]) {
-			return true
-		}
-		last = append(last[:0], cells[tc]...)
-		t.prover.Add(last, line)
-		_, _, ok := t.prover.Proven()
-		return !ok
-	})
+	return t.rows(ctx, nil, t.Prove())
 }
-
-// Name implements reading.Source.
-func (t *File) Name() string { return t.file.Name }
-
-// Points implements reading.Source.
-func (t *File) Points() []int { return t.points }
-
-// Describe is the account of the last pass.
-func (t *File) Describe() reading.FileLedger { return t.ledger }
-
-// ClockNotes tells what the clock met in the last pass.
-func (t *File) ClockNotes() []reading.ClockNote { return t.notes }
 
 // Read implements reading.Source. It may be called again; every pass takes the
 // points' conversions as they are then.
 func (t *File) Read(ctx context.Context, to reading.Sink) error {
-	m, err := NewMapper(Setup{Site: t.site, Log: t.log, File: t.file.Name, Frame: &t.dialect.Frame,
-		Style: t.dialect.Style, Matches: t.matches, Order: t.order, Disordered: t.disordered()}, to)
+	m, err := t.Begin(to, false)
 	if err != nil {
-		return logfile.Failure{Name: t.file.Name, Err: err}
+		return err
 	}
-	t.ledger = reading.FileLedger{Path: t.file.Name}
 	err = t.rows(ctx, m, nil)
-	m.Finish()
-	t.ledger.Rows = m.Rows
-	t.ledger.Dialect = append(append([]string{}, t.dialect.Notes...), m.Words(t.proof)...)
-	t.notes = m.ClockNotes()
+	t.End(m, t.dialect.Notes)
 	return err
-}
-
-// disordered reports whether the rows of the head are out of order of time.
-func (t *File) disordered() bool {
-	return Disordered(t.head, &t.dialect.Frame, t.log, t.site, t.order, false)
 }
 
 // rows runs over the data rows of the file, into the mapper or to fn (until it
@@ -153,7 +81,7 @@ func (t *File) rows(ctx context.Context, m *Mapper, fn func(line int64, cells []
 		if err != nil || stopped || m == nil {
 			return
 		}
-		t.ledger.Bytes, t.ledger.SHA256, err = r.Sum()
+		t.Ledger.Bytes, t.Ledger.SHA256, err = r.Sum()
 	}()
 	s := splitter{sep: t.dialect.Sep}
 	var p *plainer
@@ -199,7 +127,7 @@ func (t *File) rows(ctx context.Context, m *Mapper, fn func(line int64, cells []
 
 // block runs over the whole rows of b and returns the bytes taken.
 func (t *File) block(b []byte, final bool, line *int64, s *splitter, p *plainer, fn func(int64, [][]byte, []int) bool) (used int, ok bool) {
-	first := t.dialect.Frame.DataLine
+	first := t.frame.DataLine
 	quote := -2 // the next quote in b: -2 unknown, -1 none
 	for used < len(b) {
 		if p != nil && *line+1 >= first {
@@ -233,69 +161,4 @@ func (t *File) block(b []byte, final bool, line *int64, s *splitter, p *plainer,
 		}
 	}
 	return used, true
-}
-
-// Disordered reports whether rows are out of order of time, repeated hours
-// aside; for long logs, those of any one name.
-func Disordered(rows []HeadRow, f *Frame, log *site.Log, s *site.Site, order site.DateOrder, date1904 bool) bool {
-	p, err := clock.NewParser(order, log.TimeFormat, date1904)
-	if err != nil {
-		return false
-	}
-	c, err := clock.NewResolver(log.Clock, s.Location)
-	if err != nil {
-		return false
-	}
-	type state struct {
-		last int64
-		dir  int
-	}
-	last := map[string]*state{}
-	for _, r := range rows {
-		if r.Line < f.DataLine || max(f.Time, max(f.Date, f.Clock)) >= len(r.Cells) {
-			continue
-		}
-		var st clock.Stamp
-		var fault clock.Fault
-		if f.Time >= 0 {
-			st, fault = p.Parse([]byte(r.Cells[f.Time]))
-		} else {
-			st, fault = p.ParseSplit([]byte(r.Cells[f.Date]), []byte(r.Cells[f.Clock]))
-		}
-		if fault != clock.Fine {
-			continue
-		}
-		u, v := c.Resolve(st.WallS)
-		if st.HasOffset {
-			u, v = c.Written(st.WallS, st.OffsetS)
-		}
-		if v != clock.Sure {
-			continue
-		}
-		key := ""
-		for _, k := range f.Keys {
-			if k < len(r.Cells) {
-				key += "/" + r.Cells[k]
-			}
-		}
-		was := last[key]
-		if was == nil {
-			last[key] = &state{u, 0}
-			continue
-		}
-		dir := 0
-		if u > was.last {
-			dir = 1
-		} else if u < was.last {
-			dir = -1
-		}
-		if dir != 0 && was.dir != 0 && dir != was.dir {
-			return true
-		}
-		if dir != 0 {
-			was.dir = dir
-		}
-		was.last = u
-	}
-	return false
 }

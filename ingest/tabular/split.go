@@ -80,7 +80,7 @@ func lineEnd(b []byte, pos int, final bool) (end, next int, whole bool) {
 // 0 when more are needed, -1 when a quote is never closed (only with quotes).
 func (s *splitter) row(b []byte, pos, end, nl int, final, quotes bool) int {
 	s.spans, s.scratch, s.starts = s.spans[:0], s.scratch[:0], s.starts[:0]
-	rowStart, lines := pos, s.lines
+	rowStart, lines, multi := pos, s.lines, s.multi
 	for {
 		s.starts = append(s.starts, pos-rowStart)
 		if !quotes || pos >= end || b[pos] != '"' {
@@ -122,7 +122,7 @@ func (s *splitter) row(b []byte, pos, end, nl int, final, quotes bool) int {
 			}
 			// The field runs on over the line end.
 			if nl == len(b) && final || s.lines-first >= maxQuoted {
-				s.lines = lines
+				s.lines, s.multi = lines, multi
 				return -1
 			}
 			s.scratch = append(append(s.scratch, b[pos:end]...), '\n')
@@ -130,7 +130,7 @@ func (s *splitter) row(b []byte, pos, end, nl int, final, quotes bool) int {
 			pos = nl
 			end, nl, whole = lineEnd(b, pos, final)
 			if !whole {
-				s.lines = lines
+				s.lines, s.multi = lines, multi
 				return 0
 			}
 			s.lines++
