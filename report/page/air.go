@@ -1,0 +1,196 @@
+package page
+
+import (
+	"math"
+	"slices"
+
+	"sashlog/analyze/freshair"
+	"sashlog/analyze/running"
+	"sashlog/report/chart"
+	"sashlog/report/words"
+)
+
+func (b *builder) air() section {
+	s := section{ID: "air", Title: "Fresh air"}
+	fa := b.in.Results.FreshAir
+	if !b.anyCO2() {
+		s.Blocks = append(s.Blocks, note("CO2 is not logged in any zone, so whether the air was fresh enough cannot be said. A CO2 logger per zone for four weeks in each season answers it."))
+		return s
+	}
+	s.Blocks = append(s.Blocks, text("People breathe out CO2, so its level above outdoors shows how much outdoor air each of them gets. EN 16798-1 sorts rooms into categories by that level: I (best), II (usual for new buildings), III (acceptable for existing ones)."))
+	if fa.Sentence != "" {
+		s.Blocks = append(s.Blocks, note(words.Sentence(b.w.Foreign(fa.Sentence))))
+	}
+	if fa.OutdoorNote != "" {
+		s.Blocks = append(s.Blocks, text(words.Sentence(b.w.Foreign(fa.OutdoorNote))))
+	}
+	s.Blocks = append(s.Blocks, b.co2Curves(), b.co2Table())
+	if t, ok := b.airChanges(); ok {
+		s.Blocks = append(s.Blocks, heading("Air change rates"), text("How often per hour the air of a zone was replaced, from how fast CO2 falls after the room empties; in each running state by itself. L/s is litres of outdoor air per second."), b.table(t))
+	} else {
+		s.Blocks = append(s.Blocks, note("No air change rate could be measured: too few times when a room emptied with CO2 well above outdoors. "+airNote(fa)))
+	}
+	return s
+}
+
+func airNote(fa *freshair.Result) string {
+	for _, z := range fa.Zones {
+		for _, a := range z.AirChange {
+			if a.NotMeasurable != "" {
+				return words.Sentence("for example: " + a.NotMeasurable)
+			}
+		}
+	}
+	return ""
+}
+
+func (b *builder) anyCO2() bool {
+	for _, z := range b.in.Results.FreshAir.Zones {
+		if z.HasCO2 && z.All.KnownH > 0 {
+			return true
+		}
+	}
+	return false
+}
+
+// co2Worst are the zones with CO2, highest 95th percentile first.
+func (b *builder) co2Worst() []int {
+	var out []int
+	for z, x := range b.in.Results.FreshAir.Zones {
+		if x.HasCO2 && x.All.KnownH > 0 {
+			out = append(out, z)
+		}
+	}
+	zones := b.in.Results.FreshAir.Zones
+	slices.SortStableFunc(out, func(a, c int) int {
+		switch x, y := zones[a].All.P95PPM, zones[c].All.P95PPM; {
+		case x > y:
+			return -1
+		case x < y:
+			return 1
+		}
+		return 0
+	})
+	return out
+}
+
+func (b *builder) co2Curves() block {
+	fa := b.in.Results.FreshAir
+	d := chart.CO2DurationData{Caption: chart.Caption{Title: "CO2 duration curves by zone and running state", Desc: "Share of occupied time above each CO2 level."}}
+	worst := b.co2Worst()
+	for _, z := range worst[:min(9, len(worst))] {
+		p := chart.CO2Zone{Zone: b.w.Zone(z)}
+		for _, st := range statesShown {
+			curve := fa.Zones[z].Curve[st]
+			if len(curve) == 0 || len(curve) != len(fa.CurvePPM) || !(fa.Zones[z].State[st].KnownH > 0) {
+				continue
+			}
+			c := chart.CO2Curve{State: stateLook[st]}
+			for i := len(curve) - 1; i >= 0; i-- {
+				c.Points = append(c.Points, chart.XY{X: curve[i] * 100, Y: fa.CurvePPM[i]})
+			}
+			p.Curves = append(p.Curves, c)
+		}
+		if len(p.Curves) > 0 {
+			d.Zones = append(d.Zones, p)
+		}
+	}
+	out := b.in.Results.Outdoor.CO2DefaultPPM
+	for i, name := range []string{"I", "II", "III"} {
+		if l := fa.LimitsPPM[i] + out; l > 0 && !math.IsNaN(l) {
+			d.Limits = append(d.Limits, chart.Limit{Value: l, Label: "category " + name})
+		}
+	}
+	caption := "For how much of the occupied time CO2 lay above a level, by running state. A curve that lies high on the left is a state that runs short of air"
+	if len(worst) > 9 {
+		caption += "; the nine zones with the highest CO2"
+	}
+	return b.draw("co2-duration", caption+".", "There is no CO2 curve to draw.",
+		func(o chart.Options) (chart.SVG, error) { return chart.CO2Duration(d, o) })
+}
+
+func (b *builder) co2Table() block {
+	fa := b.in.Results.FreshAir
+	t := table{ID: "co2", Caption: "CO2 in occupied time per zone and running state",
+		Head: []column{col("Zone"), col("Running state"), num("Known (h)"), num("Mean (ppm)"), num("95 % below (ppm)"), num("Above outdoors (ppm)"),
+			num("Hours above I"), num("II"), num("III"), col("Category held")}}
+	k := b.span.PerYear
+	worst := b.co2Worst()
+	few := false
+	shown, foot := b.capped(worst)
+	for _, z := range shown {
+		x := fa.Zones[z]
+		line := func(first, state string, l freshair.Levels) {
+			category := l.Category
+			if category == "" {
+				category = words.Dash
+			}
+			t.Rows = append(t.Rows, row(first, state, words.HoursNumber(l.KnownH*k), words.Number(l.MeanPPM, 0), words.Number(l.P95PPM, 0), words.Number(l.AboveOutdoorMeanPPM, 0),
+				words.HoursNumber(l.AboveCatH[0]*k), words.HoursNumber(l.AboveCatH[1]*k), words.HoursNumber(l.AboveCatH[2]*k), words.Clean(category)))
+		}
+		name := b.w.Zone(z)
+		if x.FewPeople {
+			name += " *"
+			few = true
+		}
+		line(name, "all", x.All)
+		t.Rows[len(t.Rows)-1][1].Strong = true
+		for _, st := range statesShown {
+			if x.State[st].KnownH > 0 {
+				line("", stateWords[st], x.State[st])
+			}
+		}
+	}
+	t.Foot = []string{"Hours " + b.span.Words + ". “Category held” is the best category kept for 95 % of the known time; " + words.Dash + " none, or not known."}
+	if few {
+		t.Foot = append(t.Foot, "* Fewer than half of the usual people were counted on average, or nobody was counted: low CO2 there proves little.")
+	}
+	if n := len(fa.Zones) - len(worst); n > 0 {
+		t.Foot = append(t.Foot, words.Zones(n)+" without usable CO2 "+isAre(n)+" left out.")
+	}
+	if foot != "" {
+		t.Foot = append(t.Foot, foot)
+	}
+	return b.table(t)
+}
+
+func (b *builder) airChanges() (table, bool) {
+	fa := b.in.Results.FreshAir
+	t := table{ID: "air-change", Caption: "Air change rate per zone and running state",
+		Head: []column{col("Zone"), col("Running state"), num("Median (per h)"), num("Range (per h)"), num("L/s"), num("L/s per person"), num("Decays"), col("Method, or why not")}}
+	zones, foot := b.capped(b.order)
+	any := false
+	for _, z := range zones {
+		if z >= len(fa.Zones) || !fa.Zones[z].HasCO2 {
+			continue
+		}
+		name, bare := b.w.Zone(z), true
+		for _, st := range []running.State{running.Open, running.Mech, running.Both, running.Shut} {
+			a := fa.Zones[z].AirChange[st]
+			if math.IsNaN(a.MedianPerH) || a.Events == 0 {
+				continue
+			}
+			any, bare = true, false
+			spread := words.Dash
+			if !math.IsNaN(a.LowPerH) && !math.IsNaN(a.HighPerH) {
+				spread = words.Number(a.LowPerH, 1) + " to " + words.Number(a.HighPerH, 1)
+			}
+			t.Rows = append(t.Rows, row(name, stateWords[st], words.Number(a.MedianPerH, 1), spread, words.Number(a.FlowLs, 0), words.Number(a.FlowLsPerson, 1), words.Count(int64(a.Events)), words.Clean(a.Method)))
+			name = ""
+		}
+		if bare {
+			why := ""
+			for _, st := range statesShown {
+				if why = fa.Zones[z].AirChange[st].NotMeasurable; why != "" {
+					break
+				}
+			}
+			t.Rows = append(t.Rows, row(name, "none measurable", words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, b.w.Foreign(why)))
+		}
+	}
+	t.Foot = []string{words.Dash + " not known: too few decays, or floor area, height or people are not given."}
+	if foot != "" {
+		t.Foot = append(t.Foot, foot)
+	}
+	return t, any
+}
