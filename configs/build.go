@@ -72,7 +72,7 @@ func word[T ~string](b *builder, path, text string, def T, allowed ...T) T {
 			return a
 		}
 	}
-	b.tree.at(path, didYouMean(text, words(allowed)), "%s is %q: must be one of %s", last(path), text, list(words(allowed)))
+	b.tree.at(path, onlyNearest(text, words(allowed)), "%s is %q: must be one of %s", last(path), text, list(words(allowed)))
 	return def
 }
 

@@ -76,7 +76,7 @@ func (b *builder) point(r *row) site.Point {
 	if known {
 		c, err := site.Convert(p.Quantity, p.Unit)
 		if err != nil {
-			r.at("unit", nearestUnit(p.Unit, p.Quantity), "%s", err)
+			r.at("unit", onlyNearest(p.Unit, site.Units(p.Quantity)), "%s", err)
 		}
 		p.Conversion = c
 	}
@@ -111,7 +111,7 @@ func cellWord[T ~string](r *row, column string, def T, allowed ...T) T {
 			return a
 		}
 	}
-	r.at(column, didYouMean(text, words(allowed)), "%s is %q: must be one of %s, or empty", column, text, list(words(allowed)))
+	r.at(column, onlyNearest(text, words(allowed)), "%s is %q: must be one of %s, or empty", column, text, list(words(allowed)))
 	return def
 }
 
@@ -159,13 +159,6 @@ func ownerHint(q site.Quantity) string {
 		h += "; a room's sensor in its return duct is air_temp with placement return_duct"
 	}
 	return h
-}
-
-func nearestUnit(unit string, q site.Quantity) string {
-	if n := nearest(unit, site.Units(q)); n != "" {
-		return fmt.Sprintf("did you mean %q?", n)
-	}
-	return ""
 }
 
 var holdForm = regexp.MustCompile(`^(\d+h)?(\d+m)?(\d+s)?$`)
@@ -244,7 +237,7 @@ func (b *builder) states(r *row, p *site.Point, t site.Trait) {
 		case from == "":
 			r.at("values", "write for instance Run=on;Stop=off", "values holds %q: the word of the log is missing", strings.TrimSpace(part))
 		case !contains(allowed, to):
-			r.at("values", didYouMean(to, allowed), "values says %q means %q: must be one of %s", from, to, list(allowed))
+			r.at("values", onlyNearest(to, allowed), "values says %q means %q: must be one of %s", from, to, list(allowed))
 		case seen[low]:
 			r.at("values", "case does not matter here", "values names %q twice", from)
 		default:

@@ -107,6 +107,14 @@ func didYouMean(written string, known []string) string {
 	return "allowed are " + list(known)
 }
 
+// onlyNearest is the hint where the message itself lists what is allowed.
+func onlyNearest(written string, known []string) string {
+	if n := nearest(written, known); n != "" {
+		return fmt.Sprintf("did you mean %q?", n)
+	}
+	return ""
+}
+
 // list joins words for a message, cut where it would get too long.
 func list(words []string) string {
 	const most = 40

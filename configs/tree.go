@@ -8,7 +8,6 @@ import (
 	"io"
 	"math"
 	"reflect"
-	"regexp"
 	"strconv"
 	"strings"
 
@@ -29,12 +28,12 @@ type tree struct {
 	// written holds the text of single values, for messages; kinds says what
 	// else stands at a path: a list or a group of keys.
 	written, kinds map[string]string
+	// void marks empty entries of lists: nothing more is said about them.
+	void map[string]bool
 	// fromEnv names the environment variable that set a path.
 	fromEnv  map[string]string
 	problems Problems
 }
-
-var yamlLine = regexp.MustCompile(`^yaml: line (\d+): (.*)$`)
 
 // parse reads the text of a site file. It returns a problem, not a tree, when
 // the text is not YAML at all.
@@ -45,10 +44,10 @@ func parse(file string, text []byte) (*tree, *Problem) {
 		if errors.Is(err, io.EOF) {
 			return nil, &Problem{File: file, Line: 1, Col: 1, Text: "the site file is empty", Hint: "start from the commented sample"}
 		}
-		return nil, notYAML(file, err)
+		return nil, notYAML(file, text, err)
 	}
 	t := &tree{file: file, root: &doc, places: map[string]place{},
-		written: map[string]string{}, kinds: map[string]string{}, fromEnv: map[string]string{}}
+		written: map[string]string{}, kinds: map[string]string{}, void: map[string]bool{}, fromEnv: map[string]string{}}
 	if len(doc.Content) != 1 || doc.Content[0].Kind != yaml.MappingNode {
 		return nil, &Problem{File: file, Line: max(doc.Line, 1), Col: max(doc.Column, 1),
 			Text: "the site file must be a list of keys with values", Hint: "start from the commented sample"}
@@ -57,19 +56,9 @@ func parse(file string, text []byte) (*tree, *Problem) {
 	if err := dec.Decode(&second); err == nil {
 		t.addAt(second.Line, second.Column, "a second document begins here: a site file holds one", "remove the line ---")
 	} else if !errors.Is(err, io.EOF) {
-		return nil, notYAML(file, err)
+		return nil, notYAML(file, text, err)
 	}
 	return t, nil
-}
-
-func notYAML(file string, err error) *Problem {
-	p := &Problem{File: file, Line: 1, Col: 1, Text: "not valid YAML: " + strings.TrimPrefix(err.Error(), "yaml: "),
-		Hint: "check the indentation (spaces only), colons followed by a space, and closing quotes and brackets around here"}
-	if m := yamlLine.FindStringSubmatch(err.Error()); m != nil {
-		p.Line, _ = strconv.Atoi(m[1])
-		p.Text = "not valid YAML: " + m[2]
-	}
-	return p
 }
 
 func (t *tree) addAt(line, col int, text, hint string) {
@@ -79,6 +68,9 @@ func (t *tree) addAt(line, col int, text, hint string) {
 // at adds a problem at the value of a path; when the path was not written, at
 // the nearest part of it that was.
 func (t *tree) at(path, hint, format string, args ...any) {
+	if t.void[path] {
+		return
+	}
 	t.problems = append(t.problems, t.problem(path, hint, format, args...))
 }
 
@@ -149,6 +141,7 @@ func (t *tree) walk(n *yaml.Node, path string, as reflect.Type) {
 				t.addAt(pl.keyLine, pl.keyCol, fmt.Sprintf("%q has no value", last(path)), "give a value or remove the line")
 			} else {
 				t.addAt(n.Line, n.Column, "an empty entry in a list", "give a value or remove it")
+				t.void[path] = true
 			}
 		}
 	}
