@@ -3,6 +3,7 @@ package configs
 import (
 	"fmt"
 	"math"
+	"strconv"
 	"strings"
 	"time"
 	_ "time/tzdata" // the zone base, so that every machine knows every zone
@@ -34,7 +35,7 @@ func (b *builder) number(path string, v *float64, low, high float64, unit string
 		return math.NaN()
 	}
 	if *v < low || *v > high || math.IsNaN(*v) {
-		b.tree.at(path, "", "%s is %s: must lie between %g and %g%s", last(path), b.said(path, *v), low, high, unit)
+		b.tree.at(path, "", "%s is %s: must lie between %s and %s%s", last(path), b.said(path, *v), plainNumber(low), plainNumber(high), unit)
 		return math.NaN()
 	}
 	return *v
@@ -43,7 +44,7 @@ func (b *builder) number(path string, v *float64, low, high float64, unit string
 // positive checks an optional number that must be above zero.
 func (b *builder) positive(path string, v *float64, high float64, unit string) float64 {
 	if v != nil && !(*v > 0 && *v <= high) {
-		b.tree.at(path, "", "%s is %s: must be above 0 and at most %g%s", last(path), b.said(path, *v), high, unit)
+		b.tree.at(path, "", "%s is %s: must be above 0 and at most %s%s", last(path), b.said(path, *v), plainNumber(high), unit)
 		return math.NaN()
 	}
 	if v == nil {
@@ -51,6 +52,9 @@ func (b *builder) positive(path string, v *float64, high float64, unit string) f
 	}
 	return *v
 }
+
+// plainNumber writes a limit without an exponent.
+func plainNumber(v float64) string { return strconv.FormatFloat(v, 'f', -1, 64) }
 
 func (b *builder) said(path string, v float64) string {
 	if s, ok := b.tree.written[path]; ok {

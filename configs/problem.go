@@ -52,7 +52,14 @@ func (ps Problems) Error() string {
 	return strings.Join(lines, "\n")
 }
 
-// tidy sorts the problems within each file and drops repetitions.
+// Limits that keep messages readable when a wrong file was named.
+const (
+	problemsPerFile = 200
+	textMax         = 600 // characters of one problem's text
+)
+
+// tidy sorts the problems within each file, drops repetitions and cuts what
+// nobody would read.
 func (ps Problems) tidy() Problems {
 	rank := map[string]int{}
 	for _, p := range ps {
@@ -71,12 +78,32 @@ func (ps Problems) tidy() Problems {
 		return a.Col < b.Col
 	})
 	var out Problems
+	n := map[string]int{}
 	for i, p := range ps {
-		if i == 0 || p != ps[i-1] {
+		if i > 0 && p == ps[i-1] {
+			continue
+		}
+		if n[p.File]++; n[p.File] <= problemsPerFile {
+			p.Text, p.Hint = clip(p.Text), clip(p.Hint)
 			out = append(out, p)
 		}
 	}
+	for _, p := range ps {
+		if more := n[p.File] - problemsPerFile; more > 0 {
+			out = append(out, Problem{File: p.File, Text: fmt.Sprintf("%d more problems", more)})
+			n[p.File] = 0
+		}
+	}
 	return out
+}
+
+// clip shortens a text in the middle.
+func clip(s string) string {
+	r := []rune(s)
+	if len(r) <= textMax {
+		return s
+	}
+	return string(r[:textMax/2]) + " ... " + string(r[len(r)-textMax/3:])
 }
 
 // nearest returns the known word that is closest to what was written, or ""
@@ -86,7 +113,7 @@ func nearest(written string, known []string) string {
 	if w == "" || len(w) > 64 {
 		return ""
 	}
-	best, at := "", 1+len([]rune(w))/3
+	best, at := "", max(1, len([]rune(w))/3)
 	for _, k := range known {
 		if d := levenshtein.ComputeDistance(w, strings.ToLower(k)); d <= at && (best == "" || d < at) {
 			best, at = k, d
