@@ -1,7 +1,6 @@
 package configs
 
 import (
-	"fmt"
 	"strings"
 	"time"
 
@@ -110,36 +109,4 @@ func (b *builder) diaryZones(r *row) []string {
 		out = append(out, id)
 	}
 	return out
-}
-
-// coverage warns of what the points leave open.
-func (b *builder) coverage() {
-	s := b.out.Site
-	zone, plant := make([]int, len(s.Zones)), make([]int, len(s.Plant))
-	outdoor := false
-	for i := range s.Points {
-		p := &s.Points[i]
-		switch {
-		case p.Quantity == site.OutdoorTemp:
-			outdoor = true
-		case p.Owner == site.OwnerZone && p.Index >= 0:
-			zone[p.Index]++
-		case p.Owner == site.OwnerPlant && p.Index >= 0:
-			plant[p.Index]++
-		}
-	}
-	for i, n := range zone {
-		if n == 0 {
-			b.warn(fmt.Sprintf("zones[%d].id", i), "map its logged columns in the points table", "zone %q has no points: nothing can be said about it", s.Zones[i].ID)
-		}
-	}
-	for i, n := range plant {
-		if n == 0 {
-			b.warn(fmt.Sprintf("plant[%d].id", i), "map its status or supply air temperature in the points table", "plant unit %q has no points: when it ran stays unknown", s.Plant[i].ID)
-		}
-	}
-	if !outdoor && len(s.Points) > 0 {
-		b.warn("points", "map a logged outdoor temperature to site, or add a nearby station's file",
-			"no point is outdoor_temp: without measured weather no hour can be judged")
-	}
 }

@@ -126,14 +126,22 @@ func (b *builder) readTables() {
 			where = "points"
 		}
 		if raw := b.open(where, name, pointsMax); raw != nil {
-			b.readPoints(filepath.ToSlash(filepath.Join(filepath.Dir(b.tree.file), name)), raw)
+			b.readPoints(b.shown(name), raw)
 		}
 	}
 	if b.raw.Diary != "" {
 		if raw := b.open("diary", b.raw.Diary, diaryFileMax); raw != nil {
-			b.readDiary(filepath.ToSlash(filepath.Join(filepath.Dir(b.tree.file), b.raw.Diary)), raw)
+			b.readDiary(b.shown(b.raw.Diary), raw)
 		}
 	}
+}
+
+// shown is how messages name a file beside the site file.
+func (b *builder) shown(name string) string {
+	if filepath.IsAbs(name) {
+		return filepath.ToSlash(name)
+	}
+	return filepath.ToSlash(filepath.Join(filepath.Dir(b.tree.file), name))
 }
 
 func (b *builder) open(where, name string, most int64) []byte {

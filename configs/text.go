@@ -15,8 +15,6 @@ type decoded struct {
 	// single is true when each character of the file is one byte
 	// (Windows-1252), so that columns count characters.
 	single bool
-	// bom is the number of bytes before the first character.
-	bom int
 }
 
 // toUTF8 decodes UTF-8, UTF-16 with a byte order mark, and Windows-1252,
@@ -26,7 +24,7 @@ func toUTF8(raw []byte) decoded {
 	case bytes.HasPrefix(raw, []byte("\xef\xbb\xbf")):
 		raw = raw[3:]
 		if utf8.Valid(raw) {
-			return decoded{text: raw, bom: 3}
+			return decoded{text: raw}
 		}
 	case bytes.HasPrefix(raw, []byte("\xff\xfe")), bytes.HasPrefix(raw, []byte("\xfe\xff")):
 		d := unicode.UTF16(unicode.LittleEndian, unicode.UseBOM).NewDecoder()
