@@ -112,7 +112,7 @@ func (b *builder) co2Curves() block {
 func (b *builder) co2Table() block {
 	fa := b.in.Results.FreshAir
 	t := table{ID: "co2", Caption: "CO2 in occupied time per zone and running state",
-		Head: []column{col("Zone"), col("Running state"), num("Known (h)"), num("Mean (ppm)"), num("95 % below (ppm)"), num("Above outdoors (ppm)"),
+		Head: []column{col("Zone"), keep("Running state"), num("Known (h)"), num("Mean (ppm)"), num("95 % below (ppm)"), num("Above outdoors (ppm)"),
 			num("Hours above I"), num("II"), num("III"), col("Category held")}}
 	k := b.span.PerYear
 	worst := b.co2Worst()
@@ -157,7 +157,7 @@ func (b *builder) co2Table() block {
 func (b *builder) airChanges() (table, bool) {
 	fa := b.in.Results.FreshAir
 	t := table{ID: "air-change", Caption: "Air change rate per zone and running state",
-		Head: []column{col("Zone"), col("Running state"), num("Median (per h)"), num("Range (per h)"), num("L/s"), num("L/s per person"), num("Decays"), col("Method, or why not")}}
+		Head: []column{col("Zone"), keep("Running state"), num("Median (per h)"), num("Range (per h)"), num("L/s"), num("L/s per person"), num("Decays"), col("Method, or why not")}}
 	zones, foot := b.capped(b.order)
 	any := false
 	for _, z := range zones {

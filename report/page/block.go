@@ -45,9 +45,11 @@ type table struct {
 	Small bool
 }
 
+// column is a column's heading; Num columns hold numbers, Keep columns do not
+// break their text.
 type column struct {
-	Text string
-	Num  bool
+	Text      string
+	Num, Keep bool
 }
 
 type cell struct {
@@ -59,6 +61,9 @@ type cell struct {
 // col and num make column heads of text and of numbers.
 func col(s string) column { return column{Text: s} }
 func num(s string) column { return column{Text: s, Num: true} }
+
+// keep makes the head of a column whose text stays on one line in print.
+func keep(s string) column { return column{Text: s, Keep: true} }
 
 // row makes cells of texts.
 func row(texts ...string) []cell {
@@ -91,7 +96,7 @@ func (b *builder) draw(id, caption, none string, make func(chart.Options) (chart
 		return note(none)
 	}
 	b.figures++
-	b.figureIDs[id] = b.figures
+	b.places[id] = place{"Figure " + words.Count(int64(b.figures)), id + "-figure"}
 	f := &figure{ID: id, Caption: caption, Number: b.figures, SVG: template.HTML(svg)}
 	if err != nil {
 		f.None = "This figure could not be drawn: " + words.Clean(err.Error()) + "."
@@ -103,8 +108,12 @@ func (b *builder) draw(id, caption, none string, make func(chart.Options) (chart
 func (b *builder) table(t table) block {
 	b.tables++
 	t.Number = b.tables
+	b.places[t.ID] = place{"Table " + words.Count(int64(b.tables)), t.ID}
 	return block{Table: &t}
 }
+
+// place is where a figure or table stands, for links.
+type place struct{ Label, Anchor string }
 
 // swatch is a legend key of a class, to stand beside its words.
 func swatch(c chart.Class) template.HTML { return template.HTML(chart.Swatch(c)) }

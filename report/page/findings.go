@@ -14,9 +14,10 @@ import (
 type finding struct {
 	ID, What, Size, Confidence, Zones string
 	Fields                            []field
-	FigureID                          string
-	FigureNumber                      int
 	Caution                           string
+	// Place is the figure or table that shows it, empty when there is none.
+	Place  place
+	figure string
 }
 
 type field struct{ Name, Text string }
@@ -41,7 +42,7 @@ func (b *builder) finding(n int, f advice.Finding) *finding {
 		zones[i] = words.Clean(id)
 	}
 	out := &finding{ID: "finding-" + words.Count(int64(n)), What: words.Sentence(b.w.Foreign(f.What)), Size: words.FindingSize(b.w, f), Confidence: words.Clean(f.Confidence),
-		Zones: words.List(zones, 12), Caution: words.Sentence(b.w.Foreign(f.Caution)), FigureID: f.Evidence.Figure, FigureNumber: b.figureIDs[f.Evidence.Figure]}
+		Zones: words.List(zones, 12), Caution: words.Sentence(b.w.Foreign(f.Caution)), figure: f.Evidence.Figure}
 	add := func(name, v string) {
 		if v = words.Sentence(b.w.Foreign(v)); v != "" {
 			out.Fields = append(out.Fields, field{name, v})

@@ -10,6 +10,7 @@ import (
 type front struct {
 	words.Front
 	Days   string
+	Span   string // "per year", or "in these 14 days"
 	Figure block
 	// Caution is the line every reader of one page must see.
 	Caution string
@@ -18,6 +19,7 @@ type front struct {
 func (b *builder) front() front {
 	f := front{Front: words.FrontOf(b.w), Days: words.Plural(b.span.Days, "day", "days") + ", " +
 		words.Plural(b.span.WorkingDays, "working day", "working days")}
+	f.Span = b.span.Words
 	f.Figure = b.whereHoursWent()
 	f.Caution = "Before windows or plant are run differently: falls from windows, smoke, security, rain, heat and infection control are for local codes and licensed practice to decide (see Cautions). These figures support a judgement; they never certify compliance."
 	return f
@@ -75,7 +77,7 @@ func (b *builder) whereHoursWent() block {
 		"There are no occupied hours in this period, so there is no figure of where they went.",
 		func(o chart.Options) (chart.SVG, error) {
 			// Drawn wider than the page and scaled down, so that page one stays one page.
-			o.WidthMM = 190
+			o.WidthMM = 195
 			return chart.WhereHoursWent(chart.WhereHoursWentData{
 				Caption: chart.Caption{Title: "Where the occupied hours went", Desc: words.Answer(b.w)},
 				XTitle:  "hours of the average occupant " + b.span.Words + " (h)", Steps: steps}, o)

@@ -132,14 +132,14 @@ type builder struct {
 	order   []int // zones by what matters
 	figures int
 	tables  int
-	// figureIDs are the ids in use, for links from findings.
-	figureIDs map[string]int
+	// places are the figures and tables by id, for links from findings.
+	places map[string]place
 }
 
 func newBuilder(in Input) *builder {
 	rule := privacy.For(in.Site)
 	w := words.Input{Site: in.Site, Criteria: in.Criteria, Grid: in.Grid, Ledger: in.Ledger, Results: in.Results, Privacy: rule}
-	return &builder{in: in, w: w, rule: rule, span: w.SpanOf(), order: words.Order(w), figureIDs: map[string]int{}}
+	return &builder{in: in, w: w, rule: rule, span: w.SpanOf(), order: words.Order(w), places: map[string]place{}}
 }
 
 func (b *builder) sections() []section {
@@ -149,6 +149,11 @@ func (b *builder) sections() []section {
 	}
 	for i := range list {
 		list[i].Number = i + 1
+		for _, x := range list[i].Blocks {
+			if x.Finding != nil {
+				x.Finding.Place = b.places[x.Finding.figure]
+			}
+		}
 	}
 	return list
 }

@@ -1,7 +1,9 @@
 package page
 
 import (
+	"path"
 	"slices"
+	"strings"
 	"time"
 
 	"sashlog/ingest/reading"
@@ -50,6 +52,17 @@ func (b *builder) quality() section {
 	return s
 }
 
+// ofFile cleans a message about files; with codes it names no file.
+func (b *builder) ofFile(s string) string {
+	if b.rule.Coded() {
+		for i, f := range b.in.Ledger.Files {
+			s = strings.ReplaceAll(s, f.Path, b.rule.File(i, f.Path))
+			s = strings.ReplaceAll(s, path.Base(f.Path), b.rule.File(i, f.Path))
+		}
+	}
+	return b.w.Foreign(s)
+}
+
 // point names a point, through the privacy rule.
 func (b *builder) point(i int) string {
 	return b.w.Foreign(reading.Title(b.in.Site, i))
@@ -74,7 +87,7 @@ func (b *builder) checks() []block {
 		if c.Readings > 0 {
 			effect += ", " + words.Count(c.Readings) + " readings"
 		}
-		evidence := words.Sentence(b.w.Foreign(c.Evidence))
+		evidence := words.Sentence(b.ofFile(c.Evidence))
 		if b.rule.Protected(c.Zone) && (c.Kind == reading.CheckHoliday || c.Kind == reading.CheckChatter) {
 			evidence = "Not shown: a room for one to three people."
 		}
@@ -155,7 +168,7 @@ func (b *builder) clocks() block {
 	}
 	var list []string
 	for i, c := range l.Clock {
-		t := words.Clean(b.rule.File(b.fileIndex(c.File, i), c.File)) + ": " + b.w.Foreign(c.Text)
+		t := words.Clean(b.rule.File(b.fileIndex(c.File, i), c.File)) + ": " + b.ofFile(c.Text)
 		if c.Skipped+c.Repeated+c.Ambiguous > 0 {
 			t += " (readings in skipped hours " + words.Count(c.Skipped) + ", in repeated hours resolved " + words.Count(c.Repeated) + ", ambiguous and rejected " + words.Count(c.Ambiguous) + ")"
 		}
@@ -188,9 +201,9 @@ func (b *builder) issues() []block {
 		if x.Where.Col > 0 {
 			where += ", byte " + words.Count(int64(x.Where.Col))
 		}
-		t := b.w.Foreign(x.Text)
+		t := b.ofFile(x.Text)
 		if x.Hint != "" {
-			t += "; hint: " + b.w.Foreign(x.Hint)
+			t += "; hint: " + b.ofFile(x.Hint)
 		}
 		if where != "" {
 			t = where + ": " + t
