@@ -10,6 +10,12 @@ import (
 	"sashlog/report/words"
 )
 
+// stateWords are the running states as a reader meets them.
+var stateWords = [running.NumStates]string{"unknown", "open", "mechanical", "open with plant", "shut"}
+
+// statesShown is the order in which states are listed.
+var statesShown = []running.State{running.Open, running.Mech, running.Both, running.Shut}
+
 func (b *builder) air() section {
 	s := section{ID: "air", Title: "Fresh air"}
 	fa := b.in.Results.FreshAir
@@ -130,7 +136,7 @@ func (b *builder) co2Table() block {
 		}
 		name := b.w.Zone(z)
 		if x.FewPeople {
-			name += " *"
+			name += "\u00a0*"
 			few = true
 		}
 		line(name, "all", x.All)

@@ -38,8 +38,52 @@ func (b *builder) year() section {
 	} else {
 		s.Blocks = append(s.Blocks, b.outcomeCarpet(), b.stateCarpet())
 	}
-	s.Blocks = append(s.Blocks, b.months())
+	s.Blocks = append(s.Blocks, b.months(), b.outcomes())
 	return s
+}
+
+// outcomeMeans says what each outcome means.
+var outcomeMeans = map[chart.Class]string{
+	chart.AchievedOK:         "weather suitable, windows open, plant off; inside the comfort limits and the CO2 limit",
+	chart.AchievedWarm:       "the same, but above the comfort limit",
+	chart.AchievedCool:       "the same, but below the comfort limit",
+	chart.AchievedStale:      "the same, but above the CO2 limit",
+	chart.AchievedUnassessed: "the same, but comfort or air was not measured",
+	chart.Missed:             "weather suitable and the zone wanted cooling or air, but plant ran or it stayed shut",
+	chart.NotNeeded:          "weather suitable, not open, and nothing was wanted: comfortable and fresh, cool, or being heated",
+	chart.IllTimed:           "open while the weather did not suit, for longer than a short airing",
+	chart.ClosedUnsuited:     "closed while the weather did not suit, short airings included",
+	chart.NoOpening:          "the zone has no opening to outdoors",
+	chart.Unjudged:           "weather, windows or plant unknown",
+}
+
+// outcomes lists the average occupant's hours by outcome; they add up to the
+// occupied hours.
+func (b *builder) outcomes() block {
+	t := table{ID: "outcomes", Caption: "Occupied hours of the average occupant by outcome", Small: true,
+		Head: []column{col("Outcome"), num("Per working day"), num("Hours " + b.span.Words), num("Share of occupied"), col("Meaning")}}
+	sum := b.in.Results.Summary.Building
+	for _, c := range chart.Outcomes() {
+		h := 0.0
+		for _, k := range outcomeCols[c] {
+			h += sum.H[k]
+		}
+		if h == 0 && c == chart.NoOpening {
+			continue
+		}
+		cells := row(c.Label(), words.Duration(b.span.PerDay(h)), words.HoursNumber(h*b.span.PerYear), words.Share(h/sum.Occupied.Value), outcomeMeans[c])
+		cells[0].Swatch = swatch(c)
+		t.Rows = append(t.Rows, cells)
+	}
+	total := row("occupied", words.Duration(b.span.PerDay(sum.Occupied.Value)), words.HoursNumber(sum.Occupied.Value*b.span.PerYear), words.Share(sum.Occupied.Value/sum.Occupied.Value), "all of the above")
+	for i := range total {
+		total[i].Strong = true
+	}
+	t.Rows = append(t.Rows, total)
+	if h := sum.H[hours.COccupiedUnknown]; h > 0 {
+		t.Foot = append(t.Foot, words.Hours(h*b.span.PerYear)+" more may have been occupied: presence is not known there.")
+	}
+	return b.table(t)
 }
 
 const privacyNote = "Privacy: windows, presence and CO2 of a room for one to three people say when those people are there."
@@ -180,74 +224,4 @@ func (b *builder) partial(year int, month time.Month) bool {
 	from := time.Date(b.span.From.Year, b.span.From.Month, b.span.From.Day, 0, 0, 0, 0, time.UTC)
 	to := time.Date(b.span.To.Year, b.span.To.Month, b.span.To.Day, 0, 0, 0, 0, time.UTC)
 	return first.Before(from) || last.After(to)
-}
-
-func (b *builder) weather() section {
-	s := section{ID: "weather", Title: "What the weather offered"}
-	p := b.in.Results.Potential
-	if !b.in.Results.Outdoor.Measured {
-		s.Blocks = append(s.Blocks, note("No measured outdoor temperature covers the period, so no hour can be called suitable. A sensor on the site, or the hourly file of a nearby station, closes this gap; a typical year may not stand in for it."))
-	}
-	s.Blocks = append(s.Blocks, text("“Weather suitable” counts occupied hours in which outdoor air could keep a zone within its limits. There is more than one defensible way of counting; where the ways differ much, the answer depends on the setting and not on the building."))
-	t := table{ID: "suitable-hours", Caption: "Suitable hours of the average occupant by way of counting", Small: true,
-		Head: []column{col("Way of counting"), num("Suitable per working day"), num("Suitable hours " + b.span.Words), num("Weather unknown"), col("Rule and source")}}
-	for _, m := range p.Methods {
-		low, high := m.SuitedH*b.span.PerYear, (m.SuitedH+m.UnknownH)*b.span.PerYear
-		name := m.Name
-		rule := words.Sentence(m.Words)
-		if m.Source != "" {
-			rule += " Source: " + words.Clean(m.Source) + "."
-		}
-		t.Rows = append(t.Rows, row(words.Clean(name), words.Duration(b.span.PerDay(m.SuitedH)), words.HoursBetween(low, low, high), words.Hours(m.UnknownH*b.span.PerYear), rule))
-	}
-	if len(t.Rows) > 0 {
-		t.Foot = []string{"Brackets: from no unknown hour suitable to all of them."}
-		s.Blocks = append(s.Blocks, b.table(t))
-	}
-	if y := p.Typical; y != nil {
-		s.Blocks = append(s.Blocks, text("Against a typical year ("+words.Clean(y.Name)+", plain band with humidity limit, "+words.Plural(y.Months, "month", "months")+" compared): "+
-			words.Hours(y.MeasuredH)+" were in the band as measured, "+words.Hours(y.TypicalH)+" in the typical year. Mean outdoor temperature "+
-			words.Unit(y.MeasuredMeanC, 1, "°C")+" as measured, "+words.Unit(y.TypicalMeanC, 1, "°C")+" in the typical year. The typical year only says whether the logged weather was normal; it never stands in for measured weather."))
-	}
-	if len(p.Tested) > 0 {
-		s.Blocks = append(s.Blocks, text("Which tests the logs allowed (not logged means not tested, never calm or dry):"), block{List: b.foreign(p.Tested)})
-	}
-	s.Blocks = append(s.Blocks, b.outdoorAir())
-	return s
-}
-
-func (b *builder) foreign(list []string) []string {
-	out := make([]string, len(list))
-	for i, x := range list {
-		out[i] = words.Sentence(b.w.Foreign(x))
-	}
-	return out
-}
-
-// outdoorAir draws one point per occupied hour: the step in its middle.
-func (b *builder) outdoorAir() block {
-	out, class, from := b.in.Results.Outdoor, b.in.Results.Summary.CarpetClass, b.in.Grid.PeriodFrom
-	d := chart.OutdoorQuadrantsData{Caption: chart.Caption{Title: "Outdoor air of the occupied hours by outcome", Desc: "One point per occupied hour: outdoor temperature across, dew point upwards."},
-		Humidity: chart.DewPointC}
-	none := "Outdoor humidity is not logged, so outdoor temperature cannot be drawn against it."
-	if b.withheldTogether() {
-		return note(privacyNote + " The picture of single hours against the outdoor air is left out, since all zones together are usually used by no more than three people.")
-	}
-	if out.TempC != nil && out.DewPointC != nil {
-		for _, h := range b.in.Results.Hours.Hours {
-			i := (h.FromStep + h.ToStep) / 2
-			if k := i - from; k < 0 || k >= len(class) || i >= len(out.TempC) || class[k] == hours.NotOccupied {
-				continue
-			}
-			d.Points = append(d.Points, chart.OutdoorPoint{TempC: float64(out.TempC[i]), Humidity: float64(out.DewPointC[i]), Class: classLook[class[i-from]]})
-		}
-		if c := b.in.Criteria; c.OutdoorLowC > 0 {
-			d.TempLimits = []chart.Limit{{Value: c.OutdoorLowC, Label: "coldest that suits"}}
-		}
-		if c := b.in.Criteria; c.DewPointMaxC > 0 {
-			d.HumidityLimits = []chart.Limit{{Value: c.DewPointMaxC, Label: "most humid that suits"}}
-		}
-	}
-	return b.draw("outdoor-air", "Outdoor air in the occupied hours, coloured by the outcome of most people. Orange between the limits is what could have been open; where orange and blue lie on the same spot, the same weather was treated differently.",
-		none, func(o chart.Options) (chart.SVG, error) { return chart.OutdoorQuadrants(d, o) })
 }

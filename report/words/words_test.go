@@ -1,6 +1,7 @@
 package words_test
 
 import (
+	"fmt"
 	"math"
 	"strings"
 	"testing"
@@ -91,7 +92,7 @@ func TestBoundsHold(t *testing.T) {
 			return
 		}
 		var a, b float64
-		if _, err := sscan(rest, &a, &b); err != nil {
+		if _, err := fmt.Sscanf(rest, "%g to %g)", &a, &b); err != nil {
 			t.Fatalf("%q: %v", s, err)
 		}
 		if a > low+1e-6 || b < high-1e-6 {
