@@ -247,6 +247,9 @@ func (d *Decoder) state(b []byte, word, text string) verdict {
 	return verdict{0, reading.UnknownWord, text}
 }
 
+// SameUnit reports whether two spellings mean one unit.
+func SameUnit(a, b string) bool { return unitKey(a) == unitKey(b) }
+
 // sameUnit reports whether a unit repeated in a cell is the point's.
 func (d *Decoder) sameUnit(s string) bool {
 	k := unitKey(s)

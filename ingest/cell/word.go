@@ -62,7 +62,7 @@ func states(pairs ...any) map[string]float64 {
 var missing = map[string]bool{
 	"nan": true, "na": true, "n/a": true, "#n/a": true, "#na": true, "null": true, "nil": true, "none": true,
 	"#value!": true, "#ref!": true, "#div/0!": true, "#num!": true, "#name?": true, "#null!": true,
-	"bad": true, "---": true, "--": true, "-": true, "----": true, "?": true, "...": true, "*": true,
+	"bad": true, "---": true, "--": true, "-": true, "\u2013": true, "\u2014": true, "----": true, "?": true, "...": true, "*": true,
 	"no data": true, "nodata": true, "no value": true, "missing": true, "invalid": true, "unavailable": true,
 	"unknown": true, "offline": true, "bad input": true, "i/o timeout": true, "keine daten": true, "ungultig": true,
 	"pas de donnees": true, "nd": true, "n.a.": true, "k.a.": true, "undefined": true, "error": true,

@@ -38,3 +38,21 @@ func FormOf(b []byte) Form {
 	}
 	return FormNone
 }
+
+// OffsetIn finds an offset from universal time in the name of a time column,
+// such as "Time, GMT+01:00".
+func OffsetIn(name string) (written string, ok bool) {
+	for i := 0; i+4 < len(name); i++ {
+		if w := []byte(name[i : i+3]); !foldEqual(w, "gmt") && !foldEqual(w, "utc") {
+			continue
+		}
+		n := i + 4
+		for n < len(name) && (name[n] >= '0' && name[n] <= '9' || name[n] == ':') {
+			n++
+		}
+		if _, has, f := offset([]byte(name[i:n])); f == Fine && has && n > i+4 {
+			return name[i+3 : n], true
+		}
+	}
+	return "", false
+}

@@ -33,7 +33,10 @@ type Series struct {
 	first  bool // nothing came before the window
 }
 
-type heldRow struct{ wallS int64 }
+type heldRow struct {
+	wallS int64
+	at    reading.Where
+}
 
 type heldCell struct {
 	row    int32
@@ -89,9 +92,9 @@ func (s *Series) step(wallS int64) {
 	s.dir, s.run = d, 1
 }
 
-// Hold begins a row within a repeated window; its readings go to the sink
-// returned, with the instant of the first showing.
-func (s *Series) Hold(wallS int64, w Window, to reading.Sink) reading.Sink {
+// Hold begins a row, which stands at a place, within a repeated window; its
+// readings go to the sink returned, with the instant of the first showing.
+func (s *Series) Hold(wallS int64, w Window, at reading.Where, to reading.Sink) reading.Sink {
 	if len(s.rows) != 0 && w != s.window {
 		s.release(true, wallS, to)
 	}
@@ -109,7 +112,7 @@ func (s *Series) Hold(wallS int64, w Window, to reading.Sink) reading.Sink {
 			}
 		}
 	}
-	s.rows = append(s.rows, heldRow{wallS})
+	s.rows = append(s.rows, heldRow{wallS, at})
 	s.prev, s.began = wallS, true
 	return holder{s, to}
 }
@@ -131,7 +134,7 @@ func (s *Series) release(more bool, nextS int64, to reading.Sink) {
 			to.Reject(int(c.point), c.reason, c.at, c.text)
 		case !ok:
 			s.tally.Ambiguous++
-			to.Reject(int(c.point), reading.AmbiguousHour, c.at, c.text)
+			to.Reject(int(c.point), reading.AmbiguousHour, s.rows[c.row].at, c.text)
 		default:
 			s.tally.Repeated++
 			u := c.unixS
@@ -207,7 +210,7 @@ func (h holder) add(c heldCell) {
 		s.full = true
 		if c.reason == reading.Accepted {
 			s.tally.Ambiguous++
-			c.reason = reading.AmbiguousHour
+			c.reason, c.at = reading.AmbiguousHour, s.rows[len(s.rows)-1].at
 		}
 		h.to.Reject(int(c.point), c.reason, c.at, c.text)
 		return

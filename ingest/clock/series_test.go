@@ -44,7 +44,7 @@ func run(t *testing.T, zone, day string, exact, distrust bool, walls ...string) 
 			s.Sure(ws, k)
 			k.Reading(0, u, 0)
 		case Repeated:
-			s.Hold(ws, r.Window(ws), k).Reading(0, u, 0)
+			s.Hold(ws, r.Window(ws), reading.Where{}, k).Reading(0, u, 0)
 		case Skipped:
 			k.Reject(0, reading.SkippedHour, reading.Where{}, "")
 		}
@@ -105,7 +105,7 @@ func TestSeriesTrustsAgain(t *testing.T) {
 		w := at + int64(off)
 		u, v := r.Resolve(w)
 		if v == Repeated {
-			s.Hold(w, r.Window(w), k).Reading(0, u, 0)
+			s.Hold(w, r.Window(w), reading.Where{}, k).Reading(0, u, 0)
 			return
 		}
 		s.Sure(w, k)
@@ -148,7 +148,7 @@ func TestSeriesShuffled(t *testing.T) {
 			w := at + int64(off)
 			u, v := r.Resolve(w)
 			if v == Repeated {
-				s.Hold(w, r.Window(w), k).Reading(0, u, 0)
+				s.Hold(w, r.Window(w), reading.Where{}, k).Reading(0, u, 0)
 				continue
 			}
 			if s.Sure(w, k); u != at {
@@ -169,7 +169,7 @@ func TestSeriesBound(t *testing.T) {
 	s.Sure(0, k)
 	w := Window{100, 200, 100}
 	for i := 0; i < maxHeld+10; i++ {
-		s.Hold(100+int64(i%2), w, k).Reading(0, 0, 0)
+		s.Hold(100+int64(i%2), w, reading.Where{}, k).Reading(0, 0, 0)
 	}
 	s.Sure(200, k)
 	if k.rejected != maxHeld+10 || tally.Ambiguous != int64(maxHeld+10) {

@@ -94,7 +94,7 @@ func Open(s *site.Site, log *site.Log, f *logfile.File, wanted []string) (*Book,
 	}
 	b.notes = append(b.notes, fr.Notes...)
 	style := cell.Style{Mark: '.', Declared: log.Decimal == '.'}
-	b.Looked = tabular.NewLooked(s, log, f, fr, style, head)
+	b.Looked = tabular.NewLooked(s, log, f, fr, style, head, b.date1904)
 	return b, nil
 }
 
@@ -182,7 +182,7 @@ func (b *Book) ScanOrder(ctx context.Context) error { return b.rows(ctx, b.Prove
 
 // Read implements reading.Source. It may be called again.
 func (b *Book) Read(ctx context.Context, to reading.Sink) error {
-	m, err := b.Begin(to, b.date1904)
+	m, err := b.Begin(to)
 	if err != nil {
 		return err
 	}

@@ -39,6 +39,8 @@ const (
 	NoPoint
 	// UnmappedColumns: columns that no point names; information.
 	UnmappedColumns
+	// PassedOver: a file of a folder or archive that is no log; information.
+	PassedOver
 )
 
 // Fatal reports whether readings of the log cannot be had at all.
@@ -75,10 +77,9 @@ type Set struct {
 type looked interface {
 	Source
 	Frame() *tabular.Frame
-	Head() []tabular.HeadRow
 	SetMatches([]tabular.Match)
 	Prover() *clock.Prover
-	SetOrder(site.DateOrder, string)
+	Settle(site.DateOrder, string)
 	ScanOrder(context.Context) error
 }
 
@@ -122,6 +123,11 @@ func (o *opener) log(ctx context.Context, li int) error {
 		}
 		o.problem(Problem{Kind: k, Where: reading.Where{File: b.Name}, Point: -1, Log: li, Text: b.Err.Error(), Hint: hint, Count: 1, Err: b})
 	}
+	if len(files) == 0 { // the failure is told already
+		for i := range o.site.Points {
+			o.sourced[i] = o.sourced[i] || means(o.site.Points[i].Source, log.Name)
+		}
+	}
 	var opened []looked
 	unmapped := map[string]bool{}
 	idle := 0
@@ -133,6 +139,10 @@ func (o *opener) log(ctx context.Context, li int) error {
 		points := o.pointsOf(log, f)
 		if len(points) == 0 {
 			idle++
+			continue
+		}
+		if f.Kind == logfile.Foreign && len(files) > 1 {
+			o.problem(Problem{Kind: PassedOver, Where: reading.Where{File: f.Name}, Point: -1, Log: li, Count: 1, Text: "passed over: " + f.What})
 			continue
 		}
 		l, err := o.open(log, f, points)
@@ -150,12 +160,12 @@ func (o *opener) log(ctx context.Context, li int) error {
 	}
 	if idle > 0 {
 		o.problem(Problem{Kind: NoPoint, Where: reading.Where{File: log.Path}, Point: -1, Log: li, Count: idle,
-			Text: fmt.Sprintf("%d of %d files of log %q hold no mapped point", idle, len(files), log.Name)})
+			Text: fmt.Sprintf("%d of %s of log %q without a mapped point", idle, tabular.Count(int64(len(files)), "file", "files"), log.Name)})
 	}
 	if len(unmapped) > 0 {
 		names := sorted(unmapped)
 		o.problem(Problem{Kind: UnmappedColumns, Where: reading.Where{File: log.Path}, Point: -1, Log: li, Count: len(names),
-			Text: fmt.Sprintf("%d columns of log %q are not mapped: %s", len(names), log.Name, few(names))})
+			Text: fmt.Sprintf("%s of log %q not mapped: %s", tabular.Count(int64(len(names)), "column", "columns"), log.Name, few(names))})
 	}
 	return o.order(ctx, li, opened)
 }
@@ -293,8 +303,9 @@ func (o *opener) order(ctx context.Context, li int, ls []looked) error {
 		p := l.Prover()
 		switch {
 		case log.DateOrder != site.ProveOrder || log.TimeFormat != "":
-			l.SetOrder(log.DateOrder, "")
+			l.Settle(log.DateOrder, "")
 		case !p.Needed:
+			l.Settle("", "")
 		case p.Contradiction() != "":
 			o.problem(Problem{Kind: Undecided, Where: reading.Where{File: l.Name()}, Point: -1, Log: li, Count: 1,
 				Text: p.Contradiction(), Hint: "set date_order of the log to dmy or mdy"})
@@ -304,9 +315,9 @@ func (o *opener) order(ctx context.Context, li int, ls []looked) error {
 			if from != l.Name() {
 				said = proof + " of " + from
 			}
-			l.SetOrder(order, said)
+			l.Settle(order, said)
 		case p.OnlyDotted():
-			l.SetOrder(site.DMY, "dates with points are day first (common practice)")
+			l.Settle(site.DMY, "dates with points are day first (common practice)")
 		default:
 			o.problem(Problem{Kind: Undecided, Where: reading.Where{File: l.Name()}, Point: -1, Log: li, Count: 1,
 				Text: "the order of day and month cannot be told: no date has a number above 12 where only a day can stand",

@@ -20,9 +20,15 @@ type Dialect struct {
 	// Notes say in words what was found out.
 	Notes []string
 
+	// Doubts are assumptions that the user should confirm.
+	Doubts []Doubt
+
 	charset charset
 	bareCR  bool
 }
+
+// Doubt is an assumption about a file and how to settle it.
+type Doubt struct{ Text, Hint string }
 
 // Unsettled is a log that could be read if its site file said more.
 type Unsettled struct{ Cause error }
@@ -62,6 +68,9 @@ func Look(r io.Reader, log *site.Log, wanted []string) (d Dialect, rows []HeadRo
 	}
 	d.Notes = append(d.Notes, note)
 	d.Style.Latin = d.charset == windows1252
+	if d.Style.Latin && log.Encoding == "" {
+		d.Doubts = append(d.Doubts, Doubt{"read as " + note, "if names or words look wrong, set encoding"})
+	}
 	text, err := io.ReadAll(d.charset.reader(bytes.NewReader(raw), false))
 	if err != nil && whole {
 		return d, nil, fmt.Errorf("cannot read it as %s: %w", d.charset, err)
@@ -93,7 +102,7 @@ func Look(r io.Reader, log *site.Log, wanted []string) (d Dialect, rows []HeadRo
 	}
 	for i, n := range d.Frame.Names {
 		if strings.ContainsRune(n, '\ufffd') {
-			d.Notes = append(d.Notes, fmt.Sprintf("the name of column %d holds a replacement character: the export lost a letter", i+1))
+			d.Doubts = append(d.Doubts, Doubt{fmt.Sprintf("the name of column %d holds a replacement character: the export lost a letter", i+1), "export again as UTF-8"})
 		}
 	}
 	d.findDecimal(rows, log)
@@ -246,7 +255,7 @@ func (d *Dialect) findDecimal(rows []HeadRow, log *site.Log) {
 		d.Notes = append(d.Notes, "no decimals among the first rows: decimal point assumed")
 	}
 	if points > 0 && commas > 0 {
-		d.Notes = append(d.Notes, fmt.Sprintf("both decimal marks among the first rows (%d points, %d commas): set decimal", points, commas))
+		d.Doubts = append(d.Doubts, Doubt{fmt.Sprintf("both decimal marks among the first rows: %d points, %d commas", points, commas), "set decimal of the log"})
 	}
 }
 

@@ -45,7 +45,7 @@ func Open(s *site.Site, log *site.Log, f *logfile.File, wanted []string) (*File,
 		}
 		return nil, logfile.Failure{Name: f.Name, Err: err}
 	}
-	return &File{Looked: NewLooked(s, log, f, d.Frame, d.Style, head), dialect: d}, nil
+	return &File{Looked: NewLooked(s, log, f, d.Frame, d.Style, head, false), dialect: d}, nil
 }
 
 // ScanOrder reads the time column of the whole file until its dates prove
@@ -57,9 +57,12 @@ func (t *File) ScanOrder(ctx context.Context) error {
 // Read implements reading.Source. It may be called again; every pass takes the
 // points' conversions as they are then.
 func (t *File) Read(ctx context.Context, to reading.Sink) error {
-	m, err := t.Begin(to, false)
+	m, err := t.Begin(to)
 	if err != nil {
 		return err
+	}
+	for _, d := range t.dialect.Doubts {
+		to.Issue(reading.Issue{Where: reading.Where{File: t.file.Name}, Point: -1, Text: d.Text, Hint: d.Hint})
 	}
 	err = t.rows(ctx, m, nil)
 	t.End(m, t.dialect.Notes)

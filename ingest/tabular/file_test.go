@@ -102,9 +102,11 @@ func openBytes(t testing.TB, name string, text []byte, log site.Log, points []si
 		}
 	}
 	f.SetMatches(ms)
-	if o, w, ok := f.Prover().Proven(); ok && log.DateOrder == "" {
-		f.SetOrder(o, w)
+	o, w := log.DateOrder, ""
+	if o == "" {
+		o, w, _ = f.Prover().Proven()
 	}
+	f.Settle(o, w)
 	return f, nil
 }
 

@@ -21,6 +21,7 @@ func (m *Mapper) Finish() {
 	issue := func(point int, text, hint string) {
 		m.to.Issue(reading.Issue{Where: reading.Where{File: m.file}, Point: point, Text: text, Hint: hint})
 	}
+	m.doubts(issue)
 	for i := range m.targets {
 		t := &m.targets[i]
 		if len(t.dec.Unknown) > 0 {
@@ -29,26 +30,26 @@ func (m *Mapper) Finish() {
 	}
 	for f, n := range m.badFaults {
 		if n > 0 {
-			issue(-1, fmt.Sprintf("%d rows with a time that cannot be read", n), clock.Fault(f).Hint())
+			issue(-1, fmt.Sprintf("%s with a time that cannot be read", Count(n, "row", "rows")), clock.Fault(f).Hint())
 		}
 	}
 	if m.short > 0 {
-		issue(-1, fmt.Sprintf("%d rows end before their last mapped column", m.short), "was the file cut off, or does a cell hold the separator without quotes?")
+		issue(-1, fmt.Sprintf("%s before the last mapped column", Count(m.short, "row ends", "rows end")), "was the file cut off, or does a cell hold the separator without quotes?")
 	}
 	if m.long > 0 {
-		issue(-1, fmt.Sprintf("%d rows have more cells than there are column names", m.long), "if numbers are written with the separator as decimal mark, export with another separator")
+		issue(-1, fmt.Sprintf("%s more cells than there are column names", Count(m.long, "row has", "rows have")), "if numbers are written with the separator as decimal mark, export with another separator")
 	}
 	if m.stray > 0 {
-		issue(-1, fmt.Sprintf("%d quotes are never closed and were read as ordinary characters", m.stray), "")
+		issue(-1, fmt.Sprintf("%s never closed, read as ordinary text", Count(m.stray, "quote is", "quotes are")), "")
 	}
 	if m.multi > 0 {
-		issue(-1, fmt.Sprintf("%d quoted cells run over several lines", m.multi), "")
+		issue(-1, fmt.Sprintf("%s over several lines", Count(m.multi, "quoted cell runs", "quoted cells run")), "")
 	}
 	if n := m.tally.Skipped; n > 0 {
-		issue(-1, fmt.Sprintf("%d readings lie in a local hour that daylight saving skipped", n), "does this log's clock follow daylight saving? if not, set its clock to standard or utc")
+		issue(-1, fmt.Sprintf("%s in a local hour that daylight saving skipped", Count(n, "reading lies", "readings lie")), "does this log's clock follow daylight saving? if not, set its clock to standard or utc")
 	}
 	if n := m.tally.Ambiguous; n > 0 {
-		issue(-1, fmt.Sprintf("%d readings lie in a repeated local hour that the order of rows does not settle", n), "export the rows in order of time, or with a written offset; if the clock does not follow daylight saving, set it to standard")
+		issue(-1, fmt.Sprintf("%s in a repeated local hour that the order of rows does not settle", Count(n, "reading lies", "readings lie")), "export the rows in order of time, or with a written offset; if the clock does not follow daylight saving, set it to standard")
 	}
 }
 
@@ -91,13 +92,13 @@ func (m *Mapper) Words(proof string) []string {
 		w = append(w, proof)
 	}
 	if m.frame.Layout == site.Long {
-		w = append(w, fmt.Sprintf("long layout, %d names mapped", len(m.keys)))
+		w = append(w, fmt.Sprintf("long layout, %s mapped", Count(int64(len(m.keys)), "name", "names")))
 	}
 	if m.NoChange > 0 {
-		w = append(w, fmt.Sprintf("%d empty cells of change-of-value points mean no change and are not counted as readings", m.NoChange))
+		w = append(w, fmt.Sprintf("%s no change and no reading (change-of-value points)", Count(m.NoChange, "empty cell means", "empty cells mean")))
 	}
 	if m.repeatedHead > 0 {
-		w = append(w, fmt.Sprintf("the header is repeated %d times", m.repeatedHead))
+		w = append(w, fmt.Sprintf("the header is repeated %s", Count(m.repeatedHead, "time", "times")))
 	}
 	return w
 }
@@ -109,6 +110,6 @@ func (m *Mapper) ClockNotes() []reading.ClockNote {
 		return nil
 	}
 	return []reading.ClockNote{{File: m.file, Skipped: t.Skipped, Repeated: t.Repeated, Ambiguous: t.Ambiguous,
-		Text: fmt.Sprintf("%d readings in skipped local hours (rejected), %d in repeated hours settled by the order of rows, %d in repeated hours not settled (rejected)",
-			t.Skipped, t.Repeated, t.Ambiguous)}}
+		Text: fmt.Sprintf("%s in skipped local hours (rejected), %d in repeated hours settled by the order of rows, %d in repeated hours not settled (rejected)",
+			Count(t.Skipped, "reading", "readings"), t.Repeated, t.Ambiguous)}}
 }

@@ -102,6 +102,9 @@ func FrameOf(rows []HeadRow, log *site.Log, wanted []string) (Frame, error) {
 	if len(rows) == 0 {
 		return f, fmt.Errorf("the file has no rows")
 	}
+	if f.Layout != site.Wide {
+		wanted = nil // there they name rows or files, not columns
+	}
 	header, err := headerIn(rows, log, wanted)
 	if err != nil {
 		return f, err

@@ -2,6 +2,7 @@ package tabular
 
 import (
 	"bytes"
+	"strings"
 
 	"sashlog/configs/site"
 	"sashlog/ingest/cell"
@@ -13,17 +14,19 @@ import (
 // Looked is a file or sheet whose head has been looked at: what every reader
 // of rows knows before it reads, and what it can tell afterwards.
 type Looked struct {
-	site    *site.Site
-	log     *site.Log
-	file    *logfile.File
-	frame   Frame
-	style   cell.Style
-	head    []HeadRow
-	matches []Match
-	points  []int
-	order   site.DateOrder
-	proof   string
-	prover  clock.Prover
+	site     *site.Site
+	log      *site.Log
+	file     *logfile.File
+	frame    Frame
+	style    cell.Style
+	head     []headTime
+	date1904 bool
+	jumbled  bool
+	matches  []Match
+	points   []int
+	order    site.DateOrder
+	proof    string
+	prover   clock.Prover
 
 	// Ledger is the account of the last pass.
 	Ledger reading.FileLedger
@@ -31,8 +34,8 @@ type Looked struct {
 }
 
 // NewLooked takes what the head of a file showed.
-func NewLooked(s *site.Site, log *site.Log, f *logfile.File, fr Frame, style cell.Style, head []HeadRow) Looked {
-	l := Looked{site: s, log: log, file: f, frame: fr, style: style, head: head, order: log.DateOrder}
+func NewLooked(s *site.Site, log *site.Log, f *logfile.File, fr Frame, style cell.Style, head []HeadRow, date1904 bool) Looked {
+	l := Looked{site: s, log: log, file: f, frame: fr, style: style, head: timesOf(head, &fr), date1904: date1904, order: log.DateOrder}
 	tc := max(fr.Time, fr.Date)
 	for _, row := range head {
 		if row.Line >= fr.DataLine && tc < len(row.Cells) {
@@ -51,9 +54,6 @@ func (l *Looked) Points() []int { return l.points }
 // Frame is the frame found in the head.
 func (l *Looked) Frame() *Frame { return &l.frame }
 
-// Head is the rows looked at.
-func (l *Looked) Head() []HeadRow { return l.head }
-
 // SetMatches names the points the file may yield.
 func (l *Looked) SetMatches(ms []Match) {
 	l.matches, l.points = ms, nil
@@ -65,8 +65,13 @@ func (l *Looked) SetMatches(ms []Match) {
 // Prover holds what the dates of the head prove about their order.
 func (l *Looked) Prover() *clock.Prover { return &l.prover }
 
-// SetOrder sets the order of day and month and how it was proven.
-func (l *Looked) SetOrder(o site.DateOrder, proof string) { l.order, l.proof = o, proof }
+// Settle sets the order of day and month and how it was proven. It must be
+// called before the first pass.
+func (l *Looked) Settle(o site.DateOrder, proof string) {
+	l.order, l.proof = o, proof
+	l.jumbled = l.disordered()
+	l.head = nil
+}
 
 // Prove returns a function that takes rows until their dates prove the order.
 func (l *Looked) Prove() func(line int64, cells [][]byte, _ []int) bool {
@@ -90,11 +95,10 @@ func (l *Looked) Describe() reading.FileLedger { return l.Ledger }
 func (l *Looked) ClockNotes() []reading.ClockNote { return l.notes }
 
 // Begin starts a pass.
-func (l *Looked) Begin(to reading.Sink, date1904 bool) (*Mapper, error) {
+func (l *Looked) Begin(to reading.Sink) (*Mapper, error) {
 	l.Ledger, l.notes = reading.FileLedger{Path: l.file.Name}, nil
 	m, err := NewMapper(Setup{Site: l.site, Log: l.log, File: l.file.Name, Frame: &l.frame, Style: l.style,
-		Matches: l.matches, Order: l.order, Date1904: date1904,
-		Disordered: Disordered(l.head, &l.frame, l.log, l.site, l.order, date1904)}, to)
+		Matches: l.matches, Order: l.order, Date1904: l.date1904, Disordered: l.jumbled}, to)
 	if err != nil {
 		return nil, logfile.Failure{Name: l.file.Name, Err: err}
 	}
@@ -109,14 +113,14 @@ func (l *Looked) End(m *Mapper, dialect []string) {
 	l.notes = m.ClockNotes()
 }
 
-// Disordered reports whether rows are out of order of time, repeated hours
+// disordered reports whether rows are out of order of time, repeated hours
 // aside; for long logs, those of any one name.
-func Disordered(rows []HeadRow, f *Frame, log *site.Log, s *site.Site, order site.DateOrder, date1904 bool) bool {
-	p, err := clock.NewParser(order, log.TimeFormat, date1904)
+func (l *Looked) disordered() bool {
+	p, err := clock.NewParser(l.order, l.log.TimeFormat, l.date1904)
 	if err != nil {
 		return false
 	}
-	c, err := clock.NewResolver(log.Clock, s.Location)
+	c, err := clock.NewResolver(l.log.Clock, l.site.Location)
 	if err != nil {
 		return false
 	}
@@ -125,16 +129,13 @@ func Disordered(rows []HeadRow, f *Frame, log *site.Log, s *site.Site, order sit
 		dir  int
 	}
 	last := map[string]*state{}
-	for _, r := range rows {
-		if r.Line < f.DataLine || max(f.Time, max(f.Date, f.Clock)) >= len(r.Cells) {
-			continue
-		}
+	for _, r := range l.head {
 		var st clock.Stamp
 		var fault clock.Fault
-		if f.Time >= 0 {
-			st, fault = p.Parse([]byte(r.Cells[f.Time]))
+		if l.frame.Time >= 0 {
+			st, fault = p.Parse([]byte(r.time))
 		} else {
-			st, fault = p.ParseSplit([]byte(r.Cells[f.Date]), []byte(r.Cells[f.Clock]))
+			st, fault = p.ParseSplit([]byte(r.time), []byte(r.clock))
 		}
 		if fault != clock.Fine {
 			continue
@@ -146,15 +147,9 @@ func Disordered(rows []HeadRow, f *Frame, log *site.Log, s *site.Site, order sit
 		if v != clock.Sure {
 			continue
 		}
-		key := ""
-		for _, k := range f.Keys {
-			if k < len(r.Cells) {
-				key += "/" + r.Cells[k]
-			}
-		}
-		was := last[key]
+		was := last[r.key]
 		if was == nil {
-			last[key] = &state{u, 0}
+			last[r.key] = &state{u, 0}
 			continue
 		}
 		dir := 0
@@ -172,4 +167,30 @@ func Disordered(rows []HeadRow, f *Frame, log *site.Log, s *site.Site, order sit
 		was.last = u
 	}
 	return false
+}
+
+// headTime is what is kept of a row of the head.
+type headTime struct{ time, clock, key string }
+
+// timesOf keeps the times and keys of the head's data rows.
+func timesOf(rows []HeadRow, f *Frame) []headTime {
+	var out []headTime
+	for _, r := range rows {
+		if r.Line < f.DataLine || max(f.Time, max(f.Date, f.Clock)) >= len(r.Cells) {
+			continue
+		}
+		var h headTime
+		if f.Time >= 0 {
+			h.time = strings.Clone(r.Cells[f.Time])
+		} else {
+			h.time, h.clock = strings.Clone(r.Cells[f.Date]), strings.Clone(r.Cells[f.Clock])
+		}
+		for _, k := range f.Keys {
+			if k < len(r.Cells) {
+				h.key += "/" + r.Cells[k]
+			}
+		}
+		out = append(out, h)
+	}
+	return out
 }

@@ -22,6 +22,7 @@ type Match struct {
 // the only place where a cell becomes a reading or a reject.
 type Mapper struct {
 	file   string
+	log    *site.Log
 	frame  *Frame
 	to     reading.Sink
 	parser *clock.Parser
@@ -54,7 +55,7 @@ type target struct {
 	point int
 	dec   *cell.Decoder
 	cov   bool
-	id    string
+	unit  string // as the points table says
 
 	hit      []byte // text of the state met last
 	hitValue float64
@@ -86,7 +87,7 @@ type Setup struct {
 // NewMapper makes a mapper for one pass; it takes the points' conversions as
 // they are now.
 func NewMapper(s Setup, to reading.Sink) (*Mapper, error) {
-	m := &Mapper{file: s.File, frame: s.Frame, to: to, distrust: s.Disordered, names: map[string]string{}}
+	m := &Mapper{file: s.File, log: s.Log, frame: s.Frame, to: to, distrust: s.Disordered, names: map[string]string{}}
 	var err error
 	if m.parser, err = clock.NewParser(s.Order, s.Log.TimeFormat, s.Date1904); err != nil {
 		return nil, err
@@ -97,7 +98,7 @@ func NewMapper(s Setup, to reading.Sink) (*Mapper, error) {
 	sampled := false
 	for _, mt := range s.Matches {
 		p := &s.Site.Points[mt.Point]
-		m.targets = append(m.targets, target{col: mt.Column, point: mt.Point, id: p.ID(),
+		m.targets = append(m.targets, target{col: mt.Column, point: mt.Point, unit: p.Unit,
 			dec: cell.NewDecoder(mt.Point, p, s.Style, s.Log.Missing), cov: p.Logging == site.COV})
 		sampled = sampled || p.Logging != site.COV
 	}
@@ -178,7 +179,7 @@ func (m *Mapper) place(st clock.Stamp, s *clock.Series) (reading.Sink, int64) {
 	case clock.Skipped:
 		return refuser{m, reading.SkippedHour, m.where(0), ""}, 0
 	}
-	return s.Hold(st.WallS, m.times.Window(st.WallS), m.to), u
+	return s.Hold(st.WallS, m.times.Window(st.WallS), m.where(0), m.to), u
 }
 
 func (m *Mapper) where(col int) reading.Where {
@@ -242,8 +243,11 @@ func (m *Mapper) Row(line int64, cells [][]byte, starts []int, padded bool) {
 	} else {
 		to, u = m.place(st, m.order)
 	}
-	if len(cells) > len(m.frame.Names) {
-		m.long++
+	for i := len(m.frame.Names); i < len(cells); i++ {
+		if len(cells[i]) > 0 {
+			m.long++
+			break
+		}
 	}
 	for i := range m.targets {
 		t := &m.targets[i]
@@ -288,7 +292,10 @@ func (m *Mapper) time(cells [][]byte) (text []byte, st clock.Stamp, f clock.Faul
 		return nil, st, clock.Unreadable
 	}
 	st, f = m.parser.ParseSplit(cells[fr.Date], cells[fr.Clock])
-	return cells[fr.Date], st, f
+	if f != clock.Fine {
+		text = append(append(append(text, cells[fr.Date]...), ' '), cells[fr.Clock]...)
+	}
+	return text, st, f
 }
 
 // cell hands over one cell as a reading or a reject.
@@ -324,7 +331,7 @@ func (m *Mapper) longRow(cells [][]byte, starts []int, text []byte, st clock.Sta
 			return
 		}
 	}
-	several := len(m.frame.Values) > 1
+	several, cut := len(m.frame.Values) > 1, false
 	for v, col := range m.frame.Values {
 		for _, i := range e.targets[v] {
 			t := &m.targets[i]
@@ -334,7 +341,7 @@ func (m *Mapper) longRow(cells [][]byte, starts []int, text []byte, st clock.Sta
 			}
 			switch {
 			case col >= len(cells):
-				m.short++
+				cut = true
 				to.Reject(t.point, reading.Truncated, m.where(0), "")
 			case len(cells[col]) == 0 && !several:
 				to.Reject(t.point, reading.Missing, m.where(startOf(starts, col)), "")
@@ -342,6 +349,9 @@ func (m *Mapper) longRow(cells [][]byte, starts []int, text []byte, st clock.Sta
 				m.cell(t, cells[col], u, startOf(starts, col), to)
 			}
 		}
+	}
+	if cut {
+		m.short++
 	}
 }
 

@@ -126,14 +126,20 @@ func (p *plainer) wide(b []byte, end int, u int64, to reading.Sink) {
 			}
 		}
 	}
-	if col >= len(m.frame.Names) || bytes.IndexByte(b[at:end], sep) >= 0 && m.extra(b, at, end, col, sep) {
-		m.long++
+	// Something written past the last named column?
+	for n := len(m.frame.Names); col < n; col++ {
+		j := bytes.IndexByte(b[at:end], sep)
+		if j < 0 {
+			return
+		}
+		at += j + 1
 	}
-}
-
-// extra reports whether a line goes on past the last named column.
-func (m *Mapper) extra(b []byte, at, end, col int, sep byte) bool {
-	return col+1+bytes.Count(b[at:end], []byte{sep}) > len(m.frame.Names)
+	for ; at < end; at++ {
+		if b[at] != sep {
+			m.long++
+			return
+		}
+	}
 }
 
 // cutLine cuts a line as far as it is needed and takes it as a row.
