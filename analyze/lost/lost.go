@@ -1,27 +1,39 @@
 // Package lost answers: which suitable hours were missed, and what were they
 // lost to?
+//
+// Steps:
+//
+//  1. spells: runs of missed steps per zone, short interruptions bridged
+//  2. patterns: what the whole period shows (starts by the clock, changeover
+//     limits the zone behaves as if it had, openings never used, ...)
+//  3. causes: every test says what share of a spell it explains; the first that
+//     explains at least half takes the spell, the others are contributing
+//  4. sums: whole seconds per zone and cause, so that causes add up to the
+//     missed hours exactly
 package lost
 
 // Cause is why an episode was missed.
 type Cause uint8
 
 // Causes, in the order they are tested: the first sufficient one takes the
-// episode, the others are listed as contributing.
+// episode, the others are listed as contributing. What no setting of the plant
+// could mend comes first (an opening nobody uses), then what is sure (a window
+// open with the plant running), then what recurs, and the single occasion last.
 const (
-	Unexplained   Cause = iota
-	ClockStart          // the plant started by the clock
-	FewRoom             // few-room changeover
-	LimitTooTight       // changeover limit tighter than the climate allows
+	Unexplained    Cause = iota
+	NeverUsed            // the opening is never used
+	NotInterlocked       // windows open with the plant running
+	ClockStart           // the plant started by the clock
+	LimitTooTight        // changeover limit tighter than the climate allows
 	SlowToReopen
-	NeverUsed      // the opening is never used
-	NotOpened      // windows by hand that nobody opened while nothing mechanical ran
-	NotInterlocked // windows open with the plant running
+	FewRoom   // few-room changeover
+	NotOpened // windows by hand that nobody opened while nothing mechanical ran
 	NumCauses
 )
 
-var causeWords = [NumCauses]string{"unexplained", "plant started by the clock", "few-room changeover",
-	"changeover limit tighter than the climate allows", "slow to reopen", "opening never used",
-	"windows not opened", "windows and plant not interlocked"}
+var causeWords = [NumCauses]string{"unexplained", "opening never used", "windows and plant not interlocked",
+	"plant started by the clock", "changeover limit tighter than the climate allows", "slow to reopen",
+	"few-room changeover", "windows not opened"}
 
 func (c Cause) String() string { return causeWords[c] }
 
@@ -51,6 +63,21 @@ type Result struct {
 	BuildingH [NumCauses]float64
 	// Doc of each test in words, for the methods appendix.
 	Tests []Test
+	// ByCauseS are the same in whole seconds: they sum exactly.
+	ByCauseS [][NumCauses]int64
+	// AloneH are the hours no other cause contributed to, AnyH those the cause
+	// took or contributed to: the bounds of what mending it would bring.
+	AloneH, AnyH [][NumCauses]float64
+	// LedH[zone][leader] are the few-room hours of a zone by leading zone.
+	LedH     []map[int]float64
+	Patterns []Pattern
+}
+
+// Pattern is what the whole period shows of one zone.
+type Pattern struct {
+	Clock   ClockPattern
+	Limit   LimitPattern
+	Opening OpeningUse
 }
 
 // Test describes how one cause is recognised.
