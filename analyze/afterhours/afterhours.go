@@ -11,6 +11,24 @@ type Zone struct {
 	// to morning.
 	NightsPlantOn, NightsWindowsOpen, Nights int
 	WarmUpH                                  float64 // heating within three hours before occupied time
+	// VacantH is all time outside occupied time; OccupancyUnknownH is in
+	// neither.
+	VacantH, OccupancyUnknownH float64
+	// NightsPlantKnown and NightsWindowsKnown are the nights of which at least
+	// half is known.
+	NightsPlantKnown, NightsWindowsKnown int
+}
+
+// Unit is one plant unit while every zone it serves was vacant.
+type Unit struct {
+	ID                              string
+	VacantH, OnH, UnknownH          float64
+	ConditioningH                   float64
+	EnergyKWh                       float64 // OnH at rated power, NaN when not given: an upper bound
+	NightsOn, NightsKnown           int
+	WarmUpH                         float64 // heating within three hours before occupied time
+	OvernightH                      float64 // of nights it was left on
+	WeekendOrHolidayOnH, WorkdayOnH float64 // on days without and with occupied time
 }
 
 // Result is the answer for all zones, and of the plant units.
@@ -18,4 +36,5 @@ type Result struct {
 	Zones    []Zone
 	Building Zone // weighted like the building's figures
 	Notes    []string
+	Units    []Unit
 }
