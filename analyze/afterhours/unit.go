@@ -1,8 +1,6 @@
 package afterhours
 
 import (
-	"math"
-
 	"sashlog/analyze/calendar"
 	"sashlog/analyze/running"
 	"sashlog/configs/site"
@@ -18,7 +16,7 @@ func lookUnit(in *Input, u int, cal *calendar.Calendar, nights []night) Unit {
 			zones = append(zones, z)
 		}
 	}
-	state := unitState(in, u, zones)
+	state := in.Running.UnitState(in.Site, u)
 	vacant := make([]bool, in.Grid.N)
 	worked := make([]bool, len(cal.Days))
 	for i := range vacant {
@@ -30,6 +28,9 @@ func lookUnit(in *Input, u int, cal *calendar.Calendar, nights []night) Unit {
 				worked[cal.DayOf[i]] = true
 			}
 		}
+	}
+	if len(zones) == 0 {
+		return out
 	}
 	soon := soonOccupied(in, zones)
 	h := in.Grid.StepH()
@@ -85,40 +86,4 @@ func (out *Unit) count(in *Input, state []uint8, vacant []bool, n night) {
 		out.NightsOn++
 		out.OvernightH += h
 	}
-}
-
-// unitState is the unit's own status where logged, else the strongest evidence
-// of the zones it serves.
-func unitState(in *Input, u int, zones []int) []uint8 {
-	out := make([]uint8, in.Grid.N)
-	for i := range out {
-		out[i] = running.PlantUnknown
-	}
-	stronger := func(i int, v uint8) {
-		if v != running.PlantUnknown && (out[i] == running.PlantUnknown || v > out[i]) {
-			out[i] = v
-		}
-	}
-	logged := false
-	for k := range in.Site.Points {
-		pt := &in.Site.Points[k]
-		if pt.Owner != site.OwnerPlant || pt.Index != u || pt.Quantity != site.PlantStatus || in.Grid.Columns[k].Mean == nil {
-			continue
-		}
-		logged = true
-		for i, v := range in.Grid.Columns[k].Mean {
-			if !math.IsNaN(float64(v)) {
-				stronger(i, uint8(v))
-			}
-		}
-	}
-	if logged {
-		return out
-	}
-	for _, z := range zones {
-		for i, v := range in.Running.Zones[z].Plant {
-			stronger(i, v)
-		}
-	}
-	return out
 }

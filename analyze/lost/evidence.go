@@ -88,8 +88,7 @@ func runAt(runs []run, i int) *run {
 	return nil
 }
 
-// gatherUnits reads every plant unit: its own status where logged, else the
-// strongest evidence of the zones it serves.
+// gatherUnits reads every plant unit and the zones it serves.
 func (e *evidence) gatherUnits() {
 	in := e.in
 	e.units = make([]unitEvidence, len(in.Site.Plant))
@@ -101,44 +100,9 @@ func (e *evidence) gatherUnits() {
 				e.zones[z].units = append(e.zones[z].units, u)
 			}
 		}
-		unit.on = e.unitState(u)
+		unit.on = in.Running.UnitState(in.Site, u)
 		unit.runs = plantRuns(unit.on)
 	}
-}
-
-func (e *evidence) unitState(u int) []uint8 {
-	in := e.in
-	out := make([]uint8, in.Grid.N)
-	for i := range out {
-		out[i] = running.PlantUnknown
-	}
-	stronger := func(i int, v uint8) {
-		if v != running.PlantUnknown && (out[i] == running.PlantUnknown || v > out[i]) {
-			out[i] = v
-		}
-	}
-	logged := false
-	for p := range in.Site.Points {
-		pt := &in.Site.Points[p]
-		if pt.Owner != site.OwnerPlant || pt.Index != u || pt.Quantity != site.PlantStatus || in.Grid.Columns[p].Mean == nil {
-			continue
-		}
-		logged = true
-		for i, v := range in.Grid.Columns[p].Mean {
-			if !math.IsNaN(float64(v)) {
-				stronger(i, uint8(v))
-			}
-		}
-	}
-	if logged {
-		return out
-	}
-	for _, z := range e.units[u].zones {
-		for i, v := range in.Running.Zones[z].Plant {
-			stronger(i, v)
-		}
-	}
-	return out
 }
 
 // steps turns minutes into steps, rounded to the nearest.

@@ -14,7 +14,7 @@ import (
 // Judge settles occupied time and running state of every zone and step.
 func Judge(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Calendar, in []indoor.Zone) *Result {
 	units := unitStates(s, g, c)
-	r := &Result{Zones: make([]Zone, len(s.Zones))}
+	r := &Result{Zones: make([]Zone, len(s.Zones)), Units: units}
 	for z := range r.Zones {
 		r.Zones[z] = judgeZone(s, c, g, cal, z, &in[z], units)
 	}

@@ -63,4 +63,7 @@ type Result struct {
 	// over zones with openings; WeightedBy says by what.
 	Weights    []float64
 	WeightedBy string
+	// Units is each plant unit's own state per step (index as Site.Plant), nil
+	// where neither its status nor its air flow is logged; see UnitState.
+	Units [][]uint8
 }
