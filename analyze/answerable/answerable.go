@@ -1,4 +1,7 @@
 // Package answerable answers: what can these logs answer at all?
+//
+// It asks for points with readings on the grid, not for results: so it can be
+// asked before anything is analysed.
 package answerable
 
 // Status of a question.
