@@ -71,10 +71,15 @@ func NewParser(order site.DateOrder, layout string, date1904 bool) (*Parser, err
 
 // Parse reads one timestamp. It allocates nothing for the known forms.
 func (p *Parser) Parse(b []byte) (Stamp, Fault) {
-	// The same day as before, then "hh:mm" or "hh:mm:ss" and nothing else.
+	// The same day as before, then "hh:mm" or "hh:mm:ss", perhaps with Z.
 	if n := p.dateN; n > 0 && len(b) > n+5 && (b[n] == ' ' || b[n] == 'T') && string(b[:n]) == string(p.date[:n]) {
-		if s, ok := plainClock(b[n+1:]); ok {
-			return Stamp{WallS: p.dayS + s}, Fine
+		rest := b[n+1:]
+		utc := rest[len(rest)-1] == 'Z'
+		if utc {
+			rest = rest[:len(rest)-1]
+		}
+		if s, ok := plainClock(rest); ok {
+			return Stamp{WallS: p.dayS + s, HasOffset: utc}, Fine
 		}
 	}
 	return p.parse(b)

@@ -115,6 +115,14 @@ func (o *opener) problem(p Problem) { o.set.Problems = append(o.set.Problems, p)
 func (o *opener) log(ctx context.Context, li int) error {
 	log := &o.site.Logs[li]
 	o.names = append(o.names, log.Name)
+	_, err := clock.NewParser(log.DateOrder, log.TimeFormat, false)
+	if err == nil {
+		_, err = clock.NewResolver(log.Clock, o.site.Location)
+	}
+	if err != nil {
+		o.problem(Problem{Kind: Undecided, Where: reading.Where{File: o.site.File, Line: int64(log.Line)}, Point: -1, Log: li, Text: err.Error(), Count: 1, Err: err})
+		return nil
+	}
 	files, bad := logfile.Find(o.site.Dir, log.Path)
 	for _, b := range bad {
 		k, hint := Unreadable, ""
