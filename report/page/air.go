@@ -1,8 +1,10 @@
 package page
 
 import (
+	"maps"
 	"math"
 	"slices"
+	"strings"
 
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/running"
@@ -163,9 +165,10 @@ func (b *builder) co2Table() block {
 func (b *builder) airChanges() (table, bool) {
 	fa := b.in.Results.FreshAir
 	t := table{ID: "air-change", Caption: "Air change rate per zone and running state",
-		Head: []column{col("Zone"), keep("Running state"), num("Median (per h)"), num("Range (per h)"), num("L/s"), num("L/s per person"), num("Decays"), col("Method, or why not")}}
+		Head: []column{col("Zone"), keep("Running state"), num("Median (per h)"), num("Range (per h)"), num("L/s"), num("L/s per person"), num("Decays"), col("Note")}}
 	zones, foot := b.capped(b.order)
 	any := false
+	methods := map[string]bool{}
 	for _, z := range zones {
 		if z >= len(fa.Zones) || !fa.Zones[z].HasCO2 {
 			continue
@@ -181,7 +184,8 @@ func (b *builder) airChanges() (table, bool) {
 			if !math.IsNaN(a.LowPerH) && !math.IsNaN(a.HighPerH) {
 				spread = words.Number(a.LowPerH, 1) + " to " + words.Number(a.HighPerH, 1)
 			}
-			t.Rows = append(t.Rows, row(name, stateWords[st], words.Number(a.MedianPerH, 1), spread, words.Number(a.FlowLs, 0), words.Number(a.FlowLsPerson, 1), words.Count(int64(a.Events)), words.Clean(a.Method)))
+			t.Rows = append(t.Rows, row(name, stateWords[st], words.Number(a.MedianPerH, 1), spread, words.Number(a.FlowLs, 0), words.Number(a.FlowLsPerson, 1), words.Count(int64(a.Events)), ""))
+			methods[words.Clean(a.Method)] = a.Method != ""
 			name = ""
 		}
 		if bare {
@@ -195,6 +199,11 @@ func (b *builder) airChanges() (table, bool) {
 		}
 	}
 	t.Foot = []string{words.Dash + " not known: too few decays, or floor area, height or people are not given."}
+	for _, m := range slices.Sorted(maps.Keys(methods)) {
+		if methods[m] {
+			t.Foot = append(t.Foot, "Method: "+strings.TrimSuffix(m, ".")+".")
+		}
+	}
 	if foot != "" {
 		t.Foot = append(t.Foot, foot)
 	}

@@ -99,6 +99,19 @@ func TestPrint(t *testing.T) {
 					t.Error("page two does not begin the chapters")
 				}
 			}
+			// A table wider than the paper would make the browser print everything
+			// smaller: the title must keep its 20 points (Liberation Serif: line
+			// box of a word 1.107 times the size).
+			box := regexp.MustCompile(`yMin="([\d.]+)" xMax="[\d.]+" yMax="([\d.]+)">Harbour<`).FindAllStringSubmatch(run(t, "pdftotext", "-bbox", "-l", "1", pdf, "-"), -1)
+			tallest := 0.0
+			for _, m := range box {
+				top, _ := strconv.ParseFloat(m[1], 64)
+				bottom, _ := strconv.ParseFloat(m[2], 64)
+				tallest = max(tallest, bottom-top)
+			}
+			if tallest < 21.5 || tallest > 23 {
+				t.Errorf("the title is %.1f points tall, want about 22: something wider than the paper shrinks the print", tallest)
+			}
 			for _, line := range strings.Split(strings.TrimSpace(run(t, "pdffonts", pdf)), "\n")[2:] {
 				if f := strings.Fields(line); len(f) > 5 && f[len(f)-5] != "yes" {
 					t.Errorf("font is not embedded: %s", line)

@@ -122,7 +122,7 @@ func (b *builder) criteriaTable(zones []int, foot string) []block {
 	if len(ids) == 0 {
 		return nil
 	}
-	t := table{ID: "comfort-criteria", Caption: "Share of occupied time too warm / too cool by each criterion", Head: []column{col("Zone")}}
+	t := table{ID: "comfort-criteria", Caption: "Share of occupied time too warm / too cool by each criterion, in per cent", Head: []column{col("Zone")}}
 	var keys []string
 	for i, id := range ids {
 		letter := string(rune('A' + i%26))
@@ -149,7 +149,7 @@ func (b *builder) criteriaTable(zones []int, foot string) []block {
 			v := words.Dash
 			for _, c := range b.in.Results.Exceedance.Zones[z].Criteria {
 				if c.ID == id && c.AppliesH > 0 {
-					v = words.Share(c.OverShare.Value) + " / " + words.Share(c.UnderShare.Value)
+					v = words.ShareNumber(c.OverShare.Value) + "\u00a0/\u00a0" + words.ShareNumber(c.UnderShare.Value)
 				}
 			}
 			cells = append(cells, cell{Text: v})

@@ -39,7 +39,7 @@ func (b *builder) schedule() string {
 func notes(c criteria.Settings) []criteria.Note { return c.Ordered() }
 
 func (b *builder) numbers() table {
-	t := table{ID: "numbers", Caption: "Numbers in force", Head: []column{col("Number"), num("Value"), col("Unit"), col("Key in the site file"), col("Source"), col("Standing")}}
+	t := table{ID: "numbers", Caption: "Numbers in force", Small: true, Head: []column{col("Number"), num("Value"), col("Unit"), keep("Key in the site file"), col("Source"), keep("Standing")}}
 	for _, n := range notes(b.in.Criteria) {
 		t.Rows = append(t.Rows, row(words.Clean(n.Words), words.Clean(n.Value), words.Clean(n.Unit), words.Clean(n.Key), words.Clean(n.Source), words.Clean(n.Standing)))
 	}

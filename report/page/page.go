@@ -74,11 +74,8 @@ func Write(w io.Writer, in Input) error {
 		return fmt.Errorf("page: paper %q: must be A4 or Letter", paper)
 	}
 	b := newBuilder(in)
-	doc := document{Title: b.w.Building() + ": open mode report", RunningHead: shorten(b.w.Building(), 60),
+	doc := document{Title: b.w.Building() + ": open mode report", RunningHead: shorten(b.w.Marked(), 60),
 		Paper: paper, Style: template.CSS(style), Front: b.front(), Sections: b.sections()}
-	if in.Site.Invented {
-		doc.RunningHead += " (invented)"
-	}
 	var buf bytes.Buffer
 	if err := t.ExecuteTemplate(&buf, "page.html", doc); err != nil {
 		return fmt.Errorf("page: %w", err)

@@ -169,9 +169,6 @@ func (b *builder) clocks() block {
 	var list []string
 	for i, c := range l.Clock {
 		t := words.Clean(b.rule.File(b.fileIndex(c.File, i), c.File)) + ": " + b.ofFile(c.Text)
-		if c.Skipped+c.Repeated+c.Ambiguous > 0 {
-			t += " (readings in skipped hours " + words.Count(c.Skipped) + ", in repeated hours resolved " + words.Count(c.Repeated) + ", ambiguous and rejected " + words.Count(c.Ambiguous) + ")"
-		}
 		list = append(list, strings.TrimSuffix(t, ".")+".")
 		if len(list) == mostPoints {
 			list = append(list, words.Count(int64(len(l.Clock)-mostPoints))+" more are in results.json.")

@@ -2,6 +2,7 @@ package words
 
 import (
 	"math"
+	"strings"
 	"time"
 
 	"sashlog/analyze"
@@ -107,6 +108,16 @@ func (in Input) Building() string {
 		return n
 	}
 	return "The building"
+}
+
+// Marked is the building's name, marked as invented where it is and does not
+// say so itself.
+func (in Input) Marked() string {
+	n := in.Building()
+	if in.Site.Invented && !strings.Contains(strings.ToLower(n), "invented") {
+		n += " (invented)"
+	}
+	return n
 }
 
 // Zone names a zone: its id, and its name after it where it has one.

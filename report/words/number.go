@@ -148,6 +148,19 @@ func Share(v float64) string {
 	return Number(v*100, 0) + nbsp + "%"
 }
 
+// ShareNumber writes a share in per cent without the sign, for narrow tables.
+func ShareNumber(v float64) string {
+	switch {
+	case !known(v):
+		return Dash
+	case v > 0 && v < 0.005:
+		return "<1"
+	case v < 1 && v > 0.995:
+		return ">99"
+	}
+	return Number(v*100, 0)
+}
+
 // ShareBetween writes a share with its bounds.
 func ShareBetween(v, low, high float64) string {
 	low, high = math.Max(0, low), math.Min(1, high)

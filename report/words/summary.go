@@ -10,11 +10,7 @@ import (
 // terminal, with the same figures as page one.
 func Summary(in Input) []string {
 	f, b := FrontOf(in), in.Results.Summary.Building
-	title := f.Building
-	if f.Invented {
-		title += " (invented demo building)"
-	}
-	out := []string{title + ", " + f.Period, f.Answer}
+	out := []string{in.Marked() + ", " + f.Period, f.Answer}
 	for _, x := range f.Figures {
 		if x.PerDay == Dash && x.PerYear == Dash {
 			continue

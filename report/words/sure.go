@@ -2,6 +2,7 @@ package words
 
 import (
 	"math"
+	"strings"
 
 	"sashlog/analyze/hours"
 )
@@ -21,7 +22,7 @@ func Sure(in Input) []string {
 		if r := b.AchievedShare; known(r.Low) && known(r.High) && in.CanSay() == Full {
 			t += " Were all of them open, or all missed, the building reached between " + Number(math.Floor(r.Low*100), 0) + " and " + Number(math.Ceil(r.High*100), 0) + nbsp + "% of what was possible."
 		}
-		out = append(out, t)
+		out = append(out, strings.ToUpper(t[:1])+t[1:])
 	}
 	if d := BiggestDoubt(in); d != "" {
 		out = append(out, "The biggest doubt: "+d)
