@@ -121,6 +121,7 @@ func (o *opener) log(ctx context.Context, li int) error {
 	}
 	if err != nil {
 		o.problem(Problem{Kind: Undecided, Where: reading.Where{File: o.site.File, Line: int64(log.Line)}, Point: -1, Log: li, Text: err.Error(), Count: 1, Err: err})
+		o.told(log)
 		return nil
 	}
 	files, bad := logfile.Find(o.site.Dir, log.Path)
@@ -131,10 +132,8 @@ func (o *opener) log(ctx context.Context, li int) error {
 		}
 		o.problem(Problem{Kind: k, Where: reading.Where{File: b.Name}, Point: -1, Log: li, Text: b.Err.Error(), Hint: hint, Count: 1, Err: b})
 	}
-	if len(files) == 0 { // the failure is told already
-		for i := range o.site.Points {
-			o.sourced[i] = o.sourced[i] || means(o.site.Points[i].Source, log.Name)
-		}
+	if len(files) == 0 {
+		o.told(log)
 	}
 	var opened []looked
 	unmapped := map[string]bool{}
@@ -178,6 +177,13 @@ func (o *opener) log(ctx context.Context, li int) error {
 	return o.order(ctx, li, opened)
 }
 
+// told marks the points of a log whose failure is told already.
+func (o *opener) told(log *site.Log) {
+	for i := range o.site.Points {
+		o.sourced[i] = o.sourced[i] || means(o.site.Points[i].Source, log.Name)
+	}
+}
+
 func (o *opener) refused(li int, f *logfile.File, err error) {
 	k := Unreadable
 	var fe logfile.Failure
@@ -202,7 +208,7 @@ func (o *opener) open(log *site.Log, f *logfile.File, points []int) (looked, err
 	case logfile.Foreign:
 		return nil, fmt.Errorf("not a log: %s", f.What)
 	case logfile.Parquet:
-		return nil, errors.New("Parquet files cannot be read as a log yet; export CSV or XLSX")
+		return nil, errors.New("a Parquet file cannot be read as a log yet; export CSV or XLSX")
 	case logfile.Workbook:
 		return sheet.Open(o.site, log, f, wanted)
 	}

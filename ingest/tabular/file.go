@@ -7,7 +7,7 @@
 //  1. dialect.go: encoding, separator, decimal mark
 //  2. frame.go, roles.go: header, time, key and value columns
 //  3. split.go, plain.go: rows to cells
-//  4. mapper.go: cells to readings (shared with the reader of workbooks)
+//  4. mapper.go, long.go: cells to readings (shared with the reader of workbooks)
 package tabular
 
 import (
