@@ -1,4 +1,11 @@
 // Package advice answers: what should be done first?
+//
+// Steps:
+//
+//  1. look for findings, one per main cause, each with hours to gain
+//  2. bound them by what is unknown and by rival causes
+//  3. choose a typical and a contrary day from the record
+//  4. rank by person-hours, then hours
 package advice
 
 // Finding is one thing found, with what to do about it.
@@ -22,3 +29,13 @@ type Evidence struct {
 	TypicalDay  string // local date, empty when none
 	ContraryDay string
 }
+
+// Figures that findings point to.
+const (
+	FigureEpisodes   = "episodes"
+	FigureCarpet     = "carpet"
+	FigureExceedance = "exceedance"
+	FigureCO2        = "co2-duration"
+	FigureAfterHours = "after-hours"
+	FigureAnswerable = "answerable"
+)
