@@ -74,17 +74,11 @@ func Find(in Input) *Result {
 		var alone, anyOf, byCause [NumCauses]float64
 		led := map[int]float64{}
 		for _, s := range spellsOf(&in, z) {
-			ep := e.judge(asked, s)
+			ep, explained := e.judge(asked, s)
 			missed := int64(len(s.missed)) * in.Grid.StepS
 			h := float64(missed) / 3600
 			seconds[ep.Cause] += missed
-			anyOf[ep.Cause] += h
-			for _, c := range ep.Contributing {
-				anyOf[c] += h
-			}
-			if len(ep.Contributing) == 0 {
-				alone[ep.Cause] += h
-			}
+			explained.bounds(ep.Cause, h, &alone, &anyOf)
 			if ep.Cause == FewRoom {
 				led[ep.Led] += h
 			}
@@ -106,33 +100,56 @@ func Find(in Input) *Result {
 	return r
 }
 
+// shares are what each cause explains of one spell.
+type shares [NumCauses]float64
+
+// bounds adds a spell's hours to what mending each cause would bring at least
+// and at most: at least what it explains where nothing else would do as well,
+// at most what it explains anywhere, the whole spell where it took it.
+func (x *shares) bounds(taken Cause, h float64, alone, anyOf *[NumCauses]float64) {
+	if taken == Unexplained {
+		alone[taken] += h
+		anyOf[taken] += h
+		return
+	}
+	rivals := 0
+	for c, share := range x {
+		if share >= sufficientShare {
+			rivals++
+		}
+		if Cause(c) != taken && share >= contributingShare {
+			anyOf[c] += h * share
+		}
+	}
+	anyOf[taken] += h
+	if rivals == 1 {
+		alone[taken] += h * x[taken]
+	}
+}
+
 // judge asks every test about a spell and makes an episode of it.
-func (e *evidence) judge(asked []test, s *spell) Episode {
+func (e *evidence) judge(asked []test, s *spell) (Episode, *shares) {
 	ep := e.describe(s)
-	taken := false
-	listed := [NumCauses]bool{}
+	var x shares
 	for _, t := range asked {
 		v := t.explain(e, s)
-		switch {
-		case !taken && v.share >= sufficientShare:
-			taken, ep.Cause, ep.Evidence, ep.Led = true, t.Cause, v.why, v.led
-		case v.share >= contributingShare && !listed[t.Cause] && t.Cause != ep.Cause:
-			listed[t.Cause] = true
-			ep.Contributing = append(ep.Contributing, t.Cause)
+		if v.share > x[t.Cause] {
+			x[t.Cause] = math.Min(1, v.share)
+		}
+		if ep.Cause == Unexplained && v.share >= sufficientShare {
+			ep.Cause, ep.Evidence, ep.Led = t.Cause, v.why, v.led
 		}
 	}
-	// A cause may be asked for twice; it does not contribute to itself.
-	for k := 0; k < len(ep.Contributing); k++ {
-		if ep.Contributing[k] == ep.Cause {
-			ep.Contributing = append(ep.Contributing[:k], ep.Contributing[k+1:]...)
-			k--
+	for c, share := range x {
+		if Cause(c) != ep.Cause && share >= contributingShare {
+			ep.Contributing = append(ep.Contributing, Cause(c))
 		}
 	}
-	if !taken {
+	if ep.Cause == Unexplained {
 		ep.Evidence = unexplained(&ep)
 	}
 	ep.Evidence += e.circumstances(&ep)
-	return ep
+	return ep, &x
 }
 
 // describe fills what a spell was like.

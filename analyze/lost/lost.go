@@ -65,8 +65,8 @@ type Result struct {
 	Tests []Test
 	// ByCauseS are the same in whole seconds: they sum exactly.
 	ByCauseS [][NumCauses]int64
-	// AloneH are the hours no other cause contributed to, AnyH those the cause
-	// took or contributed to: the bounds of what mending it would bring.
+	// AloneH are the hours only this cause explains, AnyH those it took or
+	// contributes to: the least and the most mending it would bring.
 	AloneH, AnyH [][NumCauses]float64
 	// LedH[zone][leader] are the few-room hours of a zone by leading zone.
 	LedH     []map[int]float64
