@@ -57,11 +57,17 @@ func (b *Builder) Sort() error {
 	return err
 }
 
-// Flush lets every value that still holds run to its limit. It comes after the
-// last reading and before Span and Finish.
+// Flush lets every value that still holds run to its limit and brings the
+// ledger's counts up to date. It comes once, after the last reading and before
+// Span and Finish.
 func (b *Builder) Flush() {
 	for i := range b.series {
-		b.series[i].end()
+		s, l := &b.series[i], &b.ledger.Points[i]
+		s.end()
+		for r, c := range s.counts {
+			l.Counts[r] += c
+		}
+		l.Counts[reading.Accepted] += s.n
 	}
 }
 
@@ -144,9 +150,6 @@ func (b *Builder) Finish(f Frame) *Built {
 	for i := range b.series {
 		s, l := &b.series[i], &b.ledger.Points[i]
 		out.Facts[i] = Facts{Histogram: s.hist, Runs: s.runs, Resolution: float64(s.resolution) / unit, ConflictsUTC: s.conflicts, Early: s.early}
-		for r, c := range s.counts {
-			l.Counts[r] += c
-		}
 		l.IntervalS, l.HoldS, l.Gaps, l.LongestGapS = s.interval, s.holdS, s.gaps, s.longestS
 		l.Min, l.Max, l.Mean = math.NaN(), math.NaN(), math.NaN()
 		if s.n == 0 {
@@ -155,7 +158,7 @@ func (b *Builder) Finish(f Frame) *Built {
 		l.FirstUTC, l.LastUTC = s.fromT, s.curT
 		l.Min, l.Max, l.Mean = float64(s.minQ)/unit, float64(s.maxQ)/unit, float64(s.sum)/float64(s.n)/unit
 		col, readings, outside := s.acc.blocks.column(first, n)
-		l.Counts[reading.Accepted] += s.n - outside
+		l.Counts[reading.Accepted] -= outside
 		l.Counts[reading.OutsidePeriod] += outside
 		if s.n > outside {
 			g.Columns[i], out.Tally.Readings[i] = col, readings
