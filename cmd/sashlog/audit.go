@@ -133,7 +133,7 @@ func (job auditJob) run(ctx context.Context, p process) error {
 	}
 	fmt.Fprintln(p.stdout, out)
 	if !job.quiet {
-		for _, line := range words.Summary(words.Input{Site: loaded.Site, Grid: g, Ledger: ledger, Results: results}) {
+		for _, line := range words.Summary(words.Input{Site: loaded.Site, Criteria: loaded.Criteria, Grid: g, Ledger: ledger, Results: results}) {
 			fmt.Fprintln(p.stderr, printable(line))
 		}
 	}

@@ -33,7 +33,7 @@ func newMethods(p process) *cobra.Command {
 func printMethods(w io.Writer, settings criteria.Settings) {
 	fmt.Fprintf(w, "Numbers of preset %s\n(standards are known here from public texts; figures support a judgement, they certify nothing)\n\n", settings.Preset)
 	for _, key := range criteria.Keys() {
-		n := settings.Note(key)
+		n := settings.Notes[key]
 		fmt.Fprintf(w, "%s = %s %s\n  %s\n  %s: %s\n", key, n.Value, n.Unit, n.Words, n.Standing, n.Source)
 	}
 	fmt.Fprint(w, "\nMethods\n")
