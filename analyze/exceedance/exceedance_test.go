@@ -1,0 +1,183 @@
+package exceedance
+
+import (
+	"math"
+	"testing"
+	"time"
+
+	"sashlog/analyze/calendar"
+	"sashlog/analyze/comfort"
+	"sashlog/analyze/indoor"
+	"sashlog/analyze/outdoor"
+	"sashlog/analyze/running"
+	"sashlog/configs/criteria"
+	"sashlog/configs/site"
+	"sashlog/ingest/grid"
+)
+
+var nan = math.NaN()
+
+// day is a one-day site of one zone with hourly steps, occupied throughout.
+type day struct {
+	s   *site.Site
+	g   *grid.Grid
+	out *outdoor.Outdoor
+	run *running.Result
+	in  []indoor.Zone
+	c   criteria.Settings
+}
+
+func newDay(runningMeanC float64, temps []float64, plant []site.PlantState) *day {
+	n := len(temps)
+	d := &day{
+		s: &site.Site{Location: time.UTC, Zones: []site.Zone{{ID: "z", People: 5, FanSpeedMS: nan, Openings: site.Openings{Outdoors: true}}}},
+		g: &grid.Grid{StepS: 3600, N: n, PeriodTo: n, Loc: time.UTC},
+		c: criteria.Settings{Headline: "en16798-1", Category: "II", AdaptiveAfterH: 1, FanSpeedMS: 0.9, MetabolicMet: 1.2, ClothingClo: 0.5, AirSpeedMS: 0.1},
+	}
+	cal := calendar.Of(d.g)
+	d.out = &outdoor.Outdoor{DayOf: cal.DayOf}
+	for range cal.Days {
+		d.out.Days = append(d.out.Days, outdoor.Day{RunningMeanENC: runningMeanC, RunningMeanASHRAEC: runningMeanC, SixAMC: 15})
+	}
+	z := running.Zone{PeopleCanOpen: true}
+	room := indoor.Zone{}
+	for i := range temps {
+		room.OperativeC = append(room.OperativeC, float32(temps[i]))
+		z.Occupied = append(z.Occupied, running.Occupied)
+		z.Plant = append(z.Plant, uint8(plant[i]))
+	}
+	d.run = &running.Result{Zones: []running.Zone{z}}
+	d.in = []indoor.Zone{room}
+	return d
+}
+
+func (d *day) result() *Result {
+	r := Limit(d.s, d.c, d.g, d.out, d.run)
+	hourOf := make([]int32, d.g.N)
+	for i := range hourOf {
+		hourOf[i] = int32(i)
+	}
+	r.Count(d.s, d.c, d.g, d.out, d.in, d.run, hourOf)
+	return r
+}
+
+func states(n int, s site.PlantState) []site.PlantState {
+	out := make([]site.PlantState, n)
+	for i := range out {
+		out[i] = s
+	}
+	return out
+}
+
+func criterion(t *testing.T, r *Result, id string) Criterion {
+	t.Helper()
+	for _, c := range r.Zones[0].Criteria {
+		if c.ID == id {
+			return c
+		}
+	}
+	t.Fatalf("no criterion %q", id)
+	return Criterion{}
+}
+
+// TestAdaptiveEdge: EN 16798-1 at a running mean of 20 °C gives 25.4 °C and in
+// category II 21.4 to 28.4 °C; 28.40 passes, 28.41 fails (published equation
+// and widths, design 4 section 3.2, recomputed).
+func TestAdaptiveEdge(t *testing.T) {
+	d := newDay(20, []float64{28.40, 28.41, 21.40, 21.39, nan}, states(5, site.PlantOff))
+	c := criterion(t, d.result(), "en16798-1")
+	if c.OverH != 1 || c.UnderH != 1 || c.AppliesH != 4 || c.UnknownH != 1 {
+		t.Errorf("over %g under %g applies %g unknown %g, want 1 1 4 1", c.OverH, c.UnderH, c.AppliesH, c.UnknownH)
+	}
+	if math.Abs(c.OverKh-0.01) > 1e-6 || c.PersonOverH != 5 {
+		t.Errorf("%g K h, %g person-hours; want 0.01 and 5", c.OverKh, c.PersonOverH)
+	}
+	if c.OverShare.Value != 0.25 || c.OverShare.Low != 0.2 || c.OverShare.High != 0.4 {
+		t.Errorf("share %+v, want 0.25 with bounds 0.2 to 0.4", c.OverShare)
+	}
+}
+
+// TestModelOfStep: adaptive only while nothing conditions and from an hour
+// after; operative ranges by season else. EN 16798-1 category II: heating 20
+// to 24 °C, cooling 23 to 26 °C.
+func TestModelOfStep(t *testing.T) {
+	plant := []site.PlantState{site.PlantOff, site.PlantCool, site.PlantOff, site.PlantOff, site.PlantVent, site.PlantHeat}
+	tests := []struct {
+		rm   float64
+		want []Model
+		high float64 // of the second step, mechanical
+	}{
+		{20, []Model{ENAdaptive, ENCooling, ENCooling, ENAdaptive, ENAdaptive, ENCooling}, 26},
+		{12, []Model{ENAdaptive, ENBetween, ENBetween, ENAdaptive, ENAdaptive, ENBetween}, 26},
+		{5, []Model{ENExtended, ENHeating, ENHeating, ENExtended, ENExtended, ENHeating}, 24},
+		{nan, []Model{NoModel, NoModel, NoModel, NoModel, NoModel, NoModel}, nan},
+	}
+	for _, tt := range tests {
+		r := newDay(tt.rm, make([]float64, 6), plant).result()
+		l := r.Zones[0].Limits
+		for i, want := range tt.want {
+			if l.Model[i] != want {
+				t.Errorf("running mean %g, step %d: %q, want %q", tt.rm, i, l.Model[i], want)
+			}
+		}
+		if got := float64(l.HighC[1]); got != tt.high && !(math.IsNaN(got) && math.IsNaN(tt.high)) {
+			t.Errorf("running mean %g: mechanical upper limit %g, want %g", tt.rm, got, tt.high)
+		}
+	}
+	d := newDay(20, make([]float64, 6), plant)
+	d.run.Zones[0].PeopleCanOpen = false
+	if m := d.result().Zones[0].Limits.Model[0]; m != ENCooling {
+		t.Errorf("people who cannot open windows: %q, want the operative range", m)
+	}
+}
+
+// TestASHRAEOutsideRange: ASHRAE 55 does not extrapolate beyond 10 to 33.5 °C;
+// such hours are not applicable, never inside or outside.
+func TestASHRAEOutsideRange(t *testing.T) {
+	d := newDay(9, []float64{26, 26}, states(2, site.PlantOff))
+	c := criterion(t, d.result(), "ashrae55-80")
+	if c.NotApplicableH != 2 || c.AppliesH != 0 || c.OverH != 0 || !math.IsNaN(c.OverShare.Value) || !c.CalculationOnly {
+		t.Errorf("%+v: want 2 h not applicable and no share", c)
+	}
+	// 26 °C at a prevailing mean of 16 °C: inside 80 %, outside 90 % (public library's rows).
+	d = newDay(16, []float64{26}, states(1, site.PlantOff))
+	if a, b := criterion(t, d.result(), "ashrae55-80"), criterion(t, d.result(), "ashrae55-90"); a.OverH != 0 || b.OverH != 1 {
+		t.Errorf("80 %%: %g h over, 90 %%: %g h over; want 0 and 1", a.OverH, b.OverH)
+	}
+}
+
+// TestPMVInMechanicalSteps: the vote is worked out where operative ranges
+// apply, with the clothing given; the methods' own values are held in package
+// comfort.
+func TestPMVInMechanicalSteps(t *testing.T) {
+	d := newDay(20, []float64{24.5, 29, 18, 29}, []site.PlantState{site.PlantCool, site.PlantCool, site.PlantCool, site.PlantOff})
+	d.c.AdaptiveAfterH = 0
+	c := criterion(t, d.result(), "pmv")
+	if c.AppliesH != 3 || c.OverH != 1 || c.UnderH != 1 || c.NotApplicableH != 1 {
+		t.Errorf("%+v: want 3 h judged, one over, one under, one not applicable", c)
+	}
+	speed := comfort.RelativeAirSpeedMS(0.1, 1.2)
+	want := comfort.PMV(comfort.Conditions{AirC: 29, RadiantC: 29, AirSpeedMS: speed, RHPct: 50, Met: 1.2, Clo: comfort.DynamicClo(0.5, 1.2)}) - 0.5
+	if math.Abs(c.OverKh-want) > 0.002 {
+		t.Errorf("votes beyond the limit %g, want %g", c.OverKh, want)
+	}
+}
+
+// TestFan: a fan the people can use raises the upper limit by 1.8 K at 0.9 m/s
+// (ASHRAE 55 Table 5-13; EN 16798-1 the same); a site's fan speed only widens
+// "with air movement".
+func TestFan(t *testing.T) {
+	plain := newDay(20, []float64{25}, states(1, site.PlantOff)).result().Zones[0].Limits
+	d := newDay(20, []float64{25}, states(1, site.PlantOff))
+	d.s.Zones[0].FanSpeedMS = 0.9
+	fan := d.result().Zones[0].Limits
+	near := func(what string, got float32, want float64) {
+		if math.Abs(float64(got)-want) > 1e-4 {
+			t.Errorf("%s: %g, want %g", what, got, want)
+		}
+	}
+	near("without fan", plain.UpperOfDayC[0], 28.4)
+	near("with air movement", plain.WithFanC[0], 30.2)
+	near("with a fan", fan.UpperOfDayC[0], 30.2)
+	near("comfort limit with a fan", fan.HighC[0], 30.2)
+}
