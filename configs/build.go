@@ -16,6 +16,7 @@ type builder struct {
 	tree *tree
 	raw  rawSite
 	out  *Loaded
+	env  func(string) string // nil: nothing comes from the environment
 	// tables holds problems of the points table and the diary.
 	tables Problems
 }

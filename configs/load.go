@@ -102,7 +102,7 @@ func Load(path string, env func(string) string) (*Loaded, error) {
 // build runs steps 2 to 4.
 func build(t *tree, text []byte, env func(string) string) *builder {
 	t.check()
-	b := &builder{tree: t, out: &Loaded{Site: &site.Site{}}}
+	b := &builder{tree: t, out: &Loaded{Site: &site.Site{}}, env: env}
 	b.raw = decode(t, text, env)
 	for _, e := range environment {
 		if path := strings.ReplaceAll(e.path, delim, "."); t.fromEnv[path] != "" {

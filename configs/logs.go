@@ -33,7 +33,9 @@ func (b *builder) logs() {
 			l.Decimal = rune(d[0])
 		}
 		l.Line, _ = b.tree.where(here)
-		if strings.TrimSpace(l.Path) == "" {
+		if b.tree.has(here + ".influx") {
+			b.influx(here, r, &l)
+		} else if strings.TrimSpace(l.Path) == "" {
 			b.missing(here+".path", "name a file, a folder, or a pattern such as logs/*.csv")
 		} else if _, err := path.Match(l.Path, ""); err != nil {
 			b.tree.at(here+".path", "* and ? stand for any text and any character", "path is %q: not a valid pattern", l.Path)
@@ -46,9 +48,14 @@ func (b *builder) logs() {
 		} else {
 			byName[l.Name] = l.Line
 		}
-		b.headerRow(here, r, &l)
-		b.columns(here, r, &l)
+		if l.Influx == nil {
+			b.headerRow(here, r, &l)
+			b.columns(here, r, &l)
+		}
 		l.Clock = b.clock(here+".clock", r.Clock)
+		if l.Influx != nil && !b.tree.has(here+".clock") {
+			l.Clock.Kind = site.ClockUTC // a database keeps instants
+		}
 		s.Logs = append(s.Logs, l)
 	}
 }

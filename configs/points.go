@@ -224,6 +224,10 @@ func (b *builder) source(r *row, source string) {
 // sourceMeans reports whether source may mean the log or one of its files. A
 // folder or archive may hold any file.
 func sourceMeans(source string, l *site.Log) bool {
+	if l.Influx != nil {
+		ok, err := path.Match(source, l.Name)
+		return source == l.Name || err == nil && ok
+	}
 	p := strings.ReplaceAll(l.Path, `\`, "/")
 	base := path.Base(p)
 	ext := strings.ToLower(path.Ext(base))

@@ -92,23 +92,36 @@ type rawPrivacy struct {
 }
 
 type rawLog struct {
-	Name         string   `mapstructure:"name"`
-	Path         string   `mapstructure:"path"`
-	Layout       string   `mapstructure:"layout"`
-	Sheet        string   `mapstructure:"sheet"`
-	HeaderRow    *float64 `mapstructure:"header_row"`
-	TimeColumn   string   `mapstructure:"time_column"`
-	DateColumn   string   `mapstructure:"date_column"`
-	ClockColumn  string   `mapstructure:"clock_column"`
-	KeyColumns   many     `mapstructure:"key_columns"`
-	ValueColumns many     `mapstructure:"value_columns"`
-	Separator    string   `mapstructure:"separator"`
-	Decimal      string   `mapstructure:"decimal"`
-	Encoding     string   `mapstructure:"encoding"`
-	DateOrder    string   `mapstructure:"date_order"`
-	TimeFormat   string   `mapstructure:"time_format"`
-	Missing      many     `mapstructure:"missing"`
-	Clock        rawClock `mapstructure:"clock"`
+	Name         string    `mapstructure:"name"`
+	Path         string    `mapstructure:"path"`
+	Layout       string    `mapstructure:"layout"`
+	Sheet        string    `mapstructure:"sheet"`
+	HeaderRow    *float64  `mapstructure:"header_row"`
+	TimeColumn   string    `mapstructure:"time_column"`
+	DateColumn   string    `mapstructure:"date_column"`
+	ClockColumn  string    `mapstructure:"clock_column"`
+	KeyColumns   many      `mapstructure:"key_columns"`
+	ValueColumns many      `mapstructure:"value_columns"`
+	Separator    string    `mapstructure:"separator"`
+	Decimal      string    `mapstructure:"decimal"`
+	Encoding     string    `mapstructure:"encoding"`
+	DateOrder    string    `mapstructure:"date_order"`
+	TimeFormat   string    `mapstructure:"time_format"`
+	Missing      many      `mapstructure:"missing"`
+	Clock        rawClock  `mapstructure:"clock"`
+	Influx       rawInflux `mapstructure:"influx"`
+}
+
+type rawInflux struct {
+	Address      string   `mapstructure:"address"`
+	Organisation string   `mapstructure:"organisation"`
+	Bucket       string   `mapstructure:"bucket"`
+	TokenEnv     string   `mapstructure:"token_env"`
+	Measurement  string   `mapstructure:"measurement"`
+	PointTag     string   `mapstructure:"point_tag"`
+	Field        string   `mapstructure:"field"`
+	TimeOutS     *float64 `mapstructure:"time_out_s"`
+	Read         string   `mapstructure:"read"`
 }
 
 type rawClock struct {

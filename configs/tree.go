@@ -193,6 +193,9 @@ func (t *tree) unknownKey(k *yaml.Node, path string, known map[string]reflect.Ty
 	if k.Value == "<<" {
 		hint = "merged keys are not supported; write the values out"
 	}
+	if secret(k.Value) && strings.HasSuffix(path, ".influx") {
+		hint = tokenHint
+	}
 	t.addAt(k.Line, k.Column, fmt.Sprintf("unknown key %q%s", k.Value, in), hint)
 }
 

@@ -59,7 +59,10 @@ type Log struct {
 	Clock      Clock
 	// Missing lists further markers of a missing value.
 	Missing []string
-	Line    int
+	// Influx is set when the log is kept in a database: Path and what
+	// describes files are then empty.
+	Influx *Influx
+	Line   int
 }
 
 // ClockKind says what the written times of a log mean.
