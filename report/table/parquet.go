@@ -160,7 +160,11 @@ func WriteComfortParquet(w io.Writer, in Input) error {
 		}
 	}
 	daily := byDay{in: &in, put: put}
-	in.Results.Exceedance.EachHour(func(e exceedance.Hourly) {
+	each := in.Results.Exceedance.EachHour
+	if each == nil { // nothing was counted
+		each = func(func(exceedance.Hourly)) {}
+	}
+	each(func(e exceedance.Hourly) {
 		if !rule.Protected(e.Zone) {
 			daily.end()
 			put(e)
