@@ -29,7 +29,6 @@ type truthRules struct {
 	rm        []float64 // running mean of each day
 	day       []int     // step of the truth -> day
 	wet       []bool    // raining, or within 30 min after it
-	co2Limit  func(i int) float64
 	outdoorAt func(i int) int
 }
 

@@ -19,7 +19,7 @@ type cells struct {
 // parquetTable writes columns zone by zone. Parquet orders columns of a schema
 // made at run time by name; readers go by name.
 type parquetTable struct {
-	writer  *parquet.Writer
+	writer  *parquet.GenericWriter[any]
 	columns []cells
 	index   map[string]int // name -> column
 	place   map[string]int // name -> place in the schema
@@ -45,7 +45,7 @@ func newParquetTable(w io.Writer, name string, texts []string, numbers []string)
 	for i, path := range schema.Columns() {
 		t.place[path[0]] = i
 	}
-	t.writer = parquet.NewWriter(w, schema, parquet.Compression(&parquet.Snappy))
+	t.writer = parquet.NewGenericWriter[any](w, schema, parquet.Compression(&parquet.Snappy))
 	return t
 }
 

@@ -99,7 +99,7 @@ func TestParquetEqualsCSV(t *testing.T) {
 	if len(place) != len(head) {
 		t.Errorf("%d columns in parquet, %d in CSV", len(place), len(head))
 	}
-	r := parquet.NewReader(file)
+	r := parquet.NewGenericReader[any](file)
 	defer r.Close()
 	buf := make([]parquet.Row, 1)
 	compared, line := 0, 0
