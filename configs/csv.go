@@ -98,8 +98,9 @@ func contains(words []string, w string) bool {
 	return false
 }
 
-// next returns the next row that is not blank; ok is false at the end. A row
-// that cannot be read is a problem and skipped.
+// next returns the next row that is neither blank nor a remark (its first cell
+// begins with #); ok is false at the end. A row that cannot be read is a
+// problem and skipped.
 func (t *table) next() (row, bool) {
 	for {
 		rec, err := t.r.Read()
@@ -123,7 +124,7 @@ func (t *table) next() (row, bool) {
 			out.lines, out.cols = append(out.lines, line), append(out.cols, col)
 			blank = blank && strings.TrimSpace(c) == ""
 		}
-		if blank {
+		if blank || strings.HasPrefix(strings.TrimSpace(rec[0]), "#") {
 			continue
 		}
 		out.line = out.lines[0]
