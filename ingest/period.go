@@ -15,9 +15,8 @@ import (
 	"sashlog/ingest/weather"
 )
 
-// leadDays is how long before the period weather is read, so that running
-// means exist (design 3).
-const leadDays = 30
+// leadDays is how long before the period weather is read.
+const leadDays = grid.LeadDays
 
 // yearsMost is the longest period read at once.
 const yearsMost = 25

@@ -6,6 +6,10 @@ import (
 	"time"
 )
 
+// LeadDays is how long before the period a grid begins, so that running means
+// exist (design 3).
+const LeadDays = 30
+
 // Grid is a regular time grid with one column per point (same index as
 // Site.Points). Step i covers [StartUTC + i*StepS, StartUTC + (i+1)*StepS).
 // It begins 30 days before the audited period where logs reach back so far,

@@ -155,7 +155,7 @@ func (s *series) settle() {
 	case p.Logging == site.COV:
 		s.holdS = holdNumberS
 	default:
-		s.holdS = min(max(holdIntervals*s.interval, holdLeastS), holdMostS)
+		s.holdS = UsualHoldS(s.interval)
 	}
 	if p.Logging == site.COV {
 		s.frozenS = 0 // silence is how such a point says "unchanged"
@@ -168,6 +168,16 @@ func (s *series) settle() {
 		s.rainS = s.interval
 	}
 }
+
+// UsualHoldS is how long a sampled value holds at most when its point does not
+// say, for the usual interval between its readings, both in seconds.
+func UsualHoldS(intervalS int64) int64 {
+	return min(max(holdIntervals*intervalS, holdLeastS), holdMostS)
+}
+
+// IntervalSample is how many of the first readings the usual interval is taken
+// from: it is the lower median of the differences between them.
+const IntervalSample = intervalSample
 
 // usualInterval is the median difference; of an even number the lower one.
 func usualInterval(in []instant) int64 {
