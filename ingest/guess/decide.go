@@ -27,7 +27,12 @@ func (p *Proposal) decide() {
 			}
 			imperial = imperial || names[i].unit.text == "degF" || names[i].unit.text == "mph"
 		}
+		counted := map[string]bool{}
+		for _, t := range list {
+			counted[t.name] = counted[t.name] || t.number > 0 && t.whole && t.max > 1 && t.max < 1000 && t.Log.Setting.Layout == site.Long && t.Column != t.name
+		}
 		for i, t := range list {
+			t.counted = counted[t.name]
 			t.decideIn(names[i], imperial)
 			imperial = imperial || t.Unit == "degF" && !sameText(names[i].unit.text, "degC")
 		}
@@ -39,6 +44,7 @@ func (p *Proposal) decide() {
 		l.weather(list)
 		for _, t := range list {
 			t.sayLogging()
+			t.seldom()
 		}
 	}
 }
@@ -253,6 +259,20 @@ func (t *Track) sayLogging() {
 	// have been sampled.
 	if share < 0.5 && changes > 0.9 || (t.textual() || t.binary()) && share < 0.6 || t.textual() && share < 0.9 && changes > 0.95 {
 		t.Logging = site.COV
+	}
+}
+
+// seldom leaves open what was only noted now and then: spot readings are not a
+// log, and a state between them is not known.
+func (t *Track) seldom() {
+	n := t.number + t.wordN()
+	if t.Quantity == "" || t.Log.Undated || n >= 60 {
+		return
+	}
+	days := float64(t.pace.last-t.pace.first) / 86400
+	if n < 8 || days > 3 && t.Logging == site.Sampled && float64(n) < 6*days && t.equal*10 > n {
+		t.Quantity = ""
+		t.Doubts = append(t.Doubts, fmt.Sprintf("only %s in %.0f days: spot readings, not a log", count(n, "reading", "readings"), days))
 	}
 }
 

@@ -3,6 +3,7 @@ package guess
 import (
 	"fmt"
 	"sort"
+	"strconv"
 	"strings"
 
 	"sashlog/configs/site"
@@ -55,6 +56,15 @@ type owning struct {
 // around it: the key of its rows, the sheet, the file, the folder.
 func (o *owning) placeOf(t *Track) place {
 	own := placeIn(t.name, t.names.tokens, t.Log.Setting.Layout == site.PerPoint && t.names.text == t.Column)
+	if len(t.Log.Setting.KeyColumns) > 1 {
+		key := t.name
+		if t.Column != t.name {
+			key = t.around
+		}
+		if room := roomOf(t.Log.Setting.KeyColumns, key); room != "" {
+			return placeIn(room, tokens(room), false)
+		}
+	}
 	if t.Log.Setting.Layout == site.Long && t.around != "" && t.Column != t.name {
 		ts := tokens(t.around)
 		unitOf(t.around, ts)
@@ -80,6 +90,40 @@ func (o *owning) placeOf(t *Track) place {
 		return own
 	}
 	return o.around(t)
+}
+
+// roomOf takes from the keys of a row those that name floor and room, when
+// their columns say so; empty when none does.
+func roomOf(columns []string, key string) string {
+	parts := strings.SplitN(key, "/", len(columns))
+	var out []string
+	found := false
+	for i, c := range columns {
+		if i >= len(parts) {
+			break
+		}
+		room, level, inner := false, false, false
+		for _, t := range tokens(c) {
+			room = room || t.is("room") || t.fold == "space" || t.fold == "location" || t.fold == "ort"
+			level = level || t.is("floor") && len(t.fold) > 1
+			inner = inner || t.is("window") || t.is("contact") || t.is("door")
+		}
+		switch {
+		case inner:
+		case level:
+			out = append(out, "floor "+parts[i])
+		case room:
+			found = true
+			if _, err := strconv.Atoi(parts[i]); err == nil {
+				parts[i] = "room " + parts[i]
+			}
+			out = append(out, parts[i])
+		}
+	}
+	if !found {
+		return ""
+	}
+	return strings.Join(out, " ")
 }
 
 // deviceKey reports keys that name what measured, not where.

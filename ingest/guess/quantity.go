@@ -281,6 +281,8 @@ func (n *naming) plant(add adding, out *[]candidate, t *Track) {
 		open(site.PlantStatus, 0.8, "retfan", "a return or exhaust fan: does its unit run with it?")
 	case n.has("cmd") > 0 && n.has("cmd") >= n.any("status") && (fan > 0 || n.any("unit") > 0) && n.any("temp", "valve", "damper", "window") == 0:
 		open(site.PlantStatus, 0.8, "cmd", "a command: is there no status that shows the unit runs?")
+	case fan > 0 && n.any("supfan", "unit", "supply", "ceiling") == 0 && n.any("status", "cmd") > 0 && n.any("temp", "valve", "damper", "window", "hum", "co2", "power", "flow", "setpoint", "wind") == 0:
+		open(site.PlantStatus, 0.8, "fan", "a fan: of a plant unit, or one that people use in the room?")
 	case (fan > 0 && n.any("status") > 0 || n.any("unit") > 0 && n.any("status", "mode") > 0 || fan > 0 && n.any("unit") > 0) && n.any("temp", "valve", "damper", "window", "hum", "co2", "power", "flow", "setpoint") == 0:
 		s := max(min(max(fan, n.any("unit")), max(n.any("status"), n.any("mode"))), 0.75)
 		c := add(site.PlantStatus, s, "status", "supfan", "fan", "unit", "mode")
@@ -322,7 +324,7 @@ func (n *naming) occupants(add adding, t *Track) {
 	if n.any("setpoint", "temp", "status") > abbreviation && ppl == 0 && pres < fullWord {
 		return
 	}
-	counted := !t.textual() && !t.binary() && t.whole && t.number > 0 && t.max > 1
+	counted := !t.textual() && (!t.binary() && t.whole && t.number > 0 && t.max > 1 || t.counted)
 	switch {
 	case ppl > 0 && !t.textual():
 		add(site.People, ppl, "people")

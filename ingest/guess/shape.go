@@ -218,7 +218,11 @@ func (s *shape) settle(ctx context.Context) error {
 		return fmt.Errorf("%d of %d rows carry a readable time in column %q", pace.n, n, s.log.TimeColumn+s.log.DateColumn)
 	}
 	s.firstS, s.lastS, s.intervalS = pace.first, pace.last, pace.usual()
-	s.arrange(s.columns(sample), sample, &pace)
+	cols := s.columns(sample)
+	if isSurvey(cols) {
+		return errors.New("answers of people (a survey), not a log of sensors")
+	}
+	s.arrange(cols, sample, &pace)
 	if len(s.values) == 0 {
 		return errors.New("no column holds numbers or states")
 	}
@@ -269,6 +273,20 @@ func (s *shape) columns(sample [][]string) []column {
 		}
 	}
 	return cols
+}
+
+// isSurvey reports columns that hold people's votes.
+func isSurvey(cols []column) bool {
+	n := 0
+	for i := range cols {
+		for _, t := range cols[i].tokens {
+			switch t.fold {
+			case "vote", "votes", "tsv", "tpv", "sensation", "preference", "acceptability", "clothing", "clo", "met", "questionnaire", "gender", "votum", "empfindung", "ressenti":
+				n++
+			}
+		}
+	}
+	return n >= 2
 }
 
 // arrange decides between wide, long and one file per point.

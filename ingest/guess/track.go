@@ -24,6 +24,8 @@ type Track struct {
 
 	Guess
 	names *naming
+	// counted: another track of the same name counts above 1.
+	counted bool
 
 	n, empty, missing int
 	number            int
