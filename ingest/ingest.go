@@ -56,12 +56,14 @@ var ErrNoReadings = errors.New("no usable readings")
 // UnreadError, a log that needs a setting a configs.Problems; both come after
 // everything else was counted, with the ledger and without a grid.
 func Read(ctx context.Context, s *site.Site, opt Options) (*grid.Grid, *reading.Ledger, error) {
-	// 1. Open the sources.
-	set, err := sources.Open(ctx, s)
+	// 1. Open the sources, for the period asked for.
+	p, err := newPeriod(s, opt)
 	if err != nil {
 		return nil, nil, err
 	}
-	p, err := newPeriod(s, opt)
+	s = sources.Own(s)
+	s.Period = site.Period{From: p.from, To: p.to}
+	set, err := sources.Open(ctx, s)
 	if err != nil {
 		return nil, nil, err
 	}

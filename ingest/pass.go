@@ -120,7 +120,13 @@ func (r *reader) one(ctx context.Context, i int, points []int) {
 	}
 	n := &notes{Builder: r.builder, unmapped: map[string]int64{}, meter: &r.meter}
 	n.meter.again(points != nil, r.size(src))
-	r.errs[i] = src.Read(ctx, n)
+	if some, ok := src.(interface {
+		ReadSome(context.Context, reading.Sink, []int) error
+	}); ok && points != nil {
+		r.errs[i] = some.ReadSome(ctx, n, points)
+	} else {
+		r.errs[i] = src.Read(ctx, n)
+	}
 	r.meter.add(r.size(src) - n.told)
 	if points == nil {
 		if d, ok := src.(sources.Source); ok {

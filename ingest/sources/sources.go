@@ -83,7 +83,8 @@ type looked interface {
 	ScanOrder(context.Context) error
 }
 
-// Open finds and looks at every file of the site's logs. Only an ended context
+// Open finds and looks at every file and database of the site's logs. It may
+// change how points of databases log, so it wants a site of its own (Own). Only an ended context
 // is an error; everything else is among the problems, so that all of them can
 // be shown at once.
 func Open(ctx context.Context, s *site.Site) (*Set, error) {
@@ -115,6 +116,9 @@ func (o *opener) problem(p Problem) { o.set.Problems = append(o.set.Problems, p)
 func (o *opener) log(ctx context.Context, li int) error {
 	log := &o.site.Logs[li]
 	o.names = append(o.names, log.Name)
+	if log.Influx != nil {
+		return o.database(ctx, li)
+	}
 	_, err := clock.NewParser(log.DateOrder, log.TimeFormat, false)
 	if err == nil {
 		_, err = clock.NewResolver(log.Clock, o.site.Location)
