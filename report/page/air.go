@@ -165,10 +165,11 @@ func (b *builder) co2Table() block {
 func (b *builder) airChanges() (table, bool) {
 	fa := b.in.Results.FreshAir
 	t := table{ID: "air-change", Caption: "Air change rate per zone and running state",
-		Head: []column{col("Zone"), keep("Running state"), num("Median (per h)"), num("Range (per h)"), num("L/s"), num("L/s per person"), num("Decays"), col("Note")}}
+		Head: []column{col("Zone"), keep("Running state"), num("Median (per h)"), num("Range (per h)"), num("if outdoor CO2 is off"), num("L/s"), num("L/s per person"), num("CO2 at usual people (ppm)"), num("Decays")}}
 	zones, foot := b.capped(b.order)
 	any := false
 	methods := map[string]bool{}
+	var reasons []string
 	for _, z := range zones {
 		if z >= len(fa.Zones) || !fa.Zones[z].HasCO2 {
 			continue
@@ -180,11 +181,8 @@ func (b *builder) airChanges() (table, bool) {
 				continue
 			}
 			any, bare = true, false
-			spread := words.Dash
-			if !math.IsNaN(a.LowPerH) && !math.IsNaN(a.HighPerH) {
-				spread = words.Number(a.LowPerH, 1) + " to " + words.Number(a.HighPerH, 1)
-			}
-			t.Rows = append(t.Rows, row(name, stateWords[st], words.Number(a.MedianPerH, 1), spread, words.Number(a.FlowLs, 0), words.Number(a.FlowLsPerson, 1), words.Count(int64(a.Events)), ""))
+			t.Rows = append(t.Rows, row(name, stateWords[st], words.Number(a.MedianPerH, 1), spread(a.LowPerH, a.HighPerH), spread(a.OutdoorLowPerH, a.OutdoorHighPerH),
+				words.Number(a.FlowLs, 0), words.Number(a.FlowLsPerson, 1), words.Number(a.AtUsualPeoplePPM, 0), words.Count(int64(a.Events))))
 			methods[words.Clean(a.Method)] = a.Method != ""
 			name = ""
 		}
@@ -195,10 +193,15 @@ func (b *builder) airChanges() (table, bool) {
 					break
 				}
 			}
-			t.Rows = append(t.Rows, row(name, "none measurable", words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, b.w.Foreign(why)))
+			t.Rows = append(t.Rows, row(name, "none measurable", words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, words.Dash))
+			reasons = append(reasons, name+": "+b.w.Foreign(why))
 		}
 	}
 	t.Foot = []string{words.Dash + " not known: too few decays, or floor area, height or people are not given."}
+	t.Foot = append(t.Foot, "“If outdoor CO2 is off” is the median if outdoor air held as much less or more CO2 as its doubt. “CO2 at usual people” is what the usual number of people would bring the room to within four hours at this rate.")
+	if len(reasons) > 0 {
+		t.Foot = append(t.Foot, "Not measurable: "+words.List(reasons, 6)+".")
+	}
 	for _, m := range slices.Sorted(maps.Keys(methods)) {
 		if methods[m] {
 			t.Foot = append(t.Foot, "Method: "+strings.TrimSuffix(m, ".")+".")
@@ -208,4 +211,12 @@ func (b *builder) airChanges() (table, bool) {
 		t.Foot = append(t.Foot, foot)
 	}
 	return t, any
+}
+
+// spread writes a range of rates per hour.
+func spread(low, high float64) string {
+	if math.IsNaN(low) || math.IsNaN(high) {
+		return words.Dash
+	}
+	return words.Number(low, 1) + " to " + words.Number(high, 1)
 }

@@ -46,10 +46,10 @@ type table struct {
 }
 
 // column is a column's heading; Num columns hold numbers, Keep columns do not
-// break their text.
+// break their text, Words columns only between words.
 type column struct {
-	Text      string
-	Num, Keep bool
+	Text             string
+	Num, Keep, Words bool
 }
 
 type cell struct {

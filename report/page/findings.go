@@ -53,7 +53,9 @@ func (b *builder) finding(n int, f advice.Finding) *finding {
 	add("Check on site first", f.CheckOnSite)
 	add("Undo if", f.UndoIf)
 	add("Other explanations", strings.Join(f.RivalExplanations, "; "))
-	add("Points it rests on", strings.Join(f.Evidence.Points, ", "))
+	if len(f.Evidence.Points) > 0 && !b.rule.Coded() { // columns often name rooms
+		out.Fields = append(out.Fields, field{"Points it rests on", words.Clean(strings.Join(f.Evidence.Points, ", "))})
+	}
 	var days []string
 	if d := isoDay(f.Evidence.TypicalDay); d != "" {
 		days = append(days, "typical "+d)

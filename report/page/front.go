@@ -10,7 +10,6 @@ import (
 type front struct {
 	words.Front
 	Days   string
-	Span   string // "per year", or "in these 14 days"
 	Figure block
 	// Caution is the line every reader of one page must see.
 	Caution string
@@ -19,7 +18,6 @@ type front struct {
 func (b *builder) front() front {
 	f := front{Front: words.FrontOf(b.w), Days: words.Plural(b.span.Days, "day", "days") + ", " +
 		words.Plural(b.span.WorkingDays, "working day", "working days")}
-	f.Span = b.span.Words
 	f.Figure = b.whereHoursWent()
 	f.Caution = "Before windows or plant are run differently: falls from windows, smoke, security, rain, heat and infection control are for local codes and licensed practice to decide (see Cautions). These figures support a judgement; they never certify compliance."
 	return f
@@ -47,10 +45,18 @@ func (b *builder) whereHoursWent() block {
 		}
 		steps = append(steps, s)
 	}
+	// Losses under a hundredth of the occupied hours are gathered where there
+	// are several, so that page one stays one page; the table of outcomes has
+	// each of them.
+	var losses []chart.HoursStep
 	loss := func(label string, c chart.Class, v float64) {
 		if v > 0 {
-			steps = append(steps, chart.HoursStep{Label: label, Class: c, Hours: v})
+			losses = append(losses, chart.HoursStep{Label: label, Class: c, Hours: v})
 		}
+	}
+	gather := func(label string) {
+		steps = append(steps, gathered(losses, label, occupiedShare*h(hours.COccupied))...)
+		losses = nil
 	}
 	occupied, suited, achieved := h(hours.COccupied)-h(hours.CNoOpening), h(hours.CSuited), h(hours.CAchieved)
 	total("occupied", chart.Occupied, occupied, "", 0)
@@ -60,20 +66,23 @@ func (b *builder) whereHoursWent() block {
 	loss("wind, rain or outdoor pollution", chart.ClosedUnsuited, h(hours.CTooWindy, hours.CRain, hours.CPolluted))
 	loss("suitable too briefly", chart.ClosedUnsuited, h(hours.CTooBrief))
 	loss("weather unknown", chart.Unjudged, h(hours.CSuitedUnknown))
+	gather("suitable too briefly, other weather")
 	total("weather suitable", chart.Suited, suited, "occupied", occupied)
 	loss("windows or plant unknown", chart.Unjudged, h(hours.CUnjudgedSuited))
 	loss("open mode not needed", chart.NotNeeded, h(hours.CNotNeeded))
 	for _, l := range words.Losses() {
 		loss("missed: "+l.Words, chart.Missed, h(l.Col))
 	}
+	gather("missed: other")
 	total("ran open", chart.AchievedOK, achieved, "suitable", suited)
 	loss("open, too warm", chart.AchievedWarm, h(hours.CAchievedWarm))
 	loss("open, too cool", chart.AchievedCool, h(hours.CAchievedCool))
 	loss("open, stale air", chart.AchievedStale, h(hours.CAchievedStale))
 	loss("open, comfort or air not measured", chart.AchievedUnassessed, h(hours.CAchievedUnassessed))
+	gather("open: warm, cool, stale or not measured")
 	total("open, comfortable and fresh", chart.AchievedOK, h(hours.CAchievedOK), "ran open", achieved)
 	return b.draw("where-hours-went",
-		"Where the occupied hours of the average occupant went, "+b.span.Words+". Read downwards: each bar takes its hours off those above. Orange bars are hours that could have been open.",
+		"Where the average occupant's hours went, "+b.span.Words+". Each bar takes its hours off those above; orange could have been open.",
 		"There are no occupied hours in this period, so there is no figure of where they went.",
 		func(o chart.Options) (chart.SVG, error) {
 			// Drawn wider than the page and scaled down, so that page one stays one page.
@@ -82,4 +91,33 @@ func (b *builder) whereHoursWent() block {
 				Caption: chart.Caption{Title: "Where the occupied hours went", Desc: words.Answer(b.w)},
 				XTitle:  "hours of the average occupant " + b.span.Words + " (h)", Steps: steps}, o)
 		})
+}
+
+// occupiedShare is the share of the occupied hours below which a loss may be
+// gathered with others.
+const occupiedShare = 0.01
+
+// gathered joins the small losses of one kind of class into the last row. What
+// is unknown always stands by itself.
+func gathered(losses []chart.HoursStep, label string, small float64) []chart.HoursStep {
+	var out, few []chart.HoursStep
+	for _, l := range losses {
+		if l.Hours < small && l.Class != chart.Unjudged {
+			few = append(few, l)
+		} else {
+			out = append(out, l)
+		}
+	}
+	if len(few) < 2 {
+		return losses
+	}
+	rest := chart.HoursStep{Label: label, Class: few[0].Class}
+	most := 0.0
+	for _, l := range few {
+		rest.Hours += l.Hours
+		if l.Hours > most {
+			most, rest.Class = l.Hours, l.Class
+		}
+	}
+	return append(out, rest)
 }

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strings"
 	"time"
 
 	"sashlog/analyze/hours"
@@ -16,7 +17,7 @@ import (
 
 const (
 	mostStrips  = 6
-	mostListed  = 20
+	mostListed  = 15
 	stripMargin = 3 * time.Hour
 	stripMost   = 48 * time.Hour
 )
@@ -114,7 +115,7 @@ func (b *builder) worstEpisodes() []lost.Episode {
 func (b *builder) episodes() block {
 	list := b.worstEpisodes()
 	t := table{ID: "episodes", Caption: "The worst missed episodes",
-		Head: []column{col("Zone"), col("When"), num("Missed (h)"), num("person-h"), num("Outdoors (°C)"), num("Indoors (°C)"), num("Limit (°C)"), num("CO2 (ppm)"), col("First cause and evidence")}}
+		Head: []column{col("Zone"), {Text: "When", Words: true}, num("Missed (h)"), num("person-h"), num("Outdoors (°C)"), num("Indoors (limit), °C"), num("CO2 (ppm)"), col("First cause and evidence")}}
 	for _, e := range list[:min(mostListed, len(list))] {
 		when, co2 := b.when(e), words.Number(e.CO2PPM, 0)
 		protected := b.rule.Protected(e.Zone)
@@ -123,7 +124,7 @@ func (b *builder) episodes() block {
 		}
 		why := words.Sentence(e.Cause.String())
 		if e.Evidence != "" && !protected {
-			why += " " + words.Sentence(b.w.Foreign(e.Evidence))
+			why += " " + words.Sentence(b.w.Foreign(beforeMeans(e.Evidence)))
 		}
 		if len(e.Contributing) > 0 {
 			var names []string
@@ -133,7 +134,7 @@ func (b *builder) episodes() block {
 			why += " Contributing: " + words.List(names, 0) + "."
 		}
 		t.Rows = append(t.Rows, row(b.w.Zone(e.Zone), when, words.HoursNumber(e.Hours), words.HoursNumber(e.PersonH),
-			words.Number(e.OutdoorTempC, 1), words.Number(e.IndoorTempC, 1), words.Number(e.ComfortHighC, 1), co2, why))
+			words.Number(e.OutdoorTempC, 1), words.Number(e.IndoorTempC, 1)+" ("+words.Number(e.ComfortHighC, 1)+")", co2, why))
 	}
 	t.Foot = []string{fmt.Sprintf("%s in all; those with most person-hours first. Temperatures and CO2 are means over the missed time. All are in episodes.csv.", words.Plural(len(list), "episode", "episodes"))}
 	if p, _ := b.rule.Count(); p > 0 {
@@ -142,24 +143,36 @@ func (b *builder) episodes() block {
 	return b.table(t)
 }
 
+// beforeMeans cuts from an evidence the mean conditions at its end, which have
+// columns of their own.
+func beforeMeans(evidence string) string {
+	before, _, _ := strings.Cut(evidence, "; outdoors ")
+	return before
+}
+
 // when writes the local start and end of an episode.
 func (b *builder) when(e lost.Episode) string {
 	from, to := b.in.Grid.Time(e.FromStep), b.in.Grid.Time(e.ToStep)
 	if site.DateOf(from) == site.DateOf(to) {
-		return from.Format("Mon 2 Jan 2006, 15:04") + " to " + to.Format("15:04")
+		return oneLine(from.Format("Mon 2 Jan 2006,")) + " " + oneLine(from.Format("15:04")+" to "+to.Format("15:04"))
 	}
-	return from.Format("Mon 2 Jan 2006, 15:04") + " to " + to.Format("Mon 2 Jan, 15:04")
+	return oneLine(from.Format("Mon 2 Jan 2006, 15:04")) + " to " + oneLine(to.Format("Mon 2 Jan, 15:04"))
 }
+
+// oneLine keeps a text from breaking at its spaces.
+func oneLine(s string) string { return strings.ReplaceAll(s, " ", "\u00a0") }
 
 func (b *builder) day(e lost.Episode) string {
-	return b.in.Grid.Time(e.FromStep).Format("Mon 2 Jan 2006")
+	return oneLine(b.in.Grid.Time(e.FromStep).Format("Mon 2 Jan 2006"))
 }
 
-// strips draws the worst episodes of zones that may be shown, one per zone, or
-// two in a building of few zones.
+func (b *builder) date(e lost.Episode) site.Date { return site.DateOf(b.in.Grid.Time(e.FromStep)) }
+
+// strips draws the worst episodes of zones that may be shown, one per zone (two
+// in a building of few zones) and at most two of one day.
 func (b *builder) strips() []block {
 	var out []block
-	perZone := map[int]int{}
+	perZone, perDay := map[int]int{}, map[site.Date]int{}
 	held := 0
 	most := 2
 	if len(b.in.Results.Summary.Zones) >= mostStrips {
@@ -170,10 +183,11 @@ func (b *builder) strips() []block {
 			held++
 			continue
 		}
-		if len(out) == mostStrips || perZone[e.Zone] == most {
+		if len(out) == mostStrips || perZone[e.Zone] == most || perDay[b.date(e)] == 2 {
 			continue
 		}
 		perZone[e.Zone]++
+		perDay[b.date(e)]++
 		out = append(out, b.strip(e, len(out)+1))
 	}
 	if len(out) > 0 {

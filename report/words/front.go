@@ -29,8 +29,10 @@ type Figure struct {
 // Worst is one of the worst zones.
 type Worst struct{ Zone, People, Text string }
 
-// Action is one thing to do first.
-type Action struct{ What, Size, People, Do, Look string }
+// Action is one thing to do first. What gives the hours with their bounds;
+// Size is the hours again with the person-hours, Load the people and
+// person-hours alone.
+type Action struct{ What, Size, Load, Do, Look string }
 
 // FrontOf makes page one.
 func FrontOf(in Input) Front {
@@ -99,15 +101,15 @@ func figures(in Input) []Figure {
 	unknown := func(label, meaning string) Figure {
 		return Figure{Label: label, Meaning: meaning, PerDay: Dash, PerYear: Dash, Span: s.Words}
 	}
-	suited := figure("Weather suitable", "occupied hours in which outdoor air could have kept the zone within its limits", b.Suited)
+	suited := figure("Weather suitable", "occupied hours with outdoor air within the limits", b.Suited)
 	if in.CanSay() == NoWeather || in.CanSay() == NoOpenings || in.CanSay() == NoOccupied {
 		suited = unknown(suited.Label, "not known: "+map[CanSay]string{NoWeather: "no measured weather", NoOpenings: "no zone has an opening", NoOccupied: "no occupied time in the period"}[in.CanSay()])
 	}
 	switch in.CanSay() {
 	case Full, NeverSuited:
 		return []Figure{suited,
-			figure("Ran open", "of those, hours with windows open and mechanical plant off", b.Achieved),
-			openAndWell(b, s, figure("Open, comfortable and fresh", "of those, hours inside the comfort limits and the CO2 limit", b.AchievedOK))}
+			figure("Ran open", "of those: windows open, mechanical plant off", b.Achieved),
+			openAndWell(b, s, figure("Open, comfortable and fresh", "of those: inside the comfort and CO2 limits", b.AchievedOK))}
 	case PlantOnly:
 		free := b.MechFreeShare
 		mech := Figure{Label: "No mechanical plant", Meaning: "share of the suitable hours in which no plant ran; windows are not logged", Span: s.Words, PerDay: ShareBetween(free.Value, free.Low, free.High), PerYear: Dash}
@@ -186,13 +188,20 @@ func worst(in Input, most int) (out []Worst, by string) {
 		}
 		out = append(out, Worst{Zone: in.Zone(z), People: People(in.Results.Hours.People[z]), Text: strings.Join(parts, "; ")})
 	}
-	return out, "hours that could have been open, times the people affected"
+	return out, "missed hours times people"
 }
 
 func action(in Input, f advice.Finding) Action {
 	a := Action{What: Sentence(in.Foreign(f.What)), Do: Sentence(in.Foreign(f.DoNext)), Look: Sentence(in.Foreign(f.CheckOnSite)),
 		Size: FindingSize(in, f)}
-	a.People = findingPeople(in, f)
+	var load []string
+	if p := findingPeople(in, f); p != "" {
+		load = append(load, p)
+	}
+	if p := personHours(f); p != "" {
+		load = append(load, p)
+	}
+	a.Load = strings.Join(load, ", ")
 	return a
 }
 
@@ -205,10 +214,17 @@ func FindingSize(in Input, f advice.Finding) string {
 	if len(f.Zones) > 1 {
 		t += " summed over " + Zones(len(f.Zones))
 	}
-	if known(f.PersonH) {
-		t += "; " + between(f.PersonH, f.PersonH*ratio(f.Low, f.Hours), f.PersonH*ratio(f.High, f.Hours), "person-hours", leastStep)
+	if p := personHours(f); p != "" {
+		t += "; " + p
 	}
 	return t
+}
+
+func personHours(f advice.Finding) string {
+	if !known(f.PersonH) {
+		return ""
+	}
+	return between(f.PersonH, f.PersonH*ratio(f.Low, f.Hours), f.PersonH*ratio(f.High, f.Hours), "person-hours", leastStep)
 }
 
 func ratio(a, b float64) float64 {

@@ -28,7 +28,7 @@ func Sure(in Input) []string {
 		out = append(out, "The biggest doubt: "+d)
 	}
 	if w := in.Results.Summary.WeightedBy; w != "" {
-		t := "Building figures are means over the zones with openings, weighted by " + w + "."
+		t := "Building figures: means over zones with openings, weighted by " + w + "."
 		if w == "equally" {
 			t = "Building figures count every zone with openings equally, since neither people nor floor areas are given."
 		}

@@ -91,9 +91,10 @@ func (m *maker) makeZone(z int) {
 	for s := range fz.State {
 		fz.State[s] = level
 		fz.State[s].KnownH = t.H[stateCols[s]]
-		fz.AirChange[s] = freshair.AirChange{MedianPerH: math.NaN(), LowPerH: math.NaN(), HighPerH: math.NaN(), FlowLs: math.NaN(), FlowLsPerson: math.NaN(), Events: 1, NotMeasurable: "1 decay, at least 5 are needed"}
+		fz.AirChange[s] = freshair.AirChange{MedianPerH: math.NaN(), LowPerH: math.NaN(), HighPerH: math.NaN(), FlowLs: math.NaN(), FlowLsPerson: math.NaN(),
+			OutdoorLowPerH: math.NaN(), OutdoorHighPerH: math.NaN(), AtUsualPeoplePPM: math.NaN(), Events: 1, NotMeasurable: "1 decay, at least 5 are needed"}
 	}
-	fz.AirChange[running.Open] = freshair.AirChange{MedianPerH: 3.1, LowPerH: 2.2, HighPerH: 4.6, FlowLs: 155, FlowLsPerson: 155 / people, Events: 14, Method: "decay after the room empties"}
+	fz.AirChange[running.Open] = freshair.AirChange{MedianPerH: 3.1, LowPerH: 2.2, HighPerH: 4.6, FlowLs: 155, FlowLsPerson: 155 / people, OutdoorLowPerH: 2.6, OutdoorHighPerH: 3.7, AtUsualPeoplePPM: 880, Events: 14, Method: "decay after the room empties"}
 	fz.All = level
 	for s := range fz.Curve {
 		for k := range r.FreshAir.CurvePPM {
@@ -162,9 +163,9 @@ func (m *maker) findings() []advice.Finding {
 	for i, what := range []string{"The plant starts by the clock at 07:00 although the weather suits", "The changeover limit shuts the windows at 19 °C outdoors, well below what people accept",
 		"A few core rooms get the whole floor closed", "Windows stay shut in one zone all year"} {
 		h := missed * (0.5 - 0.1*float64(i))
-		out = append(out, advice.Finding{ID: fmt.Sprintf("F%d", i+1), What: fmt.Sprintf("%s: about %.0f hours", what, h), Zones: ids, Hours: h, PersonH: h * 9, Low: h * 0.8, High: h * 1.25,
+		out = append(out, advice.Finding{ID: fmt.Sprintf("F%d", i+1), What: fmt.Sprintf("%s: about %.0f h (%.0f to %.0f h) in zones L1.01, L1.02, L1.03 and 8 more could have been open in the days audited", what, h, h*0.8, h*1.25), Zones: ids, Hours: h, PersonH: h * 9, Low: h * 0.8, High: h * 1.25,
 			Confidence: "fair", Evidence: advice.Evidence{Points: []string{"plant status", "outdoor temperature"}, Figure: "where-hours-went", TypicalDay: "2031-01-06", ContraryDay: "2031-01-09"},
-			RivalExplanations: []string{"a warm-up that is needed after cold nights"}, CheckOnSite: "Read the start time in the time programme of the unit", DoNext: "Start the plant by need, not by the clock",
+			RivalExplanations: []string{"a warm-up that is needed after cold nights"}, CheckOnSite: "Read the start time in the time programme of the unit, and see whether a thermostat, a furniture edge or a broken handle keeps the windows shut", DoNext: "Start the plant by need and not by the clock: release it only when rooms are outside their limits, half a degree at a time",
 			Who: "controls engineer", UndoIf: "rooms are below 20 °C at 09:00", Caution: "Keep the frost protection in force"})
 	}
 	if m.o.NoPeople {
