@@ -74,7 +74,7 @@ func (b *builder) checks() []block {
 		return texts("No check on the readings found anything to remove or to warn about.")
 	}
 	t := table{ID: "checks", Caption: "What the checks on the readings found, and what to do",
-		Head: []column{col("Check"), col("Points"), col("Time"), col("Effect"), col("Evidence"), col("What to do")}}
+		Head: []column{col("Check"), col("Points"), col("Time"), {Text: "Effect", Words: true}, col("Evidence"), col("What to do")}}
 	for _, c := range l.Checks[:min(mostChecks, len(l.Checks))] {
 		var names []string
 		for _, p := range c.Points {

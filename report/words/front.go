@@ -76,6 +76,8 @@ func Answer(in Input) string {
 		return t + ". No window contact is logged, so whether windows were open cannot be said."
 	}
 	t := "On an average working day the weather suited open mode (windows open, mechanical plant off) for " + day(b.Suited) + ". "
+	unknown := b.H[hours.CUnjudgedSuited]
+	muchUnknown := unknown > 0.1*b.Suited.Value
 	if b.Achieved.Value > 0 {
 		t += "The building ran open for " + day(b.Achieved) + " of it"
 	} else {
@@ -84,12 +86,16 @@ func Answer(in Input) string {
 	if b.Missed.Value > 0 {
 		t += " and could have done so for " + day(b.Missed) + " more"
 	} else {
-		t += "; no hour that could have been open was missed"
+		t += map[bool]string{true: "; no missed hour is known", false: "; no hour that could have been open was missed"}[muchUnknown]
 	}
 	if r := b.AchievedShare; known(r.Value) && b.Missed.Value > 0 {
 		t += ": it reached " + ShareBetween(r.Value, r.Low, r.High) + " of what was possible"
 	}
-	return t + "."
+	t += "."
+	if muchUnknown {
+		t += " For " + Duration(s.PerDay(unknown)) + " of it the windows or the plant are unknown."
+	}
+	return t
 }
 
 // figures are the three headline figures, or what stands in for them.

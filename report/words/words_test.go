@@ -8,6 +8,7 @@ import (
 
 	"pgregory.net/rapid"
 
+	"sashlog/analyze/hours"
 	"sashlog/report/internal/sample"
 	"sashlog/report/words"
 )
@@ -123,4 +124,20 @@ func TestSummary(t *testing.T) {
 		t.Error("a terminal gets plain spaces and no control characters")
 	}
 	t.Log("\n" + all)
+}
+
+// TestMuchUnknown: the answer says how much is unknown before anybody takes
+// the known hours for the whole.
+func TestMuchUnknown(t *testing.T) {
+	s := sample.Make(sample.Options{Days: 30, Zones: 3})
+	b := &s.Results.Summary.Building
+	b.H[hours.CUnjudgedSuited], b.Missed.Value = 0.6*b.Suited.Value, 0
+	in := words.Input{Site: s.Site, Criteria: s.Criteria, Results: s.Results}
+	if a := words.Answer(in); !strings.Contains(a, "no missed hour is known") || !strings.Contains(a, "are unknown.") {
+		t.Error(a)
+	}
+	b.H[hours.CUnjudgedSuited] = 0
+	if a := words.Answer(in); !strings.Contains(a, "no hour that could have been open was missed.") {
+		t.Error(a)
+	}
 }
