@@ -136,6 +136,11 @@ func (t *Track) decide(n *naming, imperial bool) {
 	}
 	t.Placement = b.placed
 	t.Doubts = append(t.Doubts, b.v.doubts...)
+	if g := n.glued(); g != "" && b.q == site.AirTemp {
+		t.Doubts = append(t.Doubts, fmt.Sprintf("what does %q say of it?", g))
+		t.Confidence = min(t.Confidence, MapAt-0.01)
+		return
+	}
 	switch {
 	case b.v.against != "":
 		t.Doubts = append(t.Doubts, b.v.against)

@@ -31,6 +31,7 @@ type Log struct {
 	IntervalS     int64
 
 	shapes   []*shape
+	lead     int  // words that all names begin with
 	bySource bool // points name the file, since several share a name of column
 	tracks   map[string]*Track
 }
@@ -136,6 +137,9 @@ func (p *Proposal) perPoint(list []*shape) {
 	f := list[0].file
 	at := path.Dir(f.Name) + "/"
 	name := path.Base(path.Dir(f.Name))
+	if name == "." || name == ".." {
+		name = "points"
+	}
 	if a := f.Archive(); a != "" {
 		at = f.Name[:strings.Index(f.Name, a)+len(a)]
 		name = strings.TrimSuffix(a, path.Ext(a))

@@ -5,11 +5,12 @@
 // open. The steps of [Scan], in the order of the files:
 //
 //  1. find.go: the files, and what each of them is
-//  2. shape.go, group.go: layout, keys and values of each; files to logs
+//  2. shape.go, column.go, group.go: layout, keys and values of each; files to logs
 //  3. read.go, track.go, order.go: one pass over the rows, into a [Track] per column
 //  4. word.go, lexicon.go, name.go: names to what they speak of
-//  5. quantity.go, unit.go, decide.go: names and values to a quantity
-//  6. owner.go, place.go: columns to zones, plant units and the site
+//  5. quantity.go, unit.go, fit.go, decide.go: names and values to a quantity
+//  6. owner.go, place.go, keyplace.go, zone.go, odd.go: columns to zones, plant
+//     units and the site
 //  7. occupied.go, serves.go, placement.go: what the data propose
 //  8. site.go, table.go, summary.go: the proposal as files and words
 package guess

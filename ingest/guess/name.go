@@ -68,6 +68,17 @@ func (n *naming) within(title string) *naming {
 	return &w
 }
 
+// glued is an unknown word grown together with a known one: the name of a room
+// in one language, "outdoor" in another.
+func (n *naming) glued() string {
+	for i := range n.tokens {
+		if n.tokens[i].glued {
+			return n.tokens[i].raw
+		}
+	}
+	return ""
+}
+
 func device(t *token) bool { return t.fold == "meter" || t.fold == "logger" || t.fold == "monitor" }
 
 func (n *naming) see(t *token, at int, factor float64) {

@@ -47,6 +47,11 @@ var (
 // placeIn reads the place out of the words of a name. stem is set for names of
 // files, where dates are passed over.
 func placeIn(name string, ts []token, stem bool) place {
+	return placeAfter(name, ts, stem, 0)
+}
+
+// placeAfter reads the place from the words after the first skip ones.
+func placeAfter(name string, ts []token, stem bool, skip int) place {
 	var p place
 	from, to := -1, -1
 	span := func(i int) {
@@ -62,7 +67,7 @@ func placeIn(name string, ts []token, stem bool) place {
 		return nil
 	}
 	adjacent := func(i int) bool { return i+1 < len(ts) && ts[i+1].from-ts[i].to <= 1 }
-	for i := 0; i < len(ts); i++ {
+	for i := skip; i < len(ts); i++ {
 		t := &ts[i]
 		if t.unit {
 			continue
@@ -139,7 +144,7 @@ func placeIn(name string, ts []token, stem bool) place {
 				p.floor, p.marked = t.fold, true
 				span(i)
 			case t.fold == "og" || t.fold == "obergeschoss" || t.fold == "etage" || t.fold == "stock":
-				if i > 0 && ts[i-1].number && p.floor == "" { // "1. OG"
+				if i > skip && ts[i-1].number && p.floor == "" { // "1. OG"
 					p.floor, p.marked = bare(ts[i-1].fold), true
 					p.room = ""
 					span(i - 1)
@@ -147,6 +152,9 @@ func placeIn(name string, ts []token, stem bool) place {
 				}
 			}
 		case t.is("room") && (n != nil && n.number || n != nil && len(n.fold) == 1 && !n.known()):
+			if p.marked && p.room != "" && p.floor == "" { // "R+1 Salle 02": the first was the floor
+				p.floor, p.room = p.room, ""
+			}
 			p.marked = true
 			span(i)
 			if roomNames[t.fold] && !genericIn[t.fold] {
@@ -207,6 +215,11 @@ func (p *place) number(ts []token, i int, span func(int)) {
 			p.index = t.fold
 			return
 		}
+		p.room = bare(t.fold)
+		span(i)
+	case !p.marked && len(p.room) <= 2 && len(t.fold) >= 3:
+		// "NAE1 FEC-101": the longer number is the room's.
+		p.words = append(p.words, p.room)
 		p.room = bare(t.fold)
 		span(i)
 	default:

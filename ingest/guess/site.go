@@ -234,8 +234,14 @@ func (p *Proposal) plantLines(y *yaml) {
 
 func (p *Proposal) logLines(y *yaml) {
 	y.line("# Where the logs are and how they are written, as found by looking at them.")
-	if len(p.Logs) == 0 {
-		y.line("logs: []   # TO FILL IN: no log was found")
+	readable := 0
+	for _, l := range p.Logs {
+		if !l.Undated {
+			readable++
+		}
+	}
+	if readable == 0 {
+		y.line("logs: []   # TO FILL IN: no log with dates was found")
 	} else {
 		y.line("logs:")
 	}
@@ -259,6 +265,9 @@ func (l *Log) write(y *yaml, p *Proposal) {
 	put("layout: %s   # %s", s.Layout, l.about())
 	if s.Sheet != "" {
 		put("sheet: %s", quote(s.Sheet))
+	}
+	if s.HeaderRow > 0 {
+		put("header_row: %d   # titles stand above the names of columns", s.HeaderRow)
 	}
 	if s.TimeColumn != "" && !l.Undated && !(s.Layout == site.PerPoint && s.TimeColumn == "1") {
 		put("time_column: %s", quote(s.TimeColumn))
@@ -346,7 +355,7 @@ func (p *Proposal) openLines(y *yaml) {
 		}
 	}
 	for _, t := range open {
-		y.line("#   open  %s / %s: %s", comment(t.Source), comment(t.Column), comment(strings.TrimPrefix(t.Note(), "left open")))
+		y.line("#   open  %s / %s: %s", comment(t.Source), comment(t.Column), comment(strings.TrimPrefix(strings.TrimPrefix(t.Note(), "left open, "), "left open: ")))
 	}
 	for _, l := range p.Logs {
 		for _, d := range l.Doubts {

@@ -296,3 +296,24 @@ func (t *Track) profile() [24]float64 {
 	}
 	return sum
 }
+
+// daily is the middle of the daily swings (highest less lowest quarter-hour),
+// NaN without whole days.
+func (t *Track) daily() float64 {
+	var swings []float64
+	for i := 0; i < len(t.bins.mean); {
+		to := min(len(t.bins.mean), i+int(96-(t.bins.from+int64(i))%96))
+		lo, hi, n := math.Inf(1), math.Inf(-1), 0
+		for _, v := range t.bins.mean[i:to] {
+			if v == v {
+				lo, hi = math.Min(lo, float64(v)), math.Max(hi, float64(v))
+				n++
+			}
+		}
+		if n > 72 {
+			swings = append(swings, hi-lo)
+		}
+		i = to
+	}
+	return half(swings)
+}

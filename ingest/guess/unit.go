@@ -114,7 +114,7 @@ func unitOf(name string, ts []token) (unit, bool) {
 		if !ok {
 			continue
 		}
-		if k == 1 && len(joined) == 1 && !speaks(ts[:len(ts)-1]) {
+		if k == 1 && len(joined) == 1 && !measures(ts[:len(ts)-1], u.dim) {
 			continue // "R101 C" may be anything
 		}
 		u.sure = min(u.sure, 0.9)
@@ -124,6 +124,16 @@ func unitOf(name string, ts []token) (unit, bool) {
 		return u, true
 	}
 	return unit{}, false
+}
+
+// measures reports whether words speak of what a unit measures.
+func measures(ts []token, dim string) bool {
+	for i := range ts {
+		if dim == "temp" && ts[i].is("temp") || dim == "power" && ts[i].is("power") {
+			return true
+		}
+	}
+	return false
 }
 
 // markUnit marks the tokens from a byte of the name on.

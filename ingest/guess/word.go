@@ -12,6 +12,7 @@ import (
 // token is one word or number of a name.
 type token struct {
 	raw, fold string
+	glued     bool // unknown, but grown together with a known word
 	number    bool
 	from, to  int // bytes of the name
 	tags      []tag
@@ -124,6 +125,17 @@ func joinSpecial(in []token, name string) []token {
 			join(1, "setpoint")
 		case fold == "dew" && (next(1) == "point" || next(1) == "pt"):
 			join(1, "dewpoint")
+		case fold == "air" && next(1) == "handling" && next(2) == "unit":
+			join(2, "ahu")
+		case fold == "fan" && next(1) == "coil" && next(2) == "unit":
+			join(2, "fcu")
+		case fold == "fan" && next(1) == "coil":
+			join(1, "fcu")
+		case (fold == "rooftop" || fold == "roof") && next(1) == "unit", fold == "roof" && next(1) == "top":
+			join(1, "rtu")
+			if next(1) == "unit" {
+				i++
+			}
 		case fold == "carbon" && next(1) == "dioxide":
 			join(1, "co2")
 		case fold == "zn" && next(1) == "t" || fold == "rm" && next(1) == "t" || fold == "zone" && next(1) == "t":
@@ -149,8 +161,8 @@ func meanings(t token) []token {
 	if parts := cut(t.fold); parts != nil {
 		var out []token
 		for _, p := range parts {
-			e, _ := lookup(p)
-			out = append(out, token{raw: p, fold: p, from: t.from, to: t.to, tags: e.tags, strength: min(e.strength, 0.95)})
+			e, known := lookup(p)
+			out = append(out, token{glued: !known, raw: p, fold: p, from: t.from, to: t.to, tags: e.tags, strength: min(e.strength, 0.95)})
 		}
 		return out
 	}
