@@ -159,7 +159,7 @@ func small(t testing.TB, logs map[string]string, more string) *site.Site {
 	files := map[string]string{
 		"site.yaml": `site: {name: Small, time_zone: Europe/Zurich}
 zones:
-  - {id: Z1, people: 4, openings: none}
+  - {id: Z1, people: 4, openings: outdoors}
 occupancy: {times: [{days: mon-fri, from: "08:00", to: "18:00"}]}
 logs:
   - {name: log, path: "log*.csv", layout: wide, time_column: time, date_order: ymd, clock: utc}

@@ -125,6 +125,10 @@ func (s *series) within(v float64) bool {
 	if v > s.low-1e-3 && v < s.high+1e-3 {
 		return true
 	}
+	if s.counts[reading.OutOfRange] == 0 {
+		s.outLow, s.outHigh = v, v
+	}
+	s.outLow, s.outHigh = min(s.outLow, v), max(s.outHigh, v)
 	s.counts[reading.OutOfRange]++
 	return false
 }

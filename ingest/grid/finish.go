@@ -29,6 +29,8 @@ type Facts struct {
 	Resolution float64
 	// ConflictsUTC are the first instants with different values.
 	ConflictsUTC []int64
+	// OutLow and OutHigh bound the values that were out of range.
+	OutLow, OutHigh float64
 	// Early counts readings that came after a later one.
 	Early int64
 }
@@ -149,7 +151,7 @@ func (b *Builder) Finish(f Frame) *Built {
 		Tally: &Tally{grid: g, ledger: b.ledger, Readings: make([][]uint16, len(b.series))}}
 	for i := range b.series {
 		s, l := &b.series[i], &b.ledger.Points[i]
-		out.Facts[i] = Facts{Histogram: s.hist, Runs: s.runs, Resolution: float64(s.resolution) / unit, ConflictsUTC: s.conflicts, Early: s.early}
+		out.Facts[i] = Facts{Histogram: s.hist, Runs: s.runs, Resolution: float64(s.resolution) / unit, ConflictsUTC: s.conflicts, OutLow: s.outLow, OutHigh: s.outHigh, Early: s.early}
 		l.IntervalS, l.HoldS, l.Gaps, l.LongestGapS = s.interval, s.holdS, s.gaps, s.longestS
 		l.Min, l.Max, l.Mean = math.NaN(), math.NaN(), math.NaN()
 		if s.n == 0 {

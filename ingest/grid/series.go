@@ -34,16 +34,17 @@ type instant struct {
 // joined, the first ones wait until the usual interval is known, single spikes
 // are taken out, and what is left holds until the next.
 type series struct {
-	point     *site.Point
-	lastT     int64 // as it came, to see disorder
-	low, high float64
-	fix       site.Conversion // corrects a mistaken unit; Factor 0: none
-	hist      *Histogram
-	ledger    *reading.PointLedger
-	counts    [reading.NumReasons]int64
-	conflicts []int64 // the first few instants, for the evidence
-	early     int64   // readings that came before an earlier one
-	dropped   bool    // disordered: the first pass only counts
+	point           *site.Point
+	lastT           int64 // as it came, to see disorder
+	low, high       float64
+	fix             site.Conversion // corrects a mistaken unit; Factor 0: none
+	hist            *Histogram
+	ledger          *reading.PointLedger
+	counts          [reading.NumReasons]int64
+	conflicts       []int64 // the first few instants, for the evidence
+	outLow, outHigh float64 // of values out of range
+	early           int64   // readings that came before an earlier one
+	dropped         bool    // disordered: the first pass only counts
 
 	pending instant // t == noTime when empty
 	first   []instant

@@ -39,8 +39,10 @@ func Rule(p *site.Point) grid.Rule {
 		r.Spike, r.FrozenS = 8, frozenS
 	case site.OutdoorTemp, site.OutdoorDewPoint:
 		r.Spike, r.FrozenS = 10, frozenS
-	case site.Humidity, site.OutdoorHumidity:
+	case site.Humidity:
 		r.Spike, r.FrozenS = 30, frozenS
+	case site.OutdoorHumidity:
+		r.Spike, r.FrozenS = 50, frozenS // a shower wets the air quickly
 	case site.CO2:
 		r.Spike, r.FrozenS = 1500, frozenS
 	case site.SurfaceTemp, site.ReturnAirTemp, site.MixedAirTemp, site.SupplyAirTemp, site.WindSpeed, site.OutdoorCO2:

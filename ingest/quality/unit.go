@@ -86,6 +86,7 @@ func tempUnit(s *site.Site, i int, h *grid.Histogram, histogram func(int) *grid.
 	} else if declared == (site.Conversion{}) || declared == (site.Conversion{Factor: 1}) {
 		tries = append(tries, candidate{"°F", "°C", fahrenheit}, candidate{"K", "°C", kelvin})
 	}
+	var weak *reading.Check
 	at := func(c site.Conversion, v float64) float64 { return c.Factor*v + c.Offset }
 	for _, t := range tries {
 		m := at(t.c, median)
@@ -111,9 +112,12 @@ func tempUnit(s *site.Site, i int, h *grid.Histogram, histogram func(int) *grid.
 		if usual && ((impossible && !against) || bySiblings) {
 			return &Fix{Conversion: t.c, Check: reading.Check{Evidence: evidence, DoNext: do}}, nil
 		}
-		if impossible {
-			return nil, &reading.Check{Evidence: evidence, DoNext: "check the unit of this point and write it in points.csv"}
+		if impossible && weak == nil {
+			weak = &reading.Check{Evidence: evidence, DoNext: "check the unit of this point and write it in points.csv"}
 		}
+	}
+	if weak != nil {
+		return nil, weak
 	}
 	if share := h.ShareBetween(55, 95); declaredCelsius(declared) && indoorAir(q) && share > 0.1 && share < 0.9 {
 		return nil, &reading.Check{Evidence: fmt.Sprintf("%.0f %% of the readings lie between 55 and 95 and look like °F, the others like °C", 100*share),

@@ -58,3 +58,12 @@ func span(fromUTC, toUTC int64, loc *time.Location) string {
 func warn(kind reading.CheckKind, zone int, points []int, evidence, do string) reading.Check {
 	return reading.Check{Kind: kind, Points: points, Zone: zone, Effect: reading.EffectWarned, Evidence: evidence, DoNext: do}
 }
+
+// unitWords is how a canonical unit is printed; differences of temperature are
+// in kelvin but read well enough in degrees.
+func unitWords(unit string) string {
+	if unit == "degC" {
+		return "°C"
+	}
+	return unit
+}
