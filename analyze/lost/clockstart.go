@@ -268,6 +268,13 @@ func (e *evidence) clocked(z int, r *run) bool {
 	return p.Found && (p.RoundTheClock || e.near(r, p))
 }
 
+// beforeHold reports whether a step lies before the time clocked runs last to
+// at least, with ten minutes of grace for the stop itself.
+func (e *evidence) beforeHold(z, i int) bool {
+	p := &e.zones[z].Clock
+	return p.RoundTheClock || p.HoldMinute < 0 || int(e.cal.MinuteOfDay[i]) < p.HoldMinute+10
+}
+
 func clockTest() test {
 	return test{
 		Test: Test{ClockStart, "the plant had run without a stop since a start within 5 min of a clock time at which it also starts on at least half of the working days " +
@@ -281,22 +288,18 @@ func clockExplains(e *evidence, s *spell) verdict {
 	if !p.Found {
 		return nothing
 	}
-	by, began := 0, -1
-	e.countRuns(s, func(r *run, steps []int) {
-		if !e.clocked(s.zone, r) {
-			return
+	runs, began := e.zones[s.zone].runs, -1
+	by := explains(s, func(i int) bool {
+		r := runAt(runs, i)
+		if r == nil || !e.clocked(s.zone, r) || !e.beforeHold(s.zone, i) {
+			return false
 		}
-		for _, i := range steps {
-			// Ten minutes of grace for the stop itself.
-			if p.RoundTheClock || p.HoldMinute < 0 || int(e.cal.MinuteOfDay[i]) < p.HoldMinute+10 {
-				by++
-				began = r.from
-			}
-		}
+		began = r.from
+		return true
 	})
-	v := verdict{share: float64(by) / float64(len(s.missed)), led: -1}
+	v := verdict{by: by, led: -1}
 	switch {
-	case by == 0:
+	case by == nil:
 	case p.RoundTheClock:
 		v.why = "the plant ran round the clock, whatever the weather"
 	default:

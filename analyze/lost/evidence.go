@@ -24,6 +24,7 @@ type zoneEvidence struct {
 	released []float32
 	setpoint []float32
 	units    []int // serving it
+	peers    []int // see peersOf
 }
 
 // unitEvidence is one plant unit.
@@ -31,7 +32,10 @@ type unitEvidence struct {
 	on    []uint8 // plant state per step, running.PlantUnknown where missing
 	runs  []run
 	zones []int // served
-	calls []call
+	calls []Call
+	// calling[k] marks the steps at which the k-th served zone calls.
+	calling [][]bool
+	limit   LimitPattern
 }
 
 // run is a stretch of steps with the plant running. Unknown steps neither
@@ -108,24 +112,6 @@ func (e *evidence) gatherUnits() {
 // steps turns minutes into steps, rounded to the nearest.
 func (e *evidence) steps(minutes float64) int {
 	return int(math.Round(minutes * 60 / float64(e.in.Grid.StepS)))
-}
-
-// countRuns counts the missed steps of a spell in each plant run it touches.
-func (e *evidence) countRuns(s *spell, f func(r *run, steps []int)) {
-	runs := e.zones[s.zone].runs
-	for k := 0; k < len(s.missed); {
-		r := runAt(runs, s.missed[k])
-		if r == nil {
-			k++
-			continue
-		}
-		to := k
-		for to < len(s.missed) && s.missed[to] < r.to {
-			to++
-		}
-		f(r, s.missed[k:to])
-		k = to
-	}
 }
 
 // quantile is Hyndman & Fan type 7 of unsorted values, NaN of none.

@@ -8,153 +8,155 @@ import (
 	"sashlog/configs/site"
 )
 
-// call is the temperature at which a zone seems to call for its unit: where
-// it is warmest while the unit is off, and where the unit keeps starting.
-type call struct {
-	aboveC float64 // NaN when the zone does not seem to call
-	// share of the unit's starts with the zone so warm.
-	share float64
+// UnitPattern is what the whole period shows of one plant unit.
+type UnitPattern struct {
+	ID    string
+	Calls []Call
 }
 
-// Rules of an inferred call, our assumptions.
-const (
-	callStarts  = 8    // starts of the unit needed
-	callCeiling = 0.95 // quantile of the zone's temperature while the unit is off
-	callShare   = 0.3  // of the starts
-	startWithin = 10   // minutes between the unit's and the zone's start
-)
+// Call is a zone that a unit seems to follow: the unit starts when the zone
+// passes AboveC.
+type Call struct {
+	Zone   int
+	AboveC float64 // NaN when the zone does not seem to call
+	// Passed counts the times it passed that temperature while the unit was
+	// off in occupied time, Followed those the unit started upon.
+	Passed, Followed int
+	// MarginK is how far below the zone's comfort limit that lies (median at
+	// those times, or over occupied time for a logged set-point), NaN unknown.
+	MarginK float64
+	// Logged: AboveC is the mean of the zone's logged cooling set-point.
+	Logged bool
+}
 
-// callsOf infers which of a unit's zones call for it.
-func (e *evidence) callsOf(u int) []call {
+// callsOf settles which of a unit's zones call for it, and when. Rooms beside
+// each other warm up together, so the zone the unit follows most often is taken
+// first, and starts that it explains count for no other.
+func (e *evidence) callsOf(u int) {
 	in, unit := e.in, &e.units[u]
-	out := make([]call, len(unit.zones))
-	starts := e.demandStarts(u)
-	for k, z := range unit.zones {
-		out[k].aboveC = math.NaN()
-		if len(starts) < callStarts {
-			continue
-		}
-		var offC []float64
-		for i := in.Grid.PeriodFrom; i < in.Grid.PeriodTo; i++ {
-			if unit.on[i] == uint8(site.PlantOff) && in.Running.Zones[z].Occupied[i] == running.Occupied {
-				if c := at(in.Indoor[z].OperativeC, i); !math.IsNaN(c) {
-					offC = append(offC, c)
-				}
-			}
-		}
-		ceiling := quantile(offC, callCeiling)
-		hit := 0
-		for _, s := range starts {
-			if e.beforeC(z, s) >= ceiling-0.2 {
-				hit++
-			}
-		}
-		out[k].share = float64(hit) / float64(len(starts))
-		if out[k].share >= callShare {
-			out[k].aboveC = ceiling - 0.2
-		}
-	}
-	return out
-}
-
-// demandStarts lists the starts of a unit in occupied time that are not for
-// heat, nor at a clock time.
-func (e *evidence) demandStarts(u int) []int {
-	unit := &e.units[u]
-	var out []int
+	free := make([]bool, in.Grid.N) // starts that no call explains yet
 	for k := range unit.runs {
 		r := &unit.runs[k]
-		if !r.known || r.from < e.in.Grid.PeriodFrom || r.from >= e.in.Grid.PeriodTo || unit.on[r.from] == uint8(site.PlantHeat) {
+		free[r.from] = r.known && unit.on[r.from] != uint8(site.PlantHeat)
+	}
+	started := append([]bool(nil), free...)
+	all := make([][]passing, len(unit.zones))
+	open := make([]bool, len(unit.zones))
+	for k, z := range unit.zones {
+		unit.calls = append(unit.calls, Call{Zone: z, AboveC: math.NaN(), MarginK: math.NaN()})
+		if e.zones[z].setpoint != nil {
+			e.loggedCall(&unit.calls[k])
 			continue
 		}
-		occupied, clocked := false, false
-		for _, z := range unit.zones {
-			occupied = occupied || e.in.Running.Zones[z].Occupied[r.from] == running.Occupied
-			clocked = clocked || e.clocked(z, r)
+		open[k] = true
+		all[k] = e.passings(in.Indoor[z].OperativeC, true, func(i int) bool {
+			return unit.on[i] == uint8(site.PlantOff) && in.Running.Zones[z].Occupied[i] == running.Occupied
+		})
+	}
+	for {
+		best, most := -1, crossing{}
+		for k := range unit.zones {
+			if !open[k] {
+				continue
+			}
+			if c := bestLevel(all[k], true, func(p passing) outcome { return e.callOutcome(p, started, free) }); c.followed > most.followed {
+				best, most = k, c
+			}
 		}
-		if occupied && !clocked {
-			out = append(out, r.from)
+		if best < 0 {
+			break
+		}
+		open[best] = false
+		e.inferredCall(&unit.calls[best], most)
+		for i := range free {
+			free[i] = free[i] && !e.touches(unit.zones[best], i, most.levelC)
+		}
+	}
+	for k, z := range unit.zones {
+		c, set := &unit.calls[k], e.zones[z].setpoint
+		unit.calling = append(unit.calling, e.latch(in.Indoor[z].OperativeC, func(i int) float64 {
+			if c.Logged {
+				return at(set, i)
+			}
+			return c.AboveC
+		}))
+	}
+}
+
+// touches reports whether a zone was as warm as when it calls, around a start.
+func (e *evidence) touches(z, start int, levelC float64) bool {
+	for i := start - e.steps(crossWithinMin); i <= start+1; i++ {
+		if at(e.in.Indoor[z].OperativeC, i) >= levelC-callTouchK {
+			return true
+		}
+	}
+	return false
+}
+
+// callOutcome says whether the unit started upon a passing, and whether that
+// start is already explained.
+func (e *evidence) callOutcome(p passing, started, free []bool) outcome {
+	out := unanswered
+	for from, to := e.responses(p); from <= to; from++ {
+		switch {
+		case free[from]:
+			return answeredOnce
+		case started[from]:
+			out = explainedElse
 		}
 	}
 	return out
 }
 
-// beforeC is a zone's mean temperature in the quarter of an hour up to the
-// step a unit started in, NaN when unknown.
-func (e *evidence) beforeC(z, step int) float64 {
-	var before []int
-	for i := max(0, step-e.steps(15)); i <= step; i++ {
-		before = append(before, i)
+func (e *evidence) inferredCall(c *Call, x crossing) {
+	c.AboveC, c.Passed, c.Followed = x.levelC, x.passed, x.followed
+	var margin []float64
+	for _, i := range x.at {
+		margin = append(margin, e.limitBefore(c.Zone, i-1)-x.levelC)
 	}
-	return meanAt(e.in.Indoor[z].OperativeC, before)
+	c.MarginK = quantile(finite(margin), 0.5)
 }
 
-// fewRooms judges the start of a unit: the share of the people it serves that
-// were too warm or whose room called, and the zone that led (-1 without).
-func (e *evidence) fewRooms(u, start int) (share, warmShare float64, led int, leadC float64) {
-	unit := &e.units[u]
-	led = -1
-	var all, warm, calling, most float64
-	leads := false // a zone outside comfort outranks one that merely calls
-	for k, z := range unit.zones {
-		people := e.in.Site.Zones[z].People
-		if !e.peopleGiven(u) {
-			people = 1
-		}
-		c := e.beforeC(z, start)
-		if math.IsNaN(c) {
-			continue
-		}
-		all += people
-		over := c - e.limitBefore(z, start)
-		above := c - e.callAbove(z, unit.calls, k, start)
-		switch {
-		case over > 0:
-			warm += people
-			calling += people
-			if !leads || over > most {
-				led, most, leadC, leads = z, over, c, true
-			}
-		case above >= 0:
-			calling += people
-			// Of several that call, the one the unit follows most often.
-			weight := 1.0
-			if unit.calls != nil {
-				weight += unit.calls[k].share
-			}
-			if !leads && weight > most {
-				led, most, leadC = z, weight, c
-			}
+func (e *evidence) loggedCall(c *Call) {
+	set := e.zones[c.Zone].setpoint
+	c.Logged, c.AboveC = true, meanKnown(set)
+	var margin []float64
+	for i := e.in.Grid.PeriodFrom; i < e.in.Grid.PeriodTo; i++ {
+		if e.in.Running.Zones[c.Zone].Occupied[i] == running.Occupied {
+			margin = append(margin, e.limitBefore(c.Zone, i)-at(set, i))
 		}
 	}
-	if all == 0 {
-		return math.NaN(), math.NaN(), -1, math.NaN()
-	}
-	return calling / all, warm / all, led, leadC
+	c.MarginK = quantile(finite(margin), 0.5)
 }
 
-// limitBefore is a zone's comfort limit just before a start, before the limit
-// itself changes over.
-func (e *evidence) limitBefore(z, start int) float64 {
-	l := &e.in.Exceedance.Zones[z].Limits
-	for _, c := range []float64{at(l.HighC, start-1), at(l.HighC, start), at(l.UpperOfDayC, start)} {
-		if !math.IsNaN(c) {
+func meanKnown(series []float32) float64 {
+	sum, n := 0.0, 0.0
+	for _, v := range series {
+		if !math.IsNaN(float64(v)) {
+			sum, n = sum+float64(v), n+1
+		}
+	}
+	return sum / n
+}
+
+func finite(values []float64) []float64 {
+	var out []float64
+	for _, v := range values {
+		if !math.IsNaN(v) {
+			out = append(out, v)
+		}
+	}
+	return out
+}
+
+// callOf is a zone's call for a unit.
+func (e *evidence) callOf(u, z int) Call {
+	for _, c := range e.units[u].calls {
+		if c.Zone == z {
 			return c
 		}
 	}
-	return math.NaN()
-}
-
-// callAbove is the temperature above which a zone calls: its logged cooling
-// set-point, else the inferred one, NaN when it does not seem to call.
-func (e *evidence) callAbove(z int, calls []call, k, start int) float64 {
-	if c := at(e.zones[z].setpoint, start); !math.IsNaN(c) {
-		return c
-	}
-	if calls == nil {
-		return math.NaN()
-	}
-	return calls[k].aboveC
+	return Call{Zone: z, AboveC: math.NaN(), MarginK: math.NaN()}
 }
 
 // setpointOf is a zone's logged cooling set-point, nil when there is none.
@@ -168,6 +170,71 @@ func setpointOf(in *Input, z int) []float32 {
 	return nil
 }
 
+// asking is who asked for a unit at a step.
+type asking struct {
+	share float64 // of the people it serves: too warm, or in a room that calls
+	warm  float64 // of the people it serves: too warm
+	led   int     // the zone that asked most, -1 when none did
+	early int     // the zone with most people that calls well below its comfort limit, -1 when none does
+}
+
+// askingFor weighs the zones of a unit at a step by their usual people, equally
+// where any of those is not given. Zones whose temperature is unknown are left
+// out. A zone outside comfort leads before one that merely calls; of several,
+// the one furthest outside, or the one the unit follows most often.
+func (e *evidence) askingFor(u, i int) asking {
+	unit := &e.units[u]
+	a := asking{led: -1, early: -1}
+	earlyPeople := 0.0
+	all, most, outside := 0.0, math.Inf(-1), false
+	given := e.peopleGiven(u)
+	for k, z := range unit.zones {
+		t := at(e.in.Indoor[z].OperativeC, i)
+		if math.IsNaN(t) {
+			continue
+		}
+		people := 1.0
+		if given {
+			people = e.in.Site.Zones[z].People
+		}
+		all += people
+		over := t - e.limitBefore(z, i)
+		switch {
+		case over > 0:
+			a.warm += people
+			a.share += people
+			if !outside || over > most {
+				a.led, most, outside = z, over, true
+			}
+		case unit.calling[k][i]:
+			a.share += people
+			if unit.calls[k].MarginK >= indoorMarginK && people > earlyPeople {
+				a.early, earlyPeople = z, people
+			}
+			if rank := float64(unit.calls[k].Followed); !outside && rank > most {
+				a.led, most = z, rank
+			}
+		}
+	}
+	if all == 0 {
+		return asking{led: -1, early: -1, share: math.NaN(), warm: math.NaN()}
+	}
+	a.share, a.warm = a.share/all, a.warm/all
+	return a
+}
+
+// limitBefore is a zone's comfort limit just before a step, before the limit
+// itself changes over.
+func (e *evidence) limitBefore(z, i int) float64 {
+	l := &e.in.Exceedance.Zones[z].Limits
+	for _, c := range []float64{at(l.HighC, i-1), at(l.HighC, i), at(l.UpperOfDayC, i)} {
+		if !math.IsNaN(c) {
+			return c
+		}
+	}
+	return math.NaN()
+}
+
 func (e *evidence) peopleGiven(u int) bool {
 	for _, z := range e.units[u].zones {
 		if math.IsNaN(e.in.Site.Zones[z].People) {
@@ -179,50 +246,83 @@ func (e *evidence) peopleGiven(u int) bool {
 
 func fewRoomTest() test {
 	return test{
-		Test: Test{FewRoom, "the plant unit started while only a small share of the people it serves (common practice: 30 %) was too warm or sat in a room that calls for cooling, " +
-			"and at least one did; a room calls above its logged cooling set-point, or as warm as it hardly gets without the unit starting (in 30 % of 8 or more starts)", ourAssumption},
+		Test: Test{FewRoom, "the plant unit started, and kept running (also after a start by the clock), while only a small share of the people it serves (common practice: 30 %) was too warm " +
+			"or sat in a room that calls for cooling, and at least one room did; a room calls from its logged cooling set-point, or from the temperature whose passing the unit followed " +
+			"within a quarter of an hour on at least half of six or more occasions and at most half as often a kelvin below, until it has cooled by 1 K", ourAssumption},
 		explain: fewRoomExplains,
 	}
 }
 
 func fewRoomExplains(e *evidence, s *spell) verdict {
-	by := 0
-	v := nothing
-	e.countRuns(s, func(r *run, steps []int) {
-		if !r.known || e.clocked(s.zone, r) {
-			return
+	me := &e.in.Running.Zones[s.zone]
+	led := map[int]int{}
+	example := map[int]string{}
+	by := explains(s, func(i int) bool {
+		if me.State[i] != running.Mech && me.State[i] != running.Both {
+			return false
 		}
 		for _, u := range e.zones[s.zone].units {
-			unit := &e.units[u]
-			start := e.unitStart(u, r.from)
-			if start < 0 || len(unit.zones) < 2 || unit.on[start] == uint8(site.PlantHeat) {
+			a, ok := e.fewRooms(u, i)
+			if !ok {
 				continue
 			}
-			share, warm, led, leadC := e.fewRooms(u, start)
-			if led < 0 || !(share < e.in.Criteria.FewRoomShare) {
-				continue
+			if led[a.led] == 0 {
+				example[a.led] = fmt.Sprintf("%s ran while %s of the people it serves were too warm; zone %s led with %.1f °C", e.in.Site.Plant[u].ID, percent(a.warm),
+					e.in.Site.Zones[a.led].ID, at(e.in.Indoor[a.led].OperativeC, i)) + e.callWords(u, a.led)
 			}
-			by += len(steps)
-			v.led = led
-			name := e.in.Site.Plant[u].ID
-			lead := e.in.Site.Zones[led].ID
-			v.why = fmt.Sprintf("%s started at %s while %s of the people it serves were too warm; %s led at %.1f °C", name,
-				clock(int(e.cal.MinuteOfDay[start])), percent(warm), lead, leadC)
-			return
+			led[a.led]++
+			return true
 		}
+		return false
 	})
-	v.share = float64(by) / float64(len(s.missed))
+	v := verdict{by: by, led: -1}
+	for z := range e.zones { // in order, so that ties go the same way everywhere
+		if led[z] > led[v.led] {
+			v.led = z
+		}
+	}
+	v.why = example[v.led]
 	return v
 }
 
-// unitStart is the start of the unit that a zone's plant run followed, -1 when
-// it started at another time.
-func (e *evidence) unitStart(u, zoneStart int) int {
-	within := e.steps(startWithin)
-	for i := zoneStart; i >= max(0, zoneStart-within); i-- {
-		if r := runAt(e.units[u].runs, i); r != nil && r.known && r.from >= zoneStart-within && r.from <= zoneStart {
-			return r.from
+// callWords says how surely a unit follows a zone.
+func (e *evidence) callWords(u, z int) string {
+	switch c := e.callOf(u, z); {
+	case math.IsNaN(c.AboveC):
+		return ""
+	case c.Logged:
+		return fmt.Sprintf(" (cooling set-point %.1f °C)", c.AboveC)
+	default:
+		return fmt.Sprintf(" (it starts when that zone passes %.1f °C: %d of %s)", c.AboveC, c.Followed, count(c.Passed, "time", "times"))
+	}
+}
+
+// cools reports whether a unit runs at a step, and not to heat.
+func (e *evidence) cools(u, i int) bool {
+	s := e.units[u].on[i]
+	return s != running.PlantUnknown && s != uint8(site.PlantOff) && s != uint8(site.PlantHeat)
+}
+
+// fewRooms reports whether few rooms held a unit at a step: someone asked, but
+// few, and no more at the unit's start.
+func (e *evidence) fewRooms(u, i int) (asking, bool) {
+	unit := &e.units[u]
+	if len(unit.zones) < 2 || !e.cools(u, i) {
+		return asking{}, false
+	}
+	a := e.askingFor(u, i)
+	if a.led < 0 || !(a.share < e.in.Criteria.FewRoomShare) {
+		return a, false
+	}
+	r := runAt(unit.runs, i)
+	if r == nil || !r.known || r.from < e.in.Grid.PeriodFrom {
+		return a, true
+	}
+	for _, z := range unit.zones {
+		if e.clocked(z, r) {
+			return a, true
 		}
 	}
-	return -1
+	at := e.askingFor(u, r.from)
+	return a, !(at.share >= e.in.Criteria.FewRoomShare)
 }

@@ -42,15 +42,38 @@ type test struct {
 	explain func(e *evidence, s *spell) verdict
 }
 
-// verdict is what a test says about one spell: the share of its missed steps
-// explained, a sentence with numbers, and the leading zone (-1 without).
+// verdict is what a test says about one spell: which of its missed steps it
+// explains, a sentence with numbers, and the leading zone (-1 without).
 type verdict struct {
-	share float64
-	why   string
-	led   int
+	by  []bool // nil or as long as spell.missed
+	why string
+	led int
 }
 
 var nothing = verdict{led: -1}
+
+// explains marks the missed steps for which is is true; nothing when none is.
+func explains(s *spell, is func(step int) bool) []bool {
+	by, any := make([]bool, len(s.missed)), false
+	for k, i := range s.missed {
+		by[k] = is(i)
+		any = any || by[k]
+	}
+	if !any {
+		return nil
+	}
+	return by
+}
+
+func marked(by []bool) int {
+	n := 0
+	for _, b := range by {
+		if b {
+			n++
+		}
+	}
+	return n
+}
 
 // tests in the order they are asked. The changeover limit is asked for twice:
 // outdoors first, indoors only after few-room changeovers, since the room that
@@ -68,17 +91,24 @@ func Find(in Input) *Result {
 	for _, t := range asked {
 		r.Tests = append(r.Tests, t.Test)
 	}
-	r.Tests = append(r.Tests, Test{Unexplained, "none of the tests explains at least half of the episode", ourAssumption})
+	r.Tests = append(r.Tests, Test{Unexplained, "the tests explain less than half of the episode between them", ourAssumption})
 	for z := range in.Site.Zones {
 		var seconds [NumCauses]int64
 		var alone, anyOf, byCause [NumCauses]float64
 		led := map[int]float64{}
 		for _, s := range spellsOf(&in, z) {
-			ep, explained := e.judge(asked, s)
+			ep, x := e.judge(asked, s)
 			missed := int64(len(s.missed)) * in.Grid.StepS
 			h := float64(missed) / 3600
 			seconds[ep.Cause] += missed
-			explained.bounds(ep.Cause, h, &alone, &anyOf)
+			for c := range x.any {
+				if Cause(c) == ep.Cause {
+					alone[c] += h * x.alone[c]
+					anyOf[c] += h
+				} else {
+					anyOf[c] += h * x.any[c]
+				}
+			}
 			if ep.Cause == FewRoom {
 				led[ep.Led] += h
 			}
@@ -97,59 +127,92 @@ func Find(in Input) *Result {
 		r.AloneH, r.AnyH, r.LedH = append(r.AloneH, alone), append(r.AnyH, anyOf), append(r.LedH, led)
 		r.Patterns = append(r.Patterns, e.zones[z].Pattern)
 	}
+	for u := range e.units {
+		r.Units = append(r.Units, UnitPattern{ID: in.Site.Plant[u].ID, Calls: e.units[u].calls})
+	}
 	return r
 }
 
-// shares are what each cause explains of one spell.
-type shares [NumCauses]float64
+// shares say what each cause explains of one spell: of its missed steps, the
+// share explained at all, by no other cause, and by no cause before it.
+type shares struct{ any, alone, first [NumCauses]float64 }
 
-// bounds adds a spell's hours to what mending each cause would bring at least
-// and at most: at least what it explains where nothing else would do as well,
-// at most what it explains anywhere, the whole spell where it took it.
-func (x *shares) bounds(taken Cause, h float64, alone, anyOf *[NumCauses]float64) {
-	if taken == Unexplained {
-		alone[taken] += h
-		anyOf[taken] += h
-		return
-	}
-	rivals := 0
-	for c, share := range x {
-		if share >= sufficientShare {
-			rivals++
-		}
-		if Cause(c) != taken && share >= contributingShare {
-			anyOf[c] += h * share
-		}
-	}
-	anyOf[taken] += h
-	if rivals == 1 {
-		alone[taken] += h * x[taken]
-	}
-}
-
-// judge asks every test about a spell and makes an episode of it.
+// judge asks every test about a spell and makes an episode of it. The first
+// cause that explains half of it takes it; where only several together explain
+// half, the one that explains most beyond those before it.
 func (e *evidence) judge(asked []test, s *spell) (Episode, *shares) {
 	ep := e.describe(s)
-	var x shares
-	for _, t := range asked {
-		v := t.explain(e, s)
-		if v.share > x[t.Cause] {
-			x[t.Cause] = math.Min(1, v.share)
-		}
-		if ep.Cause == Unexplained && v.share >= sufficientShare {
-			ep.Cause, ep.Evidence, ep.Led = t.Cause, v.why, v.led
+	said := make([]verdict, len(asked))
+	for k, t := range asked {
+		said[k] = t.explain(e, s)
+	}
+	x := sharesOf(asked, said, len(s.missed))
+	ep.Cause = x.taker()
+	best := 0
+	for k, t := range asked {
+		if n := marked(said[k].by); t.Cause == ep.Cause && n > best { // a cause may be asked for twice
+			best, ep.Evidence, ep.Led = n, said[k].why, said[k].led
 		}
 	}
-	for c, share := range x {
-		if Cause(c) != ep.Cause && share >= contributingShare {
+	for c := range x.any {
+		if Cause(c) != ep.Cause && x.any[c] >= contributingShare {
 			ep.Contributing = append(ep.Contributing, Cause(c))
 		}
 	}
 	if ep.Cause == Unexplained {
-		ep.Evidence = unexplained(&ep)
+		ep.Evidence = e.unexplained(&ep, s)
 	}
 	ep.Evidence += e.circumstances(&ep)
-	return ep, &x
+	return ep, x
+}
+
+func sharesOf(asked []test, said []verdict, n int) *shares {
+	var x shares
+	for i := 0; i < n; i++ {
+		var by [NumCauses]bool
+		first, causes := Unexplained, 0
+		for k, t := range asked {
+			if said[k].by == nil || !said[k].by[i] || by[t.Cause] {
+				continue
+			}
+			by[t.Cause] = true
+			x.any[t.Cause]++
+			if causes == 0 {
+				first = t.Cause
+			}
+			causes++
+		}
+		if causes > 0 {
+			x.first[first]++
+		}
+		if causes == 1 {
+			x.alone[first]++
+		}
+	}
+	for c := range x.any {
+		x.any[c] /= float64(n)
+		x.alone[c] /= float64(n)
+		x.first[c] /= float64(n)
+	}
+	return &x
+}
+
+// taker is the cause that takes the spell.
+func (x *shares) taker() Cause {
+	together, most := 0.0, Unexplained
+	for c := Unexplained + 1; c < NumCauses; c++ {
+		if x.any[c] >= sufficientShare {
+			return c
+		}
+		together += x.first[c]
+		if x.first[c] > x.first[most] {
+			most = c
+		}
+	}
+	if together >= sufficientShare {
+		return most
+	}
+	return Unexplained
 }
 
 // describe fills what a spell was like.
@@ -208,14 +271,17 @@ func gather(in *Input) *evidence {
 	}
 	e.gatherUnits()
 	for z := range e.zones {
+		e.zones[z].peers = e.peersOf(z)
 		e.zones[z].Opening = e.openingUse(z)
 		e.zones[z].Clock = e.clockPattern(z)
 	}
-	for z := range e.zones { // limits leave out what the clock explains
-		e.zones[z].Limit = e.limitPattern(z)
+	for u := range e.units { // limits leave out what clock and calls explain
+		e.callsOf(u)
+		e.units[u].limit = e.limitOf(e.unitSubject(u))
+		e.units[u].limit.Unit = in.Site.Plant[u].ID
 	}
-	for u := range e.units {
-		e.units[u].calls = e.callsOf(u)
+	for z := range e.zones {
+		e.zones[z].Limit = e.limitPattern(z)
 	}
 	return e
 }

@@ -8,54 +8,84 @@ import (
 	"sashlog/configs/site"
 )
 
-// LimitPattern is the changeover limits a zone behaves as if it had, inferred
-// from when it leaves and enters open mode. Temperatures are NaN when no limit
+// LimitPattern is the outdoor changeover limits a plant unit, or a zone
+// without plant, behaves as if it had, inferred from what follows when the
+// outdoor temperature passes a level. Temperatures are NaN when no limit
 // shows.
 type LimitPattern struct {
-	// UpperC: above this outdoor temperature it does not run open, although
-	// the weather suits; LowerC: below. N counts the changeovers that show it.
-	UpperC, LowerC float64
-	UpperN, LowerN int
-	// OpenShareAbove, OpenShareBelow: share of the suitable hours beyond the
-	// limit that ran open all the same; OpenShareWithin between them.
-	OpenShareAbove, OpenShareBelow, OpenShareWithin float64
-	// IndoorC: the indoor temperature at which it leaves open mode, when that
-	// hardly varies and lies below comfort; MarginK how far below.
-	IndoorC, MarginK float64
-	IndoorN          int
+	// Unit is the id of the plant unit, empty for the zone itself.
+	Unit string
+	// UpperC: above this outdoor temperature it does not leave the zone to its
+	// windows, although the weather suits; LowerC: below. N counts the
+	// passings that changed what it did, Passed all.
+	UpperC, LowerC           float64
+	UpperN, LowerN           int
+	UpperPassed, LowerPassed int
+	// FreeShareAbove, FreeShareBelow: share of the suitable hours beyond the
+	// limit with the plant off (or open, without plant) all the same;
+	// FreeShareWithin between the limits. Hours explained by the clock are left
+	// out.
+	FreeShareAbove, FreeShareBelow, FreeShareWithin float64
+	// IndoorC: the zone's own temperature at which the plant takes over, when
+	// that lies below comfort; MarginK how far below.
+	IndoorC, MarginK      float64
+	IndoorN, IndoorPassed int
 }
 
 // Rules of an inferred limit, our assumptions.
 const (
-	limitEvents   = 5    // changeovers within windowK that show it
-	limitWindowK  = 1.0  // they lie this close together
-	limitRivalK   = 2.0  // at least half of those this far inside the limit, or beyond it, lie in the window
-	limitOpenMax  = 0.1  // share of suitable hours beyond it that run open
+	limitRate     = 0.8  // of the passings of an outdoor limit are followed
+	limitFreeMax  = 0.1  // share of suitable hours beyond it with the plant off
 	limitBeyondH  = 2.0  // suitable hours beyond it
 	limitSlackK   = 0.25 // sensors and steps blur the edge
-	indoorSpreadK = 1.0  // middle half of indoor temperatures at changeover
 	indoorMarginK = 1.0  // below the comfort limit
+	callTouchK    = 0.05 // nearer to its call than this a room may be calling
 )
 
-// changeovers are the moments a zone passed between open and mechanical.
-type changeovers struct {
-	leaveOutC, leaveInC, leaveMarginK []float64
-	enterOutC                         []float64 // while it warmed outdoors, not at the start of the day
+func noLimit() LimitPattern {
+	nan := math.NaN()
+	return LimitPattern{UpperC: nan, LowerC: nan, IndoorC: nan, MarginK: nan, FreeShareAbove: nan, FreeShareBelow: nan, FreeShareWithin: nan}
 }
 
-// limitPattern infers the limits of zone z.
-func (e *evidence) limitPattern(z int) LimitPattern {
-	nan := math.NaN()
-	p := LimitPattern{UpperC: nan, LowerC: nan, IndoorC: nan, MarginK: nan, OpenShareAbove: nan, OpenShareBelow: nan, OpenShareWithin: nan}
-	ch := e.changeoversOf(z)
-	x := e.exposureOf(z)
-	if c, n := edge(ch.leaveOutC, true, x); n > 0 {
-		p.UpperC, p.UpperN = c, n
-		p.OpenShareAbove, _ = x.openShare(c+limitSlackK, math.Inf(1))
+// subject is what a limit may belong to: a plant unit or a zone without plant.
+type subject struct {
+	// suited: suitable occupied time; free: left to the windows; kept: not, and
+	// not for the clock; held: kept, and not for heat; started, stopped: what ends and begins
+	// freedom; called: a room is as warm as when it calls.
+	suited, free, kept, held func(i int) bool
+	started, stopped, called func(i int) bool
+}
+
+// limitOf infers a subject's outdoor limits.
+func (e *evidence) limitOf(s subject) LimitPattern {
+	p := noLimit()
+	ahead := e.steps(crossWithinMin) + 2
+	// A start that a calling room explains says nothing about outdoors.
+	uncalled := func(i int) bool {
+		if !s.free(i) {
+			return false
+		}
+		for k := i; k <= min(e.in.Grid.N-1, i+ahead); k++ {
+			if s.called(k) {
+				return false
+			}
+		}
+		return true
 	}
-	if c, n := edge(ch.enterOutC, false, x); n > 0 && (n == 0 || !(c >= p.UpperC)) {
-		p.LowerC, p.LowerN = c, n
-		p.OpenShareBelow, _ = x.openShare(math.Inf(-1), c-limitSlackK)
+	x := e.exposureOf(s)
+	if c := e.level(e.in.Outdoor.TempC, true, uncalled, s.started); x.confirms(c, true) {
+		p.UpperC, p.UpperN, p.UpperPassed = c.levelC, c.followed, c.passed
+		p.FreeShareAbove, _ = x.share(c.levelC+limitSlackK, math.Inf(1))
+	}
+	lower := e.level(e.in.Outdoor.TempC, false, uncalled, s.started)
+	if !x.confirms(lower, false) {
+		// Mornings warm up through the lower limit more often than open hours
+		// cool down through it.
+		lower = e.level(e.in.Outdoor.TempC, true, s.kept, s.stopped)
+	}
+	if x.confirms(lower, false) && !(lower.levelC >= p.UpperC) {
+		p.LowerC, p.LowerN, p.LowerPassed = lower.levelC, lower.followed, lower.passed
+		p.FreeShareBelow, _ = x.share(math.Inf(-1), lower.levelC-limitSlackK)
 	}
 	low, high := math.Inf(-1), math.Inf(1)
 	if !math.IsNaN(p.LowerC) {
@@ -64,197 +94,169 @@ func (e *evidence) limitPattern(z int) LimitPattern {
 	if !math.IsNaN(p.UpperC) {
 		high = p.UpperC
 	}
-	p.OpenShareWithin, _ = x.openShare(low, high)
-	e.indoorLimit(&p, ch)
+	p.FreeShareWithin, _ = x.share(low, high)
 	return p
 }
 
-// changeoversOf lists the changeovers of zone z in occupied time.
-func (e *evidence) changeoversOf(z int) changeovers {
-	in := e.in
-	me := &in.Running.Zones[z]
-	limits := &in.Exceedance.Zones[z].Limits
-	soon, hour := e.steps(15), e.steps(60)
-	var ch changeovers
-	for i := in.Grid.PeriodFrom + 1; i < in.Grid.PeriodTo; i++ {
-		if me.Occupied[i] != running.Occupied || me.Occupied[i-1] != running.Occupied {
-			continue
-		}
-		outC := at(in.Outdoor.TempC, i)
-		if math.IsNaN(outC) {
-			continue
-		}
-		switch {
-		case me.State[i-1] == running.Open && e.leaves(me, i, soon):
-			ch.leaveOutC = append(ch.leaveOutC, outC)
-			inC := at(in.Indoor[z].OperativeC, i-1)
-			ch.leaveInC = append(ch.leaveInC, inC)
-			ch.leaveMarginK = append(ch.leaveMarginK, at(limits.HighC, i-1)-inC)
-		case me.State[i] == running.Open && closedFor(me, i, e.steps(30)) && outC > at(in.Outdoor.TempC, i-hour)+0.2:
-			ch.enterOutC = append(ch.enterOutC, outC)
-		}
-	}
-	return ch
-}
-
-// leaves reports whether open mode ended at step i for the plant (not for
-// heat), or, without plant, for shut windows that stay shut.
-func (e *evidence) leaves(me *running.Zone, i, soon int) bool {
-	if me.State[i] == running.Open || me.State[i] == running.Unknown {
-		return false
-	}
-	end := min(i+soon, len(me.State))
-	if !me.ServedByPlant {
-		for k := i; k < end; k++ {
-			if me.State[k] != running.Shut {
-				return false
+// unitSubject is a plant unit seen from the zones it serves.
+func (e *evidence) unitSubject(u int) subject {
+	unit := &e.units[u]
+	run := e.in.Running.Zones
+	occupied := func(i int) bool {
+		for _, z := range unit.zones {
+			if run[z].Occupied[i] == running.Occupied {
+				return true
 			}
 		}
-		return true
+		return false
 	}
-	for k := i; k < end; k++ {
-		if me.State[k] == running.Mech || me.State[k] == running.Both {
-			return me.Plant[k] != uint8(site.PlantHeat)
-		}
-		if me.State[k] == running.Open {
+	heats := uint8(site.PlantHeat)
+	on := func(i int) bool { return unit.on[i] != running.PlantUnknown && unit.on[i] != uint8(site.PlantOff) }
+	kept := func(i int) bool { return on(i) && occupied(i) && !e.unitClocked(u, i) }
+	return subject{
+		suited: func(i int) bool {
+			for _, z := range unit.zones {
+				if c := e.in.Record.Class[z][i]; c.Achieved() || c.Missed() || c == hours.NotNeeded {
+					return true
+				}
+			}
 			return false
+		},
+		free:    func(i int) bool { return unit.on[i] == uint8(site.PlantOff) && occupied(i) },
+		kept:    kept,
+		held:    func(i int) bool { return kept(i) && unit.on[i] != heats },
+		started: func(i int) bool { return i > 0 && on(i) && unit.on[i] != heats && unit.on[i-1] == uint8(site.PlantOff) },
+		stopped: func(i int) bool { return i > 0 && unit.on[i] == uint8(site.PlantOff) && on(i-1) },
+		called: func(i int) bool {
+			for k, z := range unit.zones {
+				if at(e.in.Indoor[z].OperativeC, i) >= unit.calls[k].AboveC-callTouchK {
+					return true
+				}
+			}
+			return false
+		},
+	}
+}
+
+// unitClocked reports whether the clock explains that a unit runs at a step.
+func (e *evidence) unitClocked(u, i int) bool {
+	r := runAt(e.units[u].runs, i)
+	if r == nil {
+		return false
+	}
+	for _, z := range e.units[u].zones {
+		if e.clocked(z, r) && e.beforeHold(z, i) {
+			return true
 		}
 	}
 	return false
 }
 
-// closedFor reports whether the zone was occupied and not open for n steps
-// before i.
-func closedFor(me *running.Zone, i, n int) bool {
-	if i < n {
-		return false
+// zoneSubject is a zone without plant, whose windows alone can be kept shut.
+func (e *evidence) zoneSubject(z int) subject {
+	me := &e.in.Running.Zones[z]
+	is := func(s running.State) func(i int) bool {
+		return func(i int) bool { return me.State[i] == s && me.Occupied[i] == running.Occupied }
 	}
-	for k := i - n; k < i; k++ {
-		if me.State[k] == running.Open || me.State[k] == running.Unknown || me.Occupied[k] != running.Occupied {
-			return false
-		}
+	turned := func(from, to running.State) func(i int) bool {
+		return func(i int) bool { return i > 0 && me.State[i] == to && me.State[i-1] == from }
 	}
-	return true
+	return subject{
+		suited: func(i int) bool {
+			c := e.in.Record.Class[z][i]
+			return c.Achieved() || c.Missed()
+		},
+		free: is(running.Open), kept: is(running.Shut), held: is(running.Shut),
+		started: turned(running.Open, running.Shut), stopped: turned(running.Shut, running.Open),
+		called: func(int) bool { return false },
+	}
 }
 
-// exposure is how suitable occupied time splits into open and missed by
-// outdoor temperature, in tenths of a kelvin.
+// limitPattern gives zone z the limits of the unit that shows them best, or
+// its own where no unit serves it.
+func (e *evidence) limitPattern(z int) LimitPattern {
+	p := noLimit()
+	switch {
+	case e.in.Running.Zones[z].NoOpening:
+		return p
+	case !e.in.Running.Zones[z].ServedByPlant:
+		return e.limitOf(e.zoneSubject(z))
+	}
+	for _, u := range e.zones[z].units {
+		if q := e.units[u].limit; q.UpperN+q.LowerN > p.UpperN+p.LowerN {
+			p = q
+		}
+	}
+	e.indoorLimit(&p, z)
+	return p
+}
+
+// indoorLimit adds the zone's own call, where it lies below comfort.
+func (e *evidence) indoorLimit(p *LimitPattern, z int) {
+	for _, u := range e.zones[z].units {
+		for _, c := range e.units[u].calls {
+			if c.Zone == z && !math.IsNaN(c.AboveC) && c.MarginK >= indoorMarginK && c.Followed > p.IndoorN {
+				p.IndoorC, p.MarginK, p.IndoorN, p.IndoorPassed = c.AboveC, c.MarginK, c.Followed, c.Passed
+			}
+		}
+	}
+}
+
+// exposure is how suitable time splits into free and held by outdoor
+// temperature, in tenths of a kelvin.
 type exposure struct {
-	stepH        float64
-	open, missed map[int]int
+	stepH      float64
+	free, held map[int]int
 }
 
-// exposureOf counts achieved and missed steps of zone z; steps in runs started
-// by the clock say nothing about limits and are left out.
-func (e *evidence) exposureOf(z int) exposure {
-	in := e.in
-	x := exposure{stepH: in.Grid.StepH(), open: map[int]int{}, missed: map[int]int{}}
-	class := in.Record.Class[z]
-	runs := e.zones[z].runs
-	for i := in.Grid.PeriodFrom; i < in.Grid.PeriodTo; i++ {
-		c := class[i]
-		if !c.Achieved() && !c.Missed() {
+func (e *evidence) exposureOf(s subject) exposure {
+	x := exposure{stepH: e.in.Grid.StepH(), free: map[int]int{}, held: map[int]int{}}
+	for i := e.in.Grid.PeriodFrom; i < e.in.Grid.PeriodTo; i++ {
+		outC := at(e.in.Outdoor.TempC, i)
+		if math.IsNaN(outC) || !s.suited(i) {
 			continue
 		}
-		outC := at(in.Outdoor.TempC, i)
-		if math.IsNaN(outC) {
-			continue
+		switch {
+		case s.free(i):
+			x.free[bin(outC)]++
+		case s.held(i):
+			x.held[bin(outC)]++
 		}
-		bin := int(math.Floor(outC * 10))
-		if c.Achieved() {
-			x.open[bin]++
-			continue
-		}
-		if c == hours.MissedBoth {
-			continue
-		}
-		if r := runAt(runs, i); r != nil && e.clocked(z, r) && e.beforeHold(z, i) {
-			continue
-		}
-		x.missed[bin]++
 	}
 	return x
 }
 
-func (e *evidence) beforeHold(z, i int) bool {
-	p := &e.zones[z].Clock
-	return p.RoundTheClock || p.HoldMinute < 0 || int(e.cal.MinuteOfDay[i]) < p.HoldMinute+10
-}
-
-// openShare is the share of the time between two outdoor temperatures that ran
-// open, NaN of none, and how long that time is.
-func (x exposure) openShare(fromC, toC float64) (share, h float64) {
-	open, all := 0, 0
-	for bin, n := range x.open {
-		if c := float64(bin)/10 + 0.05; c >= fromC && c < toC {
-			open, all = open+n, all+n
+// share is the share of the time between two outdoor temperatures that was
+// free, NaN of none, and how long that time is.
+func (x exposure) share(fromC, toC float64) (share, h float64) {
+	count := func(bins map[int]int) int {
+		n := 0
+		for b, k := range bins {
+			if c := (float64(b) + 0.5) * crossBinK; c >= fromC && c < toC {
+				n += k
+			}
 		}
+		return n
 	}
-	for bin, n := range x.missed {
-		if c := float64(bin)/10 + 0.05; c >= fromC && c < toC {
-			all += n
-		}
-	}
-	if all == 0 {
+	free, held := count(x.free), count(x.held)
+	if free+held == 0 {
 		return math.NaN(), 0
 	}
-	return float64(open) / float64(all), float64(all) * x.stepH
+	return float64(free) / float64(free+held), float64(free+held) * x.stepH
 }
 
-// edge looks for the outdoor temperature at which changeovers crowd and beyond
-// which the zone hardly ever runs open. It returns the middle of the crowd and
-// its size, 0 when there is none.
-func edge(changesC []float64, upper bool, x exposure) (limitC float64, n int) {
-	sign := 1.0
+// confirms reports whether a level is an outdoor limit: suitable time beyond it
+// is hardly ever free, and well more often just inside it.
+func (x exposure) confirms(c crossing, upper bool) bool {
+	levelC := c.levelC
+	if math.IsNaN(levelC) || float64(c.followed) < limitRate*float64(c.passed) {
+		return false
+	}
+	beyond, h := x.share(levelC+limitSlackK, math.Inf(1))
+	inside, _ := x.share(levelC-3, levelC)
 	if !upper {
-		sign = -1
+		beyond, h = x.share(math.Inf(-1), levelC-limitSlackK)
+		inside, _ = x.share(levelC, levelC+3)
 	}
-	best := 0
-	for _, c := range changesC {
-		// The window begins at c and reaches inwards.
-		var within []float64
-		rivals := 0
-		for _, d := range changesC {
-			inward := (c - d) * sign
-			if inward >= 0 && inward <= limitWindowK {
-				within = append(within, d)
-			}
-			if inward <= limitWindowK+limitRivalK {
-				rivals++
-			}
-		}
-		if len(within) < limitEvents || 2*len(within) < rivals || len(within) <= best {
-			continue
-		}
-		middle := quantile(within, 0.5)
-		var beyond, beyondH, inside float64
-		if upper {
-			beyond, beyondH = x.openShare(middle+limitSlackK, math.Inf(1))
-			inside, _ = x.openShare(middle-3, middle)
-		} else {
-			beyond, beyondH = x.openShare(math.Inf(-1), middle-limitSlackK)
-			inside, _ = x.openShare(middle, middle+3)
-		}
-		if beyondH < limitBeyondH || beyond > limitOpenMax || !(inside >= 3*beyond) || inside == 0 {
-			continue
-		}
-		best, limitC, n = len(within), middle, len(within)
-	}
-	return limitC, n
-}
-
-// indoorLimit looks for an indoor temperature at which the zone always leaves
-// open mode. Changeovers at the outdoor limit are left out.
-func (e *evidence) indoorLimit(p *LimitPattern, ch changeovers) {
-	var inC, margin []float64
-	for k, c := range ch.leaveInC {
-		if math.IsNaN(c) || math.IsNaN(ch.leaveMarginK[k]) || ch.leaveOutC[k] > p.UpperC-0.5 {
-			continue
-		}
-		inC, margin = append(inC, c), append(margin, ch.leaveMarginK[k])
-	}
-	if len(inC) < limitEvents || quantile(inC, 0.75)-quantile(inC, 0.25) > indoorSpreadK || quantile(margin, 0.5) < indoorMarginK {
-		return
-	}
-	p.IndoorC, p.MarginK, p.IndoorN = quantile(inC, 0.5), quantile(margin, 0.5), len(inC)
+	return h >= limitBeyondH && beyond <= limitFreeMax && inside > 0 && inside >= 2*beyond
 }

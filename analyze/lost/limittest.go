@@ -9,8 +9,8 @@ import (
 
 func outdoorLimitTest() test {
 	return test{
-		Test: Test{LimitTooTight, "the zone behaves as if it had an outdoor limit: at least 5 changeovers lie within 1 K of each other, at least half of all from 2 K inside it outwards, " +
-			"and beyond it at most a tenth of 2 or more suitable hours ran open (starts by the clock aside); the missed time lay beyond it", ourAssumption},
+		Test: Test{LimitTooTight, "the plant behaves as if it had an outdoor limit: on at least 80 % of six or more occasions when outdoors passed that temperature it started (or stopped) within " +
+			"a quarter of an hour, and beyond it was off in at most 10 % of two or more suitable hours (running that the clock explains aside; starts that a calling room explains count for nothing); it explains the time beyond the limit", ourAssumption},
 		explain: outdoorLimitExplains,
 	}
 }
@@ -19,7 +19,7 @@ func outdoorLimitExplains(e *evidence, s *spell) verdict {
 	p := &e.zones[s.zone].Limit
 	above, below := 0, 0
 	suitedTo := math.NaN()
-	for _, i := range s.missed {
+	by := explains(s, func(i int) bool {
 		outC := at(e.in.Outdoor.TempC, i)
 		switch {
 		case outC >= p.UpperC-limitSlackK:
@@ -27,58 +27,85 @@ func outdoorLimitExplains(e *evidence, s *spell) verdict {
 			if c := at(e.in.Exceedance.Zones[s.zone].Limits.UpperOfDayC, i) - e.in.Criteria.RiseK; !math.IsNaN(c) {
 				suitedTo = c
 			}
+			return true
 		case outC <= p.LowerC+limitSlackK:
 			below++
+			return true
 		}
+		return false
+	})
+	who := p.Unit
+	if who == "" {
+		who = "the zone"
 	}
-	n := float64(len(s.missed))
 	if above >= below {
-		why := fmt.Sprintf("the zone leaves open mode at about %.1f °C outdoors (%d changeovers)", p.UpperC, p.UpperN)
+		why := fmt.Sprintf("%s ends open mode at about %.1f °C outdoors (%d of %s)", who, p.UpperC, p.UpperN, count(p.UpperPassed, "passing", "passings"))
 		if !math.IsNaN(suitedTo) {
 			why += fmt.Sprintf(", the weather suits up to %.1f °C that day", suitedTo)
 		}
-		return verdict{float64(above) / n, why, -1}
+		return verdict{by, why, -1}
 	}
-	return verdict{float64(below) / n, fmt.Sprintf("the zone enters open mode only from about %.1f °C outdoors (%d changeovers), the weather suits from %.1f °C",
-		p.LowerC, p.LowerN, e.in.Criteria.OutdoorLowC), -1}
+	return verdict{by, fmt.Sprintf("%s allows open mode only from about %.1f °C outdoors (%d of %s), the weather suits from %.1f °C", who,
+		p.LowerC, p.LowerN, count(p.LowerPassed, "passing", "passings"), e.in.Criteria.OutdoorLowC), -1}
 }
 
 func indoorLimitTest() test {
 	return test{
-		Test: Test{LimitTooTight, "open mode ended at an indoor temperature that hardly varies (middle half within 1 K over 5 or more changeovers) and lies at least 1 K below " +
-			"the comfort limit", ourAssumption},
+		Test: Test{LimitTooTight, "the plant ran while rooms called for cooling that were still within comfort: their calls (see few-room changeover) come at least 1 K below the comfort limit, " +
+			"rooms of at least the few-room share of people called, and less than that share was too warm", ourAssumption},
 		explain: indoorLimitExplains,
 	}
 }
 
 func indoorLimitExplains(e *evidence, s *spell) verdict {
-	p := &e.zones[s.zone].Limit
-	if math.IsNaN(p.IndoorC) {
-		return nothing
-	}
-	by := 0
-	startC := math.NaN()
-	e.countRuns(s, func(r *run, steps []int) {
-		if c, ok := e.leftOpenAt(s.zone, r); ok && math.Abs(c-p.IndoorC) <= indoorSpreadK/2 {
-			by += len(steps)
-			startC = c
+	me := &e.in.Running.Zones[s.zone]
+	why, best := "", 0.0
+	by := explains(s, func(i int) bool {
+		if me.State[i] != running.Mech && me.State[i] != running.Both {
+			return false
 		}
+		for _, u := range e.zones[s.zone].units {
+			a := e.askingFor(u, i)
+			if !e.cools(u, i) || a.led < 0 || a.early < 0 || !(a.share >= e.in.Criteria.FewRoomShare) || !(a.warm < e.in.Criteria.FewRoomShare) {
+				continue
+			}
+			if a.share > best {
+				c := e.callOf(u, a.early)
+				best = a.share
+				why = fmt.Sprintf("%s ran while rooms of %s of its people called for cooling and %s were too warm; zone %s calls from %.1f °C, %.1f K below its comfort limit (%d of %s)",
+					e.in.Site.Plant[u].ID, percent(a.share), percent(a.warm), e.in.Site.Zones[a.early].ID, c.AboveC, c.MarginK, c.Followed, count(c.Passed, "time", "times"))
+				if c.Logged {
+					why = fmt.Sprintf("%s ran while rooms of %s of its people called for cooling and %s were too warm; the cooling set-point of zone %s is %.1f °C, %.1f K below its comfort limit",
+						e.in.Site.Plant[u].ID, percent(a.share), percent(a.warm), e.in.Site.Zones[a.early].ID, c.AboveC, c.MarginK)
+				}
+			}
+			return true
+		}
+		return false
 	})
-	return verdict{float64(by) / float64(len(s.missed)), fmt.Sprintf("open mode ended at %.1f °C indoors, as it does at about %.1f °C (%d changeovers), %.1f K below the comfort limit",
-		startC, p.IndoorC, p.IndoorN, p.MarginK), -1}
+	return verdict{by, why, -1}
 }
 
-// leftOpenAt gives the indoor temperature at which a plant run ended open mode
-// in the quarter of an hour before it.
-func (e *evidence) leftOpenAt(z int, r *run) (indoorC float64, ok bool) {
-	if !r.known {
-		return 0, false
-	}
-	for i := r.from - 1; i >= max(0, r.from-e.steps(15)); i-- {
-		if e.in.Running.Zones[z].State[i] == running.Open {
-			c := at(e.in.Indoor[z].OperativeC, i)
-			return c, !math.IsNaN(c)
+// callBandK is how far a room that called must cool before it no longer does.
+// Our assumption: thermostats switch off within a kelvin.
+const callBandK = 1.0
+
+// latch is a switch with a band: on from a limit, off a kelvin below it; off
+// where the temperature is unknown or there is no limit.
+func (e *evidence) latch(tempC []float32, limitC func(i int) float64) []bool {
+	out := make([]bool, e.in.Grid.N)
+	on := false
+	for i := range out {
+		t, limit := at(tempC, i), limitC(i)
+		switch {
+		case math.IsNaN(t) || math.IsNaN(limit):
+			on = false
+		case t >= limit-crossBinK/2:
+			on = true
+		case t < limit-callBandK:
+			on = false
 		}
+		out[i] = on
 	}
-	return 0, false
+	return out
 }

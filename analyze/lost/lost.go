@@ -6,8 +6,9 @@
 //  1. spells: runs of missed steps per zone, short interruptions bridged
 //  2. patterns: what the whole period shows (starts by the clock, changeover
 //     limits the zone behaves as if it had, openings never used, ...)
-//  3. causes: every test says what share of a spell it explains; the first that
-//     explains at least half takes the spell, the others are contributing
+//  3. causes: every test says which steps of a spell it explains; the first that
+//     explains at least half takes the spell (where only several together do,
+//     the one that explains most), the others are contributing
 //  4. sums: whole seconds per zone and cause, so that causes add up to the
 //     missed hours exactly
 package lost
@@ -68,6 +69,8 @@ type Result struct {
 	// AloneH are the hours only this cause explains, AnyH those it took or
 	// contributes to: the least and the most mending it would bring.
 	AloneH, AnyH [][NumCauses]float64
+	// Units say which zones each plant unit (index as Site.Plant) follows.
+	Units []UnitPattern
 	// LedH[zone][leader] are the few-room hours of a zone by leading zone.
 	LedH     []map[int]float64
 	Patterns []Pattern

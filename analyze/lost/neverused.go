@@ -15,7 +15,8 @@ type OpeningUse struct {
 	// KnownH with known contacts.
 	OpenH, KnownH float64
 	// SuitedH are occupied suitable hours with a known running state, of which
-	// ChanceH had the zone's plant off or another zone running open.
+	// ChanceH had the zone's plant off, or running while another zone of the
+	// same unit ran open (of the building, where the unit serves no other).
 	SuitedH, ChanceH float64
 	// NeverUsed: open at most 1 % of the known time although it had its chance
 	// in at least 5 h and a tenth of the suitable hours, of 20 h or more.
@@ -56,7 +57,7 @@ func (e *evidence) openingUse(z int) OpeningUse {
 			continue
 		}
 		u.SuitedH += h
-		if me.Plant[i] == uint8(site.PlantOff) || e.anotherOpen(z, i) {
+		if e.hadChance(z, i) {
 			u.ChanceH += h
 		}
 	}
@@ -65,26 +66,54 @@ func (e *evidence) openingUse(z int) OpeningUse {
 	return u
 }
 
-func (e *evidence) anotherOpen(z, i int) bool {
-	for k := range e.in.Running.Zones {
-		if k != z && e.in.Running.Zones[k].State[i] == running.Open {
+// hadChance reports whether the opening could have been used at a step: the
+// zone's plant was off, or a peer ran open at the same time.
+func (e *evidence) hadChance(z, i int) bool {
+	if e.in.Running.Zones[z].Plant[i] == uint8(site.PlantOff) {
+		return true
+	}
+	for _, k := range e.zones[z].peers {
+		if e.in.Running.Zones[k].State[i] == running.Open {
 			return true
 		}
 	}
 	return false
 }
 
+// peersOf lists the zones with openings that share a plant unit with z, or,
+// where there are none, all others with openings.
+func (e *evidence) peersOf(z int) []int {
+	var peers, all []int
+	for k := range e.zones {
+		if k == z || e.in.Running.Zones[k].NoOpening {
+			continue
+		}
+		all = append(all, k)
+		for _, u := range e.zones[z].units {
+			if serves(e.in.Site, u, k) {
+				peers = append(peers, k)
+				break
+			}
+		}
+	}
+	if len(peers) > 0 {
+		return peers
+	}
+	return all
+}
+
 func neverUsedTest() test {
 	return test{
-		Test: Test{NeverUsed, "the opening stood open for at most 1 % of all known hours of the period, although it had its chance: " +
-			"in at least 5 h and a tenth of the suitable hours the zone's plant was off or another zone ran open", ourAssumption},
+		Test: Test{NeverUsed, "the opening stood open for at most 1 % of all known hours of the period, although it had its chance in at least 5 h and a tenth of the suitable hours; " +
+			"it explains the time it had its chance: the zone's plant was off, or a zone of the same unit ran open (any zone, where the unit serves no other)", ourAssumption},
 		explain: func(e *evidence, s *spell) verdict {
 			u := e.zones[s.zone].Opening
 			if !u.NeverUsed {
 				return nothing
 			}
-			return verdict{1, fmt.Sprintf("the opening stood open for %.1f h of %.0f known hours, although the weather suited in %.0f occupied hours and "+
-				"plant was off or other zones ran open in %.0f of them", u.OpenH, u.KnownH, u.SuitedH, u.ChanceH), -1}
+			by := explains(s, func(i int) bool { return e.hadChance(s.zone, i) })
+			return verdict{by, fmt.Sprintf("the opening stood open for %.1f h of %.0f known hours, although the weather suited in %.0f occupied hours and "+
+				"nothing hindered it in %.0f of them", u.OpenH, u.KnownH, u.SuitedH, u.ChanceH), -1}
 		},
 	}
 }

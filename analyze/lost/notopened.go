@@ -57,22 +57,22 @@ func notOpenedTest() test {
 			if !me.PeopleCanOpen {
 				return nothing
 			}
-			shut, locked := 0, 0
-			for _, i := range s.missed {
+			locked := 0
+			by := explains(s, func(i int) bool {
 				if me.State[i] != running.Shut {
-					continue
+					return false
 				}
 				if v := at(e.zones[s.zone].released, i); !math.IsNaN(v) && v < 0.5 {
 					locked++
-					continue
+					return false
 				}
-				shut++
-			}
-			why := fmt.Sprintf("nothing mechanical ran and windows that people can open stayed shut for %s", minutes(float64(shut)*e.in.Grid.StepH()*60))
+				return true
+			})
+			why := fmt.Sprintf("nothing mechanical ran and windows that people can open stayed shut for %s", minutes(float64(marked(by))*e.in.Grid.StepH()*60))
 			if locked > 0 {
 				why += fmt.Sprintf(" (locked for another %s)", minutes(float64(locked)*e.in.Grid.StepH()*60))
 			}
-			return verdict{float64(shut) / float64(len(s.missed)), why, -1}
+			return verdict{by, why, -1}
 		},
 	}
 }

@@ -45,7 +45,7 @@ func reopenExplains(e *evidence, s *spell) verdict {
 	if in.Site.Zones[s.zone].Windows == site.ManualWindows && 2*withPlant < since {
 		return nothing
 	}
-	return verdict{float64(since) / float64(len(s.missed)), fmt.Sprintf("%s at %s, the zone ran open from %s, %s later",
+	return verdict{explains(s, func(i int) bool { return i >= onset }), fmt.Sprintf("%s at %s, the zone ran open from %s, %s later",
 		what, clock(int(e.cal.MinuteOfDay[onset])), clock(int(e.cal.MinuteOfDay[opened])), minutes(delay)), -1}
 }
 

@@ -47,11 +47,24 @@ func (e *evidence) circumstances(ep *Episode) string {
 }
 
 // unexplained says honestly what is known.
-func unexplained(ep *Episode) string {
+func (e *evidence) unexplained(ep *Episode, s *spell) string {
 	what := map[string]string{"mech": "mechanical plant ran with the windows shut", "both": "plant ran with windows open",
 		"shut": "windows and plant stayed off"}[ep.Running]
 	if what == "" {
 		what = "the running state varied"
 	}
-	return what + " and no test explains half of it"
+	what += " and no test explains half of it"
+	warm, n := 0.0, 0.0
+	for _, i := range s.missed {
+		for _, u := range e.zones[s.zone].units {
+			if a := e.askingFor(u, i); e.cools(u, i) && !math.IsNaN(a.warm) {
+				warm, n = warm+a.warm, n+1
+				break
+			}
+		}
+	}
+	if n > 0 && warm/n >= e.in.Criteria.FewRoomShare {
+		what += fmt.Sprintf("; %s of the people its plant serves were too warm, so that it had reason to run", percent(warm/n))
+	}
+	return what
 }
