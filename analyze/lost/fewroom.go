@@ -73,13 +73,8 @@ func (e *evidence) callsOf(u int) {
 		}
 	}
 	for k, z := range unit.zones {
-		c, set := &unit.calls[k], e.zones[z].setpoint
-		unit.calling = append(unit.calling, e.latch(in.Indoor[z].OperativeC, func(i int) float64 {
-			if c.Logged {
-				return at(set, i)
-			}
-			return c.AboveC
-		}))
+		c := &unit.calls[k]
+		unit.calling = append(unit.calling, e.latch(in.Indoor[z].OperativeC, func(i int) float64 { return e.callAt(c, i) }))
 	}
 }
 
@@ -181,7 +176,7 @@ type asking struct {
 // askingFor weighs the zones of a unit at a step by their usual people, equally
 // where any of those is not given. Zones whose temperature is unknown are left
 // out. A zone outside comfort leads before one that merely calls; of several,
-// the one furthest outside, or the one the unit follows most often.
+// the one furthest above its limit, or above where it calls.
 func (e *evidence) askingFor(u, i int) asking {
 	unit := &e.units[u]
 	a := asking{led: -1, early: -1}
@@ -211,8 +206,8 @@ func (e *evidence) askingFor(u, i int) asking {
 			if unit.calls[k].MarginK >= indoorMarginK && people > earlyPeople {
 				a.early, earlyPeople = z, people
 			}
-			if rank := float64(unit.calls[k].Followed); !outside && rank > most {
-				a.led, most = z, rank
+			if above := t - e.callAt(&unit.calls[k], i); !outside && above > most {
+				a.led, most = z, above
 			}
 		}
 	}
@@ -221,6 +216,14 @@ func (e *evidence) askingFor(u, i int) asking {
 	}
 	a.share, a.warm = a.share/all, a.warm/all
 	return a
+}
+
+// callAt is where a zone calls at a step.
+func (e *evidence) callAt(c *Call, i int) float64 {
+	if c.Logged {
+		return at(e.zones[c.Zone].setpoint, i)
+	}
+	return c.AboveC
 }
 
 // limitBefore is a zone's comfort limit just before a step, before the limit

@@ -39,6 +39,7 @@ const (
 // test is one cause with its rule and what it explains.
 type test struct {
 	Test
+	indoors bool // see Episode
 	explain func(e *evidence, s *spell) verdict
 }
 
@@ -95,7 +96,7 @@ func Find(in Input) *Result {
 	for z := range in.Site.Zones {
 		var seconds [NumCauses]int64
 		var alone, anyOf, byCause [NumCauses]float64
-		led := map[int]float64{}
+		led, indoors := map[int]float64{}, 0.0
 		for _, s := range spellsOf(&in, z) {
 			ep, x := e.judge(asked, s)
 			missed := int64(len(s.missed)) * in.Grid.StepS
@@ -112,6 +113,9 @@ func Find(in Input) *Result {
 			if ep.Cause == FewRoom {
 				led[ep.Led] += h
 			}
+			if ep.Indoors {
+				indoors += h
+			}
 			if missed >= int64(in.Criteria.EpisodeMin*60) {
 				r.Episodes = append(r.Episodes, ep)
 			}
@@ -125,6 +129,7 @@ func Find(in Input) *Result {
 		r.ByCauseS = append(r.ByCauseS, seconds)
 		r.ByCauseH = append(r.ByCauseH, byCause)
 		r.AloneH, r.AnyH, r.LedH = append(r.AloneH, alone), append(r.AnyH, anyOf), append(r.LedH, led)
+		r.IndoorLimitH = append(r.IndoorLimitH, indoors)
 		r.Patterns = append(r.Patterns, e.zones[z].Pattern)
 	}
 	for u := range e.units {
@@ -151,7 +156,7 @@ func (e *evidence) judge(asked []test, s *spell) (Episode, *shares) {
 	best := 0
 	for k, t := range asked {
 		if n := marked(said[k].by); t.Cause == ep.Cause && n > best { // a cause may be asked for twice
-			best, ep.Evidence, ep.Led = n, said[k].why, said[k].led
+			best, ep.Evidence, ep.Led, ep.Indoors = n, said[k].why, said[k].led, t.indoors
 		}
 	}
 	for c := range x.any {

@@ -52,6 +52,8 @@ type Episode struct {
 	People, PersonH float64 // NaN when the usual number is not given
 	// Led is the zone whose start led a few-room changeover, -1 otherwise.
 	Led int
+	// Indoors: the limit that is too tight is one indoors.
+	Indoors bool
 }
 
 // Result is all episodes and the hours by cause; causes sum to the missed
@@ -69,6 +71,9 @@ type Result struct {
 	// AloneH are the hours only this cause explains, AnyH those it took or
 	// contributes to: the least and the most mending it would bring.
 	AloneH, AnyH [][NumCauses]float64
+	// IndoorLimitH is the part of each zone's hours lost to a limit too tight
+	// that is lost to one indoors.
+	IndoorLimitH []float64
 	// Units say which zones each plant unit (index as Site.Plant) follows.
 	Units []UnitPattern
 	// LedH[zone][leader] are the few-room hours of a zone by leading zone.
