@@ -93,8 +93,8 @@ func (a *adviser) staleIn(recirculating bool) (found, bool) {
 		f.ID = "stale-recirculating"
 		f.What = fmt.Sprintf("%s%s no outdoor air, and with windows shut the air %s goes stale%s: %s above the CO2 limit %s",
 			capital(units), verb(units, " brings", " bring"), a.inZones(s.zones), compare, between(s.h, s.low, s.high), a.period())
-		f.CheckOnSite = "Follow the ducts of " + units + ": is there any outdoor air, and do the windows open while it runs?"
-		f.DoNext = "Let windows be opened for airing while the unit runs, and plan an outdoor air supply"
+		f.CheckOnSite = "Follow the ducts of " + units + ": is there any outdoor air, and do the windows open while " + verb(units, "it runs", "they run") + "?"
+		f.DoNext = "Let windows be opened for airing while " + verb(units, "the unit runs", "the units run") + ", and plan an outdoor air supply"
 		f.Who = servicesFirm
 	} else {
 		f.ID = "stale-mechanical"

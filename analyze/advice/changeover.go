@@ -37,7 +37,7 @@ func (a *adviser) fewRooms() []found {
 			ID: "few-room-" + room,
 			What: fmt.Sprintf("The thermostat of zone %s starts %s for everybody while few people are too warm: %s of suitable weather could have been open %s",
 				room, plant, between(s.h, s.low, s.high), a.period()),
-			Confidence: confidence(s, n, 20),
+			Confidence: a.callConfidence(led, confidence(s, n, 20)),
 			RivalExplanations: []string{
 				"other rooms were too warm as well, but their sensors read low or hang in a cool place",
 				"the plant was started by hand or by another signal at the same time",
@@ -51,11 +51,25 @@ func (a *adviser) fewRooms() []found {
 		}}
 		s.fill(a, &f.Finding)
 		f.Evidence = Evidence{Points: a.points([]int{led}, site.ThermostatTemp, site.AirTemp, site.OperativeTemp, site.SetpointCool, site.PlantStatus),
-			Figure: FigureEpisodes, TypicalDay: a.typical(perDay), ContraryDay: a.contrary(s.zones)}
+			Figure: FigureEpisodes}
+		a.both(&f.Evidence, perDay, s.zones)
 		out = append(out, f)
 	}
 	sort.SliceStable(out, func(i, j int) bool { return a.weight(&out[i]) > a.weight(&out[j]) })
 	return out[:min(3, len(out))]
+}
+
+// callConfidence lowers confidence where a zone's call is inferred from starts
+// that often did not follow.
+func (a *adviser) callConfidence(z int, c string) string {
+	for _, u := range a.Lost.Units {
+		for _, call := range u.Calls {
+			if call.Zone == z && !call.Logged && c == "high" && float64(call.Followed) < 0.7*float64(call.Passed) {
+				return "fair"
+			}
+		}
+	}
+	return c
 }
 
 func (a *adviser) clockStarts() []found {
@@ -91,86 +105,117 @@ func (a *adviser) clockStarts() []found {
 		Caution:     plantCaution,
 	}}
 	s.fill(a, &f.Finding)
-	f.Evidence = Evidence{Points: a.points(s.zones, site.PlantStatus, site.ZoneAirflow, site.OutdoorTemp), Figure: FigureEpisodes,
-		TypicalDay: a.typical(perDay), ContraryDay: a.contrary(s.zones)}
+	f.Evidence = Evidence{Points: a.points(s.zones, site.PlantStatus, site.ZoneAirflow, site.OutdoorTemp), Figure: FigureEpisodes}
+	a.both(&f.Evidence, perDay, s.zones)
 	return []found{f}
 }
 
 // outdoorLimits finds changeover limits outdoors that are tighter than the
-// weather allows; indoorLimits those indoors.
+// weather allows, one finding per plant unit, the three worst; indoorLimits
+// those indoors.
 func (a *adviser) outdoorLimits() []found {
-	isOutdoor := func(z int) bool {
-		p := &a.Lost.Patterns[z].Limit
-		return !math.IsNaN(p.UpperC) || !math.IsNaN(p.LowerC)
+	seen := map[string]bool{}
+	var out []found
+	for z := range a.Site.Zones {
+		unit := a.Lost.Patterns[z].Limit.Unit
+		if seen[unit] {
+			continue
+		}
+		seen[unit] = true
+		if f, ok := a.outdoorLimit(unit); ok {
+			out = append(out, f)
+		}
 	}
-	s := a.causeSize(lost.LimitTooTight, func(z int) float64 { return one(isOutdoor(z)) })
+	sort.SliceStable(out, func(i, j int) bool { return a.weight(&out[i]) > a.weight(&out[j]) })
+	return out[:min(3, len(out))]
+}
+
+// indoorPart is the share of a zone's hours lost to a tight limit that is lost
+// to one indoors.
+func (a *adviser) indoorPart(z int) float64 {
+	if h := a.Lost.ByCauseH[z][lost.LimitTooTight]; h > 0 {
+		return math.Min(1, a.Lost.IndoorLimitH[z]/h)
+	}
+	return 0
+}
+
+func (a *adviser) outdoorLimit(unit string) (found, bool) {
+	mine := func(z int) bool { return a.Lost.Patterns[z].Limit.Unit == unit }
+	s := a.causeSize(lost.LimitTooTight, func(z int) float64 { return one(mine(z)) * (1 - a.indoorPart(z)) })
 	if len(s.zones) == 0 {
-		return nil
+		return found{}, false
 	}
-	upper, lower, n := math.NaN(), math.NaN(), 0
-	for k := len(s.zones) - 1; k >= 0; k-- { // the zone that matters most speaks last
-		p := &a.Lost.Patterns[s.zones[k]].Limit
-		if !math.IsNaN(p.UpperC) {
-			upper = p.UpperC
-		}
-		if !math.IsNaN(p.LowerC) {
-			lower = p.LowerC
-		}
-		n += p.UpperN + p.LowerN
-	}
+	p := &a.Lost.Patterns[s.zones[0]].Limit
 	var limits string
 	switch {
-	case math.IsNaN(lower):
-		limits = fmt.Sprintf("above about %.1f °C outdoors", upper)
-	case math.IsNaN(upper):
-		limits = fmt.Sprintf("below about %.1f °C outdoors", lower)
+	case !math.IsNaN(p.UpperC) && !math.IsNaN(p.LowerC):
+		limits = fmt.Sprintf("below about %.1f °C and above about %.1f °C outdoors", p.LowerC, p.UpperC)
+	case !math.IsNaN(p.UpperC):
+		limits = fmt.Sprintf("above about %.1f °C outdoors", p.UpperC)
 	default:
-		limits = fmt.Sprintf("below about %.1f °C and above about %.1f °C outdoors", lower, upper)
+		limits = fmt.Sprintf("below about %.1f °C outdoors", p.LowerC)
 	}
-	perDay, _ := a.causeDays(lost.LimitTooTight, func(ep *lost.Episode) bool { return isOutdoor(ep.Zone) })
+	perDay, _ := a.causeDays(lost.LimitTooTight, func(ep *lost.Episode) bool { return mine(ep.Zone) && !ep.Indoors })
+	id, who, plant := "outdoor-limit", "The control of "+a.windowsOf(s.zones), "the window control"
+	if unit != "" {
+		id, plant = "outdoor-limit-"+unit, "plant unit "+unit
+		who = "Plant unit " + unit
+	}
 	f := found{Finding: Finding{
-		ID: "outdoor-limit",
-		What: fmt.Sprintf("The building closes up %s although the weather suits from %.1f °C to %g K below each day's comfort limit: %s could have been open %s",
-			limits, a.Criteria.OutdoorLowC, a.Criteria.RiseK, between(s.h, s.low, s.high), a.period()),
-		Confidence: confidence(s, n, 20),
+		ID: id,
+		What: fmt.Sprintf("%s allows no open mode %s although the weather suits from %.1f °C to %g K below each day's comfort limit: %s could have been open %s",
+			who, limits, a.Criteria.OutdoorLowC, a.Criteria.RiseK, between(s.h, s.low, s.high), a.period()),
+		Confidence: confidence(s, p.UpperN+p.LowerN, 20),
 		RivalExplanations: []string{
 			"rooms grew too warm at about that outdoor temperature, and their thermostats, not an outdoor limit, closed the windows",
 			"the outdoor sensor of the control reads warmer or colder than the one logged (sun, exhaust air)",
 		},
-		CheckOnSite: "Read the changeover limits of " + a.plantWords(s.zones) + " and compare the control's outdoor sensor with the logged one on a sunny day",
+		CheckOnSite: "Read the changeover limits of " + plant + " and compare the control's outdoor sensor with the logged one on a sunny day",
 		DoNext:      "Widen the limit by 1 K at a time for two weeks each, and watch the share of time too warm",
 		Who:         controlsFirm,
 		UndoIf:      "a zone is above its comfort limit for more than 3 % of the occupied hours of the trial",
 		Caution:     windowCaution,
 	}}
 	s.fill(a, &f.Finding)
-	f.Evidence = Evidence{Points: a.points(s.zones, site.OutdoorTemp, site.PlantStatus, site.Window, site.WindowOpening), Figure: FigureEpisodes,
-		TypicalDay: a.typical(perDay), ContraryDay: a.contrary(s.zones)}
-	return []found{f}
+	f.Evidence = Evidence{Points: a.points(s.zones, site.OutdoorTemp, site.PlantStatus, site.Window, site.WindowOpening), Figure: FigureEpisodes}
+	a.both(&f.Evidence, perDay, s.zones)
+	return f, true
+}
+
+// windowsOf is "the windows of zone A" or "the windows of zones A and B".
+func (a *adviser) windowsOf(zones []int) string {
+	if len(zones) == 1 {
+		return "the windows of zone " + a.names(zones)
+	}
+	return "the windows of zones " + a.names(zones)
 }
 
 func (a *adviser) indoorLimits() []found {
-	isIndoor := func(z int) bool {
-		p := &a.Lost.Patterns[z].Limit
-		return math.IsNaN(p.UpperC) && math.IsNaN(p.LowerC) && !math.IsNaN(p.IndoorC)
-	}
-	s := a.causeSize(lost.LimitTooTight, func(z int) float64 { return one(isIndoor(z)) })
+	s := a.causeSize(lost.LimitTooTight, a.indoorPart)
 	if len(s.zones) == 0 {
 		return nil
 	}
-	low, high, n := math.Inf(1), math.Inf(-1), 0
-	margin := 0.0
-	for _, z := range s.zones {
-		p := &a.Lost.Patterns[z].Limit
-		low, high = math.Min(low, p.IndoorC), math.Max(high, p.IndoorC)
-		margin = math.Max(margin, p.MarginK)
-		n += p.IndoorN
+	low, high, n, margin := math.Inf(1), math.Inf(-1), 0, 0.0
+	// The calls that lie well below comfort, of the zones themselves where they
+	// have any.
+	for _, own := range []bool{true, false} {
+		for _, u := range a.Lost.Units {
+			for _, c := range u.Calls {
+				if c.MarginK >= 1 && own == contains(s.zones, c.Zone) && a.servesAny(a.Site.PlantIndex(u.ID), s.zones) {
+					low, high, margin = math.Min(low, c.AboveC), math.Max(high, c.AboveC), math.Max(margin, c.MarginK)
+					n += max(1, c.Followed)
+				}
+			}
+		}
+		if n > 0 {
+			break
+		}
 	}
 	at := fmt.Sprintf("at about %.1f °C indoors", low)
 	if high-low >= 0.3 {
 		at = fmt.Sprintf("between %.1f and %.1f °C indoors", low, high)
 	}
-	perDay, _ := a.causeDays(lost.LimitTooTight, func(ep *lost.Episode) bool { return isIndoor(ep.Zone) })
+	perDay, _ := a.causeDays(lost.LimitTooTight, func(ep *lost.Episode) bool { return ep.Indoors })
 	f := found{Finding: Finding{
 		ID: "indoor-limit",
 		What: fmt.Sprintf("Cooling takes over from open windows %s, up to %.1f K below the comfort limit: %s of suitable weather could have been open %s",
@@ -187,8 +232,8 @@ func (a *adviser) indoorLimits() []found {
 		Caution:     "Heat can harm people who are ill, old or heavily dressed: tell them before a trial. " + windowCaution,
 	}}
 	s.fill(a, &f.Finding)
-	f.Evidence = Evidence{Points: a.points(s.zones, site.SetpointCool, site.ThermostatTemp, site.AirTemp, site.OperativeTemp, site.PlantStatus), Figure: FigureEpisodes,
-		TypicalDay: a.typical(perDay), ContraryDay: a.contrary(s.zones)}
+	f.Evidence = Evidence{Points: a.points(s.zones, site.SetpointCool, site.ThermostatTemp, site.AirTemp, site.OperativeTemp, site.PlantStatus), Figure: FigureEpisodes}
+	a.both(&f.Evidence, perDay, s.zones)
 	return []found{f}
 }
 
@@ -201,8 +246,8 @@ func (a *adviser) slowReopening() []found {
 	plant := a.plantWords(s.zones)
 	f := found{Finding: Finding{
 		ID: "slow-to-reopen",
-		What: fmt.Sprintf("Zones go back to open mode more than %.0f min after it was due: %s could have been open %s",
-			a.Criteria.ReopenDelayMin, between(s.h, s.low, s.high), a.period()),
+		What: fmt.Sprintf("%s back to open mode more than %.0f min after it was due: %s could have been open %s",
+			capital(zonesGo(a.names(s.zones), len(s.zones))), a.Criteria.ReopenDelayMin, between(s.h, s.low, s.high), a.period()),
 		Confidence: confidence(s, n, 20),
 		RivalExplanations: []string{
 			"rain, wind or a smoke signal that is not logged kept the windows shut",
@@ -215,8 +260,8 @@ func (a *adviser) slowReopening() []found {
 		Caution:     windowCaution,
 	}}
 	s.fill(a, &f.Finding)
-	f.Evidence = Evidence{Points: a.points(s.zones, site.PlantStatus, site.Window, site.WindowOpening, site.WindowEnable), Figure: FigureEpisodes,
-		TypicalDay: a.typical(perDay), ContraryDay: a.contrary(s.zones)}
+	f.Evidence = Evidence{Points: a.points(s.zones, site.PlantStatus, site.Window, site.WindowOpening, site.WindowEnable), Figure: FigureEpisodes}
+	a.both(&f.Evidence, perDay, s.zones)
 	return []found{f}
 }
 
@@ -225,6 +270,14 @@ func one(b bool) float64 {
 		return 1
 	}
 	return 0
+}
+
+// zonesGo is "zone A goes" or "zones A and B go".
+func zonesGo(names string, n int) string {
+	if n == 1 {
+		return "zone " + names + " goes"
+	}
+	return "zones " + names + " go"
 }
 
 // verb picks the form that fits "plant unit A" or "plant units A and B".

@@ -66,8 +66,8 @@ func (a *adviser) typical(perDay []float64) string {
 
 // contrary is the day on which the zones ran open longest with next to nothing
 // missed: at least an hour, and ten times what was missed. It shows that the
-// building can.
-func (a *adviser) contrary(zones []int) string {
+// building can. It is never the typical day itself.
+func (a *adviser) contrary(zones []int, typical string) string {
 	best, day := 0.0, -1
 	for d := range a.cal.Days {
 		var open, missed float64
@@ -75,7 +75,7 @@ func (a *adviser) contrary(zones []int) string {
 			open += a.days.achieved[z][d]
 			missed += a.days.missed[z][d]
 		}
-		if open >= 1 && open >= 10*missed && open > best {
+		if open >= 1 && open >= 10*missed && open > best && a.cal.Days[d].Date.String() != typical {
 			best, day = open, d
 		}
 	}
@@ -83,6 +83,12 @@ func (a *adviser) contrary(zones []int) string {
 		return ""
 	}
 	return a.cal.Days[day].Date.String()
+}
+
+// both chooses the two days of a finding on missed hours.
+func (a *adviser) both(e *Evidence, perDay []float64, zones []int) {
+	e.TypicalDay = a.typical(perDay)
+	e.ContraryDay = a.contrary(zones, e.TypicalDay)
 }
 
 // sumDays adds days of several zones.

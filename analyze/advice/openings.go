@@ -2,6 +2,7 @@ package advice
 
 import (
 	"fmt"
+	"math"
 
 	"sashlog/analyze/lost"
 	"sashlog/configs/site"
@@ -12,11 +13,18 @@ func (a *adviser) neverUsed() []found {
 	if len(s.zones) == 0 {
 		return nil
 	}
+	// Whatever else is mended, nothing is won while the opening stays shut: at
+	// most all that the zones missed.
+	s.high = 0
+	for _, z := range s.zones {
+		s.high += math.Max(a.Summary.Zones[z].Missed.Value, a.Summary.Zones[z].Missed.High)
+	}
+	s.high = math.Max(s.high, s.h)
 	perDay, n := a.causeDays(lost.NeverUsed, everyEpisode)
 	u := a.Lost.Patterns[s.zones[0]].Opening
 	f := found{Finding: Finding{
 		ID: "never-used",
-		What: fmt.Sprintf("The windows %s are next to never opened (%s: %s open of %s known): %s could have been open %s",
+		What: fmt.Sprintf("The windows %s are next to never opened (%s: %s open of %s known): %s could have been open with nothing else in the way, the most if all else is mended too, %s",
 			a.inZones(s.zones), a.Site.Zones[s.zones[0]].ID, tenths(u.OpenH), about(u.KnownH), between(s.h, s.low, s.high), a.period()),
 		Confidence: confidence(s, n, 10),
 		RivalExplanations: []string{
@@ -30,7 +38,8 @@ func (a *adviser) neverUsed() []found {
 		Caution:     windowCaution,
 	}}
 	s.fill(a, &f.Finding)
-	f.Evidence = Evidence{Points: a.points(s.zones, site.Window, site.WindowOpening), Figure: FigureCarpet, TypicalDay: a.typical(perDay), ContraryDay: a.contrary(a.others(s.zones))}
+	f.Evidence = Evidence{Points: a.points(s.zones, site.Window, site.WindowOpening), Figure: FigureCarpet}
+	a.both(&f.Evidence, perDay, a.others(s.zones))
 	return []found{f}
 }
 
@@ -72,8 +81,8 @@ func (a *adviser) notOpened() []found {
 		Caution:     windowCaution,
 	}}
 	s.fill(a, &f.Finding)
-	f.Evidence = Evidence{Points: a.points(s.zones, site.Window, site.WindowOpening, site.CO2, site.AirTemp, site.WindowEnable), Figure: FigureEpisodes,
-		TypicalDay: a.typical(perDay), ContraryDay: a.contrary(s.zones)}
+	f.Evidence = Evidence{Points: a.points(s.zones, site.Window, site.WindowOpening, site.CO2, site.AirTemp, site.WindowEnable), Figure: FigureEpisodes}
+	a.both(&f.Evidence, perDay, s.zones)
 	return []found{f}
 }
 
@@ -89,10 +98,9 @@ func (a *adviser) clashes() []found {
 		What: fmt.Sprintf("Windows stand open while the plant runs, in weather that needs no plant: %s %s %s",
 			between(s.h, s.low, s.high), a.inZones(s.zones), a.period()),
 		Confidence: confidence(s, n, 20),
-		RivalExplanations: []string{
+		RivalExplanations: append(a.alwaysOpen(s.zones),
 			"the plant's status says on while it idles",
-			"both running at once is meant (then set the zone's scheme to concurrent in the site file)",
-		},
+			"both running at once is meant (then set the zone's scheme to concurrent in the site file)"),
 		CheckOnSite: "Open a window of one of the zones and see whether its unit or valve shuts within five minutes",
 		DoNext:      "Wire or programme the window contacts to stop cooling and heating of their zone after about five minutes open",
 		Who:         controlsFirm,
@@ -100,9 +108,21 @@ func (a *adviser) clashes() []found {
 		Caution:     plantCaution,
 	}}
 	s.fill(a, &f.Finding)
-	f.Evidence = Evidence{Points: a.points(s.zones, site.Window, site.WindowOpening, site.PlantStatus, site.CoolingValve, site.HeatingValve), Figure: FigureEpisodes,
-		TypicalDay: a.typical(perDay), ContraryDay: a.contrary(s.zones)}
+	f.Evidence = Evidence{Points: a.points(s.zones, site.Window, site.WindowOpening, site.PlantStatus, site.CoolingValve, site.HeatingValve), Figure: FigureEpisodes}
+	a.both(&f.Evidence, perDay, s.zones)
 	return []found{f}
+}
+
+// alwaysOpen names zones whose contact says open nearly all the time.
+func (a *adviser) alwaysOpen(zones []int) []string {
+	var out []string
+	for _, z := range zones {
+		u := &a.Lost.Patterns[z].Opening
+		if u.KnownH > 0 && u.OpenH > 0.8*u.KnownH {
+			out = append(out, fmt.Sprintf("the contact of zone %s says open in %s of all hours: it may be wired the wrong way round", a.Site.Zones[z].ID, percent(u.OpenH/u.KnownH)))
+		}
+	}
+	return out
 }
 
 // tenths writes a small number of hours.

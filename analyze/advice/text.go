@@ -14,7 +14,11 @@ import (
 func between(h, low, high float64) string {
 	step := 1.0
 	if w := high - low; w > 0 {
-		step = math.Max(1, math.Pow(10, math.Floor(math.Log10(w/2))))
+		step = math.Pow(10, math.Floor(math.Log10(w/2)))
+		if h > 0 { // wide bounds must not swallow the figure itself
+			step = math.Min(step, math.Pow(10, math.Floor(math.Log10(h))))
+		}
+		step = math.Max(1, step)
 	} else if h >= 100 {
 		step = math.Pow(10, math.Floor(math.Log10(h))-1)
 	}

@@ -45,10 +45,13 @@ func (a *adviser) warmZones() []found {
 		}
 	}
 	worst := criterion(s.zones[0])
+	share := percent(worst.OverH/worst.AppliesH) + " of occupied hours"
+	if len(s.zones) > 1 {
+		share = "zone " + a.Site.Zones[s.zones[0]].ID + ": " + share
+	}
 	f := found{Finding: Finding{
-		ID: "too-warm",
-		What: fmt.Sprintf("It is too warm %s: %s above the comfort limit %s (%s: %s of occupied hours)", a.inZones(s.zones), between(s.h, s.low, s.high), a.period(),
-			a.Site.Zones[s.zones[0]].ID, percent(worst.OverH/worst.AppliesH)),
+		ID:         "too-warm",
+		What:       fmt.Sprintf("It is too warm %s: %s above the comfort limit %s (%s)", a.inZones(s.zones), between(s.h, s.low, s.high), a.period(), share),
 		Confidence: confidence(s, events, 20),
 		RivalExplanations: []string{
 			"the sensor hangs in the sun, above equipment or in a duct",
