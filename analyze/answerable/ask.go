@@ -9,8 +9,8 @@ import (
 	"sashlog/ingest/grid"
 )
 
-// asked is one question with the keys of what it needs (see needs); a key
-// after "+" only makes the answer better.
+// asked is one question with the keys of what it needs (see needs); without a
+// key after "+" the answer is partial, one after "~" only makes it surer.
 type asked struct {
 	id, question string
 	needs        []string
@@ -24,20 +24,20 @@ func questions() []asked {
 		{"running", "What was each zone doing: open, mechanical, both, shut?", []string{"windows", "plant"}, true},
 		{"mech_free", "How many suitable hours passed without mechanical plant?", []string{"outdoor temperature", "plant"}, false},
 		{"achieved", "How many suitable hours ran open, and how many were missed?", []string{"outdoor temperature", "windows", "plant", "room temperature", "+CO2"}, false},
-		{"comfort", "How long was it too warm or too cool?", []string{"room temperature", "outdoor temperature", "+operative"}, true},
+		{"comfort", "How long was it too warm or too cool, by the temperature logged?", []string{"room temperature", "outdoor temperature", "~operative"}, true},
 		{"humidity", "Was it too damp or too dry indoors?", []string{"room humidity"}, true},
-		{"fresh_air", "Was the air fresh enough, by CO2?", []string{"CO2", "+outdoor CO2", "+people counted"}, true},
+		{"fresh_air", "Was the air fresh enough, by CO2?", []string{"CO2", "~outdoor CO2", "~people counted"}, true},
 		{"fresh_by_state", "In which running state was the air fresh?", []string{"CO2", "windows", "plant"}, false},
-		{"air_change", "How fast is the air of a zone changed in each running state?", []string{"CO2", "windows", "plant", "+outdoor CO2"}, false},
+		{"air_change", "How fast is the air of a zone changed in each running state?", []string{"CO2", "windows", "plant", "~outdoor CO2"}, false},
 		{"litres_person", "How many litres per second of outdoor air reach each person?", []string{"CO2", "windows", "plant", "volume", "usual people"}, false},
 		{"causes", "What were the missed hours lost to?", []string{"outdoor temperature", "windows", "plant", "room temperature", "+plant type"}, false},
-		{"few_room", "Did a few rooms get the building closed up?", []string{"plant", "room temperature", "usual people", "+cooling set-point"}, true},
+		{"few_room", "Did a few rooms get the building closed up?", []string{"plant", "room temperature", "usual people", "~cooling set-point"}, true},
 		{"night_purge", "Was the night used to cool the building?", []string{"windows", "plant", "room temperature", "outdoor temperature"}, false},
 		{"after_hours", "What ran or stood open when nobody was there?", []string{"plant", "windows"}, true},
 		{"wind_rose", "From where and how strongly did the wind blow on each opening?", []string{"wind", "wind direction", "orientation", "windows"}, false},
 		{"rain", "Were windows open in the rain, and did rain keep them shut?", []string{"rain", "windows"}, false},
 		{"occupied", "When were the zones really used?", []string{"presence"}, true},
-		{"people", "How many people were affected?", []string{"usual people", "+people counted"}, true},
+		{"people", "How many people were affected?", []string{"usual people", "~people counted"}, true},
 		{"energy", "How much energy did the missed hours take?", []string{"plant", "rated or metered power", "outdoor temperature", "windows"}, false},
 	}
 }
@@ -61,10 +61,11 @@ func (a asked) ask(l *logs, known map[string]need) Question {
 	list := make([]need, len(a.needs))
 	var required, optional []string
 	for k, key := range a.needs {
-		name, opt := strings.CutPrefix(key, "+")
+		name, bonus := strings.CutPrefix(key, "~")
+		name, partial := strings.CutPrefix(name, "+")
 		list[k] = known[name]
-		list[k].optional = list[k].optional || opt
-		if list[k].optional {
+		list[k].optional, list[k].bonus = partial, bonus
+		if partial || bonus {
 			optional = append(optional, list[k].words)
 		} else {
 			required = append(required, list[k].words)
@@ -93,10 +94,10 @@ func (a asked) ask(l *logs, known map[string]need) Question {
 				counts[k].whole++
 			case have > 0:
 				counts[k].part++
-				whole = false
+				whole = whole && n.bonus
 			default:
-				whole = false
-				some = some && n.optional
+				whole = whole && n.bonus
+				some = some && (n.optional || n.bonus)
 			}
 		}
 		switch {
@@ -135,6 +136,9 @@ func (q *Question) note(n need, c tally, ways *[]string) {
 	}
 	if c.part > 0 {
 		q.Have = append(q.Have, fmt.Sprintf("%s in part in %d of %s", n.words, c.part, zones(c.asked)))
+	}
+	if n.bonus {
+		return
 	}
 	if missing > 0 {
 		q.Missing = append(q.Missing, of(missing))

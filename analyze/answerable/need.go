@@ -12,8 +12,9 @@ type need struct {
 	cheapest string
 	// met returns how far a zone has it: 1 wholly, 0 not, between in part.
 	met func(l *logs, z int) float64
-	// optional needs make the answer better; without them it is "partly".
-	optional bool
+	// optional needs complete the answer; without them it is "partly". A
+	// bonus makes it surer, and it is whole without.
+	optional, bonus bool
 }
 
 func yes(b bool) float64 {
@@ -42,8 +43,6 @@ func described(words, cheapest string, has func(z *site.Zone) bool) need {
 	return need{words: words, cheapest: cheapest, met: func(l *logs, z int) float64 { return yes(has(&l.s.Zones[z])) }}
 }
 
-func (n need) better() need { n.optional = true; return n }
-
 // What the questions need, with the cheapest way to get it.
 func needs() map[string]need {
 	const contact = "a battery window contact with its own memory on the largest opening of each zone without one; two weeks in spring and two in autumn answer most"
@@ -53,7 +52,7 @@ func needs() map[string]need {
 		"wind":                siteNeed("wind speed", "hourly readings of the nearest weather station as a file", site.WindSpeed),
 		"wind direction":      siteNeed("wind direction", "hourly readings of the nearest weather station as a file", site.WindDirection),
 		"rain":                siteNeed("rain", "trend the rain sensor that the window control usually has, or the nearest weather station's file", site.Rain),
-		"outdoor CO2":         siteNeed("outdoor CO2", "put one of the room sensors outdoors in the shade for a week and write the level into the site file", site.OutdoorCO2).better(),
+		"outdoor CO2":         siteNeed("outdoor CO2", "put one of the room sensors outdoors in the shade for a week and write the level into the site file", site.OutdoorCO2),
 		"windows": {words: "window contacts or positions", cheapest: contact, met: func(l *logs, z int) float64 {
 			if l.s.Zones[z].Openings.None() {
 				return math.NaN() // nothing to know: leaves the question without this zone
@@ -77,7 +76,7 @@ func needs() map[string]need {
 				}
 				return float64(have) / float64(len(units))
 			}},
-		"plant type": {words: "whether plant heats, cools or only moves air", cheapest: "trend the coil valves or the unit's heating and cooling status beside its run status", optional: true,
+		"plant type": {words: "whether plant heats, cools or only moves air", cheapest: "trend the coil valves or the unit's heating and cooling status beside its run status",
 			met: func(l *logs, z int) float64 {
 				units := l.serving(z)
 				if len(units) == 0 || l.any(z, site.HeatingValve, site.CoolingValve, site.PlantStatus) {
@@ -92,7 +91,7 @@ func needs() map[string]need {
 				return float64(have) / float64(len(units))
 			}},
 		"room temperature":  zoneNeed("room temperature", "trend the thermostat's reading, or a battery logger on a desk away from sun and draught", site.AirTemp, site.OperativeTemp, site.GlobeTemp, site.ThermostatTemp),
-		"operative":         zoneNeed("operative or globe temperature", "a globe thermometer in the worst zone for two warm weeks", site.OperativeTemp, site.GlobeTemp).better(),
+		"operative":         zoneNeed("operative or globe temperature", "a globe thermometer in the worst zone for two warm weeks", site.OperativeTemp, site.GlobeTemp),
 		"room humidity":     zoneNeed("room humidity", "a battery logger of temperature and humidity in a few rooms, one per floor", site.Humidity),
 		"CO2":               zoneNeed("CO2", "one battery CO2 logger moved from zone to zone, two weeks each", site.CO2),
 		"people counted":    zoneNeed("people counted", "an hourly head count on a few days, or the presence sensors of the lighting", site.People),
@@ -100,7 +99,7 @@ func needs() map[string]need {
 		"volume":            described("floor area and height", "read both off the plans and write them into the site file", func(z *site.Zone) bool { return z.AreaM2 > 0 && z.HeightM > 0 }),
 		"usual people":      described("usual number of people", "count the desks and write the number into the site file", func(z *site.Zone) bool { return z.People >= 0 }),
 		"orientation":       described("directions the openings face", "read them off the plan and write them into the site file", func(z *site.Zone) bool { return len(z.FacesDeg) > 0 || !z.Openings.Outdoors }),
-		"cooling set-point": {words: "cooling set-points or thermostat readings", cheapest: "trend the thermostats' set-points; the controller has them already", optional: true, met: func(l *logs, z int) float64 { return yes(l.any(z, site.SetpointCool, site.ThermostatTemp)) }},
+		"cooling set-point": {words: "cooling set-points or thermostat readings", cheapest: "trend the thermostats' set-points; the controller has them already", met: func(l *logs, z int) float64 { return yes(l.any(z, site.SetpointCool, site.ThermostatTemp)) }},
 		"rated or metered power": {words: "electric power, or rated power of the plant", cheapest: "read the rated power off the units' plates and write it into the site file", met: func(l *logs, z int) float64 {
 			if l.site[site.ElectricPower] {
 				return 1
