@@ -267,6 +267,9 @@ func (p *Proposal) nameLogs() {
 		if l.Setting.Sheet != "" {
 			name += " " + l.Setting.Sheet
 		}
+		if strings.HasPrefix(name, "#") { // such a row of the points table would be a remark
+			name = "log " + name
+		}
 		used[name]++
 		if n := used[name]; n > 1 {
 			name = fmt.Sprintf("%s (%d)", name, n)

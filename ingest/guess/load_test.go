@@ -152,7 +152,7 @@ func TestProposalsLoad(t *testing.T) {
 		h.write(t, dir, uint64(i+1))
 		loads(t, h.name, dir)
 	}
-	for seed := range uint64(chances) {
+	for seed := range uint64(chances / 4) {
 		h := anyHabit(seed + 1)
 		dir := t.TempDir()
 		h.write(t, dir, seed)

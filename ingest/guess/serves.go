@@ -157,56 +157,81 @@ func (p *Proposal) runningOf(unit string) *running {
 }
 
 // answer is how plainly a zone answers to a unit's own starts and stops, in
-// standard errors; the larger of temperature and CO2.
+// standard errors: temperature and CO2 together.
 func (p *Proposal) answer(zone string, unit int, runs []*running) float64 {
 	r := runs[unit]
 	if r == nil {
 		return 0
 	}
-	best := 0.0
+	var sq [2]float64 // of temperature and CO2
 	for _, t := range p.Tracks {
-		if !t.Mapped() || t.Owner != zone || t.textual() {
+		if !t.Mapped() || t.Owner != zone || t.OwnerKind != site.OwnerZone || t.textual() {
 			continue
 		}
-		co2 := t.Quantity == site.CO2
-		if !co2 && t.Quantity != site.AirTemp && t.Quantity != site.ThermostatTemp && t.Quantity != site.OperativeTemp {
+		kind := 0
+		switch t.Quantity {
+		case site.CO2:
+			kind = 1
+		case site.AirTemp, site.ThermostatTemp, site.OperativeTemp:
+		default:
 			continue
 		}
-		var sum, sq float64
-		n := 0
-		for i := 1; i < len(r.on); i++ {
-			step := r.on[i] - r.on[i-1]
-			if step == 0 || step != step {
-				continue
+		for _, reach := range []int64{1, 2} {
+			if z := t.bends(r, unit, runs, kind == 1, reach); z > 0 {
+				sq[kind] = math.Max(sq[kind], z*z)
 			}
-			k := r.from + int64(i)
-			if shared(unit, k, runs) {
-				continue
-			}
-			sign := r.sign[i]
-			if step < 0 {
-				sign = r.sign[i-1]
-			}
-			if co2 {
-				sign = -1
-			}
-			bend := t.bins.at(k+2) - 2*t.bins.at(k) + t.bins.at(k-2)
-			if sign == 0 || bend != bend {
-				continue
-			}
-			x := bend * sign * step
-			sum += x
-			sq += x * x
-			n++
 		}
-		if n < 20 {
-			continue
-		}
-		mean := sum / float64(n)
-		se := math.Sqrt(math.Max(sq/float64(n)-mean*mean, 1e-12) / float64(n))
-		best = math.Max(best, mean/se)
 	}
-	return best
+	return math.Sqrt(sq[0] + sq[1])
+}
+
+// bends is how far a track's bends at a unit's own starts and stops lie from
+// nothing, in standard errors. A bend is the change of slope over so many
+// quarter-hours either side, positive where the unit pulls as it should: warmer when it
+// heats, cooler when it cools, less CO2 when it runs.
+func (t *Track) bends(r *running, unit int, runs []*running, co2 bool, reach int64) float64 {
+	var xs []float64
+	for i := 1; i < len(r.on); i++ {
+		step := r.on[i] - r.on[i-1]
+		if step == 0 || step != step {
+			continue
+		}
+		k := r.from + int64(i)
+		if shared(unit, k, runs) {
+			continue
+		}
+		sign := r.sign[i]
+		if step < 0 {
+			sign = r.sign[i-1]
+		}
+		if co2 {
+			sign = -1
+		}
+		bend := t.bins.at(k+reach) - 2*t.bins.at(k) + t.bins.at(k-reach)
+		if sign == 0 || bend != bend {
+			continue
+		}
+		xs = append(xs, bend*sign*step)
+	}
+	if len(xs) < 20 {
+		return 0
+	}
+	// A few wild bends (a window, a crowd) must not decide: cut at three times
+	// the usual size.
+	size := make([]float64, len(xs))
+	for i, x := range xs {
+		size[i] = math.Abs(x)
+	}
+	limit := 3 * math.Max(half(size), 1e-9)
+	var sum, sq float64
+	for _, x := range xs {
+		x = math.Max(-limit, math.Min(limit, x))
+		sum += x
+		sq += x * x
+	}
+	n := float64(len(xs))
+	mean := sum / n
+	return mean / math.Sqrt(math.Max(sq/n-mean*mean, 1e-12)/n)
 }
 
 // shared reports whether another unit starts or stops about the same time.

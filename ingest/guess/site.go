@@ -14,7 +14,7 @@ import (
 // WriteSite writes the proposed site file. What only a person can say is
 // marked TO FILL IN; everything else is a proposal with its reason.
 func (p *Proposal) WriteSite(w io.Writer) error {
-	y := &yaml{w: w}
+	y := &yamlFile{w: w}
 	y.line("# Proposed by sashlog scan from the exports alone. Nothing here is certain: go")
 	y.line("# through it from top to bottom. Lines marked TO FILL IN need a person; the rest")
 	y.line("# is proposed, with its reason. Then run:  sashlog audit %s", p.Options.SiteFile)
@@ -35,12 +35,12 @@ func (p *Proposal) WriteSite(w io.Writer) error {
 	return y.err
 }
 
-type yaml struct {
+type yamlFile struct {
 	w   io.Writer
 	err error
 }
 
-func (y *yaml) line(format string, args ...any) {
+func (y *yamlFile) line(format string, args ...any) {
 	if y.err == nil {
 		_, y.err = fmt.Fprintf(y.w, format+"\n", args...)
 	}
@@ -103,7 +103,7 @@ func quotes(list []string) string {
 	return "[" + strings.Join(out, ", ") + "]"
 }
 
-func (p *Proposal) head(y *yaml) {
+func (p *Proposal) head(y *yamlFile) {
 	y.line("site:")
 	y.line("  name: \"\"        # TO FILL IN: what the building is called")
 	hint := "region and city, for instance Europe/Zurich; daylight saving follows from it"
@@ -150,7 +150,7 @@ func (p *Proposal) span() (from, to time.Time, ok bool) {
 	return time.Unix(lo, 0).UTC(), time.Unix(hi-1, 0).UTC(), true
 }
 
-func (p *Proposal) occupancy(y *yaml) {
+func (p *Proposal) occupancy(y *yamlFile) {
 	y.line("# When people are there, in local time.")
 	y.line("occupancy:")
 	y.line("  source: schedule")
@@ -179,7 +179,7 @@ func dayWords(days [7]bool) string {
 	return "[" + strings.Join(out, ", ") + "]"
 }
 
-func (p *Proposal) zoneLines(y *yaml) {
+func (p *Proposal) zoneLines(y *yamlFile) {
 	y.line("# One entry per zone, as the names of columns group them. TO FILL IN where you")
 	y.line("# can: name, floor, area_m2, height_m, people, place (perimeter or core), faces,")
 	y.line("# openings (outdoors, none, or {through: [ids]}), fan_m_s, scheme.")
@@ -211,7 +211,7 @@ func (p *Proposal) zoneLines(y *yaml) {
 	y.line("")
 }
 
-func (p *Proposal) plantLines(y *yaml) {
+func (p *Proposal) plantLines(y *yamlFile) {
 	if len(p.Plant) == 0 {
 		y.line("# plant: []   # no point of a plant unit was found; without one a zone is never mechanical")
 		y.line("")
@@ -232,7 +232,7 @@ func (p *Proposal) plantLines(y *yaml) {
 	y.line("")
 }
 
-func (p *Proposal) logLines(y *yaml) {
+func (p *Proposal) logLines(y *yamlFile) {
 	y.line("# Where the logs are and how they are written, as found by looking at them.")
 	readable := 0
 	for _, l := range p.Logs {
@@ -252,7 +252,7 @@ func (p *Proposal) logLines(y *yaml) {
 }
 
 // write writes one entry of the list of logs.
-func (l *Log) write(y *yaml, p *Proposal) {
+func (l *Log) write(y *yamlFile, p *Proposal) {
 	lead := "  "
 	if l.Undated {
 		y.line("  # The next log has times of day without dates and cannot be read until it gets dates:")
@@ -344,7 +344,7 @@ func every(s int64) string {
 
 // openLines lists, as comments, the guesses that are least certain and the
 // columns left open.
-func (p *Proposal) openLines(y *yaml) {
+func (p *Proposal) openLines(y *yamlFile) {
 	y.line("")
 	y.line("# How sure the guesses are (all of them stand in %s, in the note column):", p.Options.PointsFile)
 	mapped, open := p.sorted(true), p.sorted(false)

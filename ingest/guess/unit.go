@@ -55,9 +55,9 @@ var unitSpellings = func() map[string]unit {
 	return m
 }()
 
-func unitKey(s string) string {
-	return strings.NewReplacer(" ", "", "'", "", `"`, "", "[", "", "]", "", "(", "", ")", "", "^", "", "·", "").Replace(strings.ToLower(strings.TrimSpace(s)))
-}
+var unitMarks = strings.NewReplacer(" ", "", "'", "", `"`, "", "[", "", "]", "", "(", "", ")", "", "^", "", "·", "")
+
+func unitKey(s string) string { return unitMarks.Replace(strings.ToLower(strings.TrimSpace(s))) }
 
 // unitNamed finds a unit by its spelling.
 func unitNamed(s string) (unit, bool) {

@@ -55,9 +55,13 @@ func tokens(name string) []token {
 		}
 		begin = -1
 	}
-	rs := []rune(name)
-	at := 0
+	var rs []rune
+	var starts []int // the byte each begins at; invalid bytes take one
+	for at, r := range name {
+		rs, starts = append(rs, r), append(starts, at)
+	}
 	for i, r := range rs {
+		at := starts[i]
 		c := class(r)
 		switch {
 		case c == 0:
@@ -75,7 +79,6 @@ func tokens(name string) []token {
 			begin = at
 		}
 		last = r
-		at += len(string(r))
 	}
 	flush(len(name))
 	raw = joinSpecial(raw, name)
@@ -169,6 +172,9 @@ func meanings(t token) []token {
 	return []token{t}
 }
 
+// umlauts takes back the e that stands for two dots.
+var umlauts = strings.NewReplacer("ae", "a", "oe", "o", "ue", "u")
+
 // lookup finds a word, also where an umlaut is written with an e, or with a
 // plural s.
 func lookup(w string) (entry, bool) {
@@ -176,7 +182,7 @@ func lookup(w string) (entry, bool) {
 		return e, true
 	}
 	if strings.ContainsAny(w, "e") && len(w) > 3 {
-		u := strings.NewReplacer("ae", "a", "oe", "o", "ue", "u").Replace(w)
+		u := umlauts.Replace(w)
 		if e, ok := lexicon[u]; ok && u != w {
 			return e, true
 		}
@@ -192,10 +198,10 @@ func lookup(w string) (entry, bool) {
 // cut divides a compound word into known words, the fewest; the first may be
 // unknown when a long known word ends it (a room's name). Nil when it cannot.
 func cut(w string) []string {
-	if len(w) < 6 {
+	if len(w) < 6 || len(w) > 60 {
 		return nil
 	}
-	w = strings.NewReplacer("ae", "a", "oe", "o", "ue", "u").Replace(w)
+	w = umlauts.Replace(w)
 	n := len(w)
 	best := make([][]string, n+1)
 	best[0] = []string{}
