@@ -118,7 +118,7 @@ func (r *reader) one(ctx context.Context, i int, points []int) {
 	if points != nil && !slices.ContainsFunc(src.Points(), func(p int) bool { return slices.Contains(points, p) }) {
 		return
 	}
-	n := &notes{Builder: r.builder, unmapped: map[string]int64{}, meter: &r.meter}
+	n := &notes{Builder: r.builder, unmapped: map[string]int64{}, meter: &r.meter, belt: newBelt(r.builder)}
 	n.meter.again(points != nil, r.size(src))
 	if some, ok := src.(interface {
 		ReadSome(context.Context, reading.Sink, []int) error
@@ -127,6 +127,7 @@ func (r *reader) one(ctx context.Context, i int, points []int) {
 	} else {
 		r.errs[i] = src.Read(ctx, n)
 	}
+	n.belt.end()
 	r.meter.add(r.size(src) - n.told)
 	if points == nil {
 		if d, ok := src.(sources.Source); ok {
@@ -174,8 +175,7 @@ func (r *reader) failure() error {
 	return failures(r.site, r.set, r.errs, names)
 }
 
-// notes is the sink of one source: readings go straight to the builder, what
-// concerns the source as a whole is kept until all are read.
+// notes is the sink of one source: readings go to the builder, what concerns the source as a whole is kept until all are read.
 type notes struct {
 	*grid.Builder
 	issues   []reading.Issue
@@ -184,6 +184,7 @@ type notes struct {
 	file     reading.FileLedger
 	clock    []reading.ClockNote
 	meter    *meter
+	belt     *belt
 	readings int64
 	told     int64
 }
@@ -199,7 +200,7 @@ func (n *notes) Reading(point int, unixS int64, v float64) {
 	if n.readings%tellEach == 0 {
 		n.told += n.meter.add(tellEach * bytesOfAReading)
 	}
-	n.Builder.Reading(point, unixS, v)
+	n.belt.put(point, unixS, v)
 }
 
 func (n *notes) Reject(point int, why reading.Reason, at reading.Where, text string) {

@@ -25,8 +25,8 @@ type Options struct {
 // on the number of readings, and its results on the readings alone, not on the
 // order they come in.
 //
-// Readings and rejects of different points may come from different goroutines
-// at once; those of one point must not.
+// Readings of different points may come from different goroutines at once, and
+// rejects beside them; readings of one point must not, nor rejects of one.
 //
 // Use: feed every source; Redo for points whose unit was mistaken; while Again
 // names points, feed the sources that hold them once more; then Finish.
@@ -77,7 +77,7 @@ func (b *Builder) Reading(point int, t int64, v float64) {
 			return
 		}
 	} else {
-		s.ledger.RowsRead++
+		s.rows++
 		if s.hist != nil {
 			s.hist.Counts[s.hist.Bins.index(v)]++
 		}

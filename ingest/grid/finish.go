@@ -66,6 +66,7 @@ func (b *Builder) Flush() {
 	for i := range b.series {
 		s, l := &b.series[i], &b.ledger.Points[i]
 		s.end()
+		l.RowsRead += s.rows
 		for r, c := range s.counts {
 			l.Counts[r] += c
 		}

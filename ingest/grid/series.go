@@ -43,6 +43,7 @@ type series struct {
 	counts          [reading.NumReasons]int64
 	conflicts       []int64 // the first few instants, for the evidence
 	outLow, outHigh float64 // of values out of range
+	rows            int64   // of the first pass
 	early           int64   // readings that came before an earlier one
 	dropped         bool    // disordered: the first pass only counts
 
@@ -84,7 +85,7 @@ func (s *series) reset(p *site.Point, r Rule, stepS int64) {
 	t, _ := p.Quantity.Trait()
 	*s = series{
 		point: p, lastT: noTime, low: r.Low, high: r.High, fix: s.fix, hist: s.hist, ledger: s.ledger,
-		early:   s.early,
+		early: s.early, rows: s.rows,
 		pending: instant{t: noTime}, cand: instant{t: noTime}, curT: noTime,
 		spike: quantise(r.Spike), frozenS: r.FrozenS,
 		acc: accumulator{stepS: stepS, kind: t.Kind},

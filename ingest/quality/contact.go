@@ -18,6 +18,7 @@ const (
 	alikeShare      = 0.01 // open shares so close to one of them are alike
 	alikeLeast      = 3
 	alikeKappaMost  = 0.2 // agreement beyond chance of windows that have the weather in common is higher
+	alikePairs      = 8   // each is compared with so many of its group
 	chatterFlips    = 0.45
 	chatterReadings = 20 // of a day, before its flips are counted
 	chatterDays     = 0.05
@@ -110,7 +111,7 @@ func alikeContacts(r *run) {
 				}
 			}
 			shortest, longest = min(shortest, r.hours(n)), max(longest, r.hours(n))
-			for b := a + 1; b < to; b++ {
+			for b := a + 1; b < min(to, a+1+alikePairs); b++ {
 				kappas = append(kappas, r.kappa(cs[a].point, cs[b].point))
 			}
 		}
