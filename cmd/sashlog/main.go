@@ -28,7 +28,14 @@ const (
 	exitInterrupted = 130
 )
 
+// gcPercent trades a few per cent of time for a tenth of the memory: most of
+// what an audit holds are columns that live until the end.
+const gcPercent = 60
+
 func main() {
+	if os.Getenv("GOGC") == "" {
+		debug.SetGCPercent(gcPercent)
+	}
 	os.Exit(run(os.Args[1:], process{stdout: os.Stdout, stderr: os.Stderr, env: os.Getenv, now: time.Now}))
 }
 
