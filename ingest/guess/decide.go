@@ -120,7 +120,7 @@ func (t *Track) decide(n *naming, imperial bool) {
 	b := list[0]
 	t.Confidence = b.conf
 	if b.q == "" {
-		t.Reasons = []string{b.why, b.else_}
+		t.Reasons = []string{b.why, b.other}
 		return
 	}
 	t.Likely, t.Unit, t.UnitSure, t.Doubts = b.q, b.unit, b.sure, b.doubts
@@ -156,7 +156,7 @@ func (t *Track) decide(n *naming, imperial bool) {
 		if o.q != b.q && o.conf > b.conf-0.05 && o.v.against == "" {
 			what := string(o.q)
 			if o.q == "" {
-				what = o.else_
+				what = o.other
 			}
 			t.Doubts = append(t.Doubts, fmt.Sprintf("as well %s (%s)", what, o.why))
 			t.Confidence = min(t.Confidence, MapAt-0.01)

@@ -71,7 +71,7 @@ func TestHostileNames(t *testing.T) {
 		}
 		b.WriteString("\n")
 	}
-	loads(t, "hostile names", writeFiles(t, map[string]string{`#1 "odd" {x}.csv`: b.String()}))
+	loads(t, "hostile names", writeFiles(t, map[string]string{`#1 "odd" {x} [1].csv`: b.String()}))
 }
 
 // TestDamaged: files that are no logs are told, never fatal.

@@ -256,11 +256,14 @@ func (s *shape) words() string {
 	return fmt.Sprintf("one row per instant, %d value columns", len(s.values))
 }
 
+// nameMarks would be read as patterns in the points table.
+var nameMarks = strings.NewReplacer("*", "_", "?", "_", "[", "(", "]", ")", `\`, "_")
+
 // nameLogs gives every log a name of its own.
 func (p *Proposal) nameLogs() {
 	used := map[string]int{}
 	for _, l := range p.Logs {
-		name := strings.TrimSpace(l.Name)
+		name := strings.TrimSpace(nameMarks.Replace(l.Name))
 		if name == "" || name == "." {
 			name = "log"
 		}

@@ -16,7 +16,6 @@ type times struct {
 	s        *shape
 	parser   *clock.Parser
 	offsets  map[int64]int // written offsets met, with the rows that carry them
-	zulu     bool
 	lastText []byte
 	last     int64
 }
@@ -119,10 +118,6 @@ func (p *pace) share() float64 {
 func (s *shape) findOrder(ctx context.Context) error {
 	pr := s.rows.Prover()
 	if !pr.Needed {
-		s.order = ""
-		if !pr.Needed && s.dashedYMD() {
-			s.proof = "year first, as written"
-		}
 		return nil
 	}
 	if _, _, ok := pr.Proven(); !ok {
@@ -163,8 +158,6 @@ func (s *shape) findOrder(ctx context.Context) error {
 	}
 	return nil
 }
-
-func (s *shape) dashedYMD() bool { return s.log.TimeColumn != "" || s.log.DateColumn != "" }
 
 // leaps counts steps of more than two days or backwards by more than two
 // hours when dates are read in an order.

@@ -1,7 +1,6 @@
 package guess
 
 import (
-	"fmt"
 	"sort"
 
 	"sashlog/configs/site"
@@ -13,10 +12,9 @@ type candidate struct {
 	score  float64       // how plainly the name says so, 0 to 1
 	at     int           // position of the word it hangs on: the last counts most
 	why    string
-	else_  string // what it is, where q is empty
+	other  string // what it is, where q is empty
 	needs  string // what a person must say, where the name leaves it open
 	placed site.Placement
-	water  bool
 }
 
 // candidates lists what a name may mean, the best first.
@@ -30,27 +28,27 @@ func (n *naming) candidates(t *Track) []candidate {
 		out = append(out, c)
 		return &out[len(out)-1]
 	}
-	other := func(what string, head tag) {
+	no := func(what string, head tag) {
 		if s := n.has(head); s >= abbreviation*0.8 {
-			out = append(out, candidate{else_: what, score: s, at: n.last[head], why: "the name says " + n.quoted(head)})
+			out = append(out, candidate{other: what, score: s, at: n.last[head], why: "the name says " + n.quoted(head)})
 		}
 	}
-	other("brightness: no quantity of sashlog", "lux")
-	other("pressure or visibility: no quantity of sashlog", "pressure")
-	other("noise: no quantity of sashlog", "noise")
-	other("a battery, current, signal or counter of hours: no quantity of sashlog", "voltage")
-	other("other air quality: no quantity of sashlog", "voc")
-	other("other dust: no quantity of sashlog", "dustelse")
-	other("a door: no quantity of sashlog", "door")
-	other("an energy counter: no quantity of sashlog (power is)", "energy")
+	no("brightness: no quantity of sashlog", "lux")
+	no("pressure or visibility: no quantity of sashlog", "pressure")
+	no("noise: no quantity of sashlog", "noise")
+	no("a battery, current, signal or counter of hours: no quantity of sashlog", "voltage")
+	no("other air quality: no quantity of sashlog", "voc")
+	no("other dust: no quantity of sashlog", "dustelse")
+	no("a door: no quantity of sashlog", "door")
+	no("an energy counter: no quantity of sashlog (power is)", "energy")
 	n.setpoints(add, &out)
-	n.weather(add, t)
-	n.temperatures(add, &out, t)
+	n.weather(add)
+	n.temperatures(add, &out)
 	n.air(add, &out)
 	n.openings(add, t)
 	n.plant(add, &out, t)
 	if n.hasUnit && n.unit.dim == "other" && len(out) == 0 {
-		out = append(out, candidate{else_: "a unit of nothing sashlog uses", score: 0.8, why: "its unit"})
+		out = append(out, candidate{other: "a unit of nothing sashlog uses", score: 0.8, why: "its unit"})
 	}
 	// The word that comes last says what is measured; those before it say where.
 	last := 0
@@ -58,7 +56,7 @@ func (n *naming) candidates(t *Track) []candidate {
 		last = max(last, c.at)
 	}
 	for i := range out {
-		if out[i].at < last && out[i].else_ == "" {
+		if out[i].at < last && out[i].other == "" {
 			out[i].score *= 0.85
 		}
 	}
@@ -75,7 +73,7 @@ func (n *naming) setpoints(add adding, out *[]candidate) {
 	}
 	switch {
 	case n.any("co2", "hum", "flow", "pressure", "water", "lux") > 0 || n.any("supply", "return") > shortWord:
-		*out = append(*out, candidate{else_: "a set-point other than a room's temperature", score: s, at: 1000, why: "the name says " + n.quoted("setpoint", "co2", "hum", "flow", "pressure", "water", "supply")})
+		*out = append(*out, candidate{other: "a set-point other than a room's temperature", score: s, at: 1000, why: "the name says " + n.quoted("setpoint", "co2", "hum", "flow", "pressure", "water", "supply")})
 	case n.any("heat") > shortWord && n.any("cool") == 0:
 		add(site.SetpointHeat, 0.95*min(s, n.has("heat")), "setpoint", "heat").at = 1000
 	case n.any("cool") > shortWord && n.any("heat") == 0:
@@ -86,7 +84,7 @@ func (n *naming) setpoints(add adding, out *[]candidate) {
 	}
 }
 
-func (n *naming) weather(add adding, t *Track) {
+func (n *naming) weather(add adding) {
 	out := n.any("out")
 	sun := n.has("solar")
 	if n.hasUnit && n.unit.dim == "sun" {
@@ -117,11 +115,10 @@ func (n *naming) weather(add adding, t *Track) {
 			add(site.OutdoorDewPoint, s*0.9, "dew", "out")
 		}
 	}
-	_ = t
 }
 
 // temperatures adds what a temperature may be, by the place it is taken at.
-func (n *naming) temperatures(add adding, out *[]candidate, t *Track) {
+func (n *naming) temperatures(add adding, out *[]candidate) {
 	s := n.has("temp")
 	why := tag("temp")
 	if u := n.unit; n.hasUnit && u.dim == "temp" && s < 0.7*u.sure && n.any("setpoint", "dew", "hum", "co2") == 0 {
@@ -131,7 +128,7 @@ func (n *naming) temperatures(add adding, out *[]candidate, t *Track) {
 		return
 	}
 	if n.any("water") >= abbreviation {
-		*out = append(*out, candidate{else_: "a temperature of water", score: n.any("water"), at: max(n.last["water"], n.last["temp"]), why: "the name says " + n.quoted("water"), water: true})
+		*out = append(*out, candidate{other: "a temperature of water", score: n.any("water"), at: max(n.last["water"], n.last["temp"]), why: "the name says " + n.quoted("water")})
 		return
 	}
 	unitOwner := n.any("unit")
@@ -151,7 +148,7 @@ func (n *naming) temperatures(add adding, out *[]candidate, t *Track) {
 	case n.any("mixed") > 0 && unitOwner+n.any("air") > 0 || n.any("mixed") > shortWord:
 		add(site.MixedAirTemp, min(s, n.any("mixed")), why, "mixed")
 	case n.any("exhaust") > 0 && n.any("return") == 0:
-		*out = append(*out, candidate{else_: "exhaust air: no quantity of sashlog", score: n.any("exhaust"), at: n.last["temp"], why: "the name says " + n.quoted("exhaust")})
+		*out = append(*out, candidate{other: "exhaust air: no quantity of sashlog", score: n.any("exhaust"), at: n.last["temp"], why: "the name says " + n.quoted("exhaust")})
 	case n.any("return") > 0:
 		if unitOwner > 0 && !inRoom {
 			add(site.ReturnAirTemp, min(s, n.any("return")), why, "return")
@@ -166,7 +163,6 @@ func (n *naming) temperatures(add adding, out *[]candidate, t *Track) {
 	default:
 		add(site.AirTemp, 0.75*s, why)
 	}
-	_ = t
 }
 
 // air adds humidity, CO2 and dust.
@@ -177,7 +173,7 @@ func (n *naming) air(add adding, out *[]candidate) {
 		case outdoors:
 			add(site.OutdoorCO2, s, "co2", "out")
 		case n.any("supply", "return", "exhaust") > 0 && n.any("unit") > 0:
-			*out = append(*out, candidate{else_: "CO2 in a duct of plant: no quantity of sashlog", score: s, at: n.last["co2"], why: "the name says " + n.quoted("co2", "return", "supply")})
+			*out = append(*out, candidate{other: "CO2 in a duct of plant: no quantity of sashlog", score: s, at: n.last["co2"], why: "the name says " + n.quoted("co2", "return", "supply")})
 		default:
 			add(site.CO2, s, "co2")
 		}
@@ -196,7 +192,7 @@ func (n *naming) air(add adding, out *[]candidate) {
 		case outdoors || n.word["hum"] == "OAH" || n.word["hum"] == "OARH":
 			add(site.OutdoorHumidity, s, "hum", "out")
 		case n.any("supply", "return", "mixed", "exhaust") > 0 && n.any("unit") > 0:
-			*out = append(*out, candidate{else_: "humidity in a duct of plant: no quantity of sashlog", score: s, at: n.last["hum"], why: "the name says " + n.quoted("hum", "supply", "return")})
+			*out = append(*out, candidate{other: "humidity in a duct of plant: no quantity of sashlog", score: s, at: n.last["hum"], why: "the name says " + n.quoted("hum", "supply", "return")})
 		default:
 			add(site.Humidity, s, "hum", "room")
 		}
@@ -339,5 +335,3 @@ func (n *naming) occupants(add adding, t *Track) {
 
 // percent reports numbers within 0 to 100.
 func (t *Track) percent() bool { return t.number > 0 && t.min >= 0 && t.max <= 100 && t.max > 1 }
-
-func (c *candidate) String() string { return fmt.Sprintf("%s %.2f", c.q, c.score) }

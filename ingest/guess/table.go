@@ -35,9 +35,6 @@ func (p *Proposal) row(t *Track, source string, q site.Quantity) []string {
 	if q == "" {
 		unit = ""
 	}
-	if placement == "" && t.Mapped() && t.OwnerKind == site.OwnerZone && (q == site.AirTemp || q == site.CO2 || q == site.Humidity) {
-		placement = "" // where it hangs only a person can say
-	}
 	return []string{clean(source), clean(t.Column), t.Owner, string(q), unit, logging, "", "", "", t.Values, placement, "", clean(t.Note())}
 }
 

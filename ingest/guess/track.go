@@ -16,7 +16,7 @@ type Track struct {
 	Log    *Log
 	Source string // as points.csv names it
 	Column string
-	// name parts: what the column itself is called, and what stands around it
+	// Name parts: what the column itself is called, and what stands around it
 	// (the key of a long log's rows, the file, the sheet).
 	name, around string
 	unitText     string // unit written beside the values
@@ -242,7 +242,7 @@ func (t *Track) value(v float64, at int64, dated bool) {
 	}
 }
 
-// finish sorts the sample and drops what stands for a missing value.
+// finish sorts the sample.
 func (t *Track) finish() {
 	sort.Float64s(t.sample)
 }
@@ -277,24 +277,6 @@ func (t *Track) binary() bool {
 		}
 	}
 	return true
-}
-
-// profile is the mean of the series by hour of the written day, NaN where
-// nothing is known.
-func (t *Track) profile() [24]float64 {
-	var sum [24]float64
-	var n [24]int
-	for i, v := range t.bins.mean {
-		if v == v {
-			h := (t.bins.from + int64(i)) * binS / 3600 % 24
-			sum[h] += float64(v)
-			n[h]++
-		}
-	}
-	for h := range sum {
-		sum[h] /= float64(n[h])
-	}
-	return sum
 }
 
 // daily is the middle of the daily swings (highest less lowest quarter-hour),

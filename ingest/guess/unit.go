@@ -188,7 +188,7 @@ func (t *Track) fitUnit(q site.Quantity, said unit, imperial bool) (text string,
 			return said.text, true, "", ""
 		}
 	}
-	lo, mid, hi := t.q(0.01), t.q(0.5), t.q(0.99)
+	mid, hi := t.q(0.5), t.q(0.99)
 	switch dimOf(q) {
 	case "temp":
 		switch {
@@ -229,7 +229,6 @@ func (t *Track) fitUnit(q site.Quantity, said unit, imperial bool) (text string,
 	case "flow":
 		return "m3/h", false, "", "no unit is written; cubic metres per hour taken"
 	}
-	_ = lo
 	return tr.Unit, true, "", ""
 }
 

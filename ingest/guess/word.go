@@ -224,7 +224,7 @@ func cut(w string) []string {
 			}
 		}
 	}
-	if best[n] != nil && len(best[n]) > 1 {
+	if len(best[n]) > 1 {
 		return best[n]
 	}
 	for j := 3; j <= n-4; j++ {

@@ -17,11 +17,8 @@ func (o *owning) loneUnit(t *Track) string {
 }
 
 func (o *owning) toUnit(t *Track, pl place) {
-	key := strings.ToLower(strings.NewReplacer("-", "", "_", "", " ", "", ".", "").Replace(pl.unit))
-	// "AHU-01" and "AHU1" are one.
-	ts := tokens(pl.unit)
-	key = ""
-	for _, x := range ts {
+	key := "" // "AHU-01" and "AHU1" are one
+	for _, x := range tokens(pl.unit) {
 		if x.number {
 			key += "-" + bare(x.fold)
 		} else {
@@ -31,6 +28,12 @@ func (o *owning) toUnit(t *Track, pl place) {
 	id, ok := o.units[key]
 	if !ok {
 		id = pl.unit
+		for _, z := range o.zones {
+			if z.ID == id { // ids name one thing each
+				id = "unit " + id
+				break
+			}
+		}
 		o.units[key] = id
 		o.uorder = append(o.uorder, id)
 	}
