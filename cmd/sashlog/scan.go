@@ -45,7 +45,7 @@ site.proposed.yaml and points.proposed.csv beside it.`,
 			}
 			for _, path := range args {
 				if _, err := os.Stat(path); err != nil {
-					return fail(exitSource, fmt.Errorf("%s cannot be read: %w; hint: name folders or files of exports", path, err))
+					return fail(exitSource, fmt.Errorf("cannot read what to scan: %w; hint: name folders or files of exports", err))
 				}
 			}
 			siteName, pointsName, err := proposalNames(into)

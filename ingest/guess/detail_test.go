@@ -55,6 +55,25 @@ func TestDateOrders(t *testing.T) {
 	}
 }
 
+// TestDatesBeside: a log that proves nothing stays open, with a hint at the log
+// beside it that does.
+func TestDatesBeside(t *testing.T) {
+	from := time.Date(2025, 3, 4, 0, 0, 0, 0, time.UTC)
+	dir := writeFiles(t, map[string]string{
+		"room 1.csv": export("02/01/2006 15:04", "Time,Room 1 Temperature,Room 1 CO2", from, 90, 15*time.Minute),
+		"room 2.csv": export("02/01/2006 15:04", "Time,Room 2 Temperature,Room 2 CO2", from, 2000, 15*time.Minute)})
+	p, err := guess.Scan(context.Background(), guess.Options{Paths: []string{dir}, Into: dir})
+	if err != nil || len(p.Logs) != 2 {
+		t.Fatalf("%v, %d logs", err, len(p.Logs))
+	}
+	if l := p.Logs[0]; !l.DateOpen || l.Setting.DateOrder != "" || !strings.Contains(l.DateProof, "room 2 beside it is dmy") {
+		t.Errorf("order %q, open %v, %q", l.Setting.DateOrder, l.DateOpen, l.DateProof)
+	}
+	if l := p.Logs[1]; l.DateOpen || l.Setting.DateOrder != site.DMY {
+		t.Errorf("order %q, open %v, %q", l.Setting.DateOrder, l.DateOpen, l.DateProof)
+	}
+}
+
 // TestHostileNames: whatever names hold, the proposal is valid and harmless.
 func TestHostileNames(t *testing.T) {
 	names := []string{`Room 101 "Temperature"`, "Room 102 Temperature <script>alert(1)</script>", "Room 103: Temp, {a: [b]} #c", "Room 104 Temp\u202e\u2066 x", "# Room 105 Temp", "=cmd()|Room 106 Temp", "Room 107 Temp\u2028end", "Room 108 'Temp' \\n \\x00", "null", "Room 109 Temp: yes"}

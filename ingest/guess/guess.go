@@ -50,6 +50,9 @@ type Proposal struct {
 	// them. OccupiedWhy says what they were read from.
 	Occupied    []site.Times
 	OccupiedWhy string
+	// OccupiedHint says in words what the logs show where it cannot be put into
+	// local time.
+	OccupiedHint string
 	// Places and typical years that files name.
 	Typical *TypicalYear
 
@@ -135,6 +138,7 @@ func Scan(ctx context.Context, o Options) (*Proposal, error) {
 		shaped = append(shaped, p.look(ctx, f)...)
 	}
 	p.group(shaped)
+	p.besideDates()
 	for _, l := range p.Logs {
 		if err := p.read(ctx, l); err != nil {
 			return nil, err

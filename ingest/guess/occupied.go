@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"math"
 	"sort"
+	"strings"
 
 	"sashlog/configs/site"
 )
@@ -35,8 +36,20 @@ func (w *week) at(d, s int) float64 {
 }
 
 // proposeTimes reads occupied times from presence and counts, else from CO2,
-// else from the plant's running.
+// else from the plant's running. Where every clock is universal time the hours
+// are a hint only, since nothing says how far the site's own lie from them.
 func (p *Proposal) proposeTimes() {
+	p.Occupied, p.OccupiedWhy = p.timesFrom(func(l *Log) bool { return l.Clock != "utc" && !l.DateOpen })
+	if len(p.Occupied) > 0 {
+		return
+	}
+	if times, why := p.timesFrom(func(l *Log) bool { return l.Clock == "utc" && !l.DateOpen }); len(times) > 0 {
+		p.OccupiedHint = fmt.Sprintf("in universal time %s, %s to %s (from %s)", strings.Trim(dayWords(times[0].Days), "[]"), hhmm(times[0].FromMin), hhmm(times[0].ToMin), why)
+	}
+}
+
+// timesFrom reads occupied times from the logs a clock allows.
+func (p *Proposal) timesFrom(allowed func(*Log) bool) (times []site.Times, why string) {
 	for _, from := range []struct {
 		words string
 		take  func(t *Track) *week
@@ -49,7 +62,7 @@ func (p *Proposal) proposeTimes() {
 		var all week
 		n := 0
 		for _, t := range p.Tracks {
-			if !t.Mapped() || t.Log.Clock == "utc" {
+			if !t.Mapped() || !allowed(t.Log) {
 				continue
 			}
 			w := from.take(t)
@@ -70,11 +83,10 @@ func (p *Proposal) proposeTimes() {
 			continue
 		}
 		if times, ok := all.times(from.lag); ok {
-			p.Occupied = times
-			p.OccupiedWhy = fmt.Sprintf("%s in %s", from.words, count(n, "column", "columns"))
-			return
+			return times, fmt.Sprintf("%s in %s", from.words, count(n, "column", "columns"))
 		}
 	}
+	return nil, ""
 }
 
 func count(n int, one, many string) string {

@@ -4,6 +4,7 @@ import (
 	"context"
 	"fmt"
 	"math"
+	"path"
 	"sort"
 
 	"sashlog/configs/site"
@@ -182,6 +183,22 @@ func (s *shape) leaps(ctx context.Context, o site.DateOrder) (leaps, steps int, 
 		return true
 	})
 	return leaps, steps, err
+}
+
+// besideDates adds to logs whose order of day and month is open what the logs
+// in the same folder prove: a hint, since nothing says they were written alike.
+func (p *Proposal) besideDates() {
+	for _, l := range p.Logs {
+		if !l.DateOpen {
+			continue
+		}
+		for _, o := range p.Logs {
+			if o != l && !o.DateOpen && o.Setting.DateOrder != "" && path.Dir(o.Setting.Path) == path.Dir(l.Setting.Path) {
+				l.DateProof += fmt.Sprintf("; %s beside it is %s", o.Name, o.Setting.DateOrder)
+				break
+			}
+		}
+	}
 }
 
 // clockOf proposes the log's clock from what is written in its times.

@@ -156,6 +156,9 @@ func (p *Proposal) occupancy(y *yamlFile) {
 	y.line("  source: schedule")
 	if len(p.Occupied) == 0 {
 		y.line("  times: []       # TO FILL IN, for instance: [{days: mon-fri, from: \"08:00\", to: \"18:00\"}]")
+		if p.OccupiedHint != "" {
+			y.line("  # people seem to be there %s", p.OccupiedHint)
+		}
 	} else {
 		y.line("  times:          # proposed from %s; the report also shows one hour either way", p.OccupiedWhy)
 		for _, t := range p.Occupied {

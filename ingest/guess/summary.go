@@ -118,7 +118,11 @@ func (p *Proposal) Person() []string {
 			out = append(out, fmt.Sprintf("the order of day and month in %s: %s", l.Name, l.DateProof))
 		}
 	}
-	if len(p.Occupied) == 0 {
+	switch {
+	case len(p.Occupied) > 0:
+	case p.OccupiedHint != "":
+		out = append(out, "when people are there in local time: they seem to be there "+p.OccupiedHint)
+	default:
 		out = append(out, "when people are there: nothing in the logs says so")
 	}
 	var none []string
