@@ -74,6 +74,34 @@ func TestDatesBeside(t *testing.T) {
 	}
 }
 
+// TestSplitFiles: files of one thing split by date are one log; the same columns
+// at the same time are different rooms.
+func TestSplitFiles(t *testing.T) {
+	files := map[string]string{}
+	for _, room := range []int{101, 102, 203} {
+		for m := range 3 {
+			from := time.Date(2025, time.Month(1+m), 1, 0, 0, 0, 0, time.UTC)
+			files[fmt.Sprintf("room %d 2025-%02d.csv", room, m+1)] = export("2006-01-02 15:04", "time,temperature,co2", from, 28*24, time.Hour)
+		}
+	}
+	for d := range 5 {
+		from := time.Date(2025, 1, 1+d, 0, 0, 0, 0, time.UTC)
+		files[fmt.Sprintf("weather_202501%02d.csv", d+1)] = export("2006-01-02 15:04", "time,outdoor temperature,outdoor CO2", from, 24, time.Hour)
+	}
+	dir := writeFiles(t, files)
+	p, err := guess.Scan(context.Background(), guess.Options{Paths: []string{dir}, Into: dir})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if len(p.Logs) != 4 || len(p.Zones) != 3 || len(p.Tracks) != 8 {
+		t.Errorf("%d logs, %d zones, %d columns; 4, 3 and 8 are there", len(p.Logs), len(p.Zones), len(p.Tracks))
+		for _, l := range p.Logs {
+			t.Log(l.Name, l.Setting.Path)
+		}
+	}
+	loads(t, "split files", dir)
+}
+
 // TestHostileNames: whatever names hold, the proposal is valid and harmless.
 func TestHostileNames(t *testing.T) {
 	names := []string{`Room 101 "Temperature"`, "Room 102 Temperature <script>alert(1)</script>", "Room 103: Temp, {a: [b]} #c", "Room 104 Temp\u202e\u2066 x", "# Room 105 Temp", "=cmd()|Room 106 Temp", "Room 107 Temp\u2028end", "Room 108 'Temp' \\n \\x00", "null", "Room 109 Temp: yes"}

@@ -66,11 +66,49 @@ func (p *Proposal) group(shapes []*shape) {
 		case len(list) > 1 && !overlap(list) && p.glob(list) != "":
 			p.add(list, p.glob(list), stemOf(list))
 		default:
-			single = append(single, list...)
+			single = append(single, p.parts(list)...)
 		}
 	}
 	p.singles(single)
 	p.nameLogs()
+}
+
+// parts joins files of one thing split by date ("room 101 2025-01.csv") and
+// returns those that stand alone.
+func (p *Proposal) parts(list []*shape) (single []*shape) {
+	byStem := map[string][]*shape{}
+	var order []string
+	for _, s := range list {
+		var stem []string
+		ts := tokens(s.file.Stem())
+		for i := 0; i < len(ts); i++ {
+			var next *token
+			if i+1 < len(ts) {
+				next = &ts[i+1]
+			}
+			if ts[i].number && dateLike(ts[i].fold, next) {
+				for i+1 < len(ts) && ts[i+1].number && len(ts[i+1].fold) <= 2 {
+					i++
+				}
+				continue
+			}
+			stem = append(stem, ts[i].fold)
+		}
+		k := strings.Join(stem, " ")
+		if byStem[k] == nil {
+			order = append(order, k)
+		}
+		byStem[k] = append(byStem[k], s)
+	}
+	for _, k := range order {
+		group := byStem[k]
+		if len(group) > 1 && group[0].file.Archive() == "" && !overlap(group) && p.glob(group) != "" {
+			p.add(group, p.glob(group), k)
+			continue
+		}
+		single = append(single, group...)
+	}
+	return single
 }
 
 // overlap reports whether the files' times overlap by more than a day: then

@@ -1,7 +1,9 @@
 package guess_test
 
-// heldOut are habits written down last: nothing was changed after they were
-// first run, so they show what to expect of a folder never seen.
+// heldOut are habits written down after all others. When they were first run 2
+// of 102 columns were wrong (a weather station called wx, taken for a room); a
+// temperature that moves like outdoor air, unlike all others, is left open
+// since. Habits composed by chance (anyHabit) are the ones never looked at.
 func heldOut() []habit {
 	return []habit{
 		{name: "hotel rooms, split units", zones: 4,

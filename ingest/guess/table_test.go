@@ -21,8 +21,12 @@ const (
 	silentMax = 0    // wrong, at least 80 % sure, and no doubt said
 )
 
-// chances is how many habits are composed by chance.
-const chances = 40
+// chances is how many habits are composed by chance, from seed unseen on. Rules
+// were mended while looking at the seeds up to 40; these were never looked at.
+const (
+	chances = 40
+	unseen  = 1001
+)
 
 // score counts what became of the columns of one folder.
 type score struct {
@@ -181,7 +185,7 @@ func TestTable(t *testing.T) {
 	heldTotal := sum("held out together", held)
 	var chance []*score
 	for seed := range uint64(chances) {
-		h := anyHabit(seed + 1)
+		h := anyHabit(seed + unseen)
 		dir := t.TempDir()
 		chance = append(chance, judge(t, h.name, dir, h.write(t, dir, 200+seed)))
 	}
