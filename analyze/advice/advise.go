@@ -49,6 +49,7 @@ type group int
 const (
 	gain     group = iota // occupied hours to win
 	night                 // hours when nobody is there
+	purge                 // hours of cool nights, many and each worth little
 	evidence              // hours that cannot be judged
 )
 

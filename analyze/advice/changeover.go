@@ -201,7 +201,7 @@ func (a *adviser) indoorLimits() []found {
 	for _, own := range []bool{true, false} {
 		for _, u := range a.Lost.Units {
 			for _, c := range u.Calls {
-				if c.MarginK >= 1 && own == contains(s.zones, c.Zone) && a.servesAny(a.Site.PlantIndex(u.ID), s.zones) {
+				if c.MarginK >= lost.IndoorMarginK && own == contains(s.zones, c.Zone) && a.servesAny(a.Site.PlantIndex(u.ID), s.zones) {
 					low, high, margin = math.Min(low, c.AboveC), math.Max(high, c.AboveC), math.Max(margin, c.MarginK)
 					n += max(1, c.Followed)
 				}

@@ -17,7 +17,7 @@ func (a *adviser) overnightPlant() []found {
 	var s size
 	var units []string
 	var zones []int
-	nights, known, kWh, top := 0, 0, 0.0, 0.0
+	nights, known, kWh, top, workdays := 0, 0, 0.0, 0.0, 0.0
 	for _, u := range a.AfterHours.Units {
 		h := u.OnH - u.WarmUpH
 		if h < leastH || h < 0.02*u.VacantH {
@@ -28,6 +28,7 @@ func (a *adviser) overnightPlant() []found {
 		s.high += h + u.UnknownH
 		units = append(units, u.ID)
 		kWh += u.EnergyKWh * h / u.OnH
+		workdays += u.WorkdayOnH - u.WarmUpH
 		if h > top {
 			top, nights, known = h, u.NightsOn, u.NightsKnown
 		}
@@ -45,29 +46,38 @@ func (a *adviser) overnightPlant() []found {
 	if !math.IsNaN(kWh) {
 		energy = fmt.Sprintf(", at most %s kWh at rated power", whole(kWh))
 	}
+	when := ""
+	if workdays >= 0.8*s.h {
+		when = ", nearly all of it before and after occupied time of working days"
+	}
+	perDay, events := a.nightDays(zones), 0
+	for _, h := range perDay {
+		if h > 0 {
+			events++
+		}
+	}
 	name := "Plant unit " + units[0] + " runs"
 	if len(units) > 1 {
 		name = "Plant units " + list(units, 4) + " run"
 	}
 	f := found{group: night, Finding: Finding{
 		ID: "plant-after-hours",
-		What: fmt.Sprintf("%s when nobody is there, warm-up aside: %s %s%s; the worst was left on in %s of %d known",
-			name, between(s.h, s.low, s.high), a.period(), energy, count(nights, "night", "nights"), known),
-		Confidence: confidence(s, nights, 10),
+		What: fmt.Sprintf("%s when nobody is there, warm-up aside: %s %s%s%s; the worst was left on in %s of %d known",
+			name, between(s.h, s.low, s.high), a.period(), when, energy, count(nights, "night", "nights"), known),
+		Confidence: confidence(s, events, 20),
 		RivalExplanations: []string{
 			"people were there outside the occupied times of the site file",
 			"a server or archive room needs it",
 			"it was night purge or frost protection",
 		},
-		CheckOnSite: "Read the stop times, the extension timers and the weekend programme of " + list(units, 4),
-		DoNext:      "Set the stop to the end of occupied time, and give late workers a timer that ends by itself",
+		CheckOnSite: "Read the start and stop times, the extension timers and the weekend programme of " + list(units, 4),
+		DoNext:      "Set start and stop to occupied time (warm-up by need), and give late workers a timer that ends by itself",
 		Who:         controlsFirm,
 		UndoIf:      "rooms that need conditioning at night leave their limits",
 		Caution:     plantCaution,
 	}}
 	s.fill(a, &f.Finding)
 	f.PersonH = 0 // nobody is there
-	perDay := a.nightDays(zones)
 	f.Evidence = Evidence{Points: a.points(zones, site.PlantStatus, site.SupplyAirflow), Figure: FigureAfterHours, TypicalDay: a.typical(perDay), ContraryDay: a.quietDay(zones)}
 	return []found{f}
 }
@@ -117,7 +127,7 @@ func (a *adviser) unusedPurge() []found {
 	}
 	unused := func(z int) float64 {
 		x := &a.AfterHours.Zones[z]
-		if a.Running.Zones[z].NoOpening || !(x.PurgeAvailableH > 0) || a.overH(z) < leastH {
+		if a.Running.Zones[z].NoOpening || !(x.PurgeAvailableH > 0) || !a.tooWarmByDay(z) {
 			return 0
 		}
 		return x.PurgeAvailableH - x.PurgeH
@@ -131,7 +141,7 @@ func (a *adviser) unusedPurge() []found {
 		used += a.AfterHours.Zones[z].PurgeH
 		available += a.AfterHours.Zones[z].PurgeAvailableH
 	}
-	f := found{group: night, Finding: Finding{
+	f := found{group: purge, Finding: Finding{
 		ID: "night-purge",
 		What: fmt.Sprintf("Cool nights are hardly used %s, which are too warm by day: %s of night purge were available and not used %s (%s used)",
 			a.inZones(s.zones), between(s.h, s.low, s.high), a.period(), percent(used/available)),
@@ -155,14 +165,11 @@ func (a *adviser) unusedPurge() []found {
 	return []found{f}
 }
 
-// overH are a zone's hours above the headline limit.
-func (a *adviser) overH(z int) float64 {
-	for _, c := range a.Exceedance.Zones[z].Criteria {
-		if c.ID == a.Exceedance.Headline {
-			return c.OverH
-		}
-	}
-	return 0
+// tooWarmByDay reports whether a zone is among those of the finding on warm
+// zones.
+func (a *adviser) tooWarmByDay(z int) bool {
+	c := a.headline(z)
+	return c != nil && c.AppliesH > 0 && c.OverH >= warmShare*c.AppliesH
 }
 
 func contains(list []int, v int) bool {

@@ -14,20 +14,12 @@ const warmShare = 0.03
 
 // warmZones finds zones too warm by the headline criterion.
 func (a *adviser) warmZones() []found {
-	criterion := func(z int) *exceedance.Criterion {
-		for k := range a.Exceedance.Zones[z].Criteria {
-			if c := &a.Exceedance.Zones[z].Criteria[k]; c.ID == a.Exceedance.Headline {
-				return c
-			}
-		}
-		return nil
-	}
+	criterion := a.headline
 	over := func(z int) float64 {
-		c := criterion(z)
-		if c == nil || !(c.AppliesH > 0) || c.OverH < warmShare*c.AppliesH {
+		if !a.tooWarmByDay(z) {
 			return 0
 		}
-		return c.OverH
+		return criterion(z).OverH
 	}
 	s := a.sizeOf(over, over, func(z int) float64 { return over(z) + criterion(z).UnknownH*over(z)/criterion(z).AppliesH })
 	if len(s.zones) == 0 {
@@ -67,6 +59,16 @@ func (a *adviser) warmZones() []found {
 	f.Evidence = Evidence{Points: a.points(s.zones, site.OperativeTemp, site.AirTemp, site.ThermostatTemp, site.OutdoorTemp), Figure: FigureExceedance,
 		TypicalDay: a.typical(sumDays(days...)), ContraryDay: a.coolDay(s.zones)}
 	return []found{f}
+}
+
+// headline is a zone's outcome of the headline criterion, nil without one.
+func (a *adviser) headline(z int) *exceedance.Criterion {
+	for k := range a.Exceedance.Zones[z].Criteria {
+		if c := &a.Exceedance.Zones[z].Criteria[k]; c.ID == a.Exceedance.Headline {
+			return c
+		}
+	}
+	return nil
 }
 
 func (a *adviser) tooWarm(z, i int) bool {

@@ -203,7 +203,7 @@ func (e *evidence) askingFor(u, i int) asking {
 			}
 		case unit.calling[k][i]:
 			a.share += people
-			if unit.calls[k].MarginK >= indoorMarginK && people > earlyPeople {
+			if unit.calls[k].MarginK >= IndoorMarginK && people > earlyPeople {
 				a.early, earlyPeople = z, people
 			}
 			if above := t - e.callAt(&unit.calls[k], i); !outside && above > most {

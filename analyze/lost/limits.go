@@ -34,13 +34,16 @@ type LimitPattern struct {
 
 // Rules of an inferred limit, our assumptions.
 const (
-	limitRate     = 0.8  // of the passings of an outdoor limit are followed
-	limitFreeMax  = 0.1  // share of suitable hours beyond it with the plant off
-	limitBeyondH  = 2.0  // suitable hours beyond it
-	limitSlackK   = 0.25 // sensors and steps blur the edge
-	indoorMarginK = 1.0  // below the comfort limit
-	callTouchK    = 0.05 // nearer to its call than this a room may be calling
+	limitRate    = 0.8  // of the passings of an outdoor limit are followed
+	limitFreeMax = 0.1  // share of suitable hours beyond it with the plant off
+	limitBeyondH = 2.0  // suitable hours beyond it
+	limitSlackK  = 0.25 // sensors and steps blur the edge
+	callTouchK   = 0.05 // nearer to its call than this a room may be calling
 )
+
+// IndoorMarginK is how far below the comfort limit a call must come to be too
+// tight a limit. Our assumption: half a kelvin is beyond a sensor's error.
+const IndoorMarginK = 0.5
 
 func noLimit() LimitPattern {
 	nan := math.NaN()
@@ -195,7 +198,7 @@ func (e *evidence) limitPattern(z int) LimitPattern {
 func (e *evidence) indoorLimit(p *LimitPattern, z int) {
 	for _, u := range e.zones[z].units {
 		for _, c := range e.units[u].calls {
-			if c.Zone == z && !math.IsNaN(c.AboveC) && c.MarginK >= indoorMarginK && c.Followed > p.IndoorN {
+			if c.Zone == z && !math.IsNaN(c.AboveC) && c.MarginK >= IndoorMarginK && c.Followed > p.IndoorN {
 				p.IndoorC, p.MarginK, p.IndoorN, p.IndoorPassed = c.AboveC, c.MarginK, c.Followed, c.Passed
 			}
 		}

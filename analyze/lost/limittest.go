@@ -51,7 +51,7 @@ func outdoorLimitExplains(e *evidence, s *spell) verdict {
 
 func indoorLimitTest() test {
 	return test{
-		Test: Test{LimitTooTight, "the plant ran while rooms called for cooling that were still within comfort: their calls (see few-room changeover) come at least 1 K below the comfort limit, " +
+		Test: Test{LimitTooTight, "the plant ran while rooms called for cooling that were still within comfort: their calls (see few-room changeover) come at least 0.5 K below the comfort limit, " +
 			"rooms of at least the few-room share of people called, and less than that share was too warm", ourAssumption},
 		indoors: true,
 		explain: indoorLimitExplains,
