@@ -28,9 +28,9 @@ const (
 	exitInterrupted = 130
 )
 
-// gcPercent trades a few per cent of time for a tenth of the memory: most of
+// gcPercent trades a little time for a fifth of the memory: most of
 // what an audit holds are columns that live until the end.
-const gcPercent = 60
+const gcPercent = 30
 
 func main() {
 	if os.Getenv("GOGC") == "" {

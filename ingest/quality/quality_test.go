@@ -19,12 +19,11 @@ import (
 const stepS = 300
 
 type bench struct {
-	t      *testing.T
-	site   *site.Site
-	feed   [][]float64 // per point and step, NaN not logged
-	from   time.Time
-	n      int
-	before []reading.Check
+	t    *testing.T
+	site *site.Site
+	feed [][]float64 // per point and step, NaN not logged
+	from time.Time
+	n    int
 }
 
 func newBench(t *testing.T, days int) *bench {
