@@ -160,7 +160,7 @@ func (p *Proposal) occupancy(y *yamlFile) {
 			y.line("  # people seem to be there %s", p.OccupiedHint)
 		}
 	} else {
-		y.line("  times:          # proposed from %s; the report also shows one hour either way", p.OccupiedWhy)
+		y.line("  times:          # proposed from %s; check them", p.OccupiedWhy)
 		for _, t := range p.Occupied {
 			y.line("    - {days: %s, from: %q, to: %q}", dayWords(t.Days), hhmm(t.FromMin), hhmm(t.ToMin))
 		}
