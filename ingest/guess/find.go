@@ -136,7 +136,7 @@ func (p *Proposal) special(f *logfile.File) string {
 	case strings.HasPrefix(line, "from,to,zones,kind"):
 		return "a diary of sashlog"
 	case fixedWidth(head):
-		return "hourly weather in fixed columns (temperature, dew point, pressure, wind, in universal time): no log of points; see the weather settings"
+		return "hourly weather in fixed columns (temperature, dew point, pressure, wind, in universal time): recognised, but not proposed as a log; export the station as CSV with names of columns"
 	}
 	return ""
 }
