@@ -36,10 +36,12 @@ type Input struct {
 	AfterHours *afterhours.Result
 }
 
-// mostFindings is how many findings are listed; leastH how many hours one must
-// have to gain. Our choice.
+// mostFindings is how many findings are listed, mostAlike how many of one kind
+// (few rooms, outdoor limits); leastH how many hours one must have to gain.
+// Our choice: a list that can be read at one go and still names every kind.
 const (
-	mostFindings = 12
+	mostFindings = 14
+	mostAlike    = 2
 	leastH       = 2.0
 )
 
@@ -66,7 +68,7 @@ type adviser struct {
 	days *dayTable
 }
 
-// Advise lists what to do first: at most twelve findings with hours to gain,
+// Advise lists what to do first: at most fourteen findings with hours to gain,
 // occupied hours first, by person-hours and then hours.
 func Advise(in Input) []Finding {
 	a := &adviser{Input: in, cal: calendar.Of(in.Grid)}

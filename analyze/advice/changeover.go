@@ -10,7 +10,7 @@ import (
 )
 
 // fewRooms finds the rooms whose thermostats get everybody's plant started,
-// one finding per leading room, the three worst.
+// one finding per leading room, the two worst.
 func (a *adviser) fewRooms() []found {
 	var leaders []int
 	for led := range a.Site.Zones {
@@ -56,7 +56,7 @@ func (a *adviser) fewRooms() []found {
 		out = append(out, f)
 	}
 	sort.SliceStable(out, func(i, j int) bool { return a.weight(&out[i]) > a.weight(&out[j]) })
-	return out[:min(3, len(out))]
+	return out[:min(mostAlike, len(out))]
 }
 
 // callConfidence lowers confidence where a zone's call is inferred from starts
@@ -127,7 +127,7 @@ func (a *adviser) outdoorLimits() []found {
 		}
 	}
 	sort.SliceStable(out, func(i, j int) bool { return a.weight(&out[i]) > a.weight(&out[j]) })
-	return out[:min(3, len(out))]
+	return out[:min(mostAlike, len(out))]
 }
 
 // indoorPart is the share of a zone's hours lost to a tight limit that is lost
