@@ -111,7 +111,7 @@ func (a *adviser) clockStarts() []found {
 }
 
 // outdoorLimits finds changeover limits outdoors that are tighter than the
-// weather allows, one finding per plant unit, the three worst; indoorLimits
+// weather allows, one finding per plant unit, the two worst; indoorLimits
 // those indoors.
 func (a *adviser) outdoorLimits() []found {
 	seen := map[string]bool{}
