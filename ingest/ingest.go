@@ -102,6 +102,7 @@ func Read(ctx context.Context, s *site.Site, opt Options) (*grid.Grid, *reading.
 		return nil, b.Ledger(), err
 	}
 	b.Flush()
+	r.unmet()
 
 	// 5. The period and the grid.
 	f, err := p.settle(b)

@@ -162,8 +162,14 @@ func (r *reader) account() {
 		}
 		l.IssuesDropped += n.dropped
 	}
+}
+
+// unmet adds the points of long logs that no row named; which these are is
+// known only once the rows are counted, after the builder's Flush.
+func (r *reader) unmet() {
+	l := r.builder.Ledger()
 	for _, p := range sources.Unmet(r.site, l) {
-		r.builder.Issue(reading.Issue{Where: p.Where, Point: p.Point, Text: p.Text, Hint: p.Hint})
+		l.Issues = append(l.Issues, reading.Issue{Where: p.Where, Point: p.Point, Text: p.Text, Hint: p.Hint})
 	}
 }
 

@@ -294,3 +294,24 @@ func TestHostileNames(t *testing.T) {
 		}
 	}
 }
+
+// TestNamesOfLongLogs: a mapped name that no row of a long log carries is
+// pointed out, and only such a name.
+func TestNamesOfLongLogs(t *testing.T) {
+	const message = "carries the name"
+	page := func(dir string) string {
+		raw, err := os.ReadFile(filepath.Join(auditTo(t, filepath.Join(dir, "site.yaml"), exitDone), "report.html"))
+		if err != nil {
+			t.Fatal(err)
+		}
+		return string(raw)
+	}
+	dir := smallDemo(t)
+	if strings.Contains(page(dir), message) {
+		t.Error("every name of the demo's long logs is met, yet one is reported as missing")
+	}
+	edit(t, dir, "points.csv", func(s string) string { return strings.Replace(s, "windows,F1-R01-W3,", "windows,F1-R01-W9,", 1) })
+	if got := page(dir); strings.Count(got, message) != 1 || !strings.Contains(got, "F1-R01-W9") {
+		t.Errorf("a name that no row carries: reported %d times", strings.Count(got, message))
+	}
+}
