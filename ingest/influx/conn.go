@@ -18,7 +18,9 @@ import (
 
 // patience is how long to wait before each further attempt: a server that is
 // restarted comes back within it.
-var patience = [...]time.Duration{500 * time.Millisecond, time.Second, 2 * time.Second, 4 * time.Second, 8 * time.Second, 15 * time.Second}
+func patience() []time.Duration {
+	return []time.Duration{500 * time.Millisecond, time.Second, 2 * time.Second, 4 * time.Second, 8 * time.Second, 15 * time.Second}
+}
 
 // conn is a connection to one server. It is safe for concurrent use.
 type conn struct {
@@ -28,7 +30,8 @@ type conn struct {
 	http   *http.Client
 	// met is set once the server answered; before, a failure to reach it is
 	// final.
-	met atomic.Bool
+	met   atomic.Bool
+	waits []time.Duration // before each further attempt
 }
 
 func connect(in *site.Influx) *conn {
@@ -43,7 +46,7 @@ func connect(in *site.Influx) *conn {
 		ForceAttemptHTTP2:   true,
 	}}
 	opt := influxdb2.DefaultOptions().SetLogLevel(0).SetApplicationName("sashlog").SetHTTPClient(h).SetPrecision(time.Second)
-	c := &conn{in: in, http: h, client: influxdb2.NewClientWithOptions(in.Address, in.Token.Reveal(), opt)}
+	c := &conn{in: in, http: h, waits: patience(), client: influxdb2.NewClientWithOptions(in.Address, in.Token.Reveal(), opt)}
 	c.query = c.client.QueryAPI(in.Organisation)
 	return c
 }
@@ -87,21 +90,21 @@ func (c *conn) rows(ctx context.Context, flux string, take func(*query.FluxRecor
 // steadily makes attempts until one succeeds, the failure is final or the
 // patience is used up.
 func (c *conn) steadily(ctx context.Context, attempt func() error) error {
-	timedOut := false
+	once := false
 	for i := 0; ; i++ {
 		err := attempt()
 		var f *Failure
 		if err == nil || ctx.Err() != nil || !errors.As(err, &f) || !f.again {
 			return err
 		}
-		if i == len(patience) || !c.met.Load() || f.slow && timedOut {
+		if i == len(c.waits) || !c.met.Load() || (f.slow || f.ours) && once {
 			return err
 		}
-		timedOut = timedOut || f.slow
+		once = once || f.slow || f.ours
 		select {
 		case <-ctx.Done():
 			return ctx.Err()
-		case <-time.After(patience[i]):
+		case <-time.After(c.waits[i]):
 		}
 	}
 }

@@ -21,7 +21,7 @@
 // when that gives what its readings would give: a sampled number, logged at a
 // fixed interval shorter than a step and dividing it. Then the time-weighted
 // mean of a step is the plain mean of its readings, wherever none of them is
-// missing, late or impossible. Where one is, and in the step before it, the
+// missing, late or impossible. Where one is, and in the steps beside it, the
 // readings themselves are fetched (windows.go); so the step means are those of
 // the raw log to within the 1e-4 of the unit that readings are rounded to.
 // Everything else (states, changes of value, directions, amounts of rain per

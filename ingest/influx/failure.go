@@ -19,6 +19,7 @@ type Failure struct {
 
 	again bool // another attempt may succeed
 	slow  bool // the time for an answer ran out
+	ours  bool // the server may find fault with the question: one more attempt will do
 }
 
 func (f *Failure) Error() string {
@@ -66,7 +67,7 @@ func (c *conn) explain(ctx context.Context, err error) error {
 	}
 	var ce *client.Error
 	if !errors.As(err, &ce) || ce.StatusCode == 0 {
-		text, hint := err.Error(), ""
+		text, hint := err.Error(), "is the server still running? run the command again once it is"
 		if errors.As(err, new(brokenOff)) {
 			return &Failure{Text: "the answer broke off: " + text, Err: err, again: true}
 		}
@@ -102,7 +103,7 @@ func (c *conn) explain(ctx context.Context, err error) error {
 	case code == http.StatusNotFound || code == http.StatusMethodNotAllowed || code == http.StatusNotImplemented:
 		f.Hint = versionHint(c.version(ctx))
 	case code == http.StatusTooManyRequests || code >= 500:
-		f.again = true
+		f.again, f.ours = true, code == http.StatusInternalServerError
 	}
 	return f
 }
@@ -113,7 +114,7 @@ const bucketHint = "compare bucket and organisation of the log with the server's
 func noDatabase(said string) bool {
 	s := strings.ToLower(said)
 	return strings.Contains(s, "no database") || strings.Contains(s, "database not found") || strings.Contains(s, "could not find bucket") ||
-		strings.Contains(s, "retention policy not found") || strings.Contains(s, "bucket") && strings.Contains(s, "not found")
+		strings.Contains(s, "retention policy not found") || strings.Contains(s, "invalid retention policy") || strings.Contains(s, "bucket") && strings.Contains(s, "not found")
 }
 
 // versionHint says what a server's version means for this program, which asks

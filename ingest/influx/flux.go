@@ -7,8 +7,9 @@ import (
 	"time"
 )
 
-// fluxString writes a string literal. Beside the quote and the backslash, ${
-// must be escaped: it would begin an expression.
+// fluxString writes a string literal. Beside the quote and the backslash, $
+// must be escaped: with a brace it would begin an expression. It is written
+// as a code, because old servers misread \$ after other backslashes.
 func fluxString(s string) string {
 	var b strings.Builder
 	b.WriteByte('"')
@@ -17,14 +18,8 @@ func fluxString(s string) string {
 		case c == '"' || c == '\\':
 			b.WriteByte('\\')
 			b.WriteByte(c)
-		case c == '$' && strings.HasPrefix(s[i:], "${"):
-			b.WriteString(`\$`)
-		case c == '\n':
-			b.WriteString(`\n`)
-		case c == '\r':
-			b.WriteString(`\r`)
-		case c == '\t':
-			b.WriteString(`\t`)
+		case c == '$' || c < ' ' || c == 0x7f:
+			fmt.Fprintf(&b, `\x%02x`, c)
 		default:
 			b.WriteByte(c)
 		}

@@ -37,8 +37,8 @@ type point struct {
 
 	means     bool
 	why       string // why it is read as logged
-	intervalS int64 // usual time between readings, 0 when unknown
-	shiftS    int64 // values stamped with the end of their interval belong so much earlier; means only
+	intervalS int64  // usual time between readings, 0 when unknown
+	shiftS    int64  // values stamped with the end of their interval belong so much earlier; means only
 }
 
 // Unmet is a point whose series the database does not hold, with the tag

@@ -93,19 +93,11 @@ func (s *Source) meansOnce(ctx context.Context, p *point, month span) (fetched, 
 	if err != nil {
 		return out, err
 	}
-	next := 0
-	for k := lo; k < hi; k++ {
-		for ; next < len(pieces) && w.index(pieces[next].t*second) <= k; next++ {
-			out.numbers = append(out.numbers, number{pieces[next].t - p.shiftS, pieces[next].x})
-		}
-		if exact[k] {
-			out.numbers = append(out.numbers, number{from + int64(k)*step, means[k]})
-		}
+	out.numbers, err = compose(w, lo, hi, exact, means, pieces)
+	for i := range out.numbers {
+		out.numbers[i].t -= p.shiftS
 	}
-	if next != len(pieces) {
-		return out, partial(int64(next), int64(len(pieces)))
-	}
-	return out, nil
+	return out, err
 }
 
 // sameWindows holds the windows the server averaged against those that hold
@@ -184,7 +176,7 @@ func (c *conn) survey(ctx context.Context, p *point, sp span, low, high, spike f
 	}
 	flux := src + fmt.Sprintf(`
 src |> count() |> keep(columns: ["_value"]) |> yield(name: "count")
-src |> first() |> keep(columns: ["_time"]) |> yield(name: "first")
+src |> first() |> keep(columns: ["_time", "_value"]) |> yield(name: "first")
 src |> elapsed(unit: 1ns) |> filter(fn: (r) => r.elapsed != %d or r._value < %s or r._value > %s)
  |> limit(n: %d) |> keep(columns: ["_time", "_value", "elapsed"]) |> yield(name: "odd")
 `, p.intervalS*second, fluxFloat(low), fluxFloat(high), oddMost+1)
@@ -211,7 +203,11 @@ src |> elapsed(unit: 1ns) |> filter(fn: (r) => r.elapsed != %d or r._value < %s 
 		}
 		switch r.Result() {
 		case "first":
-			s.firstNS = ns
+			v, ok := r.Value().(float64)
+			if !ok {
+				return brokenOff{fmt.Errorf("a reading without a value")}
+			}
+			s.firstNS, s.firstValue = ns, v
 		case "odd":
 			e, ok1 := r.ValueByKey("elapsed").(int64)
 			v, ok2 := r.Value().(float64)

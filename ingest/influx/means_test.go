@@ -100,6 +100,20 @@ var faults = []faulty{
 		}
 		return rs
 	}},
+	{"impossible first", site.Point{Quantity: site.SurfaceTemp}, 60, "%.1f", func(r *rand.Rand, rs []number) []number {
+		rs[0].x = 250
+		return rs
+	}},
+	{"one more", site.Point{Quantity: site.AirTemp}, 60, "%.1f", func(r *rand.Rand, rs []number) []number {
+		var out []number
+		for i := range rs {
+			out = append(out, rs[i])
+			if i%5 == 4 && i%4000 < 10 { // after the last of its step
+				out = append(out, number{rs[i].t + 29, rs[i].x + 1})
+			}
+		}
+		return out
+	}},
 	{"stray", site.Point{Quantity: site.AirTemp}, 60, "%.1f", func(r *rand.Rand, rs []number) []number {
 		var out []number
 		for i := range rs {

@@ -65,7 +65,7 @@ func (c *conn) inventory(ctx context.Context, pl place) (map[string]*found, erro
 			})
 		})
 		if err != nil {
-			return nil, at(fmt.Sprintf("which series has measurement %q", pl.measurement), err)
+			return nil, at(fmt.Sprintf("looking for measurement %q", pl.measurement), err)
 		}
 	}
 	return out, nil

@@ -17,10 +17,11 @@ func (w windows) index(ns int64) int { return int(floorDiv(ns-w.fromNS, w.stepNS
 // survey is what the server says about the readings of one point in a span,
 // short of the readings themselves. Instants are unix nanoseconds.
 type survey struct {
-	count   int64
-	firstNS int64
+	count      int64
+	firstNS    int64
+	firstValue float64
 	// odd are the readings that do not follow the one before after the usual
-	// interval, or that are impossible.
+	// interval, or that are impossible; the first is not among them.
 	odd []odd
 	// jumps are those that differ from the one before by more than a spike.
 	jumps []int64
@@ -83,8 +84,9 @@ func inRange(runs []run, intervalNS, from, to int64) (n int64) {
 //
 // A window is in order when one run fills every slot of it, nothing in it is
 // impossible or jumps, its mean is near those beside it, and no long standstill
-// begins or ends there. A mean stands for its window only when the next window
-// is in order too, since the last reading may be held into it.
+// begins or ends there. A mean stands for its window only when those on both
+// sides are in order too: the last reading may be held into the next window,
+// and whether a reading is a spike depends on the readings beside it.
 func judge(w windows, s *survey, runs []run, intervalNS int64, low, high, spike float64, standstill int, means []float64) (filled, exact []bool) {
 	filled, fine := make([]bool, w.n), make([]bool, w.n)
 	mark := func(k int, v bool, in []bool) {
@@ -106,14 +108,22 @@ func judge(w windows, s *survey, runs []run, intervalNS int64, low, high, spike 
 		}
 	}
 	bad := func(k int) { mark(k, false, fine) }
+	for _, r := range runs {
+		if k := w.index(r.from); r.from > w.fromNS+int64(k)*w.stepNS {
+			bad(k) // more readings than there are slots
+		}
+	}
+	possible := func(v float64) bool { return v >= low && v <= high }
+	if s.count > 0 && !possible(s.firstValue) {
+		bad(w.index(s.firstNS))
+	}
 	for _, o := range s.odd {
-		if !(o.value >= low && o.value <= high) {
+		if !possible(o.value) {
 			bad(w.index(o.ns))
 		}
 	}
 	for _, ns := range s.jumps {
 		bad(w.index(ns))
-		bad(w.index(ns - intervalNS))
 	}
 	began := 0 // of the standstill so far
 	for k := 1; k <= w.n; k++ {
@@ -134,7 +144,7 @@ func judge(w windows, s *survey, runs []run, intervalNS int64, low, high, spike 
 	}
 	exact = make([]bool, w.n)
 	for k := range exact {
-		exact[k] = fine[k] && (k == w.n-1 || fine[k+1])
+		exact[k] = fine[k] && (k == 0 || fine[k-1]) && (k == w.n-1 || fine[k+1])
 	}
 	return filled, exact
 }
@@ -158,4 +168,23 @@ func rest(filled, exact []bool, lo, hi int) (out [][2]int) {
 		out = append(out, [2]int{from, to})
 	}
 	return out
+}
+
+// compose puts means where they do and the readings fetched for the rest into
+// one series over the windows [lo, hi), with instants in seconds.
+func compose(w windows, lo, hi int, exact []bool, means []float64, pieces []number) ([]number, error) {
+	var out []number
+	next := 0
+	for k := lo; k < hi; k++ {
+		for ; next < len(pieces) && w.index(pieces[next].t*second) <= k; next++ {
+			out = append(out, pieces[next])
+		}
+		if exact[k] {
+			out = append(out, number{(w.fromNS + int64(k)*w.stepNS) / second, means[k]})
+		}
+	}
+	if next != len(pieces) {
+		return nil, partial(int64(next), int64(len(pieces)))
+	}
+	return out, nil
 }

@@ -31,7 +31,7 @@ type Server struct {
 }
 
 // Token is the only token of a server with Auth.
-const Token = "keeper:open sesame"
+const Token = "keeper:open-sesame"
 
 // Address starts the server if need be and returns its address. The test is
 // skipped in -short runs and when the server cannot be built.
@@ -46,7 +46,7 @@ func (s *Server) Address(t testing.TB) string {
 		if err := s.start(); err != nil {
 			s.why = "no database server for the test: " + err.Error()
 		} else if s.Auth {
-			s.command(t, "CREATE USER keeper WITH PASSWORD 'open sesame' WITH ALL PRIVILEGES")
+			s.command(t, "CREATE USER keeper WITH PASSWORD 'open-sesame' WITH ALL PRIVILEGES")
 		}
 	}
 	if s.why != "" {
@@ -111,14 +111,23 @@ func (s *Server) start() error {
 	return nil
 }
 
-// Kill ends the server at once, as a power cut would.
-func (s *Server) Kill(t testing.TB) {
+// Restart starts the server after Kill, at its old address and with its data.
+func (s *Server) Restart() error {
 	s.mu.Lock()
 	defer s.mu.Unlock()
-	if s.cmd == nil {
-		t.Fatal("the server is not running")
+	if s.cmd != nil {
+		return nil
 	}
-	s.end()
+	return s.start()
+}
+
+// Kill ends the server at once, as a power cut would.
+func (s *Server) Kill() {
+	s.mu.Lock()
+	defer s.mu.Unlock()
+	if s.cmd != nil {
+		s.end()
+	}
 }
 
 func (s *Server) end() {
@@ -148,8 +157,8 @@ func (s *Server) Database(t testing.TB, name string) {
 
 func (s *Server) command(t testing.TB, q string) {
 	t.Helper()
-	form := url.Values{"q": {q}, "u": {"keeper"}, "p": {"open sesame"}}
-	res, err := http.PostForm("http://"+s.addr+"/query", form)
+	who := url.Values{"u": {"keeper"}, "p": {"open-sesame"}}
+	res, err := http.PostForm("http://"+s.addr+"/query?"+who.Encode(), url.Values{"q": {q}})
 	if err != nil {
 		t.Fatal(err)
 	}
@@ -165,7 +174,7 @@ func (s *Server) command(t testing.TB, q string) {
 // code under test.
 func (s *Server) Write(t testing.TB, database, lines string) {
 	t.Helper()
-	at := s.Address(t) + "/write?precision=s&u=keeper&p=" + url.QueryEscape("open sesame") + "&db=" + url.QueryEscape(database)
+	at := s.Address(t) + "/write?precision=s&u=keeper&p=" + url.QueryEscape("open-sesame") + "&db=" + url.QueryEscape(database)
 	const most = 8 << 20 // the server takes 25 MB at once
 	for len(lines) > 0 {
 		part := lines
