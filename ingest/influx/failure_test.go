@@ -13,6 +13,7 @@ import (
 
 	"sashlog/configs/site"
 	"sashlog/ingest/influx/influxtest"
+	"sashlog/ingest/reading"
 )
 
 const secretToken = "keeper:not-the-word"
@@ -312,5 +313,43 @@ func TestGrowingDatabase(t *testing.T) {
 	got, err := src.fetch(context.Background(), &jobs[0])
 	if err != nil || len(got[0].numbers) != 3 {
 		t.Errorf("%v, %+v", err, got)
+	}
+}
+
+// A server that is killed while a site is loaded, and comes back, has it all;
+// one that stays away is an error.
+func TestKilledWhileLoading(t *testing.T) {
+	address := server.Address(t)
+	server.Database(t, "loading")
+	proxy := influxtest.NewProxy(t, address)
+	s, log := houseOf(proxy.Address(), "loading", site.InfluxRaw, site.Point{Column: "temp", Quantity: site.AirTemp})
+	src := &listed{name: "a.csv", points: []int{0}}
+	for k := range int64(20 * batchLines) {
+		src.rows = append(src.rows, row{0, utc(2025, 1, 1, 0, 0) + 60*k, float64(k % 30)})
+	}
+	var wg sync.WaitGroup
+	var back error
+	proxy.CutAfter(3000, func() { // the answer to a batch is some 300 bytes
+		server.Kill()
+		wg.Add(1)
+		go func() {
+			defer wg.Done()
+			back = server.Restart()
+		}()
+	})
+	loaded, err := Load(context.Background(), s, log, []reading.Source{src}, nil)
+	wg.Wait()
+	if err != nil || back != nil || loaded[0].Written != 20*batchLines {
+		t.Fatalf("%v %v %+v", err, back, loaded)
+	}
+	gone := 0
+	proxy.CutAfter(3000, func() { server.Kill(); gone++ })
+	ctx, cancel := context.WithTimeout(context.Background(), 3*time.Second)
+	defer cancel()
+	if _, err = Load(ctx, s, log, []reading.Source{src}, nil); err == nil || gone != 1 {
+		t.Errorf("%v, killed %d times", err, gone)
+	}
+	if err := server.Restart(); err != nil {
+		t.Fatal(err)
 	}
 }
