@@ -26,7 +26,8 @@ unit:
 
 # race runs the packages that share work between goroutines, on small inputs.
 race:
-	$(GO) test -race -short -timeout 20m ./ingest/... ./analyze/hours ./report/folder ./cmd/sashlog
+	$(GO) test -race -short -timeout 20m ./ingest ./ingest/grid ./ingest/logfile ./ingest/tabular ./ingest/sheet \
+		./ingest/sources ./ingest/influx ./report/folder ./cmd/sashlog
 
 # cross builds the other systems, without running them.
 cross:
