@@ -92,7 +92,9 @@ func TestLoadedBuilding(t *testing.T) {
 					t.Errorf("it says %s", say)
 				}
 			}
-			edit(t, dir, "site.yaml", func(text string) string { return strings.Replace(text, "points: points.csv", "points: points-store.csv", 1) })
+			edit(t, dir, "site.yaml", func(text string) string {
+				return strings.Replace(text, "points: points.csv", "points: points-store.csv", 1)
+			})
 			if err := os.RemoveAll(filepath.Join(dir, "logs")); err != nil {
 				t.Fatal(err)
 			}
