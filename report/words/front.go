@@ -71,7 +71,7 @@ func Answer(in Input) string {
 	case PlantOnly:
 		t := "On an average working day the weather suited open mode (windows open, mechanical plant off) for " + day(b.Suited)
 		if known(b.MechFreeShare.Value) {
-			t += ", and no mechanical plant ran for " + ShareBetween(b.MechFreeShare.Value, b.MechFreeShare.Low, b.MechFreeShare.High) + " of that time"
+			t += "; the plant was off in " + ShareBetween(b.MechFreeShare.Value, b.MechFreeShare.Low, b.MechFreeShare.High) + " of that time"
 		}
 		return t + ". No window contact is logged, so whether windows were open cannot be said."
 	}
