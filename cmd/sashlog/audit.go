@@ -62,6 +62,9 @@ It ends with 1 when more readings were rejected than the site file tolerates.`,
 			if job.to, err = dateFlag("--to", to); err != nil {
 				return err
 			}
+			if !job.from.IsZero() && !job.to.IsZero() && job.to.Before(job.from) {
+				return fail(exitUsage, fmt.Errorf("--to %s lies before --from %s; hint: both days belong to the period", job.to, job.from))
+			}
 			job.command = "sashlog audit " + filepath.Base(job.siteFile) + flagWords(" --from ", from) + flagWords(" --to ", to)
 			return job.run(c.Context(), p)
 		},
