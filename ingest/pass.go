@@ -118,7 +118,7 @@ func (r *reader) one(ctx context.Context, i int, points []int) {
 	if points != nil && !slices.ContainsFunc(src.Points(), func(p int) bool { return slices.Contains(points, p) }) {
 		return
 	}
-	n := &notes{Builder: r.builder, unmapped: map[string]int64{}, meter: &r.meter, belt: newBelt(r.builder)}
+	n := &notes{Builder: r.builder, unmapped: map[string]int64{}, meter: &r.meter, belt: newBelt(r.builder, len(r.site.Points))}
 	n.meter.again(points != nil, r.size(src))
 	if some, ok := src.(interface {
 		ReadSome(context.Context, reading.Sink, []int) error

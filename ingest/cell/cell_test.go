@@ -16,7 +16,8 @@ import (
 func TestShortIsStrconv(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		s := rapid.StringMatching(`-?[0-9]{1,12}(\.[0-9]{1,6})?`).Draw(t, "number")
-		v, n := Short([]byte(s+";x"), '.')
+		rest := rapid.SampledFrom([]string{"", ";", ";x", ";21.04;Closed;", "\r\n2025-01-01", "\xff\xfe\xfd\xfc\xfb\xfa\xf9\xf8", " \u00b0C;21.0;"}).Draw(t, "rest")
+		v, n := Short([]byte(s+rest), '.')
 		if n == 0 {
 			if len(strings.NewReplacer("-", "", ".", "").Replace(s)) <= 15 {
 				t.Fatalf("%q not read", s)
@@ -32,8 +33,10 @@ func TestShortIsStrconv(t *testing.T) {
 
 func TestShortLeavesTheRest(t *testing.T) {
 	for _, s := range []string{"", "-", ".5", "5.", "x", "1234567890123456", "0.1234567890123456", "+5", " 5"} {
-		if v, n := Short([]byte(s), '.'); n != 0 {
-			t.Errorf("%q: read %v from %d bytes", s, v, n)
+		for _, rest := range []string{"", ";", ";21.5;22.5;"} {
+			if v, n := Short([]byte(s+rest), '.'); n != 0 {
+				t.Errorf("%q: read %v from %d bytes", s+rest, v, n)
+			}
 		}
 	}
 }

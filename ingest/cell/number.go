@@ -6,6 +6,8 @@ package cell
 
 import (
 	"bytes"
+	"encoding/binary"
+	"math/bits"
 	"strconv"
 )
 
@@ -18,7 +20,45 @@ var pow10 = [...]float64{1, 1e1, 1e2, 1e3, 1e4, 1e5, 1e6, 1e7, 1e8, 1e9, 1e10, 1
 // number has more than 15 digits; then Number decides. The result is the
 // nearest float64, as strconv gives: a whole number below 1e15 divided by an
 // exact power of ten rounds once.
+//
+// Numbers of up to seven characters, nearly all of a log, are read as one word
+// of eight bytes without a branch per digit.
 func Short(b []byte, mark byte) (v float64, n int) {
+	if len(b) < 8 {
+		return short(b, mark)
+	}
+	// Digits become 0 to 9, every other byte 10 or more.
+	x := binary.LittleEndian.Uint64(b) ^ 0x3030303030303030
+	other := ((x&0x7f7f7f7f7f7f7f7f + 0x7676767676767676) | x) & 0x8080808080808080
+	n = bits.TrailingZeros64(other) >> 3
+	if n == 0 || n == 8 {
+		return short(b, mark)
+	}
+	if b[n] != mark {
+		return float64(eight(x, n)), n
+	}
+	if other &= other - 1; other == 0 {
+		return short(b, mark)
+	}
+	digits := bits.TrailingZeros64(other)>>3 - 1
+	if digits == n {
+		return 0, 0 // nothing after the mark
+	}
+	whole := uint64(1)<<(8*n) - 1
+	return float64(eight(x&whole|x>>8&^whole, digits)) / pow10[digits-n], digits + 1
+}
+
+// eight is the number that the first digits of a word spell, the first in its
+// lowest byte: zeros go in front, then twos, fours and eights are joined.
+func eight(x uint64, digits int) uint64 {
+	x <<= 64 - 8*digits
+	x = (x*10 + x>>8) & 0x00ff00ff00ff00ff
+	x = (x*100 + x>>16) & 0x0000ffff0000ffff
+	return (x*10000 + x>>32) & 0x00000000ffffffff
+}
+
+// short is Short digit by digit.
+func short(b []byte, mark byte) (v float64, n int) {
 	i, neg := 0, false
 	if len(b) > 0 && b[0] == '-' {
 		neg, i = true, 1

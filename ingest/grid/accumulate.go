@@ -10,14 +10,6 @@ import (
 // canonical unit, so that sums are exact and free of order.
 const unit = 1e4
 
-// quantise rounds to the nearest 1e-4, halves away from zero.
-func quantise(v float64) int64 {
-	if v < 0 {
-		return -int64(-v*unit + 0.5)
-	}
-	return int64(v*unit + 0.5)
-}
-
 // angleUnit is the resolution of the sine and cosine of a direction.
 const angleUnit = 1e6
 

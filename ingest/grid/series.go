@@ -250,14 +250,19 @@ func (s *series) emit(t, q int64) {
 	s.sum += q
 	s.curT, s.curQ = t, q
 	if s.frozenS > 0 {
-		if s.run.Readings > 0 && s.run.q == q {
-			s.run.Readings++
-			s.run.ToUTC = t
-			return
-		}
-		s.endRun()
-		s.run = Run{FromUTC: t, ToUTC: t, Readings: 1, q: q}
+		s.sameRun(t, q)
 	}
+}
+
+// sameRun lengthens the run of exactly the same value, or begins another.
+func (s *series) sameRun(t, q int64) {
+	if s.run.Readings > 0 && s.run.q == q {
+		s.run.Readings++
+		s.run.ToUTC = t
+		return
+	}
+	s.endRun()
+	s.run = Run{FromUTC: t, ToUTC: t, Readings: 1, q: q}
 }
 
 func (s *series) endRun() {

@@ -77,6 +77,12 @@ type Sink interface {
 	Issue(Issue)
 }
 
+// At is one value of a point known from elsewhere.
+type At struct {
+	UnixS int64
+	Value float64
+}
+
 // Source is one file or database query that yields readings.
 type Source interface {
 	// Name is shown in messages: a path relative to the site file.

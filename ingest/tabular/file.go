@@ -147,7 +147,7 @@ func (t *File) block(b []byte, final bool, line *int64, s *splitter, p *plainer,
 					end--
 				}
 				if end > 0 {
-					p.line(*line, b[used:used+nl+1], end)
+					p.line(*line, b[used:], end)
 				}
 				used += nl + 1
 				continue

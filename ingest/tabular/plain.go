@@ -18,6 +18,7 @@ type plainer struct {
 	maxCol int // the last column a long row needs
 	starts []int
 	cells  [][]byte
+	names  nameCache
 }
 
 func newPlainer(m *Mapper, sep byte, style cell.Style) *plainer {
@@ -30,10 +31,13 @@ func newPlainer(m *Mapper, sep byte, style cell.Style) *plainer {
 	return p
 }
 
-// line takes one line that ends in a line feed at its last byte; end is where
-// its text ends.
+// line takes the line at the front of b; end is where its text ends, with a
+// line break behind it.
 func (p *plainer) line(no int64, b []byte, end int) {
 	m := p.m
+	if m.keys != nil && p.long(no, b, end) {
+		return
+	}
 	if m.keys != nil || m.frame.Time < 0 {
 		p.cutLine(no, b[:end])
 		return
