@@ -5,6 +5,7 @@ import (
 	"sashlog/analyze/afterhours"
 	"sashlog/analyze/answerable"
 	"sashlog/analyze/calendar"
+	"sashlog/analyze/cores"
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
@@ -30,11 +31,19 @@ func Run(in Input) *Results {
 	r.Hours = hours.Make(hours.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor,
 		Running: r.Running, Exceedance: r.Exceedance, Potential: r.Potential, Calendar: r.Calendar, Hours: clockHours})
 	r.Summary = hours.Sum(r.Hours, g, r.Calendar, r.Running)
-	r.FreshAir = freshair.Assess(freshair.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running})
-	r.Lost = lost.Find(lost.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
-		Exceedance: r.Exceedance, Potential: r.Potential, Record: r.Hours, Summary: r.Summary})
-	r.AfterHours = afterhours.Look(afterhours.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor,
-		Running: r.Running, Record: r.Hours, Summary: r.Summary})
+	cores.Together(
+		func() {
+			r.FreshAir = freshair.Assess(freshair.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running})
+		},
+		func() {
+			r.Lost = lost.Find(lost.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
+				Exceedance: r.Exceedance, Potential: r.Potential, Record: r.Hours, Summary: r.Summary})
+		},
+		func() {
+			r.AfterHours = afterhours.Look(afterhours.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor,
+				Running: r.Running, Record: r.Hours, Summary: r.Summary})
+		},
+	)
 	r.Answerable = answerable.Ask(s, g)
 	r.Findings = advice.Advise(advice.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
 		Exceedance: r.Exceedance, Potential: r.Potential, Record: r.Hours, Summary: r.Summary, FreshAir: r.FreshAir,

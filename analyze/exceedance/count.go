@@ -4,6 +4,7 @@ import (
 	"math"
 
 	"sashlog/analyze/comfort"
+	"sashlog/analyze/cores"
 	"sashlog/analyze/indoor"
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/running"
@@ -16,7 +17,7 @@ import (
 // time of the period. hourOf gives the index of the local hour a step is in.
 func (r *Result) Count(s *site.Site, c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor, in []indoor.Zone, run *running.Result, hourOf []int32) {
 	judges := make([][]judge, len(r.Zones))
-	for z := range r.Zones {
+	cores.Each(len(r.Zones), func(z int) {
 		zone := &r.Zones[z]
 		cat := categoryOf(c, &s.Zones[z])
 		judges[z] = judgesOf(c, out, cat, &zone.Limits, run.Zones[z].PeopleCanOpen)
@@ -30,7 +31,7 @@ func (r *Result) Count(s *site.Site, c criteria.Settings, g *grid.Grid, out *out
 		for k := range judges[z] {
 			zone.Criteria = append(zone.Criteria, r.total(s, g, &in[z], &run.Zones[z], z, &judges[z][k]))
 		}
-	}
+	})
 	r.EachHour = func(f func(Hourly)) {
 		for z := range r.Zones {
 			for k := range judges[z] {

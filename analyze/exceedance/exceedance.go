@@ -27,7 +27,7 @@ type Limits struct {
 	LowC, HighC []float32
 	// UpperOfDayC is the adaptive upper limit of the day before the rise is
 	// taken off, per step; it does not depend on the running state. WithFanC
-	// adds the site's fan speed.
+	// adds the site's fan speed. Zones may share both; nobody writes to them.
 	UpperOfDayC, WithFanC []float32
 }
 

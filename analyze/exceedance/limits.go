@@ -78,20 +78,43 @@ func limitsOfDays(days []outdoor.Day, cat comfort.Category, ownFanMS, siteFanMS 
 // ranges apply, the narrower of the two.
 func Limit(s *site.Site, c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor, run *running.Result) *Result {
 	r := &Result{Zones: make([]Zone, len(s.Zones)), Headline: headlineID(c)}
+	// Zones of one category with the same fan share what depends on the day.
+	type kind struct {
+		category comfort.Category
+		fan      float64
+	}
+	type perDay struct {
+		days           []dayLimits
+		upper, withFan []float32
+	}
+	known := map[kind]*perDay{}
 	for z := range r.Zones {
-		days := limitsOfDays(out.Days, categoryOf(c, &s.Zones[z]), s.Zones[z].FanSpeedMS, c.FanSpeedMS)
-		r.Zones[z].Limits = limitsOfZone(c, g, out, &run.Zones[z], days)
+		k := kind{categoryOf(c, &s.Zones[z]), s.Zones[z].FanSpeedMS}
+		fan := k.fan
+		if math.IsNaN(fan) {
+			k.fan = -1 // no fan; NaN would never be found again
+		}
+		p := known[k]
+		if p == nil {
+			p = &perDay{days: limitsOfDays(out.Days, k.category, fan, c.FanSpeedMS), upper: make([]float32, g.N), withFan: make([]float32, g.N)}
+			for i := range p.upper {
+				d := &p.days[out.DayOf[i]]
+				p.upper[i], p.withFan[i] = float32(d.upperC), float32(d.withFanC)
+			}
+			known[k] = p
+		}
+		l := limitsOfZone(c, g, out, &run.Zones[z], p.days)
+		l.UpperOfDayC, l.WithFanC = p.upper, p.withFan
+		r.Zones[z].Limits = l
 	}
 	return r
 }
 
 func limitsOfZone(c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor, run *running.Zone, days []dayLimits) Limits {
-	l := Limits{Model: make([]Model, g.N), LowC: make([]float32, g.N), HighC: make([]float32, g.N),
-		UpperOfDayC: make([]float32, g.N), WithFanC: make([]float32, g.N)}
+	l := Limits{Model: make([]Model, g.N), LowC: make([]float32, g.N), HighC: make([]float32, g.N)}
 	free := freeRunning(c, g, run)
 	for i := 0; i < g.N; i++ {
 		d := &days[out.DayOf[i]]
-		l.UpperOfDayC[i], l.WithFanC[i] = float32(d.upperC), float32(d.withFanC)
 		band := d.fixed
 		l.Model[i] = d.fixedModel
 		if free[i] && d.adaptive.Applies() {

@@ -3,6 +3,7 @@ package hours
 import (
 	"math"
 
+	"sashlog/analyze/cores"
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/potential"
 	"sashlog/analyze/running"
@@ -22,6 +23,8 @@ func Make(in Input) *Record {
 	for z := range in.Site.Zones {
 		r.ZoneIDs = append(r.ZoneIDs, in.Site.Zones[z].ID)
 		r.People = append(r.People, in.Site.Zones[z].People)
+	}
+	cores.Each(zones, func(z int) {
 		j := newJudge(&in, z)
 		class := make([]Class, in.Grid.N)
 		for i := in.Grid.PeriodFrom; i < in.Grid.PeriodTo; i++ {
@@ -34,7 +37,7 @@ func Make(in Input) *Record {
 			r.count(&in, j, purge, h)
 			r.average(&in, j, points, h)
 		}
-	}
+	})
 	return r
 }
 

@@ -2,6 +2,7 @@ package indoor
 
 import (
 	"math"
+	"slices"
 
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
@@ -32,6 +33,7 @@ func Combine(s *site.Site, c criteria.Settings, g *grid.Grid) []Zone {
 func prefer(s *site.Site, g *grid.Grid, z int, q site.Quantity, minShare float64) []float32 {
 	order := []site.Placement{site.PlacementRoom, site.PlacementUnknown, site.PlacementWindow, site.PlacementReturn}
 	var out []float32
+	own := false // out is no column of the grid
 	for _, place := range order {
 		var idx []int
 		for i := range s.Points {
@@ -40,10 +42,13 @@ func prefer(s *site.Site, g *grid.Grid, z int, q site.Quantity, minShare float64
 				idx = append(idx, i)
 			}
 		}
-		avg := g.Average(idx, minShare)
+		avg := g.AverageOrColumn(idx, minShare)
 		if out == nil {
 			out = avg
 			continue
+		}
+		if avg != nil && !own {
+			out, own = slices.Clone(out), true
 		}
 		for i := range avg {
 			if math.IsNaN(float64(out[i])) {

@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"sashlog/analyze/calendar"
+	"sashlog/analyze/cores"
 	"sashlog/analyze/indoor"
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
@@ -15,9 +16,7 @@ import (
 func Judge(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Calendar, in []indoor.Zone) *Result {
 	units := unitStates(s, g, c)
 	r := &Result{Zones: make([]Zone, len(s.Zones)), Units: units}
-	for z := range r.Zones {
-		r.Zones[z] = judgeZone(s, c, g, cal, z, &in[z], units)
-	}
+	cores.Each(len(r.Zones), func(z int) { r.Zones[z] = judgeZone(s, c, g, cal, z, &in[z], units) })
 	r.Schedule = scheduleWords(s)
 	r.Weights, r.WeightedBy = weigh(s)
 	return r

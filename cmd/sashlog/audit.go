@@ -6,10 +6,12 @@ import (
 	"fmt"
 	"io"
 	"path/filepath"
+	"runtime"
 	"strings"
 	"time"
 
 	"github.com/spf13/cobra"
+	"golang.org/x/sync/errgroup"
 
 	"sashlog/analyze"
 	"sashlog/configs"
@@ -176,15 +178,20 @@ func writeAll(ctx context.Context, into string, tables table.Input, pages page.I
 		{"results.schema.json", func(w io.Writer) error { _, err := w.Write(table.Schema()); return err }},
 		{"report.html", func(w io.Writer) error { return page.Write(w, pages) }},
 	}
+	var writing errgroup.Group
+	writing.SetLimit(runtime.GOMAXPROCS(0))
 	for _, o := range outputs {
-		if err := ctx.Err(); err != nil {
-			return "", err
-		}
-		if err := out.Write(o.name, o.fill); err != nil {
-			return "", fail(exitWrite, err)
-		}
+		writing.Go(func() error {
+			if err := ctx.Err(); err != nil {
+				return err
+			}
+			if err := out.Write(o.name, o.fill); err != nil {
+				return fail(exitWrite, err)
+			}
+			return nil
+		})
 	}
-	if err := ctx.Err(); err != nil {
+	if err := errors.Join(writing.Wait(), ctx.Err()); err != nil {
 		return "", err
 	}
 	if err := out.Commit(); err != nil {

@@ -38,3 +38,31 @@ func (g *Grid) Average(points []int, minShare float64) []float32 {
 	}
 	return out
 }
+
+// AverageOrColumn is Average without a copy where one column alone is the
+// answer as it stands; the result must not be written to.
+func (g *Grid) AverageOrColumn(points []int, minShare float64) []float32 {
+	var only *Column
+	for _, p := range points {
+		if c := &g.Columns[p]; c.Mean != nil {
+			if only != nil {
+				return g.Average(points, minShare)
+			}
+			only = c
+		}
+	}
+	if only != nil && only.whole(uint16(math.Ceil(minShare*float64(g.StepS)))) {
+		return only.Mean
+	}
+	return g.Average(points, minShare)
+}
+
+// whole reports whether every step with a value is covered for long enough.
+func (c *Column) whole(needS uint16) bool {
+	for i, s := range c.CoveredS {
+		if s < needS && c.Mean[i] == c.Mean[i] {
+			return false
+		}
+	}
+	return true
+}

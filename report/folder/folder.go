@@ -9,11 +9,14 @@ import (
 	"io"
 	"os"
 	"path/filepath"
+	"sync"
 )
 
-// Folder is an output folder being filled. It is not safe for concurrent use.
+// Folder is an output folder being filled. Write may be called from several
+// goroutines at once, Commit and Discard only when none is under way.
 type Folder struct {
 	dir     string
+	mu      sync.Mutex
 	pending []*pendingFile
 }
 
@@ -42,7 +45,9 @@ func (f *Folder) Write(name string, fill func(io.Writer) error) error {
 		return fmt.Errorf("cannot write %q: %w", f.Path(name), err)
 	}
 	p := &pendingFile{name: name, temp: file.Name(), file: file, buffered: bufio.NewWriterSize(file, 1<<18)}
+	f.mu.Lock()
 	f.pending = append(f.pending, p)
+	f.mu.Unlock()
 	if err := fill(p.buffered); err != nil {
 		return fmt.Errorf("cannot write %q: %w", f.Path(name), err)
 	}

@@ -4,6 +4,7 @@ import (
 	"io"
 	"time"
 
+	"sashlog/analyze/exceedance"
 	"sashlog/analyze/hours"
 	"sashlog/report/privacy"
 )
@@ -50,6 +51,30 @@ func columnsAfter() []column {
 		valued(hours.VCoverage, 5), counted(hours.CSuitedPlantOff), counted(hours.CSuitedPlantUnknown)}
 }
 
+// hourWords are the texts of each hour, the same for every zone.
+type hourWords struct{ local, date [][]byte }
+
+func newHourWords(rec *hours.Record) hourWords {
+	w := hourWords{make([][]byte, len(rec.Hours)), make([][]byte, len(rec.Hours))}
+	for i := range rec.Hours {
+		h := &rec.Hours[i]
+		local := time.Unix(h.StartUTC, 0).In(time.FixedZone("", h.OffsetS))
+		w.local[i] = local.AppendFormat(nil, "2006-01-02T15:04:05-07:00")
+		w.date[i] = []byte(h.Date.String())
+	}
+	return w
+}
+
+// modelWords are the names of the comfort models, modelCells the same as text
+// cells.
+var modelWords, modelCells = func() (words, cells [exceedance.NumModels][]byte) {
+	for m := range words {
+		words[m] = []byte(exceedance.Model(m).String())
+		cells[m] = appendText(nil, exceedance.Model(m).String())
+	}
+	return words, cells
+}()
+
 // WriteHoursCSV writes the hourly record.
 func WriteHoursCSV(w io.Writer, in Input) error {
 	before, after := columnsBefore(), columnsAfter()
@@ -63,17 +88,21 @@ func WriteHoursCSV(w io.Writer, in Input) error {
 	}
 	b = append(b, '\n')
 	rule := privacy.For(in.Site)
+	said := newHourWords(in.Results.Hours)
+	zone, last := []byte(nil), -1
 	err := in.eachRow(rule, func(r *row) error {
+		if r.zone != last {
+			zone, last = appendText(nil, rule.ID(r.zone)), r.zone
+		}
 		b = time.Unix(r.startUTC, 0).UTC().AppendFormat(b, "2006-01-02T15:04:05Z")
-		b = append(b, ',')
-		b = r.localTime().AppendFormat(b, "2006-01-02T15:04:05-07:00")
-		b = append(append(b, ','), r.date.String()...)
-		b = appendText(append(b, ','), rule.ID(r.zone))
+		b = append(append(b, ','), said.local[r.hour]...)
+		b = append(append(b, ','), said.date[r.hour]...)
+		b = append(append(b, ','), zone...)
 		b = appendNumber(append(b, ','), in.Results.Hours.People[r.zone], 1)
 		for _, c := range before {
 			b = r.appendCell(append(b, ','), c)
 		}
-		b = appendText(append(b, ','), r.model.String())
+		b = append(append(b, ','), modelCells[r.model]...)
 		for _, c := range after {
 			b = r.appendCell(append(b, ','), c)
 		}

@@ -12,62 +12,66 @@ import (
 
 // cells collects one parquet column of one zone.
 type cells struct {
-	name   string
+	place  int // in the schema
 	values []parquet.Value
 }
 
-// parquetTable writes columns zone by zone. Parquet orders columns of a schema
-// made at run time by name; readers go by name.
+// parquetTable writes columns zone by zone: column 0 is start_utc, then come
+// the texts, then the numbers, each in the order given. Parquet orders columns
+// of a schema made at run time by name; readers go by name.
 type parquetTable struct {
 	writer  *parquet.GenericWriter[any]
 	columns []cells
-	index   map[string]int // name -> column
-	place   map[string]int // name -> place in the schema
+	number0 int // the first number's column
 	rows    int
 }
 
 func newParquetTable(w io.Writer, name string, texts []string, numbers []string) *parquetTable {
-	group := parquet.Group{"start_utc": parquet.Timestamp(parquet.Millisecond)}
-	t := &parquetTable{index: map[string]int{}, place: map[string]int{}}
-	add := func(name string, node parquet.Node) {
-		group[name] = node
-		t.index[name] = len(t.columns)
-		t.columns = append(t.columns, cells{name: name})
-	}
-	add("start_utc", parquet.Timestamp(parquet.Millisecond))
-	for _, n := range texts {
-		add(n, parquet.Encoded(parquet.String(), &parquet.RLEDictionary))
-	}
-	for _, n := range numbers {
-		add(n, parquet.Optional(parquet.Leaf(parquet.DoubleType)))
+	names := append(append([]string{"start_utc"}, texts...), numbers...)
+	t := &parquetTable{columns: make([]cells, len(names)), number0: 1 + len(texts)}
+	group := parquet.Group{}
+	column := map[string]int{}
+	for i, n := range names {
+		column[n] = i
+		switch {
+		case i == 0:
+			group[n] = parquet.Timestamp(parquet.Millisecond)
+		case i < t.number0:
+			group[n] = parquet.Encoded(parquet.String(), &parquet.RLEDictionary)
+		default:
+			group[n] = parquet.Optional(parquet.Leaf(parquet.DoubleType))
+		}
 	}
 	schema := parquet.NewSchema(name, group)
-	for i, path := range schema.Columns() {
-		t.place[path[0]] = i
+	for place, path := range schema.Columns() {
+		t.columns[column[path[0]]].place = place
 	}
 	t.writer = parquet.NewGenericWriter[any](w, schema, parquet.Compression(&parquet.Snappy))
 	return t
 }
 
-func (t *parquetTable) text(name, s string) {
-	c := &t.columns[t.index[name]]
-	c.values = append(c.values, parquet.ByteArrayValue([]byte(s)).Level(0, 0, t.place[name]))
-}
-
-func (t *parquetTable) instant(unixS int64) {
-	c := &t.columns[t.index["start_utc"]]
-	c.values = append(c.values, parquet.Int64Value(unixS*1000).Level(0, 0, t.place["start_utc"]))
+// row begins a row.
+func (t *parquetTable) row(startUTC int64, texts ...[]byte) {
+	t.put(0, parquet.Int64Value(startUTC*1000).Level(0, 0, t.columns[0].place))
+	for i, s := range texts {
+		t.put(1+i, parquet.ByteArrayValue(s).Level(0, 0, t.columns[1+i].place))
+	}
 	t.rows++
 }
 
-// number adds a value; NaN is null.
-func (t *parquetTable) number(name string, v float64) {
-	c := &t.columns[t.index[name]]
+// number adds the k-th number of a row; NaN is null.
+func (t *parquetTable) number(k int, v float64) {
+	k += t.number0
 	if math.IsNaN(v) {
-		c.values = append(c.values, parquet.NullValue().Level(0, 0, t.place[name]))
+		t.put(k, parquet.NullValue().Level(0, 0, t.columns[k].place))
 		return
 	}
-	c.values = append(c.values, parquet.DoubleValue(v).Level(0, 1, t.place[name]))
+	t.put(k, parquet.DoubleValue(v).Level(0, 1, t.columns[k].place))
+}
+
+func (t *parquetTable) put(k int, v parquet.Value) {
+	c := &t.columns[k]
+	c.values = append(c.values, v)
 }
 
 // flush hands the rows collected so far to the file.
@@ -75,7 +79,7 @@ func (t *parquetTable) flush() error {
 	writers := t.writer.ColumnWriters()
 	for k := range t.columns {
 		c := &t.columns[k]
-		if _, err := writers[t.place[c.name]].WriteRowValues(c.values); err != nil {
+		if _, err := writers[c.place].WriteRowValues(c.values); err != nil {
 			return err
 		}
 		c.values = c.values[:0]
@@ -104,24 +108,24 @@ func WriteHoursParquet(w io.Writer, in Input) error {
 	t := newParquetTable(w, "hours", []string{"start_local", "local_date", "zone", "comfort_model"}, numbers)
 	rule := privacy.For(in.Site)
 	last := -1
+	said := newHourWords(in.Results.Hours)
+	var zone []byte
 	err := in.eachRow(rule, func(r *row) error {
-		if r.zone != last && t.rows > 0 {
-			if err := t.flush(); err != nil {
-				return err
+		if r.zone != last {
+			if t.rows > 0 {
+				if err := t.flush(); err != nil {
+					return err
+				}
 			}
+			last, zone = r.zone, []byte(Harmless(rule.ID(r.zone)))
 		}
-		last = r.zone
-		t.instant(r.startUTC)
-		t.text("start_local", r.localTime().Format("2006-01-02T15:04:05-07:00"))
-		t.text("local_date", r.date.String())
-		t.text("zone", Harmless(rule.ID(r.zone)))
-		t.text("comfort_model", r.model.String())
-		t.number("people", in.Results.Hours.People[r.zone])
-		for _, c := range all {
+		t.row(r.startUTC, said.local[r.hour], said.date[r.hour], zone, modelWords[r.model])
+		t.number(0, in.Results.Hours.People[r.zone])
+		for k, c := range all {
 			if c.counted {
-				t.number(c.name, float64(r.seconds[c.seconds])/3600)
+				t.number(1+k, float64(r.seconds[c.seconds])/3600)
 			} else {
-				t.number(c.name, float64(r.values[c.value]))
+				t.number(1+k, float64(r.values[c.value]))
 			}
 		}
 		return nil
@@ -139,22 +143,27 @@ func WriteComfortParquet(w io.Writer, in Input) error {
 	t := newParquetTable(w, "comfort", []string{"start_local", "zone", "criterion", "model"}, []string{"over_h", "under_h", "over_kh", "under_kh"})
 	rule := privacy.For(in.Site)
 	rec := in.Results.Hours
+	said := newHourWords(rec)
+	zones := make([][]byte, len(rec.ZoneIDs))
+	for z := range zones {
+		zones[z] = []byte(Harmless(rule.ID(z)))
+	}
+	words := map[string][]byte{}
+	word := func(s string) []byte {
+		if words[s] == nil {
+			words[s] = []byte(s)
+		}
+		return words[s]
+	}
 	var failed error
 	put := func(e exceedance.Hourly) {
 		if failed != nil {
 			return
 		}
-		h := &rec.Hours[e.Hour]
-		r := row{startUTC: h.StartUTC, offsetS: h.OffsetS}
-		t.instant(h.StartUTC)
-		t.text("start_local", r.localTime().Format("2006-01-02T15:04:05-07:00"))
-		t.text("zone", Harmless(rule.ID(e.Zone)))
-		t.text("criterion", e.Criterion)
-		t.text("model", e.Model)
-		t.number("over_h", float64(e.OverH))
-		t.number("under_h", float64(e.UnderH))
-		t.number("over_kh", float64(e.OverKh))
-		t.number("under_kh", float64(e.UnderKh))
+		t.row(rec.Hours[e.Hour].StartUTC, said.local[e.Hour], zones[e.Zone], word(e.Criterion), word(e.Model))
+		for k, v := range [...]float32{e.OverH, e.UnderH, e.OverKh, e.UnderKh} {
+			t.number(k, float64(v))
+		}
 		if t.rows >= 1<<16 {
 			failed = t.flush()
 		}

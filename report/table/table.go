@@ -11,7 +11,6 @@ import (
 	"math"
 	"strconv"
 	"strings"
-	"time"
 	"unicode"
 
 	"sashlog/analyze"
@@ -38,9 +37,8 @@ type Input struct {
 // row is one row of the hourly record, or one day of a protected room.
 type row struct {
 	zone      int
+	hour      int // its first, as an index into the record's hours
 	startUTC  int64
-	offsetS   int
-	date      site.Date
 	seconds   [hours.NumCols]uint32
 	values    [hours.NumVals]float32
 	model     exceedance.Model
@@ -84,8 +82,7 @@ func (in *Input) eachRow(rule privacy.Rule, f func(*row) error) error {
 
 // fill adds up the hours [from, to) of a zone.
 func (r *row) fill(rec *hours.Record, z, from, to int) {
-	first := &rec.Hours[from]
-	r.zone, r.startUTC, r.offsetS, r.date = z, first.StartUTC, first.OffsetS, first.Date
+	r.zone, r.hour, r.startUTC = z, from, rec.Hours[from].StartUTC
 	k := rec.Row(z, from)
 	if to == from+1 {
 		for c := range r.seconds {
@@ -117,10 +114,6 @@ func (r *row) fill(rec *hours.Record, z, from, to int) {
 		r.values[v] = float32(sum)
 	}
 	r.model = exceedance.Model(rec.ComfortModel[k+to-from-1])
-}
-
-func (r *row) localTime() time.Time {
-	return time.Unix(r.startUTC, 0).In(time.FixedZone("", r.offsetS))
 }
 
 // appendText writes a text cell: harmless as a formula and on a terminal,
