@@ -4,7 +4,7 @@ GO ?= go
 STATICCHECK := honnef.co/go/tools/cmd/staticcheck@v0.8.2
 export GOFLAGS ?= -buildvcs=false
 
-.PHONY: test tools lint unit race cross bench golden fuzz build
+.PHONY: test tools lint unit race cross bench hot compare golden fuzz build
 
 build:
 	$(GO) build -trimpath -o sashlog ./cmd/sashlog
@@ -34,8 +34,15 @@ cross:
 	GOOS=windows GOARCH=amd64 $(GO) build -trimpath -o /dev/null ./cmd/sashlog
 	GOOS=darwin GOARCH=arm64 $(GO) build -trimpath -o /dev/null ./cmd/sashlog
 
-bench:
+# bench runs the benchmarks of the hot paths, then compares reading and the whole audit with general-purpose engines, as
+# pairs in one run (3 GB in .cache/bench, about 10 minutes; bench/README.md).
+bench: hot compare
+
+hot:
 	$(GO) test -run '^$$' -bench . -benchmem ./...
+
+compare:
+	bench/compare.sh
 
 # golden writes the golden files anew; look at the difference before keeping it.
 golden:
@@ -46,4 +53,4 @@ FUZZTIME ?= 30s
 fuzz:
 	@set -e; for pkg in $$($(GO) list ./...); do \
 	  for target in $$($(GO) test -list '^Fuzz' $$pkg | grep '^Fuzz' || true); do \
-	    echo "$$pkg $$target"; $(GO) test -run '^$$' -fuzz "^$$target$$" -fuzztime $(FUZZTIME) $$pkg; done; done
+	    echo "$$pkg $$target"; $(GO) test -run '^$$' -fuzz "^$$target$$" -fuzztime $(FUZZTIME) -fuzzminimizetime 5x $$pkg; done; done

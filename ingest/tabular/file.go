@@ -25,6 +25,9 @@ import (
 type File struct {
 	Looked
 	dialect Dialect
+	// general takes every row the way of rows that are not plain; a test holds
+	// the two to each other.
+	general bool
 }
 
 // maxRow bounds one row of text.
@@ -89,7 +92,9 @@ func (t *File) rows(ctx context.Context, m *Mapper, fn func(line int64, cells []
 	s := splitter{sep: t.dialect.Sep}
 	var p *plainer
 	if m != nil {
-		p = newPlainer(m, t.dialect.Sep, t.dialect.Style)
+		if !t.general {
+			p = newPlainer(m, t.dialect.Sep, t.dialect.Style)
+		}
 		fn = func(line int64, cells [][]byte, starts []int) bool {
 			m.Row(line, cells, starts, false)
 			return true

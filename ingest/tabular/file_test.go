@@ -15,6 +15,7 @@ import (
 	_ "time/tzdata"
 
 	"github.com/google/go-cmp/cmp"
+	"github.com/google/go-cmp/cmp/cmpopts"
 	"golang.org/x/text/encoding/charmap"
 	"golang.org/x/text/encoding/unicode"
 	"pgregory.net/rapid"
@@ -338,17 +339,34 @@ func TestSecondPassWithAnotherConversion(t *testing.T) {
 	}
 }
 
+// Whatever a file holds, reading it does not panic, and plain rows mean what
+// they mean when they are taken the general way.
 func FuzzRead(f *testing.F) {
 	f.Add([]byte(sample))
 	f.Add([]byte("Time,A,B,W,S\n2025-10-26 02:30,21,400,Open,On\n\"2025-10-26 02:30\",21\n"))
 	f.Add([]byte("\xff\xfeT\x00,\x00A\x00\n\x00"))
+	f.Add([]byte("Time,A,V\n2025-10-26T02:30:00Z,A,21.25\n2025-10-26T02:31:00Z,B,-400\n2025-10-26T02:31:10Z,W,Open\n2025-10-26T02:32:10Z,W,Open\n,S,On\n"))
+	f.Add([]byte("Time;A;V\r\n2025-10-26 02:30;A;21,25\r\n2025-10-26 02:31;B;400,\r\n2025-10-26 02:31;W\r\n2025-10-26 02:32;w;Closed;x"))
 	f.Fuzz(func(t *testing.T, text []byte) {
-		for _, log := range []site.Log{{}, {Layout: site.Long, KeyColumns: []string{"A"}}, {Layout: site.PerPoint, HeaderRow: -1, Separator: ','}} {
+		for _, log := range []site.Log{{}, {Layout: site.Long, KeyColumns: []string{"A"}}, {Layout: site.Long, KeyColumns: []string{"A"}, ValueColumns: []string{"V"}},
+			{Layout: site.PerPoint, HeaderRow: -1, Separator: ','}} {
 			src, err := openBytes(t, "f.csv", text, log, widePoints())
 			if err != nil {
 				continue
 			}
-			src.Read(context.Background(), &record{})
+			var plain, general record
+			perr := src.Read(context.Background(), &plain)
+			if src, err = openBytes(t, "f.csv", text, log, widePoints()); err != nil {
+				t.Fatal(err)
+			}
+			src.general = true
+			gerr := src.Read(context.Background(), &general)
+			if fmt.Sprint(perr) != fmt.Sprint(gerr) {
+				t.Fatalf("plain: %v, general: %v", perr, gerr)
+			}
+			if d := cmp.Diff(general.events, plain.events, cmpopts.EquateNaNs()); d != "" {
+				t.Fatalf("layout %q: plain rows differ:\n%s", log.Layout, d)
+			}
 		}
 	})
 }
