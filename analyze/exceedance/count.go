@@ -55,8 +55,7 @@ func (r *Result) at(in *indoor.Zone, z, i int, j *judge) verdict {
 	}
 	t := float64(in.OperativeC[i])
 	if j.pmv != nil {
-		m := r.Zones[z].Limits.Model[i]
-		if m != ENHeating && m != ENCooling && m != ENBetween {
+		if l := &r.Zones[z].Limits; l.Free[i] || l.Model[i] == NoModel {
 			return verdict{known: true}
 		}
 		v := j.pmv.vote(i)

@@ -13,10 +13,18 @@ const (
 	ENCooling  // EN 16798-1 operative range, cooling season
 	ENBetween  // between the seasons: low of heating, high of cooling; our extension
 	ENExtended // adaptive line beyond its range of validity; our extension
+	EN15251Adaptive
+	EN15251Extended
+	ASHRAEAdaptive
+	ASHRAEExtended
+	IMACMixedMode
+	IMACExtended
 	NumModels
 )
 
-var modelWords = [NumModels]string{"", "EN 16798-1 adaptive", "EN 16798-1 heating range", "EN 16798-1 cooling range", "EN 16798-1 between seasons (our extension)", "EN 16798-1 adaptive, extended (our extension)"}
+var modelWords = [NumModels]string{"", "EN 16798-1 adaptive", "EN 16798-1 heating range", "EN 16798-1 cooling range", "EN 16798-1 between seasons (our extension)", "EN 16798-1 adaptive, extended (our extension)",
+	"EN 15251 adaptive", "EN 15251 adaptive, extended (our extension)", "ASHRAE 55 adaptive", "ASHRAE 55 adaptive, extended (our extension)",
+	"Indian mixed-mode model", "Indian mixed-mode model, extended (our extension)"}
 
 func (m Model) String() string { return modelWords[m] }
 
@@ -25,6 +33,8 @@ func (m Model) String() string { return modelWords[m] }
 type Limits struct {
 	Model       []Model
 	LowC, HighC []float32
+	// Free marks the steps in which the zone counts as free-running.
+	Free []bool
 	// UpperOfDayC is the adaptive upper limit of the day before the rise is
 	// taken off, per step; it does not depend on the running state. WithFanC
 	// adds the site's fan speed. Zones may share both; nobody writes to them.

@@ -37,7 +37,7 @@ func newDay(runningMeanC float64, temps []float64, plant []site.PlantState) *day
 	cal := calendar.Of(d.g)
 	d.out = &outdoor.Outdoor{DayOf: cal.DayOf}
 	for range cal.Days {
-		d.out.Days = append(d.out.Days, outdoor.Day{RunningMeanENC: runningMeanC, RunningMeanASHRAEC: runningMeanC, SixAMC: 15})
+		d.out.Days = append(d.out.Days, outdoor.Day{RunningMeanENC: runningMeanC, RunningMeanASHRAEC: runningMeanC, Mean30DaysC: runningMeanC, SixAMC: 15})
 	}
 	z := running.Zone{PeopleCanOpen: true}
 	room := indoor.Zone{}
@@ -180,4 +180,66 @@ func TestFan(t *testing.T) {
 	near("with air movement", plain.WithFanC[0], 30.2)
 	near("with a fan", fan.UpperOfDayC[0], 30.2)
 	near("comfort limit with a fan", fan.HighC[0], 30.2)
+}
+
+// TestHeadline: each headline criterion follows its own line, says where it
+// goes beyond it, and keeps EN's operative ranges with plant, except the Indian
+// model, whose line serves both. Lines recomputed from the standards' published
+// coefficients: 0.31 t + 17.8 ± 3.5 (ASHRAE 55), 0.33 t + 18.8 ± 3 (EN 15251
+// category II), 0.28 t + 17.87 ± 3.46 (Manu et al. 2016).
+func TestHeadline(t *testing.T) {
+	plant := []site.PlantState{site.PlantOff, site.PlantCool}
+	for _, tt := range []struct {
+		headline          string
+		mean              float64
+		free              Model
+		low, high         float64
+		plant             Model
+		lowPlant, highPla float64
+	}{
+		{"ashrae55", 20, ASHRAEAdaptive, 20.5, 27.5, ENCooling, 23, 26},
+		{"ashrae55", 35, ASHRAEExtended, 24.685, 31.685, ENCooling, 23, 26},
+		{"ashrae55", 8, ASHRAEExtended, 17.4, 24.4, ENHeating, 20, 24},
+		{"en15251", 20, EN15251Adaptive, 22.4, 28.4, ENCooling, 23, 26},
+		{"en15251", 12, EN15251Adaptive, nan, 25.76, ENBetween, 20, 26},
+		{"en15251", 9, EN15251Extended, 20, 24, ENHeating, 20, 24},
+		{"imac-mm", 20, IMACMixedMode, 20.01, 26.93, IMACMixedMode, 20.01, 26.93},
+		{"imac-mm", 10, IMACExtended, 18.05, 24.97, IMACExtended, 18.05, 24.97},
+		{"imac-mm", nan, NoModel, nan, nan, NoModel, nan, nan},
+	} {
+		d := newDay(tt.mean, []float64{24, 24}, plant)
+		d.c.Headline, d.c.ASHRAE55Percent = tt.headline, 80
+		r := d.result()
+		l := r.Zones[0].Limits
+		same := func(what string, got float32, want float64) {
+			if math.Abs(float64(got)-want) > 1e-4 || math.IsNaN(float64(got)) != math.IsNaN(want) {
+				t.Errorf("%s at %g, %s: %g, want %g", tt.headline, tt.mean, what, got, want)
+			}
+		}
+		if l.Model[0] != tt.free || l.Model[1] != tt.plant {
+			t.Errorf("%s at %g: %q and %q, want %q and %q", tt.headline, tt.mean, l.Model[0], l.Model[1], tt.free, tt.plant)
+		}
+		same("low", l.LowC[0], tt.low)
+		same("high", l.HighC[0], tt.high)
+		same("upper of the day", l.UpperOfDayC[0], tt.high)
+		same("low with plant", l.LowC[1], tt.lowPlant)
+		same("high with plant", l.HighC[1], tt.highPla)
+		if got := r.Zones[0].Criteria[0].ID; got != tt.headline || r.Headline != tt.headline {
+			t.Errorf("headline %q, first criterion %q, want %q", r.Headline, got, tt.headline)
+		}
+	}
+}
+
+// TestShortFreeSpells: the adaptive model does not apply for less than half an
+// hour between two runs of plant, but a spell at the record's ends counts.
+func TestShortFreeSpells(t *testing.T) {
+	off, cool := site.PlantOff, site.PlantCool
+	d := newDay(20, make([]float64, 7), []site.PlantState{off, cool, off, cool, off, off, cool})
+	d.c.AdaptiveAfterH, d.c.AdaptiveLeastMin = 0, 90
+	got := d.result().Zones[0].Limits.Free
+	for i, want := range []bool{true, false, false, false, true, true, false} {
+		if got[i] != want {
+			t.Errorf("step %d: free %v, want %v", i, got[i], want)
+		}
+	}
 }

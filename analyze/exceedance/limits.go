@@ -20,9 +20,9 @@ const (
 
 // dayLimits are one category's limits of one day.
 type dayLimits struct {
-	adaptive         comfort.Band
-	extended         bool
-	fixed            comfort.Band
+	adaptive         comfort.Band // while free-running
+	adaptiveModel    Model
+	fixed            comfort.Band // while plant conditions the zone
 	fixedModel       Model
 	upperC, withFanC float64
 }
@@ -41,32 +41,24 @@ func categoryOf(c criteria.Settings, z *site.Zone) comfort.Category {
 }
 
 // limitsOfDays works out the limits of each day for a category. ownFanMS is
-// the speed of a fan the zone's people can use, NaN without one; siteFanMS the
-// speed "with air movement" is shown for.
-func limitsOfDays(days []outdoor.Day, cat comfort.Category, ownFanMS, siteFanMS float64) []dayLimits {
+// the speed of a fan the zone's people can use, NaN without one; "with air
+// movement" is shown for the criteria's speed.
+func limitsOfDays(c criteria.Settings, days []outdoor.Day, cat comfort.Category, ownFanMS float64) []dayLimits {
 	out := make([]dayLimits, len(days))
 	for d := range days {
-		rm := days[d].RunningMeanENC
 		l := &out[d]
-		l.adaptive, l.extended = comfort.EN16798Extended(rm, cat)
-		season, model := comfort.BetweenSeasons, ENBetween
-		switch {
-		case math.IsNaN(rm):
-			model = NoModel
-		case rm <= heatingSeasonToC:
-			season, model = comfort.HeatingSeason, ENHeating
-		case rm >= coolingSeasonFromC:
-			season, model = comfort.CoolingSeason, ENCooling
-		}
-		l.fixedModel, l.fixed = model, comfort.OfficeRange(cat, season)
-		best := siteFanMS
+		l.adaptive, l.adaptiveModel = lineOfDay(c, &days[d], cat)
+		l.fixed, l.fixedModel = rangeOfDay(c, &days[d], cat)
+		plainC, best := l.adaptive.HighC, c.FanSpeedMS
 		if !math.IsNaN(ownFanMS) {
 			l.adaptive.HighC = comfort.WithAirMovementC(l.adaptive.HighC, ownFanMS)
 			best = math.Max(best, ownFanMS)
+			if headlineID(c) == headlineIMAC {
+				l.fixed.HighC = l.adaptive.HighC
+			}
 		}
 		l.upperC = l.adaptive.HighC
-		plain, _ := comfort.EN16798Extended(rm, cat)
-		l.withFanC = math.Max(l.upperC, comfort.WithAirMovementC(plain.HighC, best))
+		l.withFanC = math.Max(l.upperC, comfort.WithAirMovementC(plainC, best))
 	}
 	return out
 }
@@ -96,7 +88,7 @@ func Limit(s *site.Site, c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor
 		}
 		p := known[k]
 		if p == nil {
-			p = &perDay{days: limitsOfDays(out.Days, k.category, fan, c.FanSpeedMS), upper: make([]float32, g.N), withFan: make([]float32, g.N)}
+			p = &perDay{days: limitsOfDays(c, out.Days, k.category, fan), upper: make([]float32, g.N), withFan: make([]float32, g.N)}
 			for i := range p.upper {
 				d := &p.days[out.DayOf[i]]
 				p.upper[i], p.withFan[i] = float32(d.upperC), float32(d.withFanC)
@@ -111,29 +103,26 @@ func Limit(s *site.Site, c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor
 }
 
 func limitsOfZone(c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor, run *running.Zone, days []dayLimits) Limits {
-	l := Limits{Model: make([]Model, g.N), LowC: make([]float32, g.N), HighC: make([]float32, g.N)}
-	free := freeRunning(c, g, run)
+	l := Limits{Model: make([]Model, g.N), LowC: make([]float32, g.N), HighC: make([]float32, g.N), Free: freeRunning(c, g, run)}
 	for i := 0; i < g.N; i++ {
 		d := &days[out.DayOf[i]]
-		band := d.fixed
-		l.Model[i] = d.fixedModel
-		if free[i] && d.adaptive.Applies() {
-			band, l.Model[i] = d.adaptive, ENAdaptive
-			if d.extended {
-				l.Model[i] = ENExtended
-			}
+		band, model := d.fixed, d.fixedModel
+		if l.Free[i] && d.adaptiveModel != NoModel {
+			band, model = d.adaptive, d.adaptiveModel
 		}
-		if l.Model[i] == NoModel {
+		if model == NoModel {
 			band = comfort.Band{LowC: math.NaN(), HighC: math.NaN()}
 		}
-		l.LowC[i], l.HighC[i] = float32(band.LowC), float32(band.HighC)
+		l.Model[i], l.LowC[i], l.HighC[i] = model, float32(band.LowC), float32(band.HighC)
 	}
 	return l
 }
 
 // freeRunning marks the steps in which a zone counts as free-running: its
 // people can open windows, and neither heating nor cooling nor plant of
-// unknown kind runs or ran within AdaptiveAfterH.
+// unknown kind runs or ran within AdaptiveAfterH. Spells shorter than
+// AdaptiveLeastMin stay with the operative range, so that the criterion does
+// not change from step to step.
 func freeRunning(c criteria.Settings, g *grid.Grid, run *running.Zone) []bool {
 	free := make([]bool, g.N)
 	if !run.PeopleCanOpen {
@@ -150,12 +139,17 @@ func freeRunning(c criteria.Settings, g *grid.Grid, run *running.Zone) []bool {
 			since = 0
 		}
 	}
-	return free
-}
-
-func headlineID(c criteria.Settings) string {
-	if c.Headline != "" {
-		return c.Headline
+	least := int(math.Ceil(c.AdaptiveLeastMin*60/float64(g.StepS) - 1e-9))
+	for from := 0; from < len(free); {
+		to := from + 1
+		for to < len(free) && free[to] == free[from] {
+			to++
+		}
+		// A spell cut off by the record's ends may have been long enough.
+		if free[from] && to-from < least && from > 0 && to < len(free) {
+			clear(free[from:to])
+		}
+		from = to
 	}
-	return "en16798-1"
+	return free
 }

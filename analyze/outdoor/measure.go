@@ -108,8 +108,13 @@ func (o *Outdoor) days(g *grid.Grid, cal *calendar.Calendar) {
 	if err != nil {
 		panic(err) // prevailingDays is within the standard's range
 	}
+	month, err := comfort.PrevailingMean(daily, 30)
+	if err != nil {
+		panic(err)
+	}
 	for d := range o.Days {
 		o.Days[d].MeanC = daily[d]
+		o.Days[d].Mean30DaysC = month[d]
 		o.Days[d].RunningMeanENC = en[d]
 		o.Days[d].RunningMeanASHRAEC = ashrae[d]
 	}

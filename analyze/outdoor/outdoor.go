@@ -26,5 +26,6 @@ type Day struct {
 	MeanC              float64
 	RunningMeanENC     float64 // EN 16798-1, alpha 0.8
 	RunningMeanASHRAEC float64 // ASHRAE 55 prevailing mean
+	Mean30DaysC        float64 // of the 30 days before, as the Indian model asks
 	SixAMC             float64 // outdoor temperature at 06:00, for clothing
 }

@@ -38,15 +38,16 @@ type Settings struct {
 	PlantOvernightMinH float64 // plant left on overnight: at least so long
 
 	// Comfort.
-	Headline        string  // "en16798-1" (default) | "ashrae55" | "en15251" | "imac-mm"
-	Category        string  // "I" | "II" | "III"
-	ASHRAE55Percent int     // 80 or 90
-	AdaptiveAfterH  float64 // hours after plant stopped before adaptive applies, default 1
-	FanSpeedMS      float64 // air speed of suited_fan, default 0.9
-	MetabolicMet    float64
-	ClothingClo     float64 // NaN: from the outdoor temperature at 06:00
-	AirSpeedMS      float64 // still air indoors, default 0.1
-	RunningMeanMinD float64 // least days behind a running mean
+	Headline         string  // "en16798-1" (default) | "ashrae55" | "en15251" | "imac-mm"
+	Category         string  // "I" | "II" | "III"
+	ASHRAE55Percent  int     // 80 or 90
+	AdaptiveAfterH   float64 // hours after plant stopped before adaptive applies, default 1
+	AdaptiveLeastMin float64 // shortest spell the adaptive model applies to, default 30
+	FanSpeedMS       float64 // air speed of suited_fan, default 0.9
+	MetabolicMet     float64
+	ClothingClo      float64 // NaN: from the outdoor temperature at 06:00
+	AirSpeedMS       float64 // still air indoors, default 0.1
+	RunningMeanMinD  float64 // least days behind a running mean
 
 	// Fresh air.
 	CO2Category        string  // "I" | "II" | "III"

@@ -52,6 +52,7 @@ var fields = []field{
 	{key: "category", at: func(s *Settings) any { return &s.Category }, words: categories},
 	{key: "ashrae55_percent", at: func(s *Settings) any { return &s.ASHRAE55Percent }, words: []string{"80", "90"}},
 	{key: "adaptive_after_h", at: func(s *Settings) any { return &s.AdaptiveAfterH }, low: 0, high: 48},
+	{key: "adaptive_least_min", at: func(s *Settings) any { return &s.AdaptiveLeastMin }, low: 0, high: 1440},
 	{key: "fan_speed_m_s", at: func(s *Settings) any { return &s.FanSpeedMS }, low: 0, high: 3},
 	{key: "metabolic_met", at: func(s *Settings) any { return &s.MetabolicMet }, low: 0.8, high: 4},
 	{key: "clothing_clo", at: func(s *Settings) any { return &s.ClothingClo }, low: 0, high: 2},
