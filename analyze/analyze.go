@@ -10,8 +10,9 @@
 //  7. freshair: was the air fresh enough in each running state?
 //  8. lost: which hours were missed, in which episodes, and why?
 //  9. afterhours: what ran or stood open when nobody was there?
-//  10. answerable: what can these logs answer at all?
-//  11. advice: what should be done first?
+//  10. longterm: how did the season compare by published indices, and whom does the average hide?
+//  11. answerable: what can these logs answer at all?
+//  12. advice: what should be done first?
 package analyze
 
 import (
@@ -23,6 +24,7 @@ import (
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
 	"sashlog/analyze/indoor"
+	"sashlog/analyze/longterm"
 	"sashlog/analyze/lost"
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/potential"
@@ -53,5 +55,6 @@ type Results struct {
 	Lost       *lost.Result
 	AfterHours *afterhours.Result
 	Answerable []answerable.Question
+	LongTerm   *longterm.Result
 	Findings   []advice.Finding
 }

@@ -5,6 +5,7 @@ import (
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
+	"sashlog/analyze/longterm"
 	"sashlog/analyze/lost"
 	"sashlog/analyze/method"
 	"sashlog/analyze/potential"
@@ -14,6 +15,6 @@ import (
 // Methods lists the documentation of every method in use, in the order the
 // analyses run; the report's appendix and the list of methods print from it.
 func Methods() []method.Doc {
-	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc, freshair.Doc, lost.Doc}
+	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc}
 	return append(docs, comfort.Docs()...)
 }

@@ -10,6 +10,7 @@ import (
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
 	"sashlog/analyze/indoor"
+	"sashlog/analyze/longterm"
 	"sashlog/analyze/lost"
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/potential"
@@ -44,6 +45,8 @@ func Run(in Input) *Results {
 				Running: r.Running, Record: r.Hours, Summary: r.Summary})
 		},
 	)
+	r.LongTerm = longterm.Assess(longterm.Input{Site: s, Criteria: c, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor,
+		Running: r.Running, Exceedance: r.Exceedance})
 	r.Answerable = answerable.Ask(s, g)
 	r.Findings = advice.Advise(advice.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
 		Exceedance: r.Exceedance, Potential: r.Potential, Record: r.Hours, Summary: r.Summary, FreshAir: r.FreshAir,

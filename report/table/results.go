@@ -94,7 +94,7 @@ func WriteJSON(w io.Writer, in Input) error {
 		set("building", totalObject(&in.Results.Summary.Building).set("weighted_by", in.Results.Summary.WeightedBy)).
 		set("zones", in.zoneList(rule)).set("months", in.months()).set("quality", in.quality(rule)).
 		set("episodes", in.episodeList(rule)).set("lost_to", in.lostTo()).
-		set("fresh_air", in.freshAir()).set("potential", in.potential()).
+		set("fresh_air", in.freshAir()).set("potential", in.potential()).set("comfort_spread", in.comfortSpread(rule)).
 		set("wind", nil).set("changeover", nil).set("votes", nil).set("energy", nil).
 		set("out_of_hours", in.outOfHours(rule)).set("uncertainty", in.uncertainty()).set("findings", in.findings(rule))
 	enc := json.NewEncoder(w)
@@ -138,7 +138,7 @@ func (in *Input) zoneList(rule privacy.Rule) []any {
 		if rule.Protected(z) {
 			people = math.NaN()
 		}
-		o.set("people_h", plain(people)).set("comfort", in.comfort(z)).set("co2", in.co2(z)).set("air_change", in.airChange(z)).
+		o.set("people_h", plain(people)).set("comfort", in.comfort(z)).set("long_term", in.longTerm(z)).set("co2", in.co2(z)).set("air_change", in.airChange(z)).
 			set("lost_to_h", causes(in.Results.Lost.ByCauseH[z]))
 		out = append(out, o)
 	}

@@ -1,0 +1,92 @@
+package page
+
+import (
+	"fmt"
+	"math"
+
+	"sashlog/analyze/longterm"
+	"sashlog/report/words"
+)
+
+// longTerm shows who is worse off than the average, and the published
+// long-term indices of every zone.
+func (b *builder) longTerm(zones []int, foot string) []block {
+	lt := b.in.Results.LongTerm
+	if lt == nil {
+		return nil
+	}
+	out := []block{heading("Does the average hide somebody?")}
+	out = append(out, texts(b.hiddenWords(lt)...)...)
+	out = append(out, heading("Long-term indices"),
+		text("Researchers compare seasons by published indices. TM52 asks three things of warm hours (how many, how bad the worst day was, and how hot it ever got); a room that fails two of them overheats. The allowed deviation asks that no more than 3 % or 5 % of occupied time lie outside, in every day, week and month. The predicted percentage dissatisfied (PPD) estimates how many people would be unhappy; it is never below 5 %."))
+	t := table{ID: "comfort-long-term", Caption: "Long-term indices of comfort over occupied time", Head: []column{col("Zone"),
+		num("TM52 1: time 1 K or more too warm"), num("TM52 2: worst day (K·h)"), num("TM52 3: most (K)"), keep("TM52"),
+		num("Days over 5 %"), num("Weeks over 5 %"), num("Mean PPD (%)"), num("Weighted warm (h)"), num("Weighted cool (h)")}}
+	for _, z := range zones {
+		if z >= len(lt.Zones) {
+			continue
+		}
+		o := &lt.Zones[z]
+		if o.KnownH == 0 {
+			t.Rows = append(t.Rows, row(b.w.Zone(z), words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, words.Dash))
+			continue
+		}
+		verdict, share, worst, most := "not known", words.Dash, words.Dash, words.Dash
+		if tm := &o.TM52; tm.AnythingJudged {
+			verdict = "passes"
+			if tm.Overheats {
+				verdict = "overheats"
+			}
+			share, worst, most = words.Share(tm.ExceededShare), words.Number(tm.WorstDayKh, 0), words.Number(tm.MaxExcessK, 0)
+		}
+		t.Rows = append(t.Rows, row(b.w.Zone(z), share, worst, most, verdict, over(o.Deviations[longterm.Day]), over(o.Deviations[longterm.Week]),
+			words.Number(o.MeanPPDPct, 0), words.HoursNumber(o.WeightedH.Warm*b.span.PerYear), words.HoursNumber(o.WeightedH.Cool*b.span.PerYear)))
+	}
+	season := "May to September"
+	if lt.Southern {
+		season = "November to March (our reading of a southern season)"
+	}
+	t.Foot = []string{"TM52 limits: 3 % of occupied time from " + season + ", 6 K·h on the worst day, 4 K at any time; written for buildings without cooling, so here a calculation only. " +
+		"Weighted hours count more the further a zone is outside (ISO 7730 Annex H, method B), " + b.span.Words + ". Days and weeks: those with more than 5 % of known occupied time outside, of those at least half known. " +
+		words.Dash + " not known."}
+	if foot != "" {
+		t.Foot = append(t.Foot, foot)
+	}
+	if !math.IsNaN(lt.RoomsWithin5) {
+		t.Foot = append(t.Foot, fmt.Sprintf("Rooms within 3 %% over the whole period: %s; within 5 %%: %s (by %s).", words.Share(lt.RoomsWithin3), words.Share(lt.RoomsWithin5), lt.RoomsBy))
+	}
+	return append(out, b.table(t))
+}
+
+func over(d longterm.Deviation) string {
+	if d.Spans == 0 {
+		return words.Dash
+	}
+	return words.Count(int64(d.Over5)) + " of " + words.Count(int64(d.Spans))
+}
+
+func (b *builder) hiddenWords(lt *longterm.Result) []string {
+	s := &lt.Spread
+	if s.KnownH == 0 {
+		return []string{"Nobody's comfort is known, so it cannot be said whether an average hides anybody."}
+	}
+	k := b.span.PerYear
+	all := fmt.Sprintf("Of all person-hours whose comfort is known, %s were too warm and %s too cool; together %s of them lay outside the limits, counting the unknown ones either way (%s).",
+		words.Share(s.PersonWarmShare), words.Share(s.PersonCoolShare), words.ShareBetween(s.PersonOutsideShare.Value, s.PersonOutsideShare.Low, s.PersonOutsideShare.High), s.WeightedBy)
+	if s.HiddenH == 0 {
+		return []string{all, "Whenever the building's average was comfortable, fewer than one in five people were outside their limits: the average hides nobody for long."}
+	}
+	hidden := fmt.Sprintf("In %s %s the average temperature was comfortable while at least one in five people were not.", words.Hours(s.HiddenH*k), b.span.Words)
+	var names []string
+	for _, h := range s.Hidden {
+		side := fmt.Sprintf("%s (%s too warm, %s too cool)", b.w.Zone(h.Zone), words.Hours(h.WarmH*k), words.Hours(h.CoolH*k))
+		switch {
+		case h.CoolH == 0:
+			side = fmt.Sprintf("%s (%s too warm)", b.w.Zone(h.Zone), words.Hours(h.WarmH*k))
+		case h.WarmH == 0:
+			side = fmt.Sprintf("%s (%s too cool)", b.w.Zone(h.Zone), words.Hours(h.CoolH*k))
+		}
+		names = append(names, side)
+	}
+	return []string{all, hidden + " Outside most in those hours: " + words.List(names, 4) + "."}
+}
