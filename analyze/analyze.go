@@ -11,8 +11,9 @@
 //  8. lost: which hours were missed, in which episodes, and why?
 //  9. afterhours: what ran or stood open when nobody was there?
 //  10. longterm: how did the season compare by published indices, and whom does the average hide?
-//  11. answerable: what can these logs answer at all?
-//  12. advice: what should be done first?
+//  11. doubt: how far could the sensors' own errors move all this?
+//  12. answerable: what can these logs answer at all?
+//  13. advice: what should be done first?
 package analyze
 
 import (
@@ -20,6 +21,7 @@ import (
 	"sashlog/analyze/afterhours"
 	"sashlog/analyze/answerable"
 	"sashlog/analyze/calendar"
+	"sashlog/analyze/doubt"
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
@@ -56,5 +58,6 @@ type Results struct {
 	AfterHours *afterhours.Result
 	Answerable []answerable.Question
 	LongTerm   *longterm.Result
+	Doubt      *doubt.Result
 	Findings   []advice.Finding
 }

@@ -2,6 +2,7 @@ package analyze
 
 import (
 	"sashlog/analyze/comfort"
+	"sashlog/analyze/doubt"
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
@@ -15,6 +16,6 @@ import (
 // Methods lists the documentation of every method in use, in the order the
 // analyses run; the report's appendix and the list of methods print from it.
 func Methods() []method.Doc {
-	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc}
+	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc, doubt.Doc}
 	return append(docs, comfort.Docs()...)
 }

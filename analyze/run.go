@@ -6,6 +6,7 @@ import (
 	"sashlog/analyze/answerable"
 	"sashlog/analyze/calendar"
 	"sashlog/analyze/cores"
+	"sashlog/analyze/doubt"
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
@@ -29,8 +30,9 @@ func Run(in Input) *Results {
 	r.Exceedance = exceedance.Limit(s, c, g, r.Outdoor, r.Running)
 	r.Exceedance.Count(s, c, g, r.Outdoor, r.Indoor, r.Running, hourOf)
 	r.Potential = potential.Judge(s, c, g, r.Calendar, r.Outdoor, r.Running, r.Exceedance)
-	r.Hours = hours.Make(hours.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor,
-		Running: r.Running, Exceedance: r.Exceedance, Potential: r.Potential, Calendar: r.Calendar, Hours: clockHours})
+	record := hours.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor,
+		Running: r.Running, Exceedance: r.Exceedance, Potential: r.Potential, Calendar: r.Calendar, Hours: clockHours}
+	r.Hours = hours.Make(record)
 	r.Summary = hours.Sum(r.Hours, g, r.Calendar, r.Running)
 	cores.Together(
 		func() {
@@ -43,6 +45,9 @@ func Run(in Input) *Results {
 		func() {
 			r.AfterHours = afterhours.Look(afterhours.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor,
 				Running: r.Running, Record: r.Hours, Summary: r.Summary})
+		},
+		func() {
+			r.Doubt = doubt.Estimate(doubt.Input{Input: record, Calendar: r.Calendar, Weights: r.Summary.Weights, Seed: 1})
 		},
 	)
 	r.LongTerm = longterm.Assess(longterm.Input{Site: s, Criteria: c, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor,

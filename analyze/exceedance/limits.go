@@ -70,17 +70,36 @@ func limitsOfDays(c criteria.Settings, days []outdoor.Day, cat comfort.Category,
 // ranges apply, the narrower of the two.
 func Limit(s *site.Site, c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor, run *running.Result) *Result {
 	r := &Result{Zones: make([]Zone, len(s.Zones)), Headline: headlineID(c)}
-	// Zones of one category with the same fan share what depends on the day.
+	l := NewLimiter(s, c, g, out)
+	for z := range r.Zones {
+		r.Zones[z].Limits = l.Zone(z, freeRunning(c, g, &run.Zones[z]))
+	}
+	return r
+}
+
+// Limiter gives the limits of zones one by one. It is safe for concurrent use.
+type Limiter struct {
+	c    criteria.Settings
+	g    *grid.Grid
+	out  *outdoor.Outdoor
+	kind []*perDay // by zone
+}
+
+// perDay is what zones of one category with the same fan share.
+type perDay struct {
+	days           []dayLimits
+	upper, withFan []float32
+}
+
+// NewLimiter works out what depends on the day.
+func NewLimiter(s *site.Site, c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor) *Limiter {
 	type kind struct {
 		category comfort.Category
 		fan      float64
 	}
-	type perDay struct {
-		days           []dayLimits
-		upper, withFan []float32
-	}
 	known := map[kind]*perDay{}
-	for z := range r.Zones {
+	l := &Limiter{c: c, g: g, out: out, kind: make([]*perDay, len(s.Zones))}
+	for z := range s.Zones {
 		k := kind{categoryOf(c, &s.Zones[z]), s.Zones[z].FanSpeedMS}
 		fan := k.fan
 		if math.IsNaN(fan) {
@@ -95,15 +114,26 @@ func Limit(s *site.Site, c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor
 			}
 			known[k] = p
 		}
-		l := limitsOfZone(c, g, out, &run.Zones[z], p.days)
-		l.UpperOfDayC, l.WithFanC = p.upper, p.withFan
-		r.Zones[z].Limits = l
+		l.kind[z] = p
 	}
-	return r
+	return l
 }
 
-func limitsOfZone(c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor, run *running.Zone, days []dayLimits) Limits {
-	l := Limits{Model: make([]Model, g.N), LowC: make([]float32, g.N), HighC: make([]float32, g.N), Free: freeRunning(c, g, run)}
+// Upper returns the adaptive upper limit of the day per step of a zone's kind;
+// zones of one kind share the slice.
+func (l *Limiter) Upper(z int) []float32 { return l.kind[z].upper }
+
+// Zone returns the limits of one zone, which is free-running in the steps
+// marked.
+func (l *Limiter) Zone(z int, free []bool) Limits {
+	p := l.kind[z]
+	limits := limitsOfZone(l.g, l.out, free, p.days)
+	limits.UpperOfDayC, limits.WithFanC = p.upper, p.withFan
+	return limits
+}
+
+func limitsOfZone(g *grid.Grid, out *outdoor.Outdoor, free []bool, days []dayLimits) Limits {
+	l := Limits{Model: make([]Model, g.N), LowC: make([]float32, g.N), HighC: make([]float32, g.N), Free: free}
 	for i := 0; i < g.N; i++ {
 		d := &days[out.DayOf[i]]
 		band, model := d.fixed, d.fixedModel

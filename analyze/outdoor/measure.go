@@ -37,7 +37,7 @@ func Measure(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Cale
 		SolarWm2: of(site.Solar), CO2PPM: of(site.OutdoorCO2), PM25: of(site.OutdoorPM25),
 		DayOf: cal.DayOf,
 	}
-	o.Measured = o.TempC != nil
+	o.Measured, o.dewLogged = o.TempC != nil, o.DewPointC != nil
 	o.humidity(g.N)
 	o.CO2DefaultPPM, o.CO2Source = c.OutdoorCO2PPM, "default for the year, from memory"
 	if !math.IsNaN(s.OutdoorCO2PPM) {

@@ -16,6 +16,7 @@ type Outdoor struct {
 	CO2Source                string  // "measured", "site file" or the preset's note
 	CO2DefaultPPM            float64 // in force where not measured
 	HumidityLogged, Measured bool
+	dewLogged                bool
 }
 
 // Day is one local day. Means are NaN when less than 80 % of the day is

@@ -16,30 +16,52 @@ import (
 // Judge settles when the weather suited each zone, by the headline rule and
 // its variants, and counts suitable hours by each method.
 func Judge(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Calendar, out *outdoor.Outdoor, run *running.Result, exc *exceedance.Result) *Result {
-	r := &Result{Zones: make([]Zone, len(s.Zones)), Tested: tested(out, c)}
 	w := newWeather(c, g, out)
-	// Zones with the same limits share their verdicts.
+	r := &Result{Tested: tested(out, c)}
+	r.Zones = w.zones(s, run, exc, func(zone *Zone, l *exceedance.Limits) {
+		zone.Raw = w.verdicts(l.UpperOfDayC, true)
+		zone.Suit = w.dropBrief(zone.Raw)
+		zone.Fan = w.dropBrief(w.verdicts(l.WithFanC, true))
+		zone.AnyHumidity = w.dropBrief(w.verdicts(l.UpperOfDayC, false))
+	})
+	r.Methods = w.methods(s, run, r.Zones)
+	r.Typical = typical(s, c, g, cal, out)
+	return r
+}
+
+// Headline gives the part of Judge that the classes of hours rest on: when the
+// weather suited, by the headline rule, a zone with the upper limits of a day.
+// It is safe for concurrent use.
+type Headline struct{ w *weather }
+
+// NewHeadline prepares the outdoor side of the rule.
+func NewHeadline(c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor) *Headline {
+	return &Headline{newWeather(c, g, out)}
+}
+
+// Suit judges every step against the upper comfort limit of its day.
+func (h *Headline) Suit(upperOfDayC []float32) []Suit {
+	return h.w.dropBrief(h.w.verdicts(upperOfDayC, true))
+}
+
+// zones fills the zones with openings; those with the same limits share their
+// verdicts.
+func (w *weather) zones(s *site.Site, run *running.Result, exc *exceedance.Result, fill func(*Zone, *exceedance.Limits)) []Zone {
+	out := make([]Zone, len(s.Zones))
 	same := map[string]*Zone{}
-	for z := range r.Zones {
+	for z := range out {
 		if run.Zones[z].NoOpening {
 			continue
 		}
 		key := fmt.Sprintf("%s %v", s.Zones[z].Category, s.Zones[z].FanSpeedMS)
 		if known, ok := same[key]; ok {
-			r.Zones[z] = *known
+			out[z] = *known
 			continue
 		}
-		l := &exc.Zones[z].Limits
-		zone := &r.Zones[z]
-		zone.Raw = w.verdicts(l.UpperOfDayC, true)
-		zone.Suit = w.dropBrief(zone.Raw)
-		zone.Fan = w.dropBrief(w.verdicts(l.WithFanC, true))
-		zone.AnyHumidity = w.dropBrief(w.verdicts(l.UpperOfDayC, false))
-		same[key] = zone
+		fill(&out[z], &exc.Zones[z].Limits)
+		same[key] = &out[z]
 	}
-	r.Methods = w.methods(s, run, r.Zones)
-	r.Typical = typical(s, c, g, cal, out)
-	return r
+	return out
 }
 
 // weather is the outdoor side of the rule, worked out once per step.

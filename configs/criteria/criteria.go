@@ -58,6 +58,13 @@ type Settings struct {
 	DecayStartAbovePPM float64 // a decay event starts at least so far above outdoors
 	MinDecayEvents     int
 
+	// Accuracy of sensors, as ranges that hold 95 times in 100.
+	AccuracyOutdoorTempK float64
+	AccuracyIndoorTempK  float64
+	AccuracyHumidityPct  float64
+	AccuracyCO2PPM       float64 // and AccuracyCO2Pct of the reading on top
+	AccuracyCO2Pct       float64
+
 	Notes map[string]Note
 }
 

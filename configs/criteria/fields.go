@@ -66,6 +66,12 @@ var fields = []field{
 	{key: "co2_per_person_l_s", at: func(s *Settings) any { return &s.CO2PerPersonLs }, low: 0.0005, high: 0.02},
 	{key: "decay_start_above_ppm", at: func(s *Settings) any { return &s.DecayStartAbovePPM }, low: 50, high: 2000},
 	{key: "min_decay_events", at: func(s *Settings) any { return &s.MinDecayEvents }, low: 1, high: 1000},
+
+	{key: "accuracy_outdoor_temp_k", at: func(s *Settings) any { return &s.AccuracyOutdoorTempK }, low: 0, high: 5},
+	{key: "accuracy_indoor_temp_k", at: func(s *Settings) any { return &s.AccuracyIndoorTempK }, low: 0, high: 5},
+	{key: "accuracy_humidity_pct", at: func(s *Settings) any { return &s.AccuracyHumidityPct }, low: 0, high: 20},
+	{key: "accuracy_co2_ppm", at: func(s *Settings) any { return &s.AccuracyCO2PPM }, low: 0, high: 500},
+	{key: "accuracy_co2_pct", at: func(s *Settings) any { return &s.AccuracyCO2Pct }, low: 0, high: 30},
 }
 
 // auto is how files write a clothing that follows the outdoor temperature.

@@ -49,6 +49,7 @@ func (b *builder) quality() section {
 	s.Blocks = append(s.Blocks, b.checks()...)
 	s.Blocks = append(s.Blocks, b.coverage(), b.clocks())
 	s.Blocks = append(s.Blocks, b.issues()...)
+	s.Blocks = append(s.Blocks, b.doubtParts()...)
 	return s
 }
 

@@ -120,7 +120,15 @@ func (in *Input) uncertainty() *object {
 	return (&object{}).set("kind", "bounds: the unknown hours going wholly either way; no sensor error or sampling is in them").
 		set("judged_share", num(b.JudgedShare)).set("unjudged_h", num(b.H[hours.CUnjudged])).set("unjudged_suited_h", num(b.H[hours.CUnjudgedSuited])).
 		set("weather_unknown_h", num(b.H[hours.CSuitedUnknown])).set("running_unknown_h", num(b.H[hours.CUnknown])).
-		set("occupancy_unknown_h", num(b.H[hours.COccupiedUnknown])).set("achieved_share", bounded(b.AchievedShare))
+		set("occupancy_unknown_h", num(b.H[hours.COccupiedUnknown])).set("achieved_share", bounded(b.AchievedShare)).
+		set("unknown_half_h", in.unknownHalf()).set("sensors", in.sensorDoubt())
+}
+
+func (in *Input) unknownHalf() any {
+	if in.Results.Doubt == nil {
+		return nil
+	}
+	return num(in.Results.Doubt.UnknownHalfH)
 }
 
 func (in *Input) findings(rule privacy.Rule) []any {

@@ -4,6 +4,7 @@ import (
 	"math"
 	"strings"
 
+	"sashlog/analyze/doubt"
 	"sashlog/analyze/hours"
 )
 
@@ -24,6 +25,9 @@ func Sure(in Input) []string {
 		}
 		out = append(out, strings.ToUpper(t[:1])+t[1:])
 	}
+	if t := sensorDoubt(in); t != "" {
+		out = append(out, t)
+	}
 	if d := BiggestDoubt(in); d != "" {
 		out = append(out, "The biggest doubt: "+d)
 	}
@@ -35,6 +39,33 @@ func Sure(in Input) []string {
 		out = append(out, t)
 	}
 	return out
+}
+
+// sensorDoubt says what the sensors' own errors add.
+func sensorDoubt(in Input) string {
+	d := in.Results.Doubt
+	if d == nil || in.CanSay() != Full {
+		return ""
+	}
+	s := d.Building.AchievedShare
+	if !known(s.Value) || s.High-s.Low < 0.005 {
+		return ""
+	}
+	return "Sensors are never exact: if they are as accurate as usual, the true figure behind the " + Share(s.Value) + " lies between " + Share(s.Low) + " and " + Share(s.High) +
+		" nine times in ten; what matters most is " + DoubtPart(d.Largest()) + "."
+}
+
+// DoubtPart names a source of error.
+func DoubtPart(p doubt.Part) string {
+	switch p {
+	case doubt.OutdoorTemp:
+		return "the outdoor temperature sensor"
+	case doubt.OutdoorHumidity:
+		return "the outdoor humidity sensor"
+	case doubt.IndoorTemp:
+		return "the accuracy of the temperature sensors in the zones"
+	}
+	return "the accuracy of the CO2 sensors"
 }
 
 // BiggestDoubt names what could move the answer most.

@@ -1,0 +1,50 @@
+package page
+
+import (
+	"strings"
+
+	"sashlog/analyze/doubt"
+	"sashlog/report/words"
+)
+
+// doubtParts shows what the doubt of the building's figures is made of, and
+// what would shrink it.
+func (b *builder) doubtParts() []block {
+	d := b.in.Results.Doubt
+	if d == nil || b.w.CanSay() != words.Full {
+		return nil
+	}
+	k := b.span.PerYear
+	out := []block{heading("What the doubt is made of"),
+		text("Two kinds of doubt stand beside each other and are not added up. Hours that cannot be judged leave bounds: the true figure lies between them whatever happened. Sensors have errors of their own, which give an interval: if the sensors are as accurate as assumed here, the true figure lies within it nine times in ten.")}
+	t := table{ID: "doubt-parts", Caption: "How far each source of doubt alone could move the figures of the average occupant",
+		Head: []column{col("Source"), col("Assumed"), num("Suited (± h)"), num("Achieved (± h)"), num("of it comfortable and fresh (± h)"), num("Missed (± h)"), num("Share reached (± points)"), col("What would shrink it")}}
+	half := words.HoursNumber(d.UnknownHalfH * k)
+	t.Rows = append(t.Rows, row("Suited hours nobody can judge (half the bounds)", words.Dash, words.Dash, half, words.Dash, half, words.Dash, "the missing window contacts, plant status or readings: see what these logs can answer"))
+	total := &d.Building
+	for p := doubt.Part(0); p < doubt.NumParts; p++ {
+		if !d.Logged[p] {
+			continue
+		}
+		half := func(i doubt.Interval, scale float64) string { return words.HoursNumber(i.HalfWidth[p] * scale) }
+		t.Rows = append(t.Rows, row(strings.TrimSuffix(words.Sentence(words.DoubtPart(p)), "."), d.Assumed[p], half(total.SuitedH, k), half(total.AchievedH, k), half(total.AchievedOKH, k),
+			half(total.MissedH, k), words.Number(total.AchievedShare.HalfWidth[p]*100, 1), shrinks(p)))
+	}
+	t.Foot = []string{"Hours " + b.span.Words + ", half widths of 90 % intervals. The accuracies are settings of the site file; the headline criterion and what counts as open are taken as they stand.",
+		"Together the sensors leave: suited " + words.HoursBetween(total.SuitedH.Value*k, total.SuitedH.Low*k, total.SuitedH.High*k) + ", achieved " +
+			words.HoursBetween(total.AchievedH.Value*k, total.AchievedH.Low*k, total.AchievedH.High*k) + ", missed " +
+			words.HoursBetween(total.MissedH.Value*k, total.MissedH.Low*k, total.MissedH.High*k) + "."}
+	return append(out, b.table(t))
+}
+
+func shrinks(p doubt.Part) string {
+	switch p {
+	case doubt.OutdoorTemp:
+		return "a ventilated, shaded outdoor sensor, compared with a nearby station"
+	case doubt.OutdoorHumidity:
+		return "an outdoor humidity sensor calibrated within a year"
+	case doubt.IndoorTemp:
+		return "room sensors compared with a reference for a day"
+	}
+	return "CO2 sensors compared outdoors, and outdoor CO2 logged"
+}
