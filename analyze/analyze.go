@@ -12,8 +12,9 @@
 //  9. afterhours: what ran or stood open when nobody was there?
 //  10. longterm: how did the season compare by published indices, and whom does the average hide?
 //  11. doubt: how far could the sensors' own errors move all this?
-//  12. answerable: what can these logs answer at all?
-//  13. advice: what should be done first?
+//  12. votes: what did the occupants say, and do the models predict it?
+//  13. answerable: what can these logs answer at all?
+//  14. advice: what should be done first?
 package analyze
 
 import (
@@ -31,6 +32,7 @@ import (
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/potential"
 	"sashlog/analyze/running"
+	"sashlog/analyze/votes"
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
 	"sashlog/ingest/grid"
@@ -59,5 +61,6 @@ type Results struct {
 	Answerable []answerable.Question
 	LongTerm   *longterm.Result
 	Doubt      *doubt.Result
+	Votes      *votes.Result // nil without votes
 	Findings   []advice.Finding
 }

@@ -11,11 +11,12 @@ import (
 	"sashlog/analyze/method"
 	"sashlog/analyze/potential"
 	"sashlog/analyze/running"
+	"sashlog/analyze/votes"
 )
 
 // Methods lists the documentation of every method in use, in the order the
 // analyses run; the report's appendix and the list of methods print from it.
 func Methods() []method.Doc {
-	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc, doubt.Doc}
+	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc, doubt.Doc, votes.Doc}
 	return append(docs, comfort.Docs()...)
 }

@@ -16,6 +16,7 @@ import (
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/potential"
 	"sashlog/analyze/running"
+	"sashlog/analyze/votes"
 )
 
 // Run answers every question, in the order of the package comment.
@@ -52,6 +53,7 @@ func Run(in Input) *Results {
 	)
 	r.LongTerm = longterm.Assess(longterm.Input{Site: s, Criteria: c, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor,
 		Running: r.Running, Exceedance: r.Exceedance})
+	r.Votes = votes.Compare(votes.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running, Exceedance: r.Exceedance})
 	r.Answerable = answerable.Ask(s, g)
 	r.Findings = advice.Advise(advice.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
 		Exceedance: r.Exceedance, Potential: r.Potential, Record: r.Hours, Summary: r.Summary, FreshAir: r.FreshAir,

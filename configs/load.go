@@ -71,6 +71,7 @@ const (
 	siteFileMax  = 4 << 20
 	pointsMax    = 64 << 20
 	diaryFileMax = 16 << 20
+	votesMax     = 64 << 20
 )
 
 // Load reads the site file at path with its points table and diary. env looks
@@ -118,7 +119,8 @@ func build(t *tree, text []byte, env func(string) string) *builder {
 	return b
 }
 
-// readTables reads the points tables and the diary from beside the site file.
+// readTables reads the points tables, the diary and the votes from beside the
+// site file.
 func (b *builder) readTables() {
 	for i, name := range b.raw.Points {
 		where := fmt.Sprintf("points[%d]", i)
@@ -132,6 +134,11 @@ func (b *builder) readTables() {
 	if b.raw.Diary != "" {
 		if raw := b.open("diary", b.raw.Diary, diaryFileMax); raw != nil {
 			b.readDiary(b.shown(b.raw.Diary), raw)
+		}
+	}
+	if b.raw.Votes != "" {
+		if raw := b.open("votes", b.raw.Votes, votesMax); raw != nil {
+			b.readVotes(b.shown(b.raw.Votes), raw)
 		}
 	}
 }

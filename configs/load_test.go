@@ -99,7 +99,8 @@ func TestEverything(t *testing.T) {
 	check("value columns", s.Logs[1].ValueColumns, []string{"value"})
 	check("clock", []any{s.Logs[1].Clock.Kind, s.Logs[1].Clock.OffsetS, s.Logs[1].Clock.OverruleOffset, s.Logs[1].Clock.ShiftS},
 		[]any{site.ClockOffset, -12600, true, -150})
-	check("shift", s.Logs[1].Clock.Shifts, []site.ClockShift{{From: site.Date{Year: 2025, Month: 2, Day: 1}, To: site.Date{Year: 2025, Month: 2, Day: 28}, ShiftS: 3600}})
+	check("shift", s.Logs[1].Clock.Shifts, []site.ClockShift{{From: site.Date{Year: 2025, Month: 2, Day: 1}, To: site.Date{Year: 2025, Month: 2, Day: 28}, ShiftS: 3600},
+		{From: site.Date{Year: 2025, Month: 3, Day: 1}, To: site.Date{Year: 2025, Month: 8, Day: 31}, Grows: true, EndShiftS: -1470}})
 	check("zone clock", s.Logs[2].Clock.Zone.String(), "America/St_Johns")
 	check("tab", s.Logs[2].Separator, '\t')
 	check("criteria", []any{l.Criteria.Headline, l.Criteria.ASHRAE55Percent, l.Criteria.OutdoorLowC, l.Criteria.ClothingClo, l.Criteria.CO2AboveOutdoorPPM},
@@ -326,4 +327,39 @@ func TestOverlapProperty(t *testing.T) {
 			t.Fatalf("overlap %v, want %v", got, want)
 		}
 	})
+}
+
+// Votes in words and numbers, complaints, and what was not asked.
+func TestVotes(t *testing.T) {
+	dir := t.TempDir()
+	for _, f := range []string{"table.yaml", "points/minimal.good.csv"} {
+		raw, err := os.ReadFile(filepath.Join(corpus, f))
+		if err != nil {
+			t.Fatal(err)
+		}
+		name := "points.csv"
+		if f == "table.yaml" {
+			name, raw = "site.yaml", append(raw, "votes: votes.csv\n"...)
+		}
+		write(t, filepath.Join(dir, name), raw)
+	}
+	write(t, filepath.Join(dir, "votes.csv"), []byte("time;zone;sensation;acceptable;preference;complaint\n"+
+		"2025-07-01 10:00;L1.02;Slightly warm;Yes;cooler;\n2025-07-01 10:05;L1.09;-1,5;no;;\n2025-07-01 10:06;L1.09;;;;Too warm\n"))
+	l, err := Load(filepath.Join(dir, "site.yaml"), nil)
+	if err != nil {
+		t.Fatal(err)
+	}
+	v := l.Site.Votes
+	if len(v) != 3 {
+		t.Fatalf("%d votes", len(v))
+	}
+	if v[0].Sensation != 1 || v[0].Acceptable != 1 || v[0].Preference != -1 || v[0].Zone != 0 || v[0].Complaint != "" {
+		t.Errorf("%+v", v[0])
+	}
+	if v[1].Sensation != -1.5 || v[1].Acceptable != 0 || v[1].Preference != site.NotAsked || v[1].Zone != 1 {
+		t.Errorf("%+v", v[1])
+	}
+	if !math.IsNaN(v[2].Sensation) || v[2].Complaint != site.TooWarmComplaint || v[2].Acceptable != site.NotAsked {
+		t.Errorf("%+v", v[2])
+	}
 }

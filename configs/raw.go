@@ -16,6 +16,7 @@ type rawSite struct {
 	Logs      []rawLog       `mapstructure:"logs"`
 	Points    many           `mapstructure:"points"`
 	Diary     string         `mapstructure:"diary"`
+	Votes     string         `mapstructure:"votes"`
 	Weather   rawWeather     `mapstructure:"weather"`
 	Tolerance rawTolerance   `mapstructure:"tolerance"`
 }
@@ -136,6 +137,7 @@ type rawClockShift struct {
 	From     string   `mapstructure:"from"`
 	To       string   `mapstructure:"to"`
 	ShiftMin *float64 `mapstructure:"shift_min"`
+	EndMin   *float64 `mapstructure:"end_shift_min"`
 }
 
 type rawWeather struct {

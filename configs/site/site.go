@@ -24,6 +24,7 @@ type Site struct {
 	Logs      []Log
 	Points    []Point
 	Diary     []Event
+	Votes     []Vote
 	// TypicalYear is the path of an EPW file, relative to Dir, or empty.
 	TypicalYear string
 	Privacy     Privacy

@@ -18,6 +18,7 @@ import (
 	"fmt"
 	"html/template"
 	"io"
+	"slices"
 	"strings"
 	"unicode"
 	"unicode/utf8"
@@ -141,9 +142,10 @@ func newBuilder(in Input) *builder {
 
 func (b *builder) sections() []section {
 	list := []section{
-		b.year(), b.weather(), b.zones(), b.comfort(), b.air(), b.lost(), b.findings(), b.outOfHours(),
+		b.year(), b.weather(), b.zones(), b.comfort(), b.said(), b.air(), b.lost(), b.findings(), b.outOfHours(),
 		b.answerable(), b.quality(), b.methods(), b.provenance(), b.cautions(),
 	}
+	list = slices.DeleteFunc(list, func(s section) bool { return s.ID == "" })
 	for i := range list {
 		list[i].Number = i + 1
 		for _, x := range list[i].Blocks {
