@@ -155,6 +155,17 @@ func (b *builder) clock(path string, r rawClock) site.Clock {
 			b.missing(p+".shift_min", "give the minutes to add to the written times")
 		}
 		s := site.ClockShift{From: from, To: to, ShiftS: b.shift(p+".shift_min", rs.ShiftMin)}
+		if rs.EndMin != nil || b.tree.has(p+".end_shift_min") {
+			s.Grows, s.EndShiftS = true, b.shift(p+".end_shift_min", rs.EndMin)
+			if ok1 && ok2 && from == to {
+				b.tree.at(p+".end_shift_min", "give the last day of the drift, or keep shift_min alone", "a correction of one day cannot grow")
+				continue
+			}
+			if ok1 && ok2 && to.Year-from.Year > driftYearsMost {
+				b.tree.at(p+".to", "cut it where the clock was set right", "a correction that grows may last %d years, this one lasts from %s to %s", driftYearsMost, from, to)
+				continue
+			}
+		}
 		if ok1 && ok2 && to.Before(from) {
 			b.tree.at(p+".to", "", "the shift ends on %s, before it begins on %s", to, from)
 			continue
@@ -169,6 +180,9 @@ func (b *builder) clock(path string, r rawClock) site.Clock {
 	}
 	return c
 }
+
+// driftYearsMost bounds a correction that is cut into days.
+const driftYearsMost = 10
 
 func (b *builder) shift(path string, v *float64) int {
 	m := b.number(path, v, -527040, 527040, " minutes (a year)")

@@ -1,6 +1,9 @@
 package site
 
-import "time"
+import (
+	"fmt"
+	"time"
+)
 
 // Layout is how a log file arranges its points.
 type Layout string
@@ -96,6 +99,64 @@ type Clock struct {
 type ClockShift struct {
 	From, To Date // inclusive
 	ShiftS   int
+	// Grows says that the correction changes evenly, day by day, from ShiftS on
+	// the day From to EndShiftS on the day To: a clock that drifted.
+	Grows     bool
+	EndShiftS int
+}
+
+// MostS is the largest correction of the clock either way, seconds.
+func (c *Clock) MostS() int {
+	most := max(c.ShiftS, -c.ShiftS)
+	for _, s := range c.Shifts {
+		most = max(most, s.ShiftS, -s.ShiftS)
+		if s.Grows {
+			most = max(most, s.EndShiftS, -s.EndShiftS)
+		}
+	}
+	return most
+}
+
+// Words says what the clock is taken to be, with every correction, for
+// example "standard time all year; -60 min from 2025-06-10 to 2025-07-09".
+func (c *Clock) Words() string {
+	var s string
+	switch c.Kind {
+	case ClockUTC:
+		s = "universal time"
+	case ClockStandard:
+		s = "standard time all year"
+	case ClockOffset:
+		s = "offset " + OffsetWords(c.OffsetS)
+	case ClockZone:
+		s = "zone " + c.Zone.String()
+	default:
+		s = "local time"
+	}
+	if c.OverruleOffset {
+		s += ", written offsets ignored"
+	}
+	if c.ShiftS != 0 {
+		s += fmt.Sprintf("; %+g min throughout", float64(c.ShiftS)/60)
+	}
+	for _, sh := range c.Shifts {
+		s += fmt.Sprintf("; %+g", float64(sh.ShiftS)/60)
+		if sh.Grows {
+			s += fmt.Sprintf(" growing to %+g", float64(sh.EndShiftS)/60)
+		}
+		s += fmt.Sprintf(" min from %v to %v", sh.From, sh.To)
+	}
+	return s
+}
+
+// OffsetWords writes an offset from universal time as the site file does, for
+// example "+05:30".
+func OffsetWords(offsetS int) string {
+	sign := '+'
+	if offsetS < 0 {
+		sign, offsetS = '-', -offsetS
+	}
+	return fmt.Sprintf("%c%02d:%02d", sign, offsetS/3600, offsetS/60%60)
 }
 
 // Logging says how a point logs.

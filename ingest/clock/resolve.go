@@ -78,8 +78,10 @@ func NewResolver(c site.Clock, loc *time.Location) (*Resolver, error) {
 }
 
 // shiftSpans cuts written time where corrections begin and end; corrections
-// that overlap add up.
+// that overlap add up. One that grows is cut into days: no clock in use drifts
+// so fast that the step at midnight, seconds, would matter.
 func shiftSpans(c site.Clock) []shiftSpan {
+	c.Shifts = daily(c.Shifts)
 	cuts := []int64{farPast, farFuture}
 	for _, s := range c.Shifts {
 		cuts = append(cuts, wallOf(s.From), wallOf(s.To.Next()))
@@ -97,6 +99,24 @@ func shiftSpans(c site.Clock) []shiftSpan {
 			}
 		}
 		out = append(out, sp)
+	}
+	return out
+}
+
+// daily replaces corrections that grow by one for each of their days.
+func daily(shifts []site.ClockShift) []site.ClockShift {
+	var out []site.ClockShift
+	for _, s := range shifts {
+		days := (wallOf(s.To) - wallOf(s.From)) / 86400
+		if !s.Grows || days < 1 {
+			out = append(out, s)
+			continue
+		}
+		for d, k := s.From, int64(0); k <= days; d, k = d.Next(), k+1 {
+			share := float64(k) / float64(days)
+			at := math.Round(float64(s.ShiftS) + share*float64(s.EndShiftS-s.ShiftS))
+			out = append(out, site.ClockShift{From: d, To: d, ShiftS: int(at)})
+		}
 	}
 	return out
 }

@@ -177,3 +177,29 @@ func BenchmarkResolve(b *testing.B) {
 		r.Resolve(w + int64(i%86400))
 	}
 }
+
+// A correction that grows is the straight line between its first and last day,
+// in steps of a day; the instants in between follow from the rule of three.
+func TestShiftThatGrows(t *testing.T) {
+	day := func(m time.Month, d int) site.Date { return site.Date{Year: 2025, Month: m, Day: d} }
+	c := site.Clock{Kind: site.ClockUTC, Shifts: []site.ClockShift{{From: day(1, 1), To: day(1, 31), ShiftS: 60, Grows: true, EndShiftS: -540}}}
+	r, err := NewResolver(c, time.UTC)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, x := range []struct {
+		wall string
+		addS int64
+	}{
+		{"2024-12-31 23:59:59", 0}, {"2025-01-01 00:00:00", 60}, {"2025-01-01 23:59:59", 60}, {"2025-01-16 12:00:00", -240},
+		{"2025-01-31 12:00:00", -540}, {"2025-02-01 00:00:00", 0}, {"2025-01-04 01:00:00", 0}, {"2025-01-02 00:00:00", 40},
+	} {
+		w := wall(t, x.wall)
+		if u, v := r.Resolve(w); v != Sure || u-w != x.addS {
+			t.Errorf("%s: %d s, verdict %v; want %d", x.wall, u-w, v, x.addS)
+		}
+		if u, _ := r.Written(w, 3600); u-w+3600 != x.addS {
+			t.Errorf("%s with an offset: %d s, want %d", x.wall, u-w+3600, x.addS)
+		}
+	}
+}

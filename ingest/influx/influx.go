@@ -141,10 +141,7 @@ func (s *Source) within(all span) span {
 	if c := s.log.Clock; c.Kind != site.ClockUTC || c.ShiftS != 0 || len(c.Shifts) > 0 {
 		// What the database calls an instant is not one: take in what may
 		// belong to the period.
-		most := int64(max(c.ShiftS, -c.ShiftS))
-		for _, sh := range c.Shifts {
-			most = max(most, int64(max(sh.ShiftS, -sh.ShiftS)))
-		}
+		most := int64(c.MostS())
 		all.from, all.to = all.from-most-36*3600, all.to+most+36*3600
 	}
 	if all.to <= all.from {
