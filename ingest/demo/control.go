@@ -57,7 +57,7 @@ func (u *unit) command(d *day, minuteOfDay int, out *outdoorNow) {
 		r.coolCall = r.airC > r.spec.coolOnC-pick(r.coolCall, 0.8, 0) && (!r.spec.meeting || r.people > 0)
 		r.heatCall = r.airC < 20.3+pick(r.heatCall, 0.8, 0)
 		anyHeat = anyHeat || r.heatCall
-		if r.coolCall {
+		if r.coolCall && !r.ignored {
 			anyCool = true
 			if above := r.airC - r.spec.coolOnC; above > worst {
 				worst, caller = above, r.index

@@ -21,6 +21,7 @@ import (
 	"fmt"
 	"os"
 	"path/filepath"
+	"slices"
 	"time"
 	_ "time/tzdata" // the clock rules must not depend on the machine
 
@@ -47,6 +48,8 @@ type Options struct {
 	// shift, dates of the frozen sensor. The logs stay as they are. The drift of
 	// the CO2 sensor and the undeclared day off stay undeclared.
 	Declared bool
+	// Changes are settings an operator changes on the way.
+	Changes []Change
 	// WriteTruth also writes truth.csv.gz.
 	WriteTruth bool
 }
@@ -107,9 +110,12 @@ func simulate(o Options) (*building, error) {
 	if err != nil {
 		return nil, fmt.Errorf("demo: clock rules: %w", err)
 	}
-	b := &building{options: o, from: from, to: to, loc: loc, zones: zoneSpecs}
+	b := &building{options: o, from: from, to: to, loc: loc, zones: slices.Clone(zoneSpecs)}
 	if o.Zones > 0 {
-		b.zones = zoneSpecs[:o.Zones]
+		b.zones = b.zones[:o.Zones]
+	}
+	if err := b.check(); err != nil {
+		return nil, err
 	}
 	first := site.DateOf(time.Date(from.Year, from.Month, from.Day-leadDays, 12, 0, 0, 0, time.UTC))
 	if from.Month == 1 && from.Day == 1 { // a whole December before a year
@@ -135,7 +141,7 @@ func simulate(o Options) (*building, error) {
 		WindDeg: w.windDeg, RainMMh: w.rainMMh, GlobalWm2: w.globalWm2, CO2PPM: w.co2PPM}
 	b.sim = newSimulation(o.Seed, b.zones, b.weather, b.truth)
 	b.units = b.sim.units
-	b.sim.run(b.days, loc)
+	b.sim.run(b.days, loc, o.Changes)
 	if o.Faults {
 		b.truth.Faults = b.plantedFaults()
 	}

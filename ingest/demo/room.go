@@ -21,8 +21,10 @@ const (
 // room is one zone in the simulation: an air node, an internal mass node, an
 // envelope node, CO2 and vapour.
 type room struct {
-	spec  *zoneSpec
-	index int
+	spec *zoneSpec
+	// ignored: its calls for cooling start nothing.
+	ignored bool
+	index   int
 
 	volumeM3                              float64
 	airJK, massJK, wallJK                 float64 // heat capacities

@@ -3,6 +3,7 @@ package demo
 import (
 	"math"
 	"math/rand/v2"
+	"slices"
 	"time"
 )
 
@@ -54,8 +55,9 @@ func newSimulation(seed uint64, zones []zoneSpec, w *weather, t *Truth) *simulat
 		s.rooms, s.rngs = append(s.rooms, r), append(s.rngs, rng)
 		byID[zones[i].id] = r
 	}
-	for i := range plantSpecs {
-		u := &unit{spec: &plantSpecs[i], index: i, caller: -1, supplyC: 21}
+	specs := slices.Clone(plantSpecs) // settings change with time
+	for i := range specs {
+		u := &unit{spec: &specs[i], index: i, caller: -1, supplyC: 21}
 		for _, r := range s.rooms {
 			if r.spec.plant == i {
 				u.rooms = append(u.rooms, r)
@@ -69,7 +71,7 @@ func newSimulation(seed uint64, zones []zoneSpec, w *weather, t *Truth) *simulat
 	for _, r := range s.rooms {
 		r.through = byID[r.spec.through]
 		for _, u := range s.units {
-			if u.spec == &plantSpecs[r.spec.plant] {
+			if u.spec == &specs[r.spec.plant] {
 				r.unit = u
 			}
 		}
@@ -84,12 +86,13 @@ func newSimulation(seed uint64, zones []zoneSpec, w *weather, t *Truth) *simulat
 
 // run simulates the days. Steps before the truth's start only bring the
 // building into its season; nothing of them is kept.
-func (s *simulation) run(days []day, loc *time.Location) {
+func (s *simulation) run(days []day, loc *time.Location, changes []Change) {
 	var clock zoneClock
 	clock.loc = loc
 	step := 0
 	for di := range days {
 		d := &days[di]
+		s.change(d.date, changes)
 		s.crowd.plan(d)
 		if d.start >= s.truth.StartUTC {
 			s.refresh(d.start)
