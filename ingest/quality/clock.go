@@ -1,198 +1,294 @@
 package quality
 
 import (
+	"cmp"
 	"fmt"
 	"math"
+	"path"
+	"slices"
+	"strings"
+	"sync"
+	"time"
 
 	"sashlog/configs/site"
-	"sashlog/ingest/grid"
+	"sashlog/ingest/clock/lag"
 	"sashlog/ingest/reading"
 )
 
-// A log's clock is doubted when its daily pattern, over at least two weeks, fits
-// the other logs better at a lag of whole or half hours, for two kinds of
-// quantity, and fits without a lag the rest of the time. All limits are our
-// assumption, chosen so that a changed habit (one quantity) or a slow room (all
-// year) is never taken for a clock.
-const (
-	binS           = 1800
-	lagMost        = 12 // half hours
-	clockDaysLeast = 10
-	clockFit       = 0.30 // correlation at the lag
-	clockMargin    = 0.15 // better than without
-	clockSure      = 4.0  // the best lag must beat every other not next to it by this many days of evidence
-	otherPoints    = 3
-	otherLogs      = 2
-	clip           = 3 // standard deviations a single change counts for
-)
+// removeMin is the clock error from which readings are taken out until it is
+// corrected; our assumption: less moves few of the hours an audit counts.
+const removeMin = 30
 
-// natures are the kinds of quantity that witness apart from each other: one
-// follows people, the others weather, plant and people.
-var natures = [][]site.Quantity{{site.CO2}, {site.AirTemp}, {site.Humidity}, {site.People, site.Presence}}
-
-// witness is one log's mean pattern of changes for one nature beside that of
-// all other logs.
-type witness struct {
-	mine, others []float64 // per bin, NaN unknown
-	logs, points int       // of the others
-	days         [][]float64
-}
-
-// clocks looks at every log that holds zone points.
+// clocks judges the clock of every log (package lag) and says how sure that
+// is. The log with the strongest evidence against it is judged first and then
+// no longer held against the others, so that one wrong clock does not cast
+// doubt on right ones.
 func clocks(r *run) {
-	if len(r.days) < 2*clockDaysLeast {
-		return
+	c := &clockRun{run: r, per: max(1, int((binS+r.grid.StepS-1)/r.grid.StepS))}
+	c.bins = r.grid.N / c.per
+	c.frame = lag.Frame{BinMin: float64(c.per) * float64(r.grid.StepS) / 60, MostH: lagMostH}
+	for _, d := range r.days {
+		c.frame.Days = append(c.frame.Days, lag.Span{From: min(d.from/c.per, c.bins), To: min(d.to/c.per, c.bins)})
 	}
-	changes := map[int][]float64{}
-	sources := map[string]bool{}
-	var names []string
-	for _, n := range natures {
-		r.each(func(i int, p *site.Point, c *grid.Column) {
-			if p.Owner == site.OwnerZone && p.Placement != site.PlacementReturn {
-				changes[i] = r.changes(c)
-				if !sources[p.Source] {
-					sources[p.Source] = true
-					names = append(names, p.Source)
-				}
+	c.gather()
+	found := make([]*lag.Finding, len(c.logs))
+	out := map[string]bool{}
+	find := func(which func(k int) bool) {
+		c.sunUp() // before it is shared
+		var wg sync.WaitGroup
+		for k, l := range c.logs {
+			if which(k) {
+				wg.Add(1)
+				go func() {
+					defer wg.Done()
+					fr := c.frame
+					fr.Seasonal = c.seasonal(l)
+					found[k] = lag.Find(&fr, c.witnesses(l, out))
+				}()
 			}
-		}, n...)
+		}
+		wg.Wait()
 	}
-	if len(names) < 2 {
-		return
+	find(func(int) bool { return true })
+	for {
+		worst := -1
+		for k, f := range found {
+			if f.Kind > lag.Right && !out[c.logs[k].name] && (worst < 0 || cmp.Compare(trust(f), trust(found[worst])) > 0) {
+				worst = k
+			}
+		}
+		if worst < 0 {
+			break
+		}
+		out[c.logs[worst].name] = true
+		find(func(k int) bool { return found[k].Kind > lag.Right && !out[c.logs[k].name] })
 	}
-	for _, name := range names {
-		r.clockOf(name, changes)
+	for k, l := range c.logs {
+		c.report(l, found[k])
 	}
 }
 
-// changes is the standardised change of half-hour means, clipped.
-func (r *run) changes(c *grid.Column) []float64 {
-	per := int(binS / r.grid.StepS)
-	bins := r.grid.N / per
-	out := make([]float64, bins)
-	last := math.NaN()
-	var sum2 float64
-	n := 0
-	for b := range out {
-		sum, k := 0.0, 0
-		for i := b * per; i < (b+1)*per; i++ {
-			if known(c.Mean[i]) {
-				sum, k = sum+float64(c.Mean[i]), k+1
-			}
-		}
-		m := math.NaN()
-		if 2*k >= per {
-			m = sum / float64(k)
-		}
-		out[b] = m - last
-		last = m
-		if !math.IsNaN(out[b]) {
-			sum2, n = sum2+out[b]*out[b], n+1
+// trust orders findings: the sun outranks all, then evidence.
+func trust(f *lag.Finding) float64 {
+	if slices.ContainsFunc(f.Agree, func(w *lag.Witness) bool { return len(w.Logs) == 0 && w.Class == lag.Sky }) {
+		return 1e6 + f.Gain
+	}
+	return f.Gain
+}
+
+// logOf is the log a source of points.csv means, nil when unknown.
+func (r *run) logOf(source string) *site.Log {
+	for i := range r.site.Logs {
+		l := &r.site.Logs[i]
+		if l.Name == source || l.Path == source || path.Base(l.Path) == source {
+			return l
 		}
 	}
-	sd := math.Sqrt(sum2 / float64(max(n, 1)))
-	for b, v := range out {
-		switch {
-		case sd == 0:
-			out[b] = math.NaN()
-		case !math.IsNaN(v):
-			out[b] = min(max(v/sd, -clip), clip)
+	for i := range r.site.Logs {
+		l := &r.site.Logs[i]
+		if ok, err := path.Match(source, l.Name); ok && err == nil {
+			return l
 		}
+		if ok, err := path.Match(path.Base(l.Path), source); ok && err == nil {
+			return l
+		}
+	}
+	return nil
+}
+
+// daylightSaving reports whether the stated clock follows daylight saving, and
+// its zone.
+func (r *run) daylightSaving(l *site.Log) (follows bool, loc *time.Location) {
+	loc = r.grid.Loc
+	if l == nil {
+		return true, loc
+	}
+	switch l.Clock.Kind {
+	case site.ClockUTC, site.ClockStandard, site.ClockOffset:
+		return false, loc
+	case site.ClockZone:
+		return true, l.Clock.Zone
+	}
+	return true, loc
+}
+
+// seasonal is the shift per day of a clock that ignored daylight saving, or
+// followed it against what the site file says; nil where the record has none.
+func (c *clockRun) seasonal(l *logSeries) []float64 {
+	follows, loc := c.daylightSaving(c.logOf(l.name))
+	out := make([]float64, len(c.days))
+	any := false
+	for d := range out {
+		t := c.grid.Time((c.days[d].from + c.days[d].to) / 2).In(loc)
+		if saving := c.savingMin(t); saving != 0 {
+			any = true
+			out[d] = saving
+			if follows {
+				out[d] = -saving
+			}
+		}
+	}
+	if !any {
+		return nil
 	}
 	return out
 }
 
-// clockOf judges one log.
-func (r *run) clockOf(name string, changes map[int][]float64) {
-	var ws []witness
-	for _, n := range natures {
-		if w, ok := r.witness(name, changes, n); ok {
-			ws = append(ws, w)
-		}
-	}
-	if len(ws) == 0 {
-		return
-	}
-	// The evidence of each day for each lag, added up over the natures.
-	total := func(lag int) []float64 {
-		out := make([]float64, len(r.days))
-		for _, w := range ws {
-			for d, v := range w.days[lag+lagMost] {
-				out[d] += v - w.days[lagMost][d]
-			}
-		}
-		return out
-	}
-	best, from, to, score := 0, 0, 0, 0.0
-	for lag := -lagMost; lag <= lagMost; lag++ {
-		if lag == 0 {
-			continue
-		}
-		if a, b, s := bestSpan(total(lag)); s > score {
-			best, from, to, score = lag, a, b, s
-		}
-	}
-	if best == 0 || to-from < clockDaysLeast || score < clockSure {
-		return
-	}
-	agree, against := 0, 0
-	var fitBest, fitZero float64
-	logs, points := 0, 0
-	for _, w := range ws {
-		zero, lagged := r.fit(&w, 0, from, to), r.fit(&w, best, from, to)
-		if lagged >= clockFit && lagged-zero >= clockMargin {
-			agree++
-			if lagged > fitBest {
-				fitBest, fitZero = lagged, zero
-			}
-			logs, points = max(logs, w.logs), max(points, w.points)
-		} else if zero-lagged >= clockMargin {
-			against++
-		}
-	}
-	if agree == 0 || against > 0 {
-		return
-	}
-	rest := len(r.days) - (to - from)
-	restFits := rest >= clockDaysLeast
-	for _, w := range ws {
-		if r.fitOutside(&w, 0, from, to) <= r.fitOutside(&w, best, from, to) {
-			restFits = false
-		}
-	}
-	from, to = r.widen(total(best), from, to)
-	var ps []int
-	for i := range r.site.Points {
-		if r.site.Points[i].Source == name && r.grid.Columns[i].Mean != nil {
-			ps = append(ps, i)
-		}
-	}
-	fromUTC, toUTC := r.at(r.days[from].from), r.at(r.days[to-1].to)
-	ahead := "behind"
-	if best > 0 {
-		ahead = "ahead"
-	}
-	evidence := fmt.Sprintf("the log %q runs %.1f h %s of %s of other logs %s: the pattern of changes fits with a correlation of %.2f at that lag and %.2f without; %s",
-		name, math.Abs(float64(best))*0.5, ahead, count(points, "point", "points"), span(fromUTC, toUTC, r.grid.Loc), fitBest, fitZero,
-		map[bool]string{true: "the rest of the time it fits without", false: "it does so throughout, which working hours may explain"}[restFits])
-	do := fmt.Sprintf("compare the logger's clock with a watch; if it was wrong, give the log's clock a shift of %+d min for these days in the site file", -best*30)
-	if agree >= 2 && restFits && logs >= otherLogs && points >= otherPoints {
-		var n int64
-		for _, p := range ps {
-			n += r.built.Tally.Void(p, r.days[from].from, r.days[to-1].to, reading.ClockDoubt)
-		}
-		r.add(reading.Check{Kind: reading.CheckClock, Points: ps, Zone: r.commonZone(ps), Effect: reading.EffectRemoved, FromUTC: fromUTC, ToUTC: toUTC, Readings: n, Evidence: evidence, DoNext: do})
-		return
-	}
-	w := warn(reading.CheckClock, r.commonZone(ps), ps, evidence, do)
-	w.FromUTC, w.ToUTC = fromUTC, toUTC
-	r.add(w)
+// savingMin is the daylight saving in force at an instant, minutes.
+func (c *clockRun) savingMin(t time.Time) float64 {
+	_, off := t.Zone()
+	return float64(off-standardS(t)) / 60
 }
 
-func (r *run) commonZone(points []int) int {
+// standardS is the offset of standard time in the year of an instant, seconds:
+// the least of the year's.
+func standardS(t time.Time) int {
+	_, a := time.Date(t.Year(), 1, 1, 12, 0, 0, 0, t.Location()).Zone()
+	_, b := time.Date(t.Year(), 7, 1, 12, 0, 0, 0, t.Location()).Zone()
+	return min(a, b)
+}
+
+// report writes down what was found of a log, and takes out what is surely
+// wrong.
+func (c *clockRun) report(l *logSeries, f *lag.Finding) {
+	v := reading.ClockVerdict{Log: l.name, Points: l.points, Declared: "local time", ShiftMin: math.NaN(), EndShiftMin: math.NaN()}
+	if log := c.logOf(l.name); log != nil {
+		v.Declared = log.Clock.Words()
+	}
+	switch f.Kind {
+	case lag.Unknown:
+		v.Verdict, v.Evidence = reading.ClockUntold, "nothing else that is logged moves with what this log says, so a wrong clock would not show"
+	case lag.Right:
+		v.Verdict, v.HeldAgainst, v.Fit = reading.ClockFits, held(f.Usable), f.Fit
+		v.Evidence = fmt.Sprintf("fits without a shift: %s, correlation %.2f", held(f.Usable), f.Fit)
+		if slices.ContainsFunc(f.Usable, func(w *lag.Witness) bool { return w.Class == lag.Coarse }) {
+			v.Evidence += "; an error below three hours would not show"
+		}
+	default:
+		c.accuse(l, f, &v)
+	}
+	c.ledger.Clocks = append(c.ledger.Clocks, v)
+}
+
+// held says what a log was held against.
+func held(ws []*lag.Witness) string {
+	var logs []string
+	for _, w := range ws {
+		for _, n := range w.Logs {
+			if !slices.Contains(logs, n) {
+				logs = append(logs, n)
+			}
+		}
+	}
+	s := names(ws)
+	if len(logs) > 0 {
+		s += " of " + count(len(logs), "other log", "other logs")
+	}
+	return s
+}
+
+// accuse words a finding and decides what becomes of the readings.
+func (c *clockRun) accuse(l *logSeries, f *lag.Finding, v *reading.ClockVerdict) {
+	g := c.grid
+	v.FromUTC, v.ToUTC = c.at(c.days[f.From].from), c.at(c.days[f.To-1].to)
+	v.HeldAgainst, v.Fit, v.FitWithout, v.Days, v.Better = held(f.Agree), f.Fit, f.FitWithout, f.Days, f.Better
+	v.ShiftMin, v.EndShiftMin = f.ShiftMin, f.EndShiftMin
+	var logs, points = map[string]bool{}, 0
+	absolute := false
+	for _, w := range f.Agree {
+		points = max(points, w.Points)
+		for _, n := range w.Logs {
+			logs[n] = true
+		}
+		absolute = absolute || len(w.Logs) == 0 && w.Class == lag.Sky
+	}
+	what := fmt.Sprintf("runs %s %s", hours(f.ShiftMin), aheadOf(f.ShiftMin))
+	why := ""
+	span := span(v.FromUTC, v.ToUTC, g.Loc)
+	sure := (len(f.Agree) >= 2 || f.Best() <= lag.Machine) && (len(logs) >= 2 || absolute)
+	switch f.Kind {
+	case lag.ForATime:
+		v.Verdict = reading.ClockForATime
+		why = "the rest of the time it fits without"
+		if !f.RestFits {
+			why = "it does so throughout, which working hours may explain"
+			sure = sure && f.Best() <= lag.Machine
+		}
+	case lag.Constant:
+		v.Verdict = reading.ClockOtherZone
+		if f.Best() > lag.Machine {
+			why, sure = "it does so throughout, which working hours may explain", false
+		}
+	case lag.Seasonal:
+		first, last := 0.0, 0.0
+		for d, m := range f.PathMin() {
+			if c.frame.Seasonal = c.seasonal(l); c.frame.Seasonal[d] != 0 {
+				last = m
+			} else {
+				first = m
+			}
+		}
+		v.ShiftMin, v.EndShiftMin = last, last
+		v.Verdict = reading.ClockIgnoredSaving
+		follows, _ := c.daylightSaving(c.logOf(l.name))
+		if f.ShiftMin != 0 {
+			v.Verdict = reading.ClockOtherZone
+			v.ShiftMin, v.EndShiftMin = first, last
+		}
+		what = fmt.Sprintf("runs %s %s while daylight saving is in force", hours(last), aheadOf(last))
+		if f.ShiftMin != 0 {
+			what += fmt.Sprintf(" and %s %s otherwise", hours(first), aheadOf(first))
+		} else if why = "it ignored daylight saving"; !follows {
+			v.Verdict, why = reading.ClockFollowedSaving, "it followed daylight saving"
+		}
+		sure = sure || f.T >= 8 && len(f.Agree) >= 1 && len(logs) >= 2
+	case lag.Drift:
+		v.Verdict = reading.ClockDrifted
+		what = fmt.Sprintf("drifts by %.0f min, to %s %s", math.Abs(f.EndShiftMin), minutes(f.EndShiftMin), aheadOf(f.EndShiftMin))
+		why = fmt.Sprintf("about %.1f min a month", math.Abs(f.EndShiftMin)/float64(f.To-f.From)*30.4)
+	}
+	against := "the sun"
+	if !absolute {
+		against = count(points, "point", "points") + " of other logs"
+	}
+	if f.Coarse() {
+		against = "what the time of day suggests, give or take two hours,"
+	} else if len(logs) == 1 {
+		why = strings.TrimPrefix(why+"; which of the two logs is wrong they cannot tell", "; ")
+	}
+	v.Evidence = fmt.Sprintf("the log %q %s of %s %s: the pattern of %s fits with a correlation of %.2f at that lag and %.2f without, and better on %d of %d days",
+		l.name, what, against, span, names(f.Agree), f.Fit, f.FitWithout, f.Better, f.Days)
+	if why != "" {
+		v.Evidence += "; " + why
+	}
+	v.SiteFile = c.correction(l, f)
+	v.DoNext = fmt.Sprintf("compare the logger's clock with a watch; if it was wrong, write in the site file for this log: %s", v.SiteFile)
+	if f.Kind != lag.Drift && f.Kind != lag.ForATime {
+		v.DoNext += " (with overrule_offset: true where the times carry an offset of their own)"
+	}
+	v.Sure = sure
+	check := reading.Check{Kind: reading.CheckClock, Points: l.points, Zone: c.commonZone(l.points), Effect: reading.EffectWarned,
+		FromUTC: v.FromUTC, ToUTC: v.ToUTC, Evidence: v.Evidence, DoNext: v.DoNext}
+	if sure {
+		for d, m := range f.PathMin() {
+			if math.Abs(m) < removeMin-1 || d < f.From || d >= f.To {
+				continue
+			}
+			for _, p := range l.points {
+				check.Readings += c.built.Tally.Void(p, c.days[d].from, c.days[d].to, reading.ClockDoubt)
+			}
+		}
+		if check.Readings > 0 {
+			check.Effect = reading.EffectRemoved
+		}
+	}
+	c.add(check)
+}
+
+func (c *clockRun) commonZone(points []int) int {
 	zone := -1
 	for k, p := range points {
-		if z := zoneOf(r.site, p); k == 0 {
+		if z := zoneOf(c.site, p); k == 0 {
 			zone = z
 		} else if z != zone {
 			return -1
@@ -201,142 +297,74 @@ func (r *run) commonZone(points []int) int {
 	return zone
 }
 
-func (r *run) witness(name string, changes map[int][]float64, qs []site.Quantity) (w witness, ok bool) {
-	bins := r.grid.N / int(binS/r.grid.StepS)
-	mine, others := newMean(bins), newMean(bins)
-	logs := map[string]bool{}
-	r.each(func(i int, p *site.Point, _ *grid.Column) {
-		c, ok := changes[i]
-		switch {
-		case !ok:
-		case p.Source == name:
-			mine.add(c)
-		default:
-			others.add(c)
-			logs[p.Source] = true
-			w.points++
+func hours(m float64) string {
+	if m = math.Abs(m); m < 60 {
+		return fmt.Sprintf("%.0f min", m)
+	}
+	return fmt.Sprintf("%.1f h", m/60)
+}
+
+func minutes(m float64) string { return fmt.Sprintf("%.0f min", math.Abs(m)) }
+
+func aheadOf(m float64) string {
+	if m < 0 {
+		return "behind"
+	}
+	return "ahead"
+}
+
+// correction is what the site file must say of a log's clock for its times to
+// be read right.
+func (c *clockRun) correction(l *logSeries, f *lag.Finding) string {
+	stated := site.Clock{Kind: site.ClockLocal}
+	if log := c.logOf(l.name); log != nil {
+		stated = log.Clock
+	}
+	from := c.days[f.From].date
+	to := c.days[f.To-1].date
+	is := kindWord(&stated)
+	follows, loc := c.daylightSaving(c.logOf(l.name))
+	std := standardS(c.grid.Time(c.days[f.From].from).In(loc))
+	switch f.Kind {
+	case lag.ForATime:
+		return fmt.Sprintf("clock: {is: %s, shifts: [{from: %v, to: %v, shift_min: %+.0f}]}", is, from, to, -f.ShiftMin)
+	case lag.Drift:
+		return fmt.Sprintf("clock: {is: %s, shifts: [{from: %v, to: %v, shift_min: 0, end_shift_min: %+.0f}]}", is, from, to, -f.EndShiftMin)
+	}
+	k := int(f.ShiftMin) * 60
+	offset := std // of the stated clock outside daylight saving
+	switch stated.Kind {
+	case site.ClockUTC:
+		offset = 0
+	case site.ClockOffset:
+		offset = stated.OffsetS
+	}
+	trueFollows := follows != (f.Kind == lag.Seasonal)
+	offset += k
+	switch {
+	case trueFollows && offset == std:
+		return "clock: local"
+	case trueFollows:
+		if stated.Kind != site.ClockZone {
+			is = "local"
 		}
-	}, qs...)
-	if mine.points == 0 || w.points == 0 {
-		return w, false
+		return fmt.Sprintf("clock: {is: %s, shift_min: %+d}", is, (std-offset)/60)
+	case offset == std && loc == c.grid.Loc:
+		return "clock: standard"
+	case offset == 0:
+		return "clock: utc"
 	}
-	w.mine, w.others, w.logs = mine.result(), others.result(), len(logs)
-	w.days = make([][]float64, 2*lagMost+1)
-	for lag := -lagMost; lag <= lagMost; lag++ {
-		w.days[lag+lagMost] = r.dayProducts(&w, lag)
-	}
-	return w, true
+	return fmt.Sprintf("clock: %q", site.OffsetWords(offset))
 }
 
-// meanOf averages series of bins.
-type meanOf struct {
-	sum    []float64
-	n      []int
-	points int
-}
-
-func newMean(bins int) *meanOf { return &meanOf{sum: make([]float64, bins), n: make([]int, bins)} }
-
-func (m *meanOf) add(v []float64) {
-	m.points++
-	for i, x := range v {
-		if !math.IsNaN(x) {
-			m.sum[i] += x
-			m.n[i]++
-		}
+func kindWord(c *site.Clock) string {
+	switch c.Kind {
+	case site.ClockOffset:
+		return fmt.Sprintf("%q", site.OffsetWords(c.OffsetS))
+	case site.ClockZone:
+		return c.Zone.String()
+	case "":
+		return string(site.ClockLocal)
 	}
-}
-
-func (m *meanOf) result() []float64 {
-	for i, n := range m.n {
-		m.sum[i] /= float64(n) // 0/0 is NaN: unknown
-	}
-	return m.sum
-}
-
-// pair calls f with what both said; a lag above 0 means that mine comes later.
-func (w *witness) pair(lag, from, to int, f func(x, y float64)) {
-	for b := max(from, lag, 0); b < min(to, len(w.mine), len(w.mine)+lag); b++ {
-		if x, y := w.mine[b], w.others[b-lag]; !math.IsNaN(x) && !math.IsNaN(y) {
-			f(x, y)
-		}
-	}
-}
-
-func (r *run) bins(fromDay, toDay int) (from, to int) {
-	per := int(binS / r.grid.StepS)
-	return r.days[fromDay].from / per, r.days[toDay-1].to / per
-}
-
-// dayProducts is the share of correlation each day brings at a lag, in days:
-// their mean over the record is the correlation.
-func (r *run) dayProducts(w *witness, lag int) []float64 {
-	var xx, yy float64
-	w.pair(0, 0, len(w.mine), func(x, y float64) { xx += x * x; yy += y * y })
-	scale := float64(len(r.days)) / math.Sqrt(xx*yy)
-	out := make([]float64, len(r.days))
-	if math.IsInf(scale, 0) || math.IsNaN(scale) {
-		return out
-	}
-	for d := range out {
-		from, to := r.bins(d, d+1)
-		w.pair(lag, from, to, func(x, y float64) { out[d] += x * y * scale })
-	}
-	return out
-}
-
-// fit is the correlation at a lag within a span of days.
-func (r *run) fit(w *witness, lag, fromDay, toDay int) float64 {
-	from, to := r.bins(fromDay, toDay)
-	return correlate(w, lag, [][2]int{{from, to}})
-}
-
-func (r *run) fitOutside(w *witness, lag, fromDay, toDay int) float64 {
-	from, to := r.bins(fromDay, toDay)
-	return correlate(w, lag, [][2]int{{0, from}, {to, len(w.mine)}})
-}
-
-func correlate(w *witness, lag int, spans [][2]int) float64 {
-	var xy, xx, yy float64
-	for _, s := range spans {
-		w.pair(lag, s[0], s[1], func(x, y float64) { xy += x * y; xx += x * x; yy += y * y })
-	}
-	if xx == 0 || yy == 0 {
-		return 0
-	}
-	return xy / math.Sqrt(xx*yy)
-}
-
-// bestSpan is the span of days with the greatest sum (Kadane's method).
-func bestSpan(v []float64) (from, to int, sum float64) {
-	start, run := 0, 0.0
-	for i, x := range v {
-		if run <= 0 {
-			start, run = i, 0
-		}
-		run += x
-		if run > sum {
-			from, to, sum = start, i+1, run
-		}
-	}
-	return from, to, sum
-}
-
-// widen takes in neighbouring days that say nothing either way, such as
-// weekends, four at most on each side.
-func (r *run) widen(v []float64, from, to int) (int, int) {
-	const most = 4
-	typical := 0.0
-	for _, x := range v[from:to] {
-		typical += x
-	}
-	typical /= float64(to - from)
-	quiet := func(d int) bool { return math.Abs(v[d]) < typical/3 }
-	for n := 0; n < most && from > 0 && quiet(from-1); n++ {
-		from--
-	}
-	for n := 0; n < most && to < len(v) && quiet(to); n++ {
-		to++
-	}
-	return from, to
+	return string(c.Kind)
 }

@@ -49,7 +49,7 @@ func TestClockAnHourAhead(t *testing.T) {
 	gas := b.point(own(site.CO2), late(co2(7, 430, 0), 12, 28, 56))
 	got := b.run()
 	cs := find(got, reading.CheckClock)
-	if len(cs) != 1 || cs[0].Effect != reading.EffectRemoved || len(cs[0].Points) != 2 || !strings.Contains(cs[0].Evidence, "1.0 h ahead") || !strings.Contains(cs[0].DoNext, "-60 min") {
+	if len(cs) != 1 || cs[0].Effect != reading.EffectRemoved || len(cs[0].Points) != 2 || !strings.Contains(cs[0].Evidence, "1.0 h ahead") || !strings.Contains(cs[0].DoNext, "shift_min: -60") {
 		t.Fatalf("%+v", cs)
 	}
 	from, to := (cs[0].FromUTC-b.from.Unix())/86400, (cs[0].ToUTC-b.from.Unix())/86400

@@ -13,6 +13,8 @@ type Ledger struct {
 	IssuesDropped int64
 	Checks        []Check
 	Clock         []ClockNote
+	// Clocks has one verdict per log.
+	Clocks []ClockVerdict
 }
 
 // PointLedger is the account of one point (same index as Site.Points).
@@ -137,4 +139,46 @@ func (l *Ledger) RejectedShare() float64 {
 		return 0
 	}
 	return float64(rejected) / float64(all)
+}
+
+// ClockFound is what the check of a log's clock came to.
+type ClockFound string
+
+// What a check of a clock can come to.
+const (
+	ClockFits           ClockFound = "fits"
+	ClockUntold         ClockFound = "cannot be told"
+	ClockIgnoredSaving  ClockFound = "ignored daylight saving"
+	ClockFollowedSaving ClockFound = "followed daylight saving"
+	ClockOtherZone      ClockFound = "ran in another zone"
+	ClockForATime       ClockFound = "wrong for a time"
+	ClockDrifted        ClockFound = "drifted"
+)
+
+// ClockVerdict is what was found of the clock of one log, as it is read with
+// the corrections of the site file.
+type ClockVerdict struct {
+	Log    string
+	Points []int
+	// Declared is the clock the site file gives, with its corrections.
+	Declared string
+	Verdict  ClockFound
+	// ShiftMin is how many minutes the log runs ahead of the truth, negative
+	// behind, NaN when nothing is wrong or known; a drift grows to EndShiftMin;
+	// of a clock on a fixed offset they are the shift outside daylight saving
+	// and within.
+	ShiftMin, EndShiftMin float64
+	// FromUTC, ToUTC bound the time concerned, unix seconds; 0, 0 without.
+	FromUTC, ToUTC int64
+	// HeldAgainst says what the log was compared with; Fit is the best
+	// correlation at the shift found, FitWithout at none. Better of Days days
+	// that can tell fit better with the shift.
+	HeldAgainst     string
+	Fit, FitWithout float64
+	Better, Days    int
+	// Sure findings take readings out where the clock is wrong by half an hour
+	// or more.
+	Sure bool
+	// Evidence and DoNext are sentences; SiteFile is the line that corrects it.
+	Evidence, DoNext, SiteFile string
 }
