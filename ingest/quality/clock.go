@@ -43,6 +43,11 @@ func clocks(r *run) {
 					defer wg.Done()
 					fr := c.frame
 					fr.Seasonal = c.seasonal(l)
+					fr.Likely = func(shiftMin float64) bool {
+						f := lag.Finding{Kind: lag.Seasonal, ShiftMin: shiftMin, To: len(c.days)}
+						w := c.correction(l, &f)
+						return w == "clock: local" || w == "clock: standard"
+					}
 					found[k] = lag.Find(&fr, c.witnesses(l, out))
 				}()
 			}
@@ -160,7 +165,7 @@ func (c *clockRun) report(l *logSeries, f *lag.Finding) {
 		v.Verdict, v.Evidence = reading.ClockUntold, "nothing else that is logged moves with what this log says, so a wrong clock would not show"
 	case lag.Right:
 		v.Verdict, v.HeldAgainst, v.Fit = reading.ClockFits, held(f.Usable), f.Fit
-		v.Evidence = fmt.Sprintf("fits without a shift: %s, correlation %.2f", held(f.Usable), f.Fit)
+		v.Evidence = fmt.Sprintf("fits without a shift (best within %.0f min): %s, correlation %.2f", math.Ceil(math.Abs(f.ShiftMin)/5+0.01)*5, held(f.Usable), f.Fit)
 		if slices.ContainsFunc(f.Usable, func(w *lag.Witness) bool { return w.Class == lag.Coarse }) {
 			v.Evidence += "; an error below three hours would not show"
 		}

@@ -43,6 +43,10 @@ type Frame struct {
 	// Seasonal is, per day, what the log's shift would be if it differed from
 	// its stated clock in daylight saving alone, minutes; nil without.
 	Seasonal []float64
+	// Likely says of a constant beside Seasonal that such a clock is common
+	// (the site's own); it decides where the record cannot, because daylight
+	// saving is in force all of it or none.
+	Likely func(shiftMin float64) bool
 }
 
 // Finding is the best explanation for a log.
@@ -116,6 +120,10 @@ func Find(fr *Frame, witnesses []*Witness) *Finding {
 		tries = append(tries, s.seasonal())
 	}
 	slices.SortStableFunc(tries, func(a, b *Finding) int { return cmp.Compare(b.Gain, a.Gain) })
+	if k := slices.IndexFunc(tries, func(t *Finding) bool { return t.Kind == Seasonal }); k > 0 && fr.Likely != nil &&
+		tries[k].Gain > 0.98*tries[0].Gain && fr.Likely(tries[k].ShiftMin) {
+		tries[0], tries[k] = tries[k], tries[0]
+	}
 	for _, t := range tries {
 		if t.Gain < sureDays {
 			break

@@ -1,0 +1,235 @@
+package ingest_test
+
+import (
+	"context"
+	"flag"
+	"fmt"
+	"math"
+	"path/filepath"
+	"slices"
+	"strings"
+	"testing"
+	"time"
+
+	"sashlog/configs"
+	"sashlog/configs/site"
+	"sashlog/ingest"
+	"sashlog/ingest/demo"
+	"sashlog/ingest/reading"
+)
+
+var (
+	clockSeeds = flag.Uint64("clockseeds", 1, "seeds of the table of planted clock errors")
+	clockLogs  = flag.String("clocklogs", "floor2,logger206,plant_status,windows,weather", "logs the errors are planted in")
+)
+
+func verdictOf(l *reading.Ledger, log string) *reading.ClockVerdict {
+	for i := range l.Clocks {
+		if l.Clocks[i].Log == log {
+			return &l.Clocks[i]
+		}
+	}
+	return &reading.ClockVerdict{}
+}
+
+func wrong(v *reading.ClockVerdict) bool {
+	return v.Verdict != reading.ClockFits && v.Verdict != reading.ClockUntold
+}
+
+func dayAt(s *site.Site, unixS int64) string {
+	return time.Unix(unixS, 0).In(s.Location).Format(time.DateOnly)
+}
+
+// plant makes a log's clock wrong by reading it with a correction it does not
+// need; what must be found is that correction.
+func plant(s *site.Site, log string, c func(*site.Clock)) {
+	for i := range s.Logs {
+		if s.Logs[i].Name == log {
+			c(&s.Logs[i].Clock)
+		}
+	}
+}
+
+func ymd(y, m, d int) site.Date { return site.Date{Year: y, Month: time.Month(m), Day: d} }
+
+type plantedClock struct {
+	name     string
+	verdict  []reading.ClockFound
+	shiftMin float64
+	tolMin   float64
+	from, to site.Date // of a span
+	plant    func(*site.Clock)
+}
+
+func plantedClocks() []plantedClock {
+	const year = 2025
+	// Central European daylight saving 2025, Directive 2000/84/EC.
+	summer := site.ClockShift{From: ymd(year, 3, 30), To: ymd(year, 10, 25)}
+	out := []plantedClock{{name: "ignored daylight saving", verdict: []reading.ClockFound{reading.ClockIgnoredSaving, reading.ClockFollowedSaving, reading.ClockForATime},
+		shiftMin: -60, tolMin: 5, plant: func(c *site.Clock) { s := summer; s.ShiftS = -3600; c.Shifts = append(c.Shifts, s) }}}
+	for _, m := range []float64{-480, -300, -90, -60, 60, 210, 330} {
+		out = append(out, plantedClock{name: fmt.Sprintf("zone %+.1f h", m/60), verdict: []reading.ClockFound{reading.ClockOtherZone, reading.ClockForATime}, shiftMin: m, tolMin: 5,
+			plant: func(c *site.Clock) { c.ShiftS += int(m) * 60 }})
+	}
+	for _, perMonth := range []float64{2, 10} {
+		grows := perMonth * 12
+		out = append(out, plantedClock{name: fmt.Sprintf("drift %g min a month", perMonth), verdict: []reading.ClockFound{reading.ClockDrifted}, shiftMin: grows, tolMin: max(8, 0.15*grows),
+			plant: func(c *site.Clock) {
+				c.Shifts = append(c.Shifts, site.ClockShift{From: ymd(year, 1, 1), To: ymd(year, 12, 31), Grows: true, EndShiftS: int(grows) * 60})
+			}})
+	}
+	span := site.ClockShift{From: ymd(year, 8, 12), To: ymd(year, 9, 10), ShiftS: 3600}
+	out = append(out, plantedClock{name: "one hour for a month", verdict: []reading.ClockFound{reading.ClockForATime}, shiftMin: 60, tolMin: 5, from: span.From, to: span.To,
+		plant: func(c *site.Clock) { c.Shifts = append(c.Shifts, span) }})
+	return out
+}
+
+// Errors of known size are planted in one sound log at a time. The table says
+// how often each is found, as what, and how far the shift is off.
+func TestPlantedClockErrors(t *testing.T) {
+	if testing.Short() {
+		t.Skip("a year per error")
+	}
+	logs := strings.Split(*clockLogs, ",")
+	type cell struct {
+		found, kind, sure, n, others int
+		worst                        float64
+		note                         string
+	}
+	table := map[string]map[string]*cell{}
+	for seed := uint64(1); seed <= *clockSeeds; seed++ {
+		dir := write(t, demo.Options{Seed: seed})
+		for _, p := range plantedClocks() {
+			if table[p.name] == nil {
+				table[p.name] = map[string]*cell{}
+			}
+			for _, log := range logs {
+				s := load(t, dir)
+				plant(s, log, p.plant)
+				_, l := read(t, s, ingest.Options{})
+				c := table[p.name][log]
+				if c == nil {
+					c = &cell{}
+					table[p.name][log] = c
+				}
+				c.n++
+				v := verdictOf(l, log)
+				got := v.EndShiftMin
+				if wrong(v) && math.Abs(got-p.shiftMin) <= p.tolMin {
+					c.found++
+					c.worst = max(c.worst, math.Abs(got-p.shiftMin))
+					if slices.Contains(p.verdict, v.Verdict) {
+						c.kind++
+					}
+					if v.Sure {
+						c.sure++
+					}
+				} else {
+					c.note = fmt.Sprintf("%s %.0f to %.0f", v.Verdict, v.ShiftMin, v.EndShiftMin)
+				}
+				if !p.from.IsZero() && wrong(v) {
+					c.note += fmt.Sprintf(" %s..%s", dayAt(s, v.FromUTC), dayAt(s, v.ToUTC-1))
+				}
+				for i := range l.Clocks {
+					if o := &l.Clocks[i]; o.Log != log && wrong(o) {
+						c.others++
+						c.note += fmt.Sprintf(" [%s: %s %.0f]", o.Log, o.Verdict, o.EndShiftMin)
+					}
+				}
+			}
+		}
+	}
+	t.Logf("%-26s %-14s %6s %6s %5s %9s %7s", "planted", "log", "found", "named", "sure", "off by", "others")
+	for _, p := range plantedClocks() {
+		for _, log := range logs {
+			c := table[p.name][log]
+			t.Logf("%-26s %-14s %3d/%-2d %6d %5d %5.0f min %7d  %s", p.name, log, c.found, c.n, c.kind, c.sure, c.worst, c.others, c.note)
+		}
+	}
+}
+
+// The demo's own logger runs an hour ahead for a month: found with its dates,
+// and gone once the site file says what the finding proposes.
+func TestDemoClockError(t *testing.T) {
+	for seed := uint64(1); seed <= 5; seed++ {
+		dir := t.TempDir()
+		truth, err := demo.Write(dir, demo.Options{Seed: seed, Faults: true})
+		if err != nil {
+			t.Fatal(err)
+		}
+		s := load(t, dir)
+		_, l := read(t, s, ingest.Options{})
+		var f demo.Fault
+		for _, x := range truth.Faults {
+			if x.Kind == demo.FaultClock {
+				f = x
+			}
+		}
+		v := verdictOf(l, "logger206")
+		from, to := float64(v.FromUTC-f.FromUTC)/86400, float64(v.ToUTC-f.ToUTC)/86400
+		t.Logf("seed %d: %s, %+.0f min, first day off by %+.0f, last by %+.0f, better on %d of %d days", seed, v.Verdict, v.ShiftMin, from, to, v.Better, v.Days)
+		if v.Verdict != reading.ClockForATime || v.ShiftMin != 60 || math.Abs(from) > 2 || math.Abs(to) > 2 || !v.Sure {
+			t.Errorf("seed %d: %+v", seed, v)
+		}
+		for i := range l.Clocks {
+			if o := &l.Clocks[i]; o.Log != "logger206" && wrong(o) {
+				t.Errorf("seed %d: %s", seed, o.Evidence)
+			}
+		}
+	}
+}
+
+// Sound clocks raise no alarm.
+func TestSoundClocks(t *testing.T) {
+	for seed := uint64(1); seed <= 10; seed++ {
+		s := load(t, write(t, demo.Options{Seed: seed, From: ymd(2025, int(seed), 15), Days: 75}))
+		_, l := read(t, s, ingest.Options{})
+		soundClocks(t, fmt.Sprintf("demo, seed %d", seed), l)
+	}
+	for _, name := range []string{"toronto-windows", "brains4buildings"} {
+		_, l := real(t, name)
+		soundClocks(t, name, l)
+	}
+}
+
+func soundClocks(t *testing.T, name string, l *reading.Ledger) {
+	t.Helper()
+	fits, untold := 0, 0
+	for i := range l.Clocks {
+		switch v := &l.Clocks[i]; v.Verdict {
+		case reading.ClockFits:
+			fits++
+		case reading.ClockUntold:
+			untold++
+		default:
+			t.Errorf("%s: %s", name, v.Evidence)
+		}
+	}
+	t.Logf("%-22s %d logs: %d fit, %d cannot be told, %d false alarms", name, len(l.Clocks), fits, untold, len(l.Clocks)-fits-untold)
+	if len(l.Clocks) == 0 {
+		t.Errorf("%s: no verdict", name)
+	}
+}
+
+// The weather file of this set calls its times UTC; they are the site's local
+// times (SOURCE.md: the sun is up from 05 to 20 h). Read as labelled, that is
+// found against the sun, with the line that corrects it.
+func TestTorontoLabelledUTC(t *testing.T) {
+	loaded, err := configs.Load(filepath.Join("..", "testdata", "real", "toronto-windows", "site.yaml"), func(string) string { return "" })
+	if err != nil {
+		t.Fatal(err)
+	}
+	s := loaded.Site
+	plant(s, "weather", func(c *site.Clock) { *c = site.Clock{Kind: site.ClockUTC} })
+	_, l, _ := readAll(s)
+	v := verdictOf(l, "weather")
+	t.Log(v.Evidence, v.SiteFile)
+	if v.Verdict != reading.ClockOtherZone || v.EndShiftMin != -240 || !v.Sure || v.SiteFile != "clock: local" {
+		t.Errorf("%+v", v)
+	}
+}
+
+// readAll reads a site whose readings may all be taken out.
+func readAll(s *site.Site) (any, *reading.Ledger, error) {
+	return ingest.Read(context.Background(), s, ingest.Options{})
+}
