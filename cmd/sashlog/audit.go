@@ -7,6 +7,7 @@ import (
 	"io"
 	"path/filepath"
 	"runtime"
+	"runtime/debug"
 	"strings"
 	"time"
 
@@ -18,6 +19,8 @@ import (
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
 	"sashlog/ingest"
+	"sashlog/ingest/grid"
+	"sashlog/ingest/reading"
 	"sashlog/report/folder"
 	"sashlog/report/page"
 	"sashlog/report/provenance"
@@ -96,57 +99,83 @@ func dateFlag(name, text string) (site.Date, error) {
 	return site.DateOf(t), nil
 }
 
-// run does the audit: load, read, analyse, write, say.
-func (job auditJob) run(ctx context.Context, p process) error {
+// audited is a site read and analysed, ready to be written.
+type audited struct {
+	site     *site.Site
+	criteria criteria.Settings
+	grid     *grid.Grid
+	ledger   *reading.Ledger
+	results  *analyze.Results
+	origin   provenance.Provenance
+}
+
+func (a *audited) tables() table.Input {
+	return table.Input{Site: a.site, Criteria: a.criteria, Grid: a.grid, Ledger: a.ledger, Results: a.results, Provenance: a.origin}
+}
+
+func (a *audited) pages() page.Input {
+	return page.Input{Site: a.site, Criteria: a.criteria, Grid: a.grid, Ledger: a.ledger, Results: a.results, Provenance: a.origin}
+}
+
+// tolerated is the failure that too many rejected readings are.
+func (a *audited) tolerated() error {
+	if share := a.ledger.RejectedShare(); share > a.site.RejectedShareMax {
+		return fail(exitRejected, fmt.Errorf("%.1f %% of the readings were rejected, more than the site's tolerance of %.1f %%; the report was written all the same; hint: readings.csv says which and why",
+			100*share, 100*a.site.RejectedShareMax))
+	}
+	return nil
+}
+
+// analyse loads, reads and analyses.
+func (job auditJob) analyse(ctx context.Context, p process) (*audited, error) {
 	loaded, err := configs.Load(job.siteFile, p.env)
 	if err != nil {
-		return err
+		return nil, err
 	}
 	if !job.quiet {
 		for _, warning := range loaded.Warnings {
 			fmt.Fprintln(p.stderr, printable("note: "+warning.Error()))
 		}
 	}
-	if job.into == "" {
-		job.into = filepath.Join(filepath.Dir(job.siteFile), "sashlog-report")
-	}
-
 	bar := newProgress(p.stderr, job.quiet, p.env)
 	g, ledger, err := ingest.Read(ctx, loaded.Site, ingest.Options{Progress: bar.at, From: job.from, To: job.to})
 	bar.end()
 	if err != nil {
-		return sourceFailure(err)
+		return nil, sourceFailure(err)
 	}
 	if err := ctx.Err(); err != nil {
-		return err
+		return nil, err
 	}
-	results := analyze.Run(analyze.Input{Site: loaded.Site, Criteria: loaded.Criteria, Grid: g})
-	if err := ctx.Err(); err != nil {
-		return err
-	}
-
-	origin := provenance.Provenance{Version: versionWords(), Generated: p.now().UTC().Format(time.RFC3339), Command: job.command,
-		CriteriaHash: criteria.Hash(loaded.Criteria)}
+	a := &audited{site: loaded.Site, criteria: loaded.Criteria, grid: g, ledger: ledger,
+		results: analyze.Run(analyze.Input{Site: loaded.Site, Criteria: loaded.Criteria, Grid: g}),
+		origin: provenance.Provenance{Version: versionWords(), Generated: p.now().UTC().Format(time.RFC3339), Command: job.command,
+			CriteriaHash: criteria.Hash(loaded.Criteria)}}
 	for _, f := range loaded.Files {
-		origin.ConfigFiles = append(origin.ConfigFiles, provenance.File{Path: f.Path, SHA256: f.SHA256, Bytes: f.Bytes})
+		a.origin.ConfigFiles = append(a.origin.ConfigFiles, provenance.File{Path: f.Path, SHA256: f.SHA256, Bytes: f.Bytes})
 	}
-	tables := table.Input{Site: loaded.Site, Criteria: loaded.Criteria, Grid: g, Ledger: ledger, Results: results, Provenance: origin}
-	pages := page.Input{Site: loaded.Site, Criteria: loaded.Criteria, Grid: g, Ledger: ledger, Results: results, Provenance: origin}
-	out, err := writeAll(ctx, job.into, tables, pages)
+	return a, ctx.Err()
+}
+
+// run does the audit: load, read, analyse, write, say.
+func (job auditJob) run(ctx context.Context, p process) error {
+	a, err := job.analyse(ctx, p)
+	if err != nil {
+		return err
+	}
+	if job.into == "" {
+		job.into = filepath.Join(filepath.Dir(job.siteFile), "sashlog-report")
+	}
+	out, err := writeAll(ctx, job.into, a.tables(), a.pages())
 	if err != nil {
 		return err
 	}
 	fmt.Fprintln(p.stdout, out)
 	if !job.quiet {
-		for _, line := range words.Summary(words.Input{Site: loaded.Site, Criteria: loaded.Criteria, Grid: g, Ledger: ledger, Results: results}) {
+		for _, line := range words.Summary(words.Input{Site: a.site, Criteria: a.criteria, Grid: a.grid, Ledger: a.ledger, Results: a.results}) {
 			fmt.Fprintln(p.stderr, printable(line))
 		}
 	}
-	if share := ledger.RejectedShare(); share > loaded.Site.RejectedShareMax {
-		return fail(exitRejected, fmt.Errorf("%.1f %% of the readings were rejected, more than the site's tolerance of %.1f %%; the report was written all the same; hint: readings.csv says which and why",
-			100*share, 100*loaded.Site.RejectedShareMax))
-	}
-	return nil
+	return a.tolerated()
 }
 
 // sourceFailure gives a failure to read its exit code.
@@ -158,17 +187,15 @@ func sourceFailure(err error) error {
 	return fail(exitSource, err)
 }
 
-// writeAll writes every output and returns the report's path.
+// output is one file of the output folder.
+type output struct {
+	name string
+	fill func(io.Writer) error
+}
+
+// writeAll writes every output of an audit and returns the report's path.
 func writeAll(ctx context.Context, into string, tables table.Input, pages page.Input) (reportPath string, err error) {
-	out, err := folder.Open(into)
-	if err != nil {
-		return "", fail(exitWrite, err)
-	}
-	defer out.Discard()
-	outputs := []struct {
-		name string
-		fill func(io.Writer) error
-	}{
+	return writeOutputs(ctx, into, "report.html", []output{
 		{"hours.csv", func(w io.Writer) error { return table.WriteHoursCSV(w, tables) }},
 		{"hours.parquet", func(w io.Writer) error { return table.WriteHoursParquet(w, tables) }},
 		{"comfort.parquet", func(w io.Writer) error { return table.WriteComfortParquet(w, tables) }},
@@ -177,7 +204,17 @@ func writeAll(ctx context.Context, into string, tables table.Input, pages page.I
 		{"results.json", func(w io.Writer) error { return table.WriteJSON(w, tables) }},
 		{"results.schema.json", func(w io.Writer) error { _, err := w.Write(table.Schema()); return err }},
 		{"report.html", func(w io.Writer) error { return page.Write(w, pages) }},
+	})
+}
+
+// writeOutputs writes the outputs side by side and returns the path of the one
+// to show; all of them appear, or none.
+func writeOutputs(ctx context.Context, into, show string, outputs []output) (path string, err error) {
+	out, err := folder.Open(into)
+	if err != nil {
+		return "", fail(exitWrite, err)
 	}
+	defer out.Discard()
 	var writing errgroup.Group
 	writing.SetLimit(runtime.GOMAXPROCS(0))
 	for _, o := range outputs {
@@ -185,7 +222,7 @@ func writeAll(ctx context.Context, into string, tables table.Input, pages page.I
 			if err := ctx.Err(); err != nil {
 				return err
 			}
-			if err := out.Write(o.name, o.fill); err != nil {
+			if err := out.Write(o.name, guarded(o)); err != nil {
 				return fail(exitWrite, err)
 			}
 			return nil
@@ -197,5 +234,18 @@ func writeAll(ctx context.Context, into string, tables table.Input, pages page.I
 	if err := out.Commit(); err != nil {
 		return "", fail(exitWrite, err)
 	}
-	return strings.TrimPrefix(out.Path("report.html"), "./"), nil
+	return strings.TrimPrefix(out.Path(show), "./"), nil
+}
+
+// guarded turns a fault of ours in one output into an error, since a panic
+// beside the main goroutine would end the process with files half written.
+func guarded(o output) func(io.Writer) error {
+	return func(w io.Writer) (err error) {
+		defer func() {
+			if r := recover(); r != nil {
+				err = fmt.Errorf("a fault of sashlog itself: %v\n%s", r, debug.Stack())
+			}
+		}()
+		return o.fill(w)
+	}
 }

@@ -126,14 +126,16 @@ func Title(s *site.Site, point int) string {
 	return p.BelongsTo + " " + t.Words
 }
 
-// RejectedShare is the share of rejected among all readings; empty cells and
-// missing markers say that nothing was measured and do not count.
+// RejectedShare is the share of rejected among all readings of the period.
+// Empty cells and missing markers say that nothing was measured, and readings
+// outside the period were not asked for: neither counts.
 func (l *Ledger) RejectedShare() float64 {
 	var all, rejected int64
 	for i := range l.Points {
 		p := &l.Points[i]
-		all += p.RowsRead - p.Counts[Missing]
-		rejected += p.Rejected() - p.Counts[Missing]
+		aside := p.Counts[Missing] + p.Counts[OutsidePeriod]
+		all += p.RowsRead - aside
+		rejected += p.Rejected() - aside
 	}
 	if all <= 0 {
 		return 0
