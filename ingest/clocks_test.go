@@ -20,6 +20,7 @@ import (
 
 var (
 	clockSeeds = flag.Uint64("clockseeds", 1, "seeds of the table of planted clock errors")
+	clockOnly  = flag.String("clockonly", "", "plant only errors whose name holds this")
 	clockLogs  = flag.String("clocklogs", "floor2,logger206,plant_status,windows,weather", "logs the errors are planted in")
 )
 
@@ -81,7 +82,7 @@ func plantedClocks() []plantedClock {
 	span := site.ClockShift{From: ymd(year, 8, 12), To: ymd(year, 9, 10), ShiftS: 3600}
 	out = append(out, plantedClock{name: "one hour for a month", verdict: []reading.ClockFound{reading.ClockForATime}, shiftMin: 60, tolMin: 5, from: span.From, to: span.To,
 		plant: func(c *site.Clock) { c.Shifts = append(c.Shifts, span) }})
-	return out
+	return slices.DeleteFunc(out, func(p plantedClock) bool { return !strings.Contains(p.name, *clockOnly) })
 }
 
 // Errors of known size are planted in one sound log at a time. The table says

@@ -225,26 +225,33 @@ func (c *clockRun) accuse(l *logSeries, f *lag.Finding, v *reading.ClockVerdict)
 			why, sure = "it does so throughout, which working hours may explain", false
 		}
 	case lag.Seasonal:
-		first, last := 0.0, 0.0
+		within, without := math.NaN(), math.NaN()
+		seasonal := c.seasonal(l)
 		for d, m := range f.PathMin() {
-			if c.frame.Seasonal = c.seasonal(l); c.frame.Seasonal[d] != 0 {
-				last = m
+			if seasonal[d] != 0 {
+				within = m
 			} else {
-				first = m
+				without = m
 			}
 		}
-		v.ShiftMin, v.EndShiftMin = last, last
-		v.Verdict = reading.ClockIgnoredSaving
+		v.ShiftMin, v.EndShiftMin = within, within
 		follows, _ := c.daylightSaving(c.logOf(l.name))
-		if f.ShiftMin != 0 {
-			v.Verdict = reading.ClockOtherZone
-			v.ShiftMin, v.EndShiftMin = first, last
-		}
-		what = fmt.Sprintf("runs %s %s while daylight saving is in force", hours(last), aheadOf(last))
-		if f.ShiftMin != 0 {
-			what += fmt.Sprintf(" and %s %s otherwise", hours(first), aheadOf(first))
-		} else if why = "it ignored daylight saving"; !follows {
+		switch {
+		case f.ShiftMin != 0:
+			v.Verdict, v.ShiftMin = reading.ClockOtherZone, without
+			what = fmt.Sprintf("runs %s %s", hours(within), aheadOf(within))
+			if math.IsNaN(without) {
+				v.ShiftMin = within
+			} else {
+				what += fmt.Sprintf(" while daylight saving is in force and %s %s otherwise", hours(without), aheadOf(without))
+			}
+		case follows:
+			v.Verdict, why = reading.ClockIgnoredSaving, "it ignored daylight saving"
+		default:
 			v.Verdict, why = reading.ClockFollowedSaving, "it followed daylight saving"
+		}
+		if f.ShiftMin == 0 {
+			what = fmt.Sprintf("runs %s %s while daylight saving is in force", hours(within), aheadOf(within))
 		}
 		sure = sure || f.T >= 8 && len(f.Agree) >= 1 && len(logs) >= 2
 	case lag.Drift:

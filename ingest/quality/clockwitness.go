@@ -37,7 +37,8 @@ var natures = []nature{
 	{"outdoor temperature", lag.Sky, false, []site.Quantity{site.OutdoorTemp}, site.OwnerSite},
 	{"outdoor humidity", lag.Sky, false, []site.Quantity{site.OutdoorHumidity, site.OutdoorDewPoint}, site.OwnerSite},
 	{"wind", lag.Sky, false, []site.Quantity{site.WindSpeed}, site.OwnerSite},
-	{"sunshine", lag.Sky, true, []site.Quantity{site.Solar}, site.OwnerSite},
+	{"daylight", lag.Sky, true, []site.Quantity{site.Solar}, site.OwnerSite},
+	{"sunrise and sunset", lag.Sky, false, []site.Quantity{site.Solar}, site.OwnerSite},
 	{"CO2", lag.People, false, []site.Quantity{site.CO2}, site.OwnerZone},
 	{"air temperature", lag.People, false, []site.Quantity{site.AirTemp, site.OperativeTemp, site.GlobeTemp}, site.OwnerZone},
 	{"humidity", lag.People, false, []site.Quantity{site.Humidity}, site.OwnerZone},
@@ -45,8 +46,9 @@ var natures = []nature{
 	{"plant running", lag.People, false, []site.Quantity{site.PlantStatus}, site.OwnerPlant},
 }
 
-// relation is one device or room seen through two logs, with the sign the
-// change of one has on the other; 0: they move at the same time, either way.
+// relation is one device or room seen through two logs: b changes with a in
+// the direction of sign, delayMin later (sooner where negative); sameMoment compares how much they
+// change, either way.
 type relation struct {
 	words      string
 	a, b       []site.Quantity
@@ -54,15 +56,20 @@ type relation struct {
 	aLevel     bool
 	sign       float64
 	sameMoment bool
+	delayMin   float64
 }
 
 var relations = []relation{
-	{"power and status of the same plant", []site.Quantity{site.ElectricPower, site.CoolingPower, site.HeatingPower}, []site.Quantity{site.PlantStatus}, site.OwnerPlant, false, 1, false},
-	{"supply air and status of the same plant", []site.Quantity{site.SupplyAirTemp}, []site.Quantity{site.PlantStatus}, site.OwnerPlant, false, 1, true},
-	{"air flow and status of the same plant", []site.Quantity{site.SupplyAirflow}, []site.Quantity{site.PlantStatus}, site.OwnerPlant, false, 1, false},
-	{"windows and CO2 of the same room", []site.Quantity{site.Window, site.WindowOpening}, []site.Quantity{site.CO2}, site.OwnerZone, false, -1, false},
-	{"presence and CO2 of the same room", []site.Quantity{site.Presence, site.People}, []site.Quantity{site.CO2}, site.OwnerZone, true, 1, false},
+	{"power and status of the same plant", []site.Quantity{site.ElectricPower, site.CoolingPower, site.HeatingPower}, []site.Quantity{site.PlantStatus}, site.OwnerPlant, false, 1, false, 0},
+	{"supply air and status of the same plant", []site.Quantity{site.SupplyAirTemp}, []site.Quantity{site.PlantStatus}, site.OwnerPlant, false, 1, true, -10},
+	{"air flow and status of the same plant", []site.Quantity{site.SupplyAirflow}, []site.Quantity{site.PlantStatus}, site.OwnerPlant, false, 1, false, 0},
+	{"windows and CO2 of the same room", []site.Quantity{site.Window, site.WindowOpening}, []site.Quantity{site.CO2}, site.OwnerZone, false, -1, false, mixingMin},
+	{"presence and CO2 of the same room", []site.Quantity{site.Presence, site.People}, []site.Quantity{site.CO2}, site.OwnerZone, false, 1, false, mixingMin},
 }
+
+// mixingMin is how long after a window moves CO2 changes fastest on the mean of
+// half hours: several air changes an hour (common practice).
+const mixingMin = 15
 
 // pool averages series of bins; zero bins of a point count as unknown.
 type pool struct {
@@ -111,7 +118,7 @@ type clockRun struct {
 	per, bins int
 	frame     lag.Frame
 	logs      []*logSeries
-	up        []float64 // the sun, +1 up and -1 down, about its mean
+	up        []float64 // the sun: 1 up, 0 down
 }
 
 // levels are the means of a point's bins, NaN where less than half is known.
@@ -225,12 +232,11 @@ func (c *clockRun) gather() {
 		var level, change []float64
 		get := func(asLevel bool) []float64 {
 			if level == nil {
-				level = c.levels(col, p.Quantity)
+				if level = c.levels(col, p.Quantity); p.Quantity == site.Solar {
+					daylight(level)
+				}
 			}
 			if asLevel {
-				if p.Quantity == site.Solar {
-					return daylight(level)
-				}
 				return aboutMean(level)
 			}
 			if change == nil {
@@ -280,10 +286,9 @@ func (c *clockRun) gather() {
 	}
 }
 
-// daylight is +1 where a pyranometer sees light and -1 where not: clouds and
-// calibration do not touch it, only sunrise and sunset.
-func daylight(level []float64) []float64 {
-	out := make([]float64, len(level))
+// daylight turns irradiance into 1 where a pyranometer sees light and 0 where
+// not: clouds and calibration hardly touch it, only sunrise and sunset.
+func daylight(level []float64) {
 	most := 0.0
 	for _, v := range level {
 		if v > most {
@@ -292,34 +297,29 @@ func daylight(level []float64) []float64 {
 	}
 	limit := max(lightWm2, most/100)
 	for i, v := range level {
-		switch {
-		case math.IsNaN(v):
-			out[i] = v
-		case v > limit:
-			out[i] = 1
-		default:
-			out[i] = -1
+		if !math.IsNaN(v) {
+			level[i] = 0
+			if v > limit {
+				level[i] = 1
+			}
 		}
 	}
-	return aboutMean(out)
 }
 
 // lightWm2 is global irradiance about sunrise: above the noise of usual
 // pyranometers at night. Common practice.
 const lightWm2 = 5
 
-// sunUp is +1 where the sun is up and -1 where not, about its mean; nil where
-// the site's place is not known.
+// sunUp is 1 where the sun is up and 0 where not, nil where the site's place is
+// not known.
 func (c *clockRun) sunUp() []float64 {
 	if c.up == nil && !math.IsNaN(c.site.LatitudeDeg) && !math.IsNaN(c.site.LongitudeDeg) {
-		level := make([]float64, c.bins)
-		for b := range level {
-			level[b] = -1
+		c.up = make([]float64, c.bins)
+		for b := range c.up {
 			if sun.At(c.middle(b), c.site.LatitudeDeg, c.site.LongitudeDeg).Up() {
-				level[b] = 1
+				c.up[b] = 1
 			}
 		}
-		c.up = aboutMean(level)
 	}
 	return c.up
 }
@@ -336,8 +336,12 @@ func (c *clockRun) witnesses(l *logSeries, out map[string]bool) []*lag.Witness {
 			continue
 		}
 		if slices.Contains(n.of, site.Solar) {
-			if up := c.sunUp(); up != nil {
-				ws = append(ws, &lag.Witness{Name: "sunrise and sunset", Class: lag.Sky, Pairs: []lag.Pair{{Mine: l.nature[k], Truth: up}}})
+			truth := changes(c.up)
+			if n.level {
+				truth = aboutMean(c.up)
+			}
+			if truth != nil {
+				ws = append(ws, &lag.Witness{Name: n.words, Class: lag.Sky, Pairs: []lag.Pair{{Mine: l.nature[k], Truth: truth}}})
 			}
 		}
 		truth, logs, points := c.others(l, k, out)
@@ -352,8 +356,9 @@ func (c *clockRun) witnesses(l *logSeries, out map[string]bool) []*lag.Witness {
 				continue
 			}
 			n := len(w.Pairs)
-			w.Pairs = pairs(w.Pairs, l.a[k], o.b[k], r.sign)
-			w.Pairs = pairs(w.Pairs, l.b[k], o.a[k], r.sign)
+			later := int(math.Round(r.delayMin / c.frame.BinMin))
+			w.Pairs = pairs(w.Pairs, l.a[k], o.b[k], r.sign, -later)
+			w.Pairs = pairs(w.Pairs, l.b[k], o.a[k], r.sign, later)
 			if len(w.Pairs) > n {
 				w.Logs = append(w.Logs, o.name)
 				w.Points += len(w.Pairs) - n
@@ -369,7 +374,9 @@ func (c *clockRun) witnesses(l *logSeries, out map[string]bool) []*lag.Witness {
 	return ws
 }
 
-func pairs(to []lag.Pair, mine, truth map[int][]float64, sign float64) []lag.Pair {
+// pairs joins what two logs say of the same rooms or devices; the truth is
+// moved later by some bins and given a sign.
+func pairs(to []lag.Pair, mine, truth map[int][]float64, sign float64, later int) []lag.Pair {
 	var keys []int
 	for i := range mine {
 		if truth[i] != nil {
@@ -379,10 +386,12 @@ func pairs(to []lag.Pair, mine, truth map[int][]float64, sign float64) []lag.Pai
 	slices.Sort(keys)
 	for _, i := range keys {
 		t := truth[i]
-		if sign < 0 {
+		if sign != 1 || later != 0 {
 			t = make([]float64, len(t))
 			for b, v := range truth[i] {
-				t[b] = -v
+				if at := b + later; at >= 0 && at < len(t) {
+					t[at] = sign * v
+				}
 			}
 		}
 		to = append(to, lag.Pair{Mine: mine[i], Truth: t})

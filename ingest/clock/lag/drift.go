@@ -15,7 +15,8 @@ const (
 	fineMost  = 360.0 // minutes either way
 	monthDays = 30.4375
 	blocks    = 8 // least length of a drift
-	driftT    = 3.5
+	// naturalMost is the lag a room may have to others by nature, minutes.
+	naturalMost = 20.0
 )
 
 var slopes = []float64{1, 1.5, 2, 2.5, 3, 4, 5, 6, 8, 10, 12, 15, 20, 25, 30} // min per month
@@ -73,7 +74,7 @@ func (s *search) drift() *Finding {
 		return f
 	}
 	flat := math.Inf(-1) // the best constant
-	for m := -60.0; m <= 60; m += fineMin {
+	for m := -fineMost; m <= fineMost; m += fineMin {
 		flat = max(flat, line{a: m}.score(fine))
 	}
 	best, top := line{}, math.Inf(-1)
@@ -89,7 +90,7 @@ func (s *search) drift() *Finding {
 					continue
 				}
 				for _, sign := range []float64{-1, 1} {
-					for a := -20.0; a <= 20; a += fineMin {
+					for a := -naturalMost; a <= naturalMost; a += fineMin {
 						l := line{a, sign * per, from, to}
 						if v := l.score(fine); v > top {
 							best, top = l, v
@@ -103,7 +104,10 @@ func (s *search) drift() *Finding {
 		return f
 	}
 	best, top = refine(best, top, fine)
-	f.Gain = top - flat - extra
+	if top-flat < sureDays {
+		return f
+	}
+	f.Gain = top - line{a: s.base * s.BinMin}.score(fine) - extra
 	grows := best.slope * float64(best.to-best.from)
 	f.From, f.To = best.from*blockDays, best.to*blockDays
 	if best.to == len(fine) {
@@ -134,9 +138,12 @@ func refine(l line, top float64, fine [][]float64) (line, float64) {
 			for _, n := range []line{
 				{l.a + 5*step, l.slope, l.from, l.to}, {l.a - 5*step, l.slope, l.from, l.to},
 				{l.a, l.slope * (1 + step/5), l.from, l.to}, {l.a, l.slope * (1 - step/5), l.from, l.to},
-				{l.a, l.slope, l.from + 1, l.to}, {l.a, l.slope, max(l.from-1, 0), l.to},
+				{l.a, l.slope, l.from + 1, l.to}, {l.a, l.slope, l.from - 1, l.to},
+				// The same line, begun a week sooner.
+				{l.a - l.slope, l.slope, l.from - 1, l.to}, {l.a - 2*l.slope, l.slope, l.from - 2, l.to},
+				{l.a, l.slope, l.from, l.to + 1}, {l.a, l.slope, l.from, l.to - 1},
 			} {
-				if n.to-n.from < blocks {
+				if n.from < 0 || n.to > len(fine) || n.to-n.from < blocks || math.Abs(n.a) > naturalMost {
 					continue
 				}
 				if v := n.score(fine); v > top+1e-9 {

@@ -26,7 +26,7 @@ const (
 const (
 	sureDays    = 4.0  // evidence an explanation must gather beyond a right clock, days
 	sureT       = 4.0  // Student's t of the daily gain
-	fitLeast    = 0.25 // correlation along the explanation
+	fitLeast    = 0.18 // correlation along the explanation
 	marginLeast = 0.08 // better than without
 	daysLeast   = 8    // days with evidence in a span
 	extra       = 1.0  // what a span or a drift must bring beyond simpler explanations, days
@@ -142,15 +142,32 @@ func Find(fr *Frame, witnesses []*Witness) *Finding {
 	return f
 }
 
-// best is the greatest correlation of a witness over half the record or more.
+// best is the greatest correlation of a witness at any lag, over the record or
+// a third as much better over two months of it (a drift blurs the whole).
 func (w *Witness) best() float64 {
-	sum := make([]float64, 2*w.plane.most+1)
-	for d := range w.plane.at {
-		for i, v := range w.plane.at[d] {
-			sum[i] += v
+	p := w.plane
+	all, part := make([]float64, 2*p.most+1), make([]float64, 2*p.most+1)
+	best := 0.0
+	const months = 60
+	for d, row := range p.at {
+		for i, v := range row {
+			part[i] += v
+		}
+		if (d+1)%months == 0 || d+1 == len(p.at) {
+			var xx, yy float64
+			for k := d - d%months; k <= d; k++ {
+				xx, yy = xx+p.xx[k], yy+p.yy[k]
+			}
+			if xx > 0 && d%months+1 >= months/2 {
+				best = max(best, 0.75*slices.Max(part)/math.Sqrt(xx*yy))
+			}
+			for i, v := range part {
+				all[i] += v
+			}
+			clear(part)
 		}
 	}
-	return slices.Max(sum) * w.plane.scale / float64(w.plane.days)
+	return max(best, slices.Max(all)*p.scale/float64(p.days))
 }
 
 func (s *search) add() {
@@ -288,6 +305,10 @@ func (s *search) span() *Finding {
 	f.From, f.To = widen(diff, f.From, f.To)
 	f.ShiftMin = whole((x - natural) * s.BinMin)
 	f.EndShiftMin = f.ShiftMin
+	if math.Abs(f.ShiftMin) < leastMin {
+		f.Gain = 0
+		return f
+	}
 	f.path = s.flat(f.From, f.To, x*s.BinMin-float64(s.most)*s.BinMin)
 	return f
 }
