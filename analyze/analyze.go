@@ -13,8 +13,9 @@
 //  10. longterm: how did the season compare by published indices, and whom does the average hide?
 //  11. doubt: how far could the sensors' own errors move all this?
 //  12. votes: what did the occupants say, and do the models predict it?
-//  13. answerable: what can these logs answer at all?
-//  14. advice: what should be done first?
+//  13. energy: what did the plant use in hours that could have been open?
+//  14. answerable: what can these logs answer at all?
+//  15. advice: what should be done first?
 package analyze
 
 import (
@@ -23,6 +24,7 @@ import (
 	"sashlog/analyze/answerable"
 	"sashlog/analyze/calendar"
 	"sashlog/analyze/doubt"
+	"sashlog/analyze/energy"
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
@@ -62,5 +64,6 @@ type Results struct {
 	LongTerm   *longterm.Result
 	Doubt      *doubt.Result
 	Votes      *votes.Result // nil without votes
+	Energy     *energy.Result
 	Findings   []advice.Finding
 }

@@ -3,6 +3,7 @@ package analyze
 import (
 	"sashlog/analyze/comfort"
 	"sashlog/analyze/doubt"
+	"sashlog/analyze/energy"
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
@@ -17,6 +18,6 @@ import (
 // Methods lists the documentation of every method in use, in the order the
 // analyses run; the report's appendix and the list of methods print from it.
 func Methods() []method.Doc {
-	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc, doubt.Doc, votes.Doc}
+	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc, doubt.Doc, votes.Doc, energy.Doc}
 	return append(docs, comfort.Docs()...)
 }

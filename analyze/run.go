@@ -7,6 +7,7 @@ import (
 	"sashlog/analyze/calendar"
 	"sashlog/analyze/cores"
 	"sashlog/analyze/doubt"
+	"sashlog/analyze/energy"
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
@@ -47,6 +48,7 @@ func Run(in Input) *Results {
 			r.AfterHours = afterhours.Look(afterhours.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor,
 				Running: r.Running, Record: r.Hours, Summary: r.Summary})
 		},
+		func() { r.Energy = energy.Assess(energy.Input{Site: s, Grid: g, Running: r.Running, Record: r.Hours}) },
 		func() {
 			r.Doubt = doubt.Estimate(doubt.Input{Input: record, Calendar: r.Calendar, Weights: r.Summary.Weights, Seed: 1})
 		},

@@ -147,6 +147,11 @@ func (b *builder) head() {
 	}
 	b.privacy()
 	s.TypicalYear = r.Weather.TypicalYear
+	s.Energy = site.Energy{PricePerKWh: b.number("energy.price_per_kwh", r.Energy.PricePerKWh, 0, 100, ""), Currency: r.Energy.Currency,
+		CarbonKgPerKWh: b.number("energy.carbon_kg_per_kwh", r.Energy.CarbonKgPerKWh, 0, 3, "")}
+	if r.Energy.PricePerKWh != nil && r.Energy.Currency == "" {
+		b.tree.at("energy", "for instance currency: EUR", "currency is missing in energy")
+	}
 	if s.RejectedShareMax = b.number("tolerance.rejected_share", r.Tolerance.RejectedShare, 0, 1, " (a share)"); math.IsNaN(s.RejectedShareMax) {
 		s.RejectedShareMax = 0.02
 	}

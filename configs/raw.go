@@ -18,6 +18,7 @@ type rawSite struct {
 	Diary     string         `mapstructure:"diary"`
 	Votes     string         `mapstructure:"votes"`
 	Weather   rawWeather     `mapstructure:"weather"`
+	Energy    rawEnergy      `mapstructure:"energy"`
 	Tolerance rawTolerance   `mapstructure:"tolerance"`
 }
 
@@ -138,6 +139,12 @@ type rawClockShift struct {
 	To       string   `mapstructure:"to"`
 	ShiftMin *float64 `mapstructure:"shift_min"`
 	EndMin   *float64 `mapstructure:"end_shift_min"`
+}
+
+type rawEnergy struct {
+	PricePerKWh    *float64 `mapstructure:"price_per_kwh"`
+	Currency       string   `mapstructure:"currency"`
+	CarbonKgPerKWh *float64 `mapstructure:"carbon_kg_per_kwh"`
 }
 
 type rawWeather struct {

@@ -25,6 +25,7 @@ type Site struct {
 	Points    []Point
 	Diary     []Event
 	Votes     []Vote
+	Energy    Energy
 	// TypicalYear is the path of an EPW file, relative to Dir, or empty.
 	TypicalYear string
 	Privacy     Privacy
@@ -249,3 +250,10 @@ func (s *Site) PlantIndex(id string) int {
 // Southern reports whether the site lies south of the equator; false when the
 // latitude is unknown.
 func (s *Site) Southern() bool { return s.LatitudeDeg < 0 }
+
+// Energy is what electricity costs; NaN where not given.
+type Energy struct {
+	PricePerKWh    float64
+	Currency       string
+	CarbonKgPerKWh float64
+}
