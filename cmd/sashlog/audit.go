@@ -23,6 +23,7 @@ import (
 	"sashlog/ingest/reading"
 	"sashlog/report/folder"
 	"sashlog/report/page"
+	"sashlog/report/pdf"
 	"sashlog/report/provenance"
 	"sashlog/report/table"
 	"sashlog/report/words"
@@ -34,6 +35,8 @@ type auditJob struct {
 	into     string // empty: sashlog-report beside the site file
 	from, to site.Date
 	quiet    bool
+	pdf      bool
+	paper    string // A4 or Letter
 	command  string // as shown in the report
 }
 
@@ -52,6 +55,7 @@ where the occupied hours went, and writes into the output folder:
   comfort.parquet  hours outside each comfort criterion
   episodes.csv     the missed episodes and their causes
   readings.csv     what became of every logged point's readings
+  report.pdf       with --pdf, where a Chromium browser is installed
 
 It ends with 1 when more readings were rejected than the site file tolerates.`,
 		Example: `  sashlog audit building/site.yaml
@@ -70,6 +74,9 @@ It ends with 1 when more readings were rejected than the site file tolerates.`,
 			if !job.from.IsZero() && !job.to.IsZero() && job.to.Before(job.from) {
 				return fail(exitUsage, fmt.Errorf("--to %s lies before --from %s; hint: both days belong to the period", job.to, job.from))
 			}
+			if job.paper != "A4" && job.paper != "Letter" {
+				return fail(exitUsage, fmt.Errorf("--paper %q is not known; hint: A4 or Letter", job.paper))
+			}
 			job.command = "sashlog audit " + filepath.Base(job.siteFile) + flagWords(" --from ", from) + flagWords(" --to ", to)
 			return job.run(c.Context(), p)
 		},
@@ -77,6 +84,8 @@ It ends with 1 when more readings were rejected than the site file tolerates.`,
 	cmd.Flags().StringVar(&job.into, "into", "", "output folder (default: sashlog-report beside the site file)")
 	cmd.Flags().StringVar(&from, "from", "", "first local day of the period, as 2025-05-01")
 	cmd.Flags().StringVar(&to, "to", "", "last local day of the period, inclusive")
+	cmd.Flags().BoolVar(&job.pdf, "pdf", false, "also print the report to report.pdf, with a Chromium browser of this machine")
+	cmd.Flags().StringVar(&job.paper, "paper", "A4", "paper the report prints to: A4 or Letter")
 	return cmd
 }
 
@@ -165,11 +174,19 @@ func (job auditJob) run(ctx context.Context, p process) error {
 	if job.into == "" {
 		job.into = filepath.Join(filepath.Dir(job.siteFile), "sashlog-report")
 	}
-	out, err := writeAll(ctx, job.into, a.tables(), a.pages())
+	pages := a.pages()
+	pages.Paper = job.paper
+	out, err := writeOutputs(ctx, job.into, "report.html", outputsOf(a.tables(), pages))
 	if err != nil {
 		return err
 	}
 	fmt.Fprintln(p.stdout, out)
+	if job.pdf {
+		// Last, since everything else is worth having without it.
+		if err := printPDF(ctx, p, job.into, pages); err != nil {
+			return err
+		}
+	}
 	if !job.quiet {
 		for _, line := range words.Summary(words.Input{Site: a.site, Criteria: a.criteria, Grid: a.grid, Ledger: a.ledger, Results: a.results}) {
 			fmt.Fprintln(p.stderr, printable(line))
@@ -193,9 +210,27 @@ type output struct {
 	fill func(io.Writer) error
 }
 
-// writeAll writes every output of an audit and returns the report's path.
-func writeAll(ctx context.Context, into string, tables table.Input, pages page.Input) (reportPath string, err error) {
-	return writeOutputs(ctx, into, "report.html", []output{
+// printPDF prints the report beside the other outputs; without a browser it
+// says how else to print.
+func printPDF(ctx context.Context, p process, into string, pages page.Input) error {
+	browser, err := pdf.Find(p.env)
+	if err != nil {
+		fmt.Fprintln(p.stderr, printable("note: no PDF: "+err.Error()+"; hint: open report.html in a browser and print it to PDF, or name a Chromium in "+pdf.Variable))
+		return nil
+	}
+	out, err := writeOutputs(ctx, into, "report.pdf", []output{{"report.pdf", func(w io.Writer) error {
+		return pdf.Print(ctx, browser, func(w io.Writer) error { return page.Write(w, pages) }, w)
+	}}})
+	if err != nil {
+		return err
+	}
+	fmt.Fprintln(p.stdout, out)
+	return nil
+}
+
+// outputsOf are the outputs of an audit.
+func outputsOf(tables table.Input, pages page.Input) []output {
+	return []output{
 		{"hours.csv", func(w io.Writer) error { return table.WriteHoursCSV(w, tables) }},
 		{"hours.parquet", func(w io.Writer) error { return table.WriteHoursParquet(w, tables) }},
 		{"comfort.parquet", func(w io.Writer) error { return table.WriteComfortParquet(w, tables) }},
@@ -204,7 +239,7 @@ func writeAll(ctx context.Context, into string, tables table.Input, pages page.I
 		{"results.json", func(w io.Writer) error { return table.WriteJSON(w, tables) }},
 		{"results.schema.json", func(w io.Writer) error { _, err := w.Write(table.Schema()); return err }},
 		{"report.html", func(w io.Writer) error { return page.Write(w, pages) }},
-	})
+	}
 }
 
 // writeOutputs writes the outputs side by side and returns the path of the one

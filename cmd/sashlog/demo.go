@@ -32,7 +32,7 @@ good model for a site file of your own.`,
 			if _, err := demo.Write(into, options); err != nil {
 				return fail(exitWrite, fmt.Errorf("the demo building could not be written: %w", err))
 			}
-			job := auditJob{siteFile: filepath.Join(into, "site.yaml"), into: filepath.Join(into, "sashlog-report"), quiet: quiet,
+			job := auditJob{siteFile: filepath.Join(into, "site.yaml"), into: filepath.Join(into, "sashlog-report"), quiet: quiet, paper: "A4",
 				command: fmt.Sprintf("sashlog demo --seed %d", seed)}
 			return job.run(c.Context(), p)
 		},

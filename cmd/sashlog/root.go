@@ -33,10 +33,9 @@ whether people were comfortable and the air was fresh, and what to change first.
 
 Begin with: sashlog demo
 Then, for a building of your own: sashlog audit SITE.yaml`,
-		Version:           versionWords(),
-		SilenceUsage:      true,
-		SilenceErrors:     true,
-		CompletionOptions: cobra.CompletionOptions{HiddenDefaultCmd: true},
+		Version:       versionWords(),
+		SilenceUsage:  true,
+		SilenceErrors: true,
 		RunE: func(c *cobra.Command, args []string) error {
 			if len(args) > 0 {
 				return fail(exitUsage, fmt.Errorf("there is no command %q; hint: sashlog --help lists the commands", args[0]))
@@ -49,7 +48,7 @@ Then, for a building of your own: sashlog audit SITE.yaml`,
 	root.SetFlagErrorFunc(func(c *cobra.Command, err error) error {
 		return fail(exitUsage, fmt.Errorf("%w; hint: %s --help shows what it takes", err, c.CommandPath()))
 	})
-	root.AddCommand(newDemo(p), newScan(p), newAudit(p), newCompare(p), newLoad(p), newMethods(p))
+	root.AddCommand(newDemo(p), newScan(p), newAudit(p), newCompare(p), newLoad(p), newMethods(p), newManual(p))
 	return root
 }
 
