@@ -47,7 +47,9 @@ func (b *builder) quality() section {
 		s.Blocks = append(s.Blocks, b.table(t))
 	}
 	s.Blocks = append(s.Blocks, b.checks()...)
-	s.Blocks = append(s.Blocks, b.coverage(), b.clocks())
+	s.Blocks = append(s.Blocks, b.coverage())
+	s.Blocks = append(s.Blocks, b.clockTable()...)
+	s.Blocks = append(s.Blocks, b.clocks())
 	s.Blocks = append(s.Blocks, b.issues()...)
 	s.Blocks = append(s.Blocks, b.doubtParts()...)
 	return s
@@ -88,7 +90,7 @@ func (b *builder) checks() []block {
 		if c.Readings > 0 {
 			effect += ", " + words.Count(c.Readings) + " readings"
 		}
-		evidence := words.Sentence(b.ofFile(c.Evidence))
+		evidence := words.Sentence(b.ofFile(b.rule.Logs(logNames(l), c.Evidence)))
 		if b.rule.Protected(c.Zone) && (c.Kind == reading.CheckHoliday || c.Kind == reading.CheckChatter) {
 			evidence = "Not shown: a room for one to three people."
 		}

@@ -182,3 +182,22 @@ func (r Rule) File(index int, path string) string {
 	}
 	return path
 }
+
+// Log names a log: its name, or its number where codes stand for names.
+func (r Rule) Log(index int, name string) string {
+	if r.codes {
+		return fmt.Sprintf("log %d", index+1)
+	}
+	return name
+}
+
+// Logs replaces the quoted names of logs in a sentence where codes stand for
+// names.
+func (r Rule) Logs(names []string, s string) string {
+	if r.codes {
+		for i, n := range names {
+			s = strings.ReplaceAll(s, fmt.Sprintf("%q", n), fmt.Sprintf("%q", r.Log(i, n)))
+		}
+	}
+	return s
+}

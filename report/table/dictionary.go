@@ -82,5 +82,5 @@ var otherFields = []Field{
 	{"readings", "rejected_by_reason", "", "how many for which reason"}, {"readings", "first_utc", "", "first accepted reading"},
 	{"readings", "last_utc", "", "last accepted reading"}, {"readings", "gaps", "", "gaps longer than the hold limit"},
 	{"readings", "longest_gap_h", "h", "the longest of them"}, {"readings", "coverage", "1", "covered share of the period"},
-	{"readings", "checks", "", "what the checks found"},
+	{"readings", "checks", "", "what the checks found"}, {"readings", "clock", "", "how the log's clock was read, with its corrections, and what the check of it found"},
 }

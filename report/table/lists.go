@@ -105,7 +105,7 @@ func utc(unixS int64, known bool) string {
 // WriteReadingsCSV writes what became of every point's readings.
 func WriteReadingsCSV(w io.Writer, in Input) error {
 	rule := privacy.For(in.Site)
-	b := []byte(bom + "source,column,point,rows_read,accepted,rejected,rejected_by_reason,first_utc,last_utc,gaps,longest_gap_h,coverage,checks\n")
+	b := []byte(bom + "source,column,point,rows_read,accepted,rejected,rejected_by_reason,first_utc,last_utc,gaps,longest_gap_h,coverage,checks,clock\n")
 	for i := range in.Ledger.Points {
 		p, def := &in.Ledger.Points[i], &in.Site.Points[i]
 		known := p.Counts[reading.Accepted] > 0
@@ -123,7 +123,8 @@ func WriteReadingsCSV(w io.Writer, in Input) error {
 		b = fmt.Appendf(b, ",%d,", p.Gaps)
 		b = appendNumber(b, float64(p.LongestGapS)/3600, 2)
 		b = appendNumber(append(b, ','), p.Coverage, 5)
-		b = appendText(append(b, ','), rule.Text(checksOf(in.Ledger, i)))
+		b = appendText(append(b, ','), rule.Text(rule.Logs(logNames(in.Ledger), checksOf(in.Ledger, i))))
+		b = appendText(append(b, ','), clockOf(in.Ledger, i))
 		b = append(b, '\n')
 	}
 	_, err := w.Write(b)

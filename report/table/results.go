@@ -255,7 +255,7 @@ func (in *Input) quality(rule privacy.Rule) *object {
 			from, to = utc(c.FromUTC, true), utc(c.ToUTC, true)
 		}
 		checks = append(checks, (&object{}).set("check", string(c.Kind)).set("points", names).set("effect", string(c.Effect)).
-			set("from_utc", from).set("to_utc", to).set("readings", c.Readings).set("evidence", rule.Text(c.Evidence)).set("do_next", rule.Text(c.DoNext)))
+			set("from_utc", from).set("to_utc", to).set("readings", c.Readings).set("evidence", rule.Text(rule.Logs(logNames(l), c.Evidence))).set("do_next", rule.Text(c.DoNext)))
 	}
 	clocks := []any{}
 	for k, n := range l.Clock {
@@ -266,5 +266,5 @@ func (in *Input) quality(rule privacy.Rule) *object {
 		checks = checks[:listMax]
 	}
 	return (&object{}).set("rows_read", read).set("accepted", accepted).set("rejected", read-accepted).set("rejected_share", num(l.RejectedShare())).
-		set("rejected_by_reason", rejected).set("checks", checks).set("clock", clocks).set("points", points)
+		set("rejected_by_reason", rejected).set("checks", checks).set("clock", clocks).set("clocks", in.clockVerdicts(rule)).set("points", points)
 }

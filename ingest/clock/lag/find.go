@@ -138,6 +138,9 @@ func Find(fr *Frame, witnesses []*Witness) *Finding {
 		r, _ := w.plane.fit(0, len(s.Days), func(int) float64 { return s.base })
 		f.Fit = max(f.Fit, r)
 	}
+	if f.Fit < usable {
+		return &Finding{Usable: s.ws}
+	}
 	f.ShiftMin = s.base * s.BinMin
 	return f
 }

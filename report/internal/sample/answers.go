@@ -192,6 +192,10 @@ func (m *maker) makeLedger() {
 		{Kind: reading.CheckHoliday, Points: nil, Zone: -1, Effect: reading.EffectWarned, Evidence: "three days of flat CO2", DoNext: "Add them to the holidays if nobody was there"},
 	}
 	l.Clock = []reading.ClockNote{{File: "trends.csv", Text: "daylight saving: one hour skipped, one repeated", Skipped: 12, Repeated: 12}}
+	l.Clocks = []reading.ClockVerdict{{Log: "trends", Points: []int{0}, Declared: "local time", Verdict: reading.ClockForATime, ShiftMin: 60, EndShiftMin: 60, FromUTC: m.Grid.StartUTC, ToUTC: m.Grid.StartUTC + 30*86400,
+		HeldAgainst: "CO2 of 3 other logs", Fit: 0.8, FitWithout: 0.4, Better: 28, Days: 30, Sure: true, Evidence: "the log \"trends\" runs 1.0 h ahead of 12 points of other logs",
+		DoNext: "compare the logger's clock with a watch", SiteFile: "clock: {is: local, shifts: [{from: 2031-01-01, to: 2031-01-30, shift_min: -60}]}"},
+		{Log: "weather", Declared: "universal time", Verdict: reading.ClockUntold, ShiftMin: math.NaN(), EndShiftMin: math.NaN(), Evidence: "nothing else that is logged moves with what this log says"}}
 	l.Issues = []reading.Issue{{Where: reading.Where{File: "trends.csv", Line: 17, Col: 3}, Point: 0, Text: `not a number: "n/a"`, Hint: "add it to the missing markers"}}
 	m.Ledger = l
 }
