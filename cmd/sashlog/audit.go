@@ -36,6 +36,7 @@ type auditJob struct {
 	from, to site.Date
 	quiet    bool
 	pdf      bool
+	figures  bool
 	paper    string // A4 or Letter
 	command  string // as shown in the report
 }
@@ -55,6 +56,7 @@ where the occupied hours went, and writes into the output folder:
   comfort.parquet  hours outside each comfort criterion
   episodes.csv     the missed episodes and their causes
   readings.csv     what became of every logged point's readings
+  figure-*         with --figures, every figure as SVG and its data as CSV
   report.pdf       with --pdf, where a Chromium browser is installed
 
 It ends with 1 when more readings were rejected than the site file tolerates.`,
@@ -85,6 +87,7 @@ It ends with 1 when more readings were rejected than the site file tolerates.`,
 	cmd.Flags().StringVar(&from, "from", "", "first local day of the period, as 2025-05-01")
 	cmd.Flags().StringVar(&to, "to", "", "last local day of the period, inclusive")
 	cmd.Flags().BoolVar(&job.pdf, "pdf", false, "also print the report to report.pdf, with a Chromium browser of this machine")
+	cmd.Flags().BoolVar(&job.figures, "figures", false, "also write every figure as SVG and its data as CSV, as figure-NN-name.svg and .csv")
 	cmd.Flags().StringVar(&job.paper, "paper", "A4", "paper the report prints to: A4 or Letter")
 	return cmd
 }
@@ -176,7 +179,11 @@ func (job auditJob) run(ctx context.Context, p process) error {
 	}
 	pages := a.pages()
 	pages.Paper = job.paper
-	out, err := writeOutputs(ctx, job.into, "report.html", outputsOf(a.tables(), pages))
+	outputs := outputsOf(a.tables(), pages)
+	if job.figures {
+		outputs = append(outputs, figuresOf(pages)...)
+	}
+	out, err := writeOutputs(ctx, job.into, "report.html", outputs)
 	if err != nil {
 		return err
 	}
@@ -226,6 +233,19 @@ func printPDF(ctx context.Context, p process, into string, pages page.Input) err
 	}
 	fmt.Fprintln(p.stdout, out)
 	return nil
+}
+
+// figuresOf are the figures of the report on their own, with their data.
+func figuresOf(pages page.Input) []output {
+	var out []output
+	for _, f := range page.Figures(pages) {
+		name := fmt.Sprintf("figure-%02d-%s", f.Number, f.ID)
+		out = append(out, output{name + ".svg", func(w io.Writer) error { _, err := w.Write(f.SVG); return err }})
+		if len(f.Rows) > 0 {
+			out = append(out, output{name + ".csv", func(w io.Writer) error { return table.WriteFigureCSV(w, f.Header, f.Rows) }})
+		}
+	}
+	return out
 }
 
 // outputsOf are the outputs of an audit.

@@ -31,6 +31,7 @@ const maxCarpetDays = 1500
 // Carpet draws days from left to right and the hours of the day upwards, one
 // coloured cell each, as one image layer under vector axes.
 func Carpet(d CarpetData, o Options) (SVG, error) {
+	o.record(d)
 	f, err := newFrame("carpet", d.Caption, o)
 	if err != nil {
 		return "", err

@@ -35,6 +35,7 @@ const maxCO2Panels = 12
 
 // CO2Duration draws duration curves per running state, one panel per zone.
 func CO2Duration(d CO2DurationData, o Options) (SVG, error) {
+	o.record(d)
 	f, err := newFrame("CO2 duration", d.Caption, o)
 	if err != nil {
 		return "", err

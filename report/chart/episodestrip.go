@@ -58,6 +58,7 @@ const maxStripSteps = 14 * 288
 // EpisodeStrip draws temperatures with the comfort band, window and plant as
 // bars, and CO2 below; missed spans are shaded and gaps stay gaps.
 func EpisodeStrip(d EpisodeStripData, o Options) (SVG, error) {
+	o.record(d)
 	f, err := newFrame("episode strip", d.Caption, o)
 	if err != nil {
 		return "", err

@@ -30,6 +30,7 @@ type ZoneExceedance struct {
 // axis, zones with most first; whiskers show the bounds. At most 60 zones are
 // drawn and the rest counted.
 func Exceedance(d ExceedanceData, o Options) (SVG, error) {
+	o.record(d)
 	f, err := newFrame("exceedance", d.Caption, o)
 	if err != nil {
 		return "", err

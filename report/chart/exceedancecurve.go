@@ -29,6 +29,7 @@ type NamedCurve struct {
 
 // ExceedanceCurve draws how much of the occupied time lay above a temperature.
 func ExceedanceCurve(d ExceedanceCurveData, o Options) (SVG, error) {
+	o.record(d)
 	f, err := newFrame("exceedance curve", d.Caption, o)
 	if err != nil {
 		return "", err

@@ -32,6 +32,7 @@ type MonthHours struct {
 
 // MonthlyStack draws one stacked column per month.
 func MonthlyStack(d MonthlyStackData, o Options) (SVG, error) {
+	o.record(d)
 	f, err := newFrame("monthly stack", d.Caption, o)
 	if err != nil {
 		return "", err

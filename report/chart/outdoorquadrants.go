@@ -64,6 +64,7 @@ const maxDots = 3000
 // hour, or above 3,000 hours one square per bin in the colour of its most
 // frequent class and with an area that grows with its hours.
 func OutdoorQuadrants(d OutdoorQuadrantsData, o Options) (SVG, error) {
+	o.record(d)
 	f, err := newFrame("outdoor quadrants", d.Caption, o)
 	if err != nil {
 		return "", err

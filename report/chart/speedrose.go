@@ -24,6 +24,7 @@ type SpeedRoseData struct {
 // SpeedRose draws a wind rose: petals point to where the wind comes from,
 // their length from the rim of the calm disc is the share of time.
 func SpeedRose(d SpeedRoseData, o Options) (SVG, error) {
+	o.record(d)
 	f, err := newFrame("speed rose", d.Caption, o)
 	if err != nil {
 		return "", err

@@ -37,6 +37,14 @@ type Options struct {
 	// WidthMM is the width on paper, 60 to 400 mm; 0 means 170 mm, the text
 	// width of an A4 page.
 	WidthMM float64
+	// Record, when not nil, is told what the figure is drawn from; see Table.
+	Record func(data any)
+}
+
+func (o Options) record(data any) {
+	if o.Record != nil {
+		o.Record(data)
+	}
 }
 
 // Caption is the accessible text of a figure, read out in its place. Title

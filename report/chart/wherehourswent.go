@@ -33,6 +33,7 @@ type HoursStep struct {
 // the end of what remains. A total that does not equal what remains (to 0.5 %
 // of the first) is an error: the figure would contradict itself.
 func WhereHoursWent(d WhereHoursWentData, o Options) (SVG, error) {
+	o.record(d)
 	f, err := newFrame("where hours went", d.Caption, o)
 	if err != nil {
 		return "", err

@@ -33,6 +33,7 @@ type ZoneShare struct {
 // first. Zones without a share but with bounds show the whisker alone; zones
 // with neither are counted in a note.
 func ZoneLeague(d ZoneLeagueData, o Options) (SVG, error) {
+	o.record(d)
 	f, err := newFrame("zone league", d.Caption, o)
 	if err != nil {
 		return "", err

@@ -91,16 +91,18 @@ func texts(list ...string) []block {
 
 // draw numbers a figure and places its drawing, or says why there is none.
 func (b *builder) draw(id, caption, none string, make func(chart.Options) (chart.SVG, error)) block {
-	svg, err := make(chart.Options{ID: id})
+	var data any
+	svg, err := make(chart.Options{ID: id, Record: func(d any) { data = d }})
 	if errors.Is(err, chart.ErrNoData) {
 		return note(none)
 	}
 	b.figures++
 	b.places[id] = place{"Figure " + words.Count(int64(b.figures)), id + "-figure"}
-	f := &figure{ID: id, Caption: caption, Number: b.figures, SVG: template.HTML(svg)}
+	f := &figure{ID: id, Caption: caption, Number: b.figures, SVG: markup(svg)}
 	if err != nil {
 		f.None = "This figure could not be drawn: " + words.Clean(err.Error()) + "."
 	}
+	b.export(f, data)
 	return block{Figure: f}
 }
 

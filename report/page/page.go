@@ -132,6 +132,8 @@ type builder struct {
 	tables  int
 	// places are the figures and tables by id, for links from findings.
 	places map[string]place
+	// exported gathers figures on their own, when wanted.
+	exported []Exported
 }
 
 func newBuilder(in Input) *builder {
