@@ -14,8 +14,10 @@
 //  11. doubt: how far could the sensors' own errors move all this?
 //  12. votes: what did the occupants say, and do the models predict it?
 //  13. energy: what did the plant use in hours that could have been open?
-//  14. answerable: what can these logs answer at all?
-//  15. advice: what should be done first?
+//  14. changeover: which limits does the building behave as if it had, and when did they change?
+//  15. leaders: which room's thermostat closes the building?
+//  16. answerable: what can these logs answer at all?
+//  17. advice: what should be done first?
 package analyze
 
 import (
@@ -23,12 +25,14 @@ import (
 	"sashlog/analyze/afterhours"
 	"sashlog/analyze/answerable"
 	"sashlog/analyze/calendar"
+	"sashlog/analyze/changeover"
 	"sashlog/analyze/doubt"
 	"sashlog/analyze/energy"
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
 	"sashlog/analyze/indoor"
+	"sashlog/analyze/leaders"
 	"sashlog/analyze/longterm"
 	"sashlog/analyze/lost"
 	"sashlog/analyze/outdoor"
@@ -62,6 +66,8 @@ type Results struct {
 	AfterHours *afterhours.Result
 	Answerable []answerable.Question
 	LongTerm   *longterm.Result
+	Changeover *changeover.Result
+	Leaders    *leaders.Result
 	Doubt      *doubt.Result
 	Votes      *votes.Result // nil without votes
 	Energy     *energy.Result

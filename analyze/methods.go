@@ -1,12 +1,14 @@
 package analyze
 
 import (
+	"sashlog/analyze/changeover"
 	"sashlog/analyze/comfort"
 	"sashlog/analyze/doubt"
 	"sashlog/analyze/energy"
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
+	"sashlog/analyze/leaders"
 	"sashlog/analyze/longterm"
 	"sashlog/analyze/lost"
 	"sashlog/analyze/method"
@@ -18,6 +20,6 @@ import (
 // Methods lists the documentation of every method in use, in the order the
 // analyses run; the report's appendix and the list of methods print from it.
 func Methods() []method.Doc {
-	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc, doubt.Doc, votes.Doc, energy.Doc}
+	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc, doubt.Doc, votes.Doc, energy.Doc, changeover.Doc, leaders.Doc}
 	return append(docs, comfort.Docs()...)
 }

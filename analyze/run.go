@@ -5,6 +5,7 @@ import (
 	"sashlog/analyze/afterhours"
 	"sashlog/analyze/answerable"
 	"sashlog/analyze/calendar"
+	"sashlog/analyze/changeover"
 	"sashlog/analyze/cores"
 	"sashlog/analyze/doubt"
 	"sashlog/analyze/energy"
@@ -12,6 +13,7 @@ import (
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
 	"sashlog/analyze/indoor"
+	"sashlog/analyze/leaders"
 	"sashlog/analyze/longterm"
 	"sashlog/analyze/lost"
 	"sashlog/analyze/outdoor"
@@ -56,6 +58,10 @@ func Run(in Input) *Results {
 	r.LongTerm = longterm.Assess(longterm.Input{Site: s, Criteria: c, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor,
 		Running: r.Running, Exceedance: r.Exceedance})
 	r.Votes = votes.Compare(votes.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running, Exceedance: r.Exceedance})
+	r.Changeover = changeover.Read(changeover.Input{Site: s, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor,
+		Running: r.Running, Potential: r.Potential, Lost: r.Lost, Seed: 1})
+	r.Leaders = leaders.Find(leaders.Input{Site: s, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
+		Exceedance: r.Exceedance, Record: r.Hours, Lost: r.Lost, Changeover: r.Changeover, Seed: 1})
 	r.Answerable = answerable.Ask(s, g)
 	r.Findings = advice.Advise(advice.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
 		Exceedance: r.Exceedance, Potential: r.Potential, Record: r.Hours, Summary: r.Summary, FreshAir: r.FreshAir,

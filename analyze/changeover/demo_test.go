@@ -58,6 +58,11 @@ func TestLook(t *testing.T) {
 	start := time.Now()
 	c := read(in, r)
 	t.Logf("%v, tried %d", time.Since(start), c.Tried)
+	t.Logf("%+v missed %.0f", r.Leaders.Units, r.Leaders.MissedH)
+	for _, l := range r.Leaders.Leaders {
+		t.Logf("leader %s %+v", in.Site.Zones[l.Zone].ID, l)
+	}
+	t.Logf("%+v", r.Leaders.Explained)
 	for _, u := range r.Lost.Units {
 		for _, c := range u.Calls {
 			t.Logf("lost: %s %s %+v", u.ID, in.Site.Zones[c.Zone].ID, c)

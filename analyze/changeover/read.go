@@ -89,7 +89,7 @@ func Read(in Input) *Result {
 			}
 		}
 		if s := clocks[k]; s != nil {
-			if sh, ok := s.shift(rng, r.Tried, drifts); ok {
+			if sh, ok := s.shift(rng, r.Tried, drifts); ok && math.Abs(sh.After-sh.Before) >= shiftLeastShare {
 				sh.What = "start by the clock"
 				out[k].Clock = &sh
 			}

@@ -38,6 +38,8 @@ const (
 	dateDrop = 7.35
 	// shiftLeastK is the least change of a limit that is told.
 	shiftLeastK = 0.5
+	// shiftLeastShare is that of the days with a start by the clock.
+	shiftLeastShare = 0.5
 )
 
 // cut finds the split of the listed days that raises the log-likelihood most,
