@@ -69,6 +69,14 @@ func clocks(r *run) {
 		find(func(k int) bool { return found[k].Kind > lag.Right && !out[c.logs[k].name] })
 	}
 	for k, l := range c.logs {
+		if found[k].Kind <= lag.Right {
+			if f := c.habit(l, c.seasonal(l)); f != nil {
+				v := c.verdict(l)
+				c.suspectHabit(l, f, &v)
+				c.ledger.Clocks = append(c.ledger.Clocks, v)
+				continue
+			}
+		}
 		c.report(l, found[k])
 	}
 }
@@ -153,13 +161,18 @@ func standardS(t time.Time) int {
 	return min(a, b)
 }
 
-// report writes down what was found of a log, and takes out what is surely
-// wrong.
-func (c *clockRun) report(l *logSeries, f *lag.Finding) {
+func (c *clockRun) verdict(l *logSeries) reading.ClockVerdict {
 	v := reading.ClockVerdict{Log: l.name, Points: l.points, Declared: "local time", ShiftMin: math.NaN(), EndShiftMin: math.NaN()}
 	if log := c.logOf(l.name); log != nil {
 		v.Declared = log.Clock.Words()
 	}
+	return v
+}
+
+// report writes down what was found of a log, and takes out what is surely
+// wrong.
+func (c *clockRun) report(l *logSeries, f *lag.Finding) {
+	v := c.verdict(l)
 	switch f.Kind {
 	case lag.Unknown:
 		v.Verdict, v.Evidence = reading.ClockUntold, "nothing else that is logged moves with what this log says, so a wrong clock would not show"
@@ -243,7 +256,7 @@ func (c *clockRun) accuse(l *logSeries, f *lag.Finding, v *reading.ClockVerdict)
 			if math.IsNaN(without) {
 				v.ShiftMin = within
 			} else {
-				what += fmt.Sprintf(" while daylight saving is in force and %s %s otherwise", hours(without), aheadOf(without))
+				what = fmt.Sprintf("runs %s (outside daylight saving %+.0f min) %s", hours(within), without, aheadOf(within))
 			}
 		case follows:
 			v.Verdict, why = reading.ClockIgnoredSaving, "it ignored daylight saving"
@@ -251,7 +264,7 @@ func (c *clockRun) accuse(l *logSeries, f *lag.Finding, v *reading.ClockVerdict)
 			v.Verdict, why = reading.ClockFollowedSaving, "it followed daylight saving"
 		}
 		if f.ShiftMin == 0 {
-			what = fmt.Sprintf("runs %s %s while daylight saving is in force", hours(within), aheadOf(within))
+			what = fmt.Sprintf("runs, while daylight saving is in force, %s %s", hours(within), aheadOf(within))
 		}
 		sure = sure || f.T >= 8 && len(f.Agree) >= 1 && len(logs) >= 2
 	case lag.Drift:
@@ -268,7 +281,7 @@ func (c *clockRun) accuse(l *logSeries, f *lag.Finding, v *reading.ClockVerdict)
 	} else if len(logs) == 1 {
 		why = strings.TrimPrefix(why+"; which of the two logs is wrong they cannot tell", "; ")
 	}
-	v.Evidence = fmt.Sprintf("the log %q %s of %s %s: the pattern of %s fits with a correlation of %.2f at that lag and %.2f without, and better on %d of %d days",
+	v.Evidence = fmt.Sprintf("the log %q %s %s %s: the pattern of %s fits with a correlation of %.2f at that lag and %.2f without, and better on %d of %d days",
 		l.name, what, against, span, names(f.Agree), f.Fit, f.FitWithout, f.Better, f.Days)
 	if why != "" {
 		v.Evidence += "; " + why
@@ -322,7 +335,7 @@ func aheadOf(m float64) string {
 	if m < 0 {
 		return "behind"
 	}
-	return "ahead"
+	return "ahead of"
 }
 
 // correction is what the site file must say of a log's clock for its times to

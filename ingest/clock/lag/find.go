@@ -145,6 +145,27 @@ func Find(fr *Frame, witnesses []*Witness) *Finding {
 	return f
 }
 
+// FindSeasonal weighs one explanation alone: that the log differs from its
+// stated clock in daylight saving; nil when it does not stand.
+func FindSeasonal(fr *Frame, witnesses []*Witness) *Finding {
+	s := &search{Frame: fr, most: int(math.Round(2 * 60 / fr.BinMin))}
+	for _, w := range witnesses {
+		if w.measure(fr.Days, s.most); w.plane.days >= daysLeast {
+			s.ws = append(s.ws, w)
+		}
+	}
+	if len(s.ws) == 0 {
+		return nil
+	}
+	s.add()
+	s.base = 0
+	f := &Finding{Kind: Seasonal, To: len(fr.Days), path: slices.Clone(fr.Seasonal), Usable: s.ws}
+	if f.Gain = s.score(f.path); f.Gain < sureDays || !s.judge(f) {
+		return nil
+	}
+	return f
+}
+
 // best is the greatest correlation of a witness at any lag, over the record or
 // a third as much better over two months of it (a drift blurs the whole).
 func (w *Witness) best() float64 {
