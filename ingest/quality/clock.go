@@ -19,6 +19,10 @@ import (
 // corrected; our assumption: less moves few of the hours an audit counts.
 const removeMin = 30
 
+// stampMin is the constant shift that hourly means with the wrong stamp can
+// show: half an hour.
+const stampMin = 45
+
 // clocks judges the clock of every log (package lag) and says how sure that
 // is. The log with the strongest evidence against it is judged first and then
 // no longer held against the others, so that one wrong clock does not cast
@@ -236,6 +240,8 @@ func (c *clockRun) accuse(l *logSeries, f *lag.Finding, v *reading.ClockVerdict)
 		v.Verdict = reading.ClockOtherZone
 		if f.Best() > lag.Machine {
 			why, sure = "it does so throughout, which working hours may explain", false
+		} else if math.Abs(f.ShiftMin) < stampMin {
+			why, sure = "means stamped with the wrong end of their interval (stamp in points.csv) may explain it", false
 		}
 	case lag.Seasonal:
 		within, without := math.NaN(), math.NaN()
