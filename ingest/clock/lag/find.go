@@ -123,6 +123,8 @@ func Find(fr *Frame, witnesses []*Witness) *Finding {
 	if k := slices.IndexFunc(tries, func(t *Finding) bool { return t.Kind == Seasonal }); k > 0 && fr.Likely != nil &&
 		tries[k].Gain > 0.98*tries[0].Gain && fr.Likely(tries[k].ShiftMin) {
 		tries[0], tries[k] = tries[k], tries[0]
+	} else if k > 0 && tries[0].Kind == ForATime && tries[k].Gain > 0.9*tries[0].Gain {
+		tries[0], tries[k] = tries[k], tries[0] // the dates of the law need no luck
 	}
 	for _, t := range tries {
 		if t.Gain < sureDays {
@@ -275,7 +277,9 @@ func (s *search) seasonal() *Finding {
 		p := make([]float64, len(s.Days))
 		biggest := 0.0
 		for d := range p {
-			p[d] = k + s.Seasonal[d]
+			if p[d] = k + s.Seasonal[d]; p[d] == 0 {
+				p[d] = s.base * s.BinMin // right, as nature has it
+			}
 			biggest = max(biggest, math.Abs(p[d]))
 		}
 		if biggest < leastMin {
