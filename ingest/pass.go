@@ -209,6 +209,9 @@ func (n *notes) Reading(point int, unixS int64, v float64) {
 	n.belt.put(point, unixS, v)
 }
 
+// Gap takes its place among the readings of the point.
+func (n *notes) Gap(point int, unixS int64) { n.belt.put(point, unixS, math.NaN()) }
+
 func (n *notes) Reject(point int, why reading.Reason, at reading.Where, text string) {
 	if point < 0 {
 		n.unmapped[text]++

@@ -116,6 +116,40 @@ func (b *Builder) Reading(point int, t int64, v float64) {
 	s.take(t, q)
 }
 
+// gap notes that a point fell silent; the note has its place in the order of
+// the point's readings.
+func (b *Builder) gap(point int, t int64) {
+	s := &b.series[point]
+	if t < instantLeast || t > instantMost {
+		return
+	}
+	if b.second {
+		if !b.again[point] {
+			return
+		}
+	} else {
+		if t < s.lastT {
+			if !s.dropped {
+				s.dropped = true
+				s.acc.blocks = blocks{}
+			}
+		} else {
+			s.lastT = t
+		}
+		if s.dropped {
+			return
+		}
+	}
+	if b.opt.ToUTC != 0 && (t < b.opt.FromUTC || t >= b.opt.ToUTC) {
+		return
+	}
+	if s.dropped {
+		b.spill.put(point, t, gapQ)
+		return
+	}
+	s.take(t, gapQ)
+}
+
 // within decides the rare cases: a hair outside the limits is rounding.
 func (s *series) within(v float64) bool {
 	if math.IsNaN(v) || math.IsInf(v, 0) {

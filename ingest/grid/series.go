@@ -20,6 +20,8 @@ const (
 	holdStateS               = 25 * 3600
 	spikeIntervalMostS       = 3600
 	noTime             int64 = math.MinInt64
+	// gapQ stands for the value of an instant at which a point fell silent.
+	gapQ int64 = math.MinInt64
 )
 
 // instant is what one point said at one instant: a value, how often it was
@@ -60,6 +62,7 @@ type series struct {
 	cand  instant // waits for its successor, t == noTime when empty
 
 	curT, curQ int64 // the value that holds now
+	silent     bool  // it held until the point fell silent
 	acc        accumulator
 
 	n, sum     int64
@@ -98,6 +101,14 @@ func (s *series) reset(p *site.Point, r Rule, stepS int64) {
 // take is the first stage: one reading as the source gave it.
 func (s *series) take(t int64, q int64) {
 	if t == s.pending.t {
+		// A value at the same instant outweighs the silence.
+		if q == gapQ {
+			return
+		}
+		if s.pending.q == gapQ {
+			s.pending = instant{t: t, q: q, said: 1}
+			return
+		}
 		s.pending.said++
 		if q != s.pending.q {
 			s.pending.conflict = true
@@ -183,12 +194,19 @@ const IntervalSample = intervalSample
 
 // usualInterval is the median difference; of an even number the lower one.
 func usualInterval(in []instant) int64 {
-	if len(in) < 2 {
-		return 0
+	var d []int64
+	last := noTime
+	for _, i := range in {
+		if i.q == gapQ {
+			continue
+		}
+		if last != noTime {
+			d = append(d, i.t-last)
+		}
+		last = i.t
 	}
-	d := make([]int64, len(in)-1)
-	for i := range d {
-		d[i] = in[i+1].t - in[i].t
+	if len(d) == 0 {
+		return 0
 	}
 	slices.Sort(d)
 	return d[(len(d)-1)/2]
@@ -197,6 +215,14 @@ func usualInterval(in []instant) int64 {
 // accept takes single spikes out, which needs the successor.
 func (s *series) accept(in instant) {
 	in.t -= s.shiftS
+	if in.q == gapQ {
+		if s.cand.t != noTime {
+			s.emit(s.cand.t, s.cand.q)
+			s.cand.t = noTime
+		}
+		s.silence(in.t)
+		return
+	}
 	if s.rainS > 0 {
 		in.q = int64(math.Round(float64(in.q) * 3600 / float64(s.rainS)))
 	}
@@ -227,7 +253,14 @@ func (s *series) isSpike(next instant) bool {
 func (s *series) emit(t, q int64) {
 	if s.curT != noTime {
 		d := t - s.curT
-		if d > s.holdS {
+		if s.silent {
+			s.silent = false
+			if d > s.holdS {
+				s.gaps++
+				s.longestS = max(s.longestS, d)
+			}
+			s.endRun()
+		} else if d > s.holdS {
 			s.acc.hold(s.curT, s.curT+s.holdS, s.curQ)
 			s.gaps++
 			s.longestS = max(s.longestS, d)
@@ -252,6 +285,15 @@ func (s *series) emit(t, q int64) {
 	if s.frozenS > 0 {
 		s.sameRun(t, q)
 	}
+}
+
+// silence ends the value that holds, at its limit at the latest.
+func (s *series) silence(t int64) {
+	if s.curT == noTime || s.silent || t < s.curT {
+		return
+	}
+	s.acc.hold(s.curT, min(t, s.curT+s.holdS), s.curQ)
+	s.silent = true
 }
 
 // sameRun lengthens the run of exactly the same value, or begins another.
@@ -289,7 +331,7 @@ func (s *series) end() {
 		s.emit(s.cand.t, s.cand.q)
 		s.cand.t = noTime
 	}
-	if s.curT != noTime {
+	if s.curT != noTime && !s.silent {
 		s.acc.hold(s.curT, s.curT+s.holdS, s.curQ)
 	}
 	s.endRun()

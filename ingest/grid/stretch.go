@@ -9,6 +9,11 @@ import (
 func (b *Builder) Readings(point int, list []reading.At) {
 	s := &b.series[point]
 	for len(list) > 0 {
+		if v := list[0].Value; v != v {
+			b.gap(point, list[0].UnixS)
+			list = list[1:]
+			continue
+		}
 		if !b.second && s.common() {
 			list = list[s.stretch(list, b.opt):]
 			if len(list) == 0 {
@@ -23,7 +28,7 @@ func (b *Builder) Readings(point int, list []reading.At) {
 // common reports whether the stages of the series are in the state that
 // stretch can go on from.
 func (s *series) common() bool {
-	return s.ready && !s.dropped && s.fix.Factor == 0 && s.rainS == 0 && s.acc.open && s.acc.kind <= site.Switch &&
+	return s.ready && !s.dropped && !s.silent && s.pending.q != gapQ && s.fix.Factor == 0 && s.rainS == 0 && s.acc.open && s.acc.kind <= site.Switch &&
 		s.curT != noTime && (s.spike == 0 || s.cand.t != noTime) && s.pending.t != noTime && s.pending.said == 1 && !s.pending.conflict
 }
 

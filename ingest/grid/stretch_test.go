@@ -49,6 +49,8 @@ func TestReadingsAtOnceAreReadingsOneByOne(t *testing.T) {
 				x = 1000
 			case k < 4:
 				x = v + 15 // a spike
+			case k == 4:
+				x = math.NaN() // fell silent
 			case k < 60:
 				v += float64(k%9-4) / 10
 				x = v
@@ -60,6 +62,10 @@ func TestReadingsAtOnceAreReadingsOneByOne(t *testing.T) {
 		defer many.Close()
 		feed := func() {
 			for _, r := range list {
+				if math.IsNaN(r.Value) {
+					one.gap(0, r.UnixS)
+					continue
+				}
 				one.Reading(0, r.UnixS, r.Value)
 			}
 			for rest := list; len(rest) > 0; {

@@ -77,7 +77,13 @@ type Sink interface {
 	Issue(Issue)
 }
 
-// At is one value of a point known from elsewhere.
+// Gapper is a sink that can be told when a point fell silent: a record at an
+// instant says that there is no value (a missing marker, a word nobody knows),
+// so the value before it does not hold beyond that instant.
+type Gapper interface{ Gap(point int, unixS int64) }
+
+// At is one value of a point known from elsewhere; NaN says that the point fell
+// silent.
 type At struct {
 	UnixS int64
 	Value float64

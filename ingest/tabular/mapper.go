@@ -24,6 +24,7 @@ type Mapper struct {
 	log    *site.Log
 	frame  *Frame
 	to     reading.Sink
+	gapper reading.Gapper // nil where the sink does not ask
 	parser *clock.Parser
 	times  *clock.Resolver
 	tally  clock.Tally
@@ -86,6 +87,7 @@ type Setup struct {
 // they are now.
 func NewMapper(s Setup, to reading.Sink) (*Mapper, error) {
 	m := &Mapper{file: s.File, log: s.Log, frame: s.Frame, to: to, distrust: s.Disordered, names: map[string]string{}}
+	m.gapper, _ = to.(reading.Gapper)
 	var err error
 	if m.parser, err = clock.NewParser(s.Order, s.Log.TimeFormat, s.Date1904); err != nil {
 		return nil, err
@@ -309,5 +311,16 @@ func (m *Mapper) cell(t *target, b []byte, unixS int64, col int, to reading.Sink
 		m.NoChange++ // nothing written: nothing changed
 	default:
 		to.Reject(t.point, r, m.where(col), text)
+		if text != "" { // an empty cell of a sampled point is no sample, nothing more
+			m.gap(t, unixS, to)
+		}
+	}
+}
+
+// gap tells that a record held no value. Instants that are not sure are passed
+// over.
+func (m *Mapper) gap(t *target, unixS int64, to reading.Sink) {
+	if m.gapper != nil && to == m.to {
+		m.gapper.Gap(t.point, unixS)
 	}
 }
