@@ -47,7 +47,8 @@ func newJudge(in *Input, z int) *judge {
 }
 
 // shortOpenings marks the steps of runs of open or both no longer than
-// airingMin.
+// airingMin. A run beside steps of unknown state may have been longer, and is
+// not known to be short.
 func shortOpenings(g *grid.Grid, state []running.State, airingMin float64) []bool {
 	out := make([]bool, len(state))
 	longest := int(airingMin*60/float64(g.StepS) + 1e-9)
@@ -60,7 +61,8 @@ func shortOpenings(g *grid.Grid, state []running.State, airingMin float64) []boo
 		for to < len(state) && isOpen(to) {
 			to++
 		}
-		if to-from <= longest {
+		whole := (from == 0 || state[from-1] != running.Unknown) && (to == len(state) || state[to] != running.Unknown)
+		if whole && to-from <= longest {
 			for i := from; i < to; i++ {
 				out[i] = true
 			}

@@ -65,7 +65,7 @@ var classCols = [NumClasses][]Col{
 var (
 	stateCols    = [running.NumStates]Col{running.Unknown: CUnknown, running.Open: COpen, running.Mech: CMech, running.Both: CBoth, running.Shut: CShut}
 	allStateCols = [running.NumStates]Col{running.Unknown: CAllUnknown, running.Open: CAllOpen, running.Mech: CAllMech, running.Both: CAllBoth, running.Shut: CAllShut}
-	suitCols     = [potential.NumSuits]Col{potential.Suited: CSuited, potential.TooCold: CTooCold, potential.TooWarm: CTooWarm, potential.TooHumid: CTooHumid, potential.TooWindy: CTooWindy, potential.Rain: CRain, potential.Polluted: CPolluted, potential.TooBrief: CTooBrief, potential.SuitUnknown: CSuitedUnknown}
+	suitCols     = [potential.NumSuits]Col{potential.Suited: CSuited, potential.TooCold: CTooCold, potential.TooWarm: CTooWarm, potential.TooWarmAndMore: CTooWarm, potential.TooHumid: CTooHumid, potential.TooWindy: CTooWindy, potential.Rain: CRain, potential.Polluted: CPolluted, potential.TooBrief: CTooBrief, potential.SuitUnknown: CSuitedUnknown}
 	bothCols     = map[uint8]Col{uint8(site.PlantCool): CBothCool, uint8(site.PlantHeat): CBothHeat, uint8(site.PlantVent): CBothVent, uint8(site.PlantOn): CBothUntyped}
 )
 
@@ -114,8 +114,11 @@ func (r *Record) count(in *Input, j *judge, purge *purge, h int) {
 		}
 		zone := &in.Potential.Zones[j.z]
 		add(suitCols[zone.Suit[i]])
-		if zone.Fan[i] == potential.Suited {
+		switch zone.Fan[i] {
+		case potential.Suited:
 			add(CSuitedFan)
+		case potential.SuitUnknown:
+			add(CSuitedFanUnknown)
 		}
 		if zone.Raw[i] == potential.Suited {
 			add(CSuitedRaw)

@@ -85,7 +85,7 @@ func (t *Total) bound() {
 	}
 	t.Occupied = upTo(h[COccupied])
 	t.Suited = upTo(h[CSuited], suitUnknown)
-	t.SuitedFan = upTo(h[CSuitedFan], suitUnknown)
+	t.SuitedFan = upTo(h[CSuitedFan], h[CSuitedFanUnknown])
 	t.Achieved = upTo(h[CAchieved], stateUnknown, suitUnknown)
 	t.AchievedOK = upTo(h[CAchievedOK], h[CAchievedUnassessed], stateUnknown, suitUnknown)
 	t.Missed = upTo(h[CMissed], stateUnknown, suitUnknown)
@@ -95,7 +95,7 @@ func (t *Total) bound() {
 	t.Unjudged = upTo(h[CUnjudged])
 	t.NoOpening = upTo(h[CNoOpening])
 	t.Both = upTo(h[CBoth], h[CUnknown])
-	t.AchievedShare = shareOf(h[CAchieved], h[CMissed], stateUnknown)
+	t.AchievedShare = shareOf(h[CAchieved], h[CMissed], stateUnknown+suitUnknown+vacantOrNot)
 	t.MechFreeShare = shareOf(h[CSuitedPlantOff], h[CSuited]-h[CSuitedPlantOff]-h[CSuitedPlantUnknown], h[CSuitedPlantUnknown])
 	t.JudgedShare = math.NaN()
 	if base := h[COccupied] - h[CNoOpening]; base > 0 {

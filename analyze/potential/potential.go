@@ -8,7 +8,8 @@ type Suit uint8
 const (
 	Suited Suit = iota
 	TooCold
-	TooWarm
+	TooWarm        // and nothing else is known to fail
+	TooWarmAndMore // and humid, windy, wet or polluted too
 	TooHumid
 	TooWindy
 	Rain
@@ -18,7 +19,7 @@ const (
 	NumSuits
 )
 
-var suitWords = [NumSuits]string{"weather suitable", "too cold", "too warm", "too humid", "too windy", "rain", "polluted", "too brief", "unknown"}
+var suitWords = [NumSuits]string{"weather suitable", "too cold", "too warm", "too warm", "too humid", "too windy", "rain", "polluted", "too brief", "unknown"}
 
 func (s Suit) String() string { return suitWords[s] }
 

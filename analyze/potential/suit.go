@@ -137,7 +137,11 @@ func (w *weather) verdict(i int, highC float64, humidity bool) Suit {
 		return TooCold
 	}
 	if fails(w.out.TempC, highC, true) {
-		return TooWarm
+		switch w.verdict(i, math.Inf(1), humidity) {
+		case Suited, SuitUnknown:
+			return TooWarm
+		}
+		return TooWarmAndMore
 	}
 	if humidity && w.out.DewPointC != nil && fails(w.out.DewPointC, w.c.DewPointMaxC, true) {
 		return TooHumid

@@ -76,7 +76,7 @@ func TestReasons(t *testing.T) {
 		{"suits", 20, 10, 3, 0, Suited},
 		{"just warm enough", 12.8, 5, 3, 0, Suited},
 		{"too cold", 12.7, 5, 3, 0, TooCold},
-		{"too warm before too humid", 27, 20, 3, 0, TooWarm},
+		{"too warm before too humid", 27, 20, 3, 0, TooWarmAndMore},
 		{"at the upper limit", 26, 10, 3, 0, Suited},
 		{"too humid", 22, 17.1, 3, 0, TooHumid},
 		{"too windy", 22, 17, 10.1, 0, TooWindy},

@@ -18,7 +18,7 @@ func Judge(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Calend
 	r := &Result{Zones: make([]Zone, len(s.Zones)), Units: units}
 	cores.Each(len(r.Zones), func(z int) { r.Zones[z] = judgeZone(s, c, g, cal, z, &in[z], units) })
 	r.Schedule = scheduleWords(s)
-	r.Weights, r.WeightedBy = weigh(s)
+	r.Weights, r.WeightedBy = weigh(s, r.Zones)
 	return r
 }
 
@@ -107,8 +107,9 @@ func (r *Zone) compareModeSignal(s *site.Site, c criteria.Settings, g *grid.Grid
 
 // weigh gives the weights of the building's figures: people where every zone
 // with an opening has a usual number, else floor area, else equally. Zones
-// without openings weigh nothing.
-func weigh(s *site.Site) (weights []float64, by string) {
+// without openings weigh nothing, nor do those whose occupancy is never known:
+// a zone of which nothing can be said is no zone without hours.
+func weigh(s *site.Site, zones []Zone) (weights []float64, by string) {
 	ways := []struct {
 		by string
 		of func(z *site.Zone) float64
@@ -120,7 +121,7 @@ func weigh(s *site.Site) (weights []float64, by string) {
 	for _, way := range ways {
 		w, sum, usable := make([]float64, len(s.Zones)), 0.0, true
 		for z := range s.Zones {
-			if s.Zones[z].Openings.None() {
+			if s.Zones[z].Openings.None() || neverKnown(&zones[z]) {
 				continue
 			}
 			w[z] = way.of(&s.Zones[z])
@@ -138,6 +139,18 @@ func weigh(s *site.Site) (weights []float64, by string) {
 		return w, way.by
 	}
 	return make([]float64, len(s.Zones)), "equally"
+}
+
+// neverKnown reports whether nothing was ever known of who was there.
+func neverKnown(z *Zone) bool {
+	unknown := false
+	for _, o := range z.Occupied {
+		if o == Occupied {
+			return false
+		}
+		unknown = unknown || o == OccupancyUnknown
+	}
+	return unknown
 }
 
 func scheduleWords(s *site.Site) string {

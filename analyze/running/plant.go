@@ -51,8 +51,8 @@ func plantEvidenceOf(s *site.Site, c criteria.Settings, g *grid.Grid, z int, uni
 	flow, damper := zoneCols(site.ZoneAirflow), zoneCols(site.ZoneDamper)
 	heat, cool, local := zoneCols(site.HeatingValve), zoneCols(site.CoolingValve), zoneCols(site.PlantStatus)
 
-	var serving [][]uint8
-	silent := false // a serving unit without any evidence
+	var serving, airless [][]uint8 // units that bring air, and those that do not
+	silent := false                // a serving unit without any evidence
 	e := plantEvidence{state: filled(g.N, uint8(site.PlantOff))}
 	for u := range s.Plant {
 		for _, id := range s.Plant[u].Serves {
@@ -60,16 +60,19 @@ func plantEvidenceOf(s *site.Site, c criteria.Settings, g *grid.Grid, z int, uni
 				continue
 			}
 			e.served = true
-			if units[u] == nil {
+			switch {
+			case units[u] == nil:
 				silent = true
-			} else {
+			case s.Plant[u].Air == site.AirNone:
+				airless = append(airless, units[u])
+			default:
 				serving = append(serving, units[u])
 			}
 		}
 	}
 	ownEvidence := len(flow)+len(damper)+len(heat)+len(cool)+len(local) > 0
 	e.served = e.served || ownEvidence
-	e.has = ownEvidence || len(serving) > 0
+	e.has = ownEvidence || len(serving)+len(airless) > 0
 	if !e.served {
 		return e // known: no plant, so never mechanical
 	}
@@ -82,38 +85,38 @@ func plantEvidenceOf(s *site.Site, c criteria.Settings, g *grid.Grid, z int, uni
 	localState := filled(g.N, PlantUnknown)
 	strongest(localState, g, c, local)
 	for i := range e.state {
-		best, unknown := uint8(site.PlantOff), false
+		best, unknown, untyped := uint8(site.PlantOff), false, false
 		add := func(v uint8) {
-			if v == PlantUnknown {
+			switch {
+			case v == PlantUnknown:
 				unknown = true
-			} else if v > best {
+			case v > best:
 				best = v
 			}
+			untyped = untyped || v == uint8(site.PlantOn)
+		}
+		for _, u := range airless {
+			add(u[i]) // a damper or air flow says nothing of these
 		}
 		// The units' air, if it arrives here.
-		air, airUnknown := uint8(site.PlantOff), silent
-		for _, u := range serving {
-			if u[i] == PlantUnknown {
-				airUnknown = true
-			} else if u[i] > air {
-				air = u[i]
-			}
-		}
 		arrives, known := above(g, c, flow, i, flowOn)
 		if !known {
 			arrives, known = above(g, c, damper, i, c.DamperOpenPct)
 		}
 		switch {
-		case known && !arrives: // nothing arrives, whatever the unit does
-		case known && arrives && air == uint8(site.PlantOff):
-			add(uint8(site.PlantOn))
-		case airUnknown && air == uint8(site.PlantOff):
-			if len(serving) > 0 || silent {
-				// A zone's own valves and units may still be its only plant.
-				unknown = unknown || !(silent && len(serving) == 0 && ownEvidence)
-			}
+		case known && !arrives: // nothing arrives, whatever the units do
 		default:
-			add(air)
+			before := best
+			for _, u := range serving {
+				add(u[i])
+			}
+			switch {
+			case known && best == before && !untyped:
+				add(uint8(site.PlantOn)) // air arrives from somewhere
+			case silent && !known && len(local) == 0:
+				// Valves say nothing of air that is merely moved.
+				unknown = true
+			}
 		}
 		if on, ok := above(g, c, cool, i, c.ValveOpenPct); ok && on {
 			add(uint8(site.PlantCool))
@@ -128,8 +131,11 @@ func plantEvidenceOf(s *site.Site, c criteria.Settings, g *grid.Grid, z int, uni
 		if len(local) > 0 {
 			add(localState[i])
 		}
-		if best == uint8(site.PlantOff) && unknown {
+		switch {
+		case best == uint8(site.PlantOff) && unknown:
 			best = PlantUnknown
+		case best == uint8(site.PlantVent) && untyped:
+			best = uint8(site.PlantOn) // what runs beside it may be conditioning
 		}
 		e.state[i] = best
 	}
