@@ -15,6 +15,9 @@ type Limit struct {
 	// Changes the limit explains, of All seen.
 	Changes float64
 	All     int
+	// HeldOff is the number of openings that would have been expected in its
+	// place (openings only).
+	HeldOff float64
 	// Undetermined says why the level is not to be used, empty when it is.
 	Undetermined string
 	// Shift is the date at which the level changed, nil when none shows.

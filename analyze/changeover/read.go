@@ -32,7 +32,8 @@ type Input struct {
 }
 
 const (
-	changesMin = 6   // a limit must explain
+	changesMin = 6 // a limit must explain
+	heldOffMin = 20
 	widestK    = 3.0 // interval of a determined limit
 	bluntestK  = 1.5 // blur of a determined limit
 	// A limit that ends open mode at once is hardly ever passed while open.
@@ -134,7 +135,9 @@ type fitted struct {
 
 // shiftable reports whether the date of a change is looked for: a limit may
 // look blurred, or none, just because it changed; but it must explain enough.
-func (f *fitted) shiftable() bool { return f.limit.Changes >= changesMin }
+func (f *fitted) shiftable() bool {
+	return f.limit.Changes >= changesMin || f.limit.HeldOff >= heldOffMin
+}
 
 // stream keys randomness by the subject, so that no other's days shift it.
 func (in *Input) stream(key string) *rand.Rand {
@@ -191,6 +194,13 @@ func (m *model) limit(rows *moments, s0 *subject, j int, opening bool, rng *rand
 	r := &reasons[e.reason]
 	l := Limit{Opening: opening, Zone: r.zone, Above: r.above, LevelC: e.levelC, BlurK: e.blurK, All: rows.events()}
 	l.Changes = m.explained(rows, reasons, j, opening)
+	if opening {
+		sign := r.sign()
+		for i, q := range m.openOdds(rows, reasons) {
+			p := holds(sign, float64(rows.x[e.reason][i]), e.levelC, e.blurK)
+			l.HeldOff += rows.weight[i] * q * p / math.Max(least, 1-p)
+		}
+	}
 	s := m.surfaceOf(rows, reasons, j)
 	l.LowC, l.HighC = s.interval(0, len(s.days), rng)
 	lo, hi := math.Inf(1), math.Inf(-1)
@@ -200,7 +210,7 @@ func (m *model) limit(rows *moments, s0 *subject, j int, opening bool, rng *rand
 		}
 	}
 	switch {
-	case l.Changes < changesMin:
+	case l.Changes < changesMin && l.HeldOff < heldOffMin:
 		l.Undetermined = "explains fewer than six changes"
 	case !(e.levelC >= lo-beyondK && e.levelC <= hi+beyondK):
 		l.Undetermined = "lies beyond the temperatures seen"

@@ -193,7 +193,9 @@ func TestAnyDataDrawsOrRefuses(t *testing.T) {
 		co := CO2DurationData{Caption: c, Zones: []CO2Zone{{text(), []CO2Curve{{class(), xy()}, {class(), xy()}}}}, Limits: []Limit{{f(), text()}}}
 		cu := ExceedanceCurveData{Caption: c, Curves: []NamedCurve{{text(), class(), xy()}}, Limits: []Limit{{f(), text()}}}
 		ro := SpeedRoseData{Caption: c, Bands: []string{text()}, Sectors: [][]float64{{f()}, {f()}, {f()}, {f()}}, CalmShare: f()}
+		ch := ChangeoverCurveData{Caption: c, Closing: xy(), Opening: xy(), Closed: xy(), Opened: xy(), Limits: []LimitBand{{f(), f(), f(), text(), true}}}
 		for i, draw := range []func() (SVG, error){
+			func() (SVG, error) { return ChangeoverCurve(ch, o) },
 			func() (SVG, error) { return Exceedance(ex, o) },
 			func() (SVG, error) { return ZoneLeague(lg, o) },
 			func() (SVG, error) { return OutdoorQuadrants(ou, o) },

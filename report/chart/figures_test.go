@@ -37,6 +37,7 @@ func figures() []figure {
 		{"strip-1", func(o Options) (SVG, error) { return EpisodeStrip(sampleStrip(1), o) }},
 		{"strip-3", func(o Options) (SVG, error) { return EpisodeStrip(sampleStrip(3), o) }},
 		{"exceedance-curve", func(o Options) (SVG, error) { return ExceedanceCurve(sampleCurve(), o) }},
+		{"changeover-curve", func(o Options) (SVG, error) { return ChangeoverCurve(sampleChangeover(), o) }},
 		{"rose", func(o Options) (SVG, error) { return SpeedRose(sampleRose(), o) }},
 	}
 }

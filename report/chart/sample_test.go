@@ -222,6 +222,20 @@ func sampleCurve() ExceedanceCurveData {
 	return d
 }
 
+func sampleChangeover() ChangeoverCurveData {
+	d := ChangeoverCurveData{Caption: cap1("Changeover of an air handling unit"),
+		Limits: []LimitBand{{23, 22.7, 23.4, "ends 23.0 °C", false}, {15, 14.6, 15.1, "begins 15.0 °C", true}, {22.5, 22.2, 22.9, "begins 22.5 °C", true}}}
+	for t := 8.5; t < 30; t++ {
+		c, o := 100/(1+math.Exp((23-t)*3)), 100/(1+math.Exp((15-t)*3))/(1+math.Exp((t-22.5)*3))
+		d.Closed, d.Opened = append(d.Closed, XY{t, 4 + 0.96*c}), append(d.Opened, XY{t, 0.8 * o})
+		if t < 25 {
+			d.Closing = append(d.Closing, XY{t, math.Min(100, 6+0.9*c)})
+		}
+		d.Opening = append(d.Opening, XY{t, 0.75 * o})
+	}
+	return d
+}
+
 func sampleRose() SpeedRoseData {
 	d := SpeedRoseData{Caption: cap1("Wind rose"), Bands: []string{"up to 2 m/s", "2 to 4 m/s", "4 to 6 m/s", "above 6 m/s"}, CalmShare: 7.3}
 	for i := range 16 {

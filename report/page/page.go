@@ -144,7 +144,7 @@ func newBuilder(in Input) *builder {
 
 func (b *builder) sections() []section {
 	list := []section{
-		b.year(), b.weather(), b.zones(), b.comfort(), b.said(), b.air(), b.lost(), b.findings(), b.outOfHours(),
+		b.year(), b.weather(), b.zones(), b.comfort(), b.said(), b.air(), b.lost(), b.changeover(), b.findings(), b.outOfHours(),
 		b.answerable(), b.quality(), b.methods(), b.provenance(), b.cautions(),
 	}
 	list = slices.DeleteFunc(list, func(s section) bool { return s.ID == "" })
