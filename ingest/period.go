@@ -80,6 +80,10 @@ func (p *period) settle(b *grid.Builder) (grid.Frame, error) {
 			}
 			if p.to.IsZero() {
 				p.to = site.DateOf(time.Unix(last, 0).In(p.loc))
+				if p.to.Start(p.loc).Unix() == last && p.from.Before(p.to) {
+					// A single reading at midnight ends the day before.
+					p.to = site.DateOf(time.Unix(last-1, 0).In(p.loc))
+				}
 			}
 			if strays > 0 {
 				b.Issue(strayIssue(strays, p))

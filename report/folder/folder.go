@@ -22,6 +22,7 @@ type Folder struct {
 
 type pendingFile struct {
 	name, temp string
+	earlier    string // where an earlier file of the name waits during Commit
 	file       *os.File
 	buffered   *bufio.Writer
 }
@@ -58,16 +59,57 @@ func (f *Folder) Write(name string, fill func(io.Writer) error) error {
 	return nil
 }
 
-// Commit gives every output its own name.
+// Commit gives every output its own name: all of them, or, where one cannot be
+// named, none, and earlier files stand as they were.
 func (f *Folder) Commit() error {
-	for _, p := range f.pending {
-		if err := os.Rename(p.temp, f.Path(p.name)); err != nil {
+	for i, p := range f.pending {
+		err := p.takePlace(f.Path(p.name))
+		if err != nil {
+			for _, done := range f.pending[:i] {
+				err = errors.Join(err, done.giveBack(f.Path(done.name)))
+			}
 			return fmt.Errorf("cannot write %q: %w", f.Path(p.name), err)
 		}
-		p.temp = ""
+	}
+	for _, p := range f.pending {
+		if p.earlier != "" {
+			os.Remove(p.earlier)
+		}
 	}
 	f.pending = nil
 	return nil
+}
+
+// takePlace moves an earlier file aside and the new one to its name.
+func (p *pendingFile) takePlace(path string) error {
+	if fi, err := os.Lstat(path); err == nil && fi.IsDir() {
+		return errors.New("a folder has this name")
+	}
+	aside := p.temp + ".earlier"
+	switch err := os.Rename(path, aside); {
+	case err == nil:
+		p.earlier = aside
+	case !errors.Is(err, os.ErrNotExist):
+		return err
+	}
+	if err := os.Rename(p.temp, path); err != nil {
+		if p.earlier != "" {
+			err = errors.Join(err, os.Rename(p.earlier, path))
+			p.earlier = ""
+		}
+		return err
+	}
+	return nil
+}
+
+// giveBack undoes takePlace.
+func (p *pendingFile) giveBack(path string) error {
+	err := os.Rename(path, p.temp)
+	if p.earlier != "" {
+		err = errors.Join(err, os.Rename(p.earlier, path))
+	}
+	p.earlier = ""
+	return err
 }
 
 // Discard removes whatever was not committed; it does nothing after Commit.

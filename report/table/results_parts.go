@@ -1,6 +1,7 @@
 package table
 
 import (
+	"fmt"
 	"sashlog/analyze/hours"
 	"sashlog/report/privacy"
 )
@@ -143,9 +144,14 @@ func (in *Input) findings(rule privacy.Rule) []any {
 		}
 		points := []string{}
 		for _, p := range f.Evidence.Points {
-			points = append(points, rule.Text(p))
+			if !rule.Coded() { // names of columns name rooms
+				points = append(points, rule.Text(p))
+			}
 		}
-		out = append(out, (&object{}).set("id", f.ID).set("what", rule.Text(f.What)).set("zones", rule.IDs(f.Zones)).
+		if rule.Coded() && len(f.Evidence.Points) > 0 {
+			points = append(points, fmt.Sprintf("%d points, names left out", len(f.Evidence.Points)))
+		}
+		out = append(out, (&object{}).set("id", rule.Text(f.ID)).set("what", rule.Text(f.What)).set("zones", rule.IDs(f.Zones)).
 			set("hours", num(f.Hours)).set("person_h", num(f.PersonH)).set("low", num(f.Low)).set("high", num(f.High)).
 			set("confidence", f.Confidence).
 			set("evidence", (&object{}).set("points", points).set("figure", f.Evidence.Figure).set("typical_day", f.Evidence.TypicalDay).
