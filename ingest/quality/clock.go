@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"math"
 	"path"
+	"runtime"
 	"slices"
 	"strings"
 	"sync"
@@ -39,23 +40,24 @@ func clocks(r *run) {
 	out := map[string]bool{}
 	find := func(which func(k int) bool) {
 		c.sunUp() // before it is shared
+		c.addUp(out)
 		var wg sync.WaitGroup
-		for k, l := range c.logs {
+		next := make(chan int)
+		for range runtime.GOMAXPROCS(0) {
+			wg.Add(1)
+			go func() {
+				defer wg.Done()
+				for k := range next {
+					found[k] = c.find(c.logs[k], out)
+				}
+			}()
+		}
+		for k := range c.logs {
 			if which(k) {
-				wg.Add(1)
-				go func() {
-					defer wg.Done()
-					fr := c.frame
-					fr.Seasonal = c.seasonal(l)
-					fr.Likely = func(shiftMin float64) bool {
-						f := lag.Finding{Kind: lag.Seasonal, ShiftMin: shiftMin, To: len(c.days)}
-						w := c.correction(l, &f)
-						return w == "clock: local" || w == "clock: standard"
-					}
-					found[k] = lag.Find(&fr, c.witnesses(l, out))
-				}()
+				next <- k
 			}
 		}
+		close(next)
 		wg.Wait()
 	}
 	find(func(int) bool { return true })
@@ -83,6 +85,23 @@ func clocks(r *run) {
 		}
 		c.report(l, found[k])
 	}
+}
+
+// find weighs what speaks of a log's clock.
+func (c *clockRun) find(l *logSeries, out map[string]bool) *lag.Finding {
+	fr := c.frame
+	fr.Seasonal = c.seasonal(l)
+	fr.Likely = func(shiftMin float64) bool {
+		f := lag.Finding{Kind: lag.Seasonal, ShiftMin: shiftMin, To: len(c.days)}
+		w := c.correction(l, &f)
+		return w == "clock: local" || w == "clock: standard"
+	}
+	ws := c.witnesses(l, out)
+	f := lag.Find(&fr, ws)
+	for _, w := range ws {
+		w.Release()
+	}
+	return f
 }
 
 // trust orders findings: the sun outranks all, then evidence.

@@ -90,14 +90,15 @@ func (p *pool) add(v []float64) {
 	}
 }
 
+// mean ends the pool.
 func (p *pool) mean() []float64 {
-	out := make([]float64, len(p.sum))
 	for i, n := range p.n {
 		if n > 0 {
-			out[i] = p.sum[i] / n
+			p.sum[i] /= n
 		}
 	}
-	return out
+	p.n = nil
+	return p.sum
 }
 
 // logSeries is what one log says, pooled.
@@ -119,6 +120,17 @@ type clockRun struct {
 	frame     lag.Frame
 	logs      []*logSeries
 	up        []float64 // the sun: 1 up, 0 down
+	// apart says which zones or plants a relation sees through two logs.
+	apart []map[int]bool
+	// totals are the sums over the logs not left out, per nature.
+	totals []total
+}
+
+// total is the weighted sum of what all logs say of a nature.
+type total struct {
+	sum, weight []float64
+	logs        []string
+	points      int
 }
 
 // levels are the means of a point's bins, NaN where less than half is known.
@@ -198,8 +210,74 @@ func moments(v []float64) []float64 {
 	return aboutMean(level)
 }
 
+// apartMost bounds the zones or plants of one relation: they say the same of a
+// clock, and each costs memory.
+const apartMost = 32
+
+// seenApart finds, per relation, the zones or plants whose two sides stand in
+// different logs.
+func (c *clockRun) seenApart() []map[int]bool {
+	out := make([]map[int]bool, len(relations))
+	for k, n := range relations {
+		out[k] = map[int]bool{}
+		a, b := map[int]string{}, map[int]string{}
+		var both []int
+		note := func(side, other map[int]string, i int, source string) {
+			if side[i] == "" {
+				side[i] = source
+			}
+			if other[i] != "" && (other[i] != source || side[i] != other[i]) && !slices.Contains(both, i) {
+				both = append(both, i)
+			}
+		}
+		for i := range c.site.Points {
+			if p := &c.site.Points[i]; p.Owner == n.owner {
+				if slices.Contains(n.a, p.Quantity) {
+					note(a, b, p.Index, p.Source)
+				}
+				if slices.Contains(n.b, p.Quantity) {
+					note(b, a, p.Index, p.Source)
+				}
+			}
+		}
+		slices.Sort(both)
+		for _, i := range both[:min(apartMost, len(both))] {
+			out[k][i] = true
+		}
+	}
+	return out
+}
+
+// addUp sums what the logs say that are not left out.
+func (c *clockRun) addUp(out map[string]bool) {
+	c.totals = make([]total, len(natures))
+	for _, o := range c.logs {
+		if out[o.name] {
+			continue
+		}
+		for k, v := range o.nature {
+			if v == nil {
+				continue
+			}
+			t := &c.totals[k]
+			if t.sum == nil {
+				t.sum, t.weight = make([]float64, c.bins), make([]float64, c.bins)
+			}
+			w := math.Sqrt(float64(o.count[k]))
+			for b, x := range v {
+				if x != 0 {
+					t.sum[b] += w * x
+					t.weight[b] += w
+				}
+			}
+			t.logs, t.points = append(t.logs, o.name), t.points+o.count[k]
+		}
+	}
+}
+
 // gather pools what every log says.
 func (c *clockRun) gather() {
+	c.apart = c.seenApart()
 	byName := map[string]*logSeries{}
 	pools := map[string]map[[3]int]*pool{} // log; kind, index, owner
 	put := func(log string, kind, index, owner int, v []float64) {
@@ -214,10 +292,6 @@ func (c *clockRun) gather() {
 	}
 	for i := range c.site.Points {
 		p := &c.site.Points[i]
-		col, ok := c.column(i)
-		if !ok {
-			continue
-		}
 		l := byName[p.Source]
 		if l == nil {
 			l = &logSeries{name: p.Source, nature: make([][]float64, len(natures)), count: make([]int, len(natures)),
@@ -226,8 +300,9 @@ func (c *clockRun) gather() {
 			c.logs = append(c.logs, l)
 		}
 		l.points = append(l.points, i)
-		if p.Placement == site.PlacementReturn {
-			continue // follows the fan, not the room
+		col, ok := c.column(i)
+		if !ok || p.Placement == site.PlacementReturn {
+			continue // no reading left, or it follows the fan and not the room
 		}
 		var level, change []float64
 		get := func(asLevel bool) []float64 {
@@ -250,7 +325,7 @@ func (c *clockRun) gather() {
 			}
 		}
 		for k, n := range relations {
-			if p.Owner != n.owner {
+			if p.Owner != n.owner || !c.apart[k][p.Index] {
 				continue
 			}
 			if slices.Contains(n.a, p.Quantity) {
@@ -399,33 +474,35 @@ func pairs(to []lag.Pair, mine, truth map[int][]float64, sign float64, later int
 	return to
 }
 
-// others is the mean of what the other logs say of a nature; a log counts by
-// the root of its points, so that one big log does not outvote all others.
+// others is the mean of what the other logs say of a nature, of those not left
+// out; a log counts by the root of its points, so that one big log does not
+// outvote all others.
 func (c *clockRun) others(l *logSeries, k int, out map[string]bool) (mean []float64, logs []string, points int) {
-	var sum, weight []float64
-	for _, o := range c.logs {
-		v := o.nature[k]
-		if o == l || out[o.name] || v == nil {
-			continue
-		}
-		if sum == nil {
-			sum, weight = make([]float64, c.bins), make([]float64, c.bins)
-		}
-		w := math.Sqrt(float64(o.count[k]))
-		for b, x := range v {
-			if x != 0 {
-				sum[b] += w * x
-				weight[b] += w
-			}
-		}
-		logs, points = append(logs, o.name), points+o.count[k]
-	}
-	for b, w := range weight {
-		if w > 0 {
-			sum[b] /= w
+	t := &c.totals[k]
+	own := 0.0
+	for _, name := range t.logs {
+		if name != l.name {
+			logs = append(logs, name)
 		}
 	}
-	return sum, logs, points
+	points = t.points
+	if !out[l.name] {
+		own, points = math.Sqrt(float64(l.count[k])), points-l.count[k]
+	}
+	if points == 0 {
+		return nil, nil, 0
+	}
+	mean = make([]float64, c.bins)
+	for b, x := range t.sum {
+		w := t.weight[b]
+		if v := l.nature[k][b]; v != 0 && own > 0 {
+			x, w = x-own*v, w-own
+		}
+		if w > 0.5 { // no point weighs less than 1
+			mean[b] = x / w
+		}
+	}
+	return mean, logs, points
 }
 
 // coarse witnesses tell the time of day within two or three hours, for logs

@@ -50,6 +50,9 @@ type Witness struct {
 	plane *plane
 }
 
+// Release lets go of the series, which are large, once a finding is made.
+func (w *Witness) Release() { w.Pairs, w.plane = nil, nil }
+
 // plane holds a witness's products: at[day][lag+most], with the energies of
 // both series per day.
 type plane struct {
