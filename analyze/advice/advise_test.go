@@ -140,7 +140,7 @@ func TestFewRoom(t *testing.T) {
 	if strings.Join(f.Zones, "") != "AB" {
 		t.Errorf("zones %q, most person-hours first", f.Zones)
 	}
-	for _, part := range []string{"The thermostat of zone C starts plant unit U1", "about 32 h (25 to 40 h)", "in the 20 days audited"} {
+	for _, part := range []string{"The thermostat of zone C starts plant unit U1", "about 32 zone-hours (25 to 40)", "in the 20 days audited"} {
 		if !strings.Contains(f.What, part) {
 			t.Errorf("%q lacks %q", f.What, part)
 		}
@@ -298,7 +298,7 @@ func TestWords(t *testing.T) {
 		{0.3, 0, 0.4, "under 1 h"},
 		{6, 6, 6, "about 6 h"},
 	} {
-		if got := between(c.h, c.low, c.high); got != c.want {
+		if got := between(c.h, c.low, c.high, "h"); got != c.want {
 			t.Errorf("%v (%v to %v): %q, want %q", c.h, c.low, c.high, got, c.want)
 		}
 	}

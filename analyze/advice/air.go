@@ -92,13 +92,13 @@ func (a *adviser) staleIn(recirculating bool) (found, bool) {
 		units := a.plantWords(s.zones)
 		f.ID = "stale-recirculating"
 		f.What = fmt.Sprintf("%s%s no outdoor air, and with windows shut the air %s goes stale%s: %s above the CO2 limit %s",
-			capital(units), verb(units, " brings", " bring"), a.inZones(s.zones), compare, between(s.h, s.low, s.high), a.period())
+			capital(units), verb(units, " brings", " bring"), a.inZones(s.zones), compare, between(s.h, s.low, s.high, unitOf(s.zones)), a.period())
 		f.CheckOnSite = "Follow the ducts of " + units + ": is there any outdoor air, and do the windows open while " + verb(units, "it runs", "they run") + "?"
 		f.DoNext = "Let windows be opened for airing while " + verb(units, "the unit runs", "the units run") + ", and plan an outdoor air supply"
 		f.Who = servicesFirm
 	} else {
 		f.ID = "stale-mechanical"
-		f.What = fmt.Sprintf("In mechanical running the air %s is stale%s: %s above the CO2 limit %s", a.inZones(s.zones), compare, between(s.h, s.low, s.high), a.period())
+		f.What = fmt.Sprintf("In mechanical running the air %s is stale%s: %s above the CO2 limit %s", a.inZones(s.zones), compare, between(s.h, s.low, s.high, unitOf(s.zones)), a.period())
 		f.CheckOnSite = "Measure the outdoor air of " + a.plantWords(s.zones) + " at its damper and at the zone's outlets with the plant at usual speed"
 		f.DoNext = "Set the least position of the outdoor air damper, or the zone's air flow, to what the number of people needs"
 		f.Who = servicesFirm

@@ -36,7 +36,7 @@ func (a *adviser) fewRooms() []found {
 		f := found{Finding: Finding{
 			ID: "few-room-" + room,
 			What: fmt.Sprintf("The thermostat of zone %s starts %s for everybody while few people are too warm: %s of suitable weather could have been open %s",
-				room, plant, between(s.h, s.low, s.high), a.period()),
+				room, plant, between(s.h, s.low, s.high, unitOf(s.zones)), a.period()),
 			Confidence: a.callConfidence(led, confidence(s, n, 20)),
 			RivalExplanations: []string{
 				"other rooms were too warm as well, but their sensors read low or hang in a cool place",
@@ -92,7 +92,7 @@ func (a *adviser) clockStarts() []found {
 	}
 	f := found{Finding: Finding{
 		ID:         "clock-start",
-		What:       fmt.Sprintf("%s: %s of suitable weather could have been open %s", start, between(s.h, s.low, s.high), a.period()),
+		What:       fmt.Sprintf("%s: %s of suitable weather could have been open %s", start, between(s.h, s.low, s.high, unitOf(s.zones)), a.period()),
 		Confidence: confidence(s, n, 20),
 		RivalExplanations: []string{
 			"an early start is needed after cold nights (warm-up of two to three hours is common practice)",
@@ -164,7 +164,7 @@ func (a *adviser) outdoorLimit(unit string) (found, bool) {
 	f := found{Finding: Finding{
 		ID: id,
 		What: fmt.Sprintf("%s allows no open mode %s although the weather suits from %.1f °C to %g K below each day's comfort limit: %s could have been open %s",
-			who, limits, a.Criteria.OutdoorLowC, a.Criteria.RiseK, between(s.h, s.low, s.high), a.period()),
+			who, limits, a.Criteria.OutdoorLowC, a.Criteria.RiseK, between(s.h, s.low, s.high, unitOf(s.zones)), a.period()),
 		Confidence: confidence(s, p.UpperN+p.LowerN, 20),
 		RivalExplanations: []string{
 			"rooms grew too warm at about that outdoor temperature, and their thermostats, not an outdoor limit, closed the windows",
@@ -219,7 +219,7 @@ func (a *adviser) indoorLimits() []found {
 	f := found{Finding: Finding{
 		ID: "indoor-limit",
 		What: fmt.Sprintf("Cooling takes over from open windows %s, up to %.1f K below the comfort limit: %s of suitable weather could have been open %s",
-			at, margin, between(s.h, s.low, s.high), a.period()),
+			at, margin, between(s.h, s.low, s.high, unitOf(s.zones)), a.period()),
 		Confidence: confidence(s, n, 20),
 		RivalExplanations: []string{
 			"the logged sensor reads lower than what the people feel (radiant heat, a cool wall)",
@@ -247,7 +247,7 @@ func (a *adviser) slowReopening() []found {
 	f := found{Finding: Finding{
 		ID: "slow-to-reopen",
 		What: fmt.Sprintf("%s back to open mode more than %.0f min after it was due: %s could have been open %s",
-			capital(zonesGo(a.names(s.zones), len(s.zones))), a.Criteria.ReopenDelayMin, between(s.h, s.low, s.high), a.period()),
+			capital(zonesGo(a.names(s.zones), len(s.zones))), a.Criteria.ReopenDelayMin, between(s.h, s.low, s.high, unitOf(s.zones)), a.period()),
 		Confidence: confidence(s, n, 20),
 		RivalExplanations: []string{
 			"rain, wind or a smoke signal that is not logged kept the windows shut",

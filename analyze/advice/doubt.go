@@ -51,7 +51,7 @@ func (a *adviser) unknownHours() []found {
 	f := found{group: evidence, Finding: Finding{
 		ID: "unknown-hours",
 		What: fmt.Sprintf("%s of occupied hours cannot be judged, most for %s: %s %s %s",
-			percent(s.h/occupied), what, between(s.h, s.low, s.high), a.inZones(s.zones), a.period()),
+			percent(s.h/occupied), what, between(s.h, s.low, s.high, unitOf(s.zones)), a.inZones(s.zones), a.period()),
 		Confidence:        "high",
 		RivalExplanations: []string{"the points are logged elsewhere, under names that are not in the points table"},
 		CheckOnSite:       check,

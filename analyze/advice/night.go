@@ -63,7 +63,7 @@ func (a *adviser) overnightPlant() []found {
 	f := found{group: night, Finding: Finding{
 		ID: "plant-after-hours",
 		What: fmt.Sprintf("%s when nobody is there, warm-up aside: %s %s%s%s; the worst was left on in %s of %d known",
-			name, between(s.h, s.low, s.high), a.period(), when, energy, count(nights, "night", "nights"), known),
+			name, between(s.h, s.low, s.high, unitOf(s.zones)), a.period(), when, energy, count(nights, "night", "nights"), known),
 		Confidence: confidence(s, events, 20),
 		RivalExplanations: []string{
 			"people were there outside the occupied times of the site file",
@@ -144,7 +144,7 @@ func (a *adviser) unusedPurge() []found {
 	f := found{group: purge, Finding: Finding{
 		ID: "night-purge",
 		What: fmt.Sprintf("Cool nights are hardly used %s, which are too warm by day: %s of night purge were available and not used %s (%s used)",
-			a.inZones(s.zones), between(s.h, s.low, s.high), a.period(), percent(used/available)),
+			a.inZones(s.zones), between(s.h, s.low, s.high, unitOf(s.zones)), a.period(), percent(used/available)),
 		Confidence: confidence(s, 5, 6),
 		RivalExplanations: []string{
 			"windows may not stand open at night for security, rain or insects",

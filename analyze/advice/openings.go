@@ -25,7 +25,7 @@ func (a *adviser) neverUsed() []found {
 	f := found{Finding: Finding{
 		ID: "never-used",
 		What: fmt.Sprintf("The windows %s are next to never opened (%s: %s open of %s known): %s could have been open with nothing else in the way, the most if all else is mended too, %s",
-			a.inZones(s.zones), a.Site.Zones[s.zones[0]].ID, tenths(u.OpenH), about(u.KnownH), between(s.h, s.low, s.high), a.period()),
+			a.inZones(s.zones), a.Site.Zones[s.zones[0]].ID, tenths(u.OpenH), about(u.KnownH), between(s.h, s.low, s.high, unitOf(s.zones)), a.period()),
 		Confidence: confidence(s, n, 10),
 		RivalExplanations: []string{
 			"the window contact is dead or stuck, and the windows are opened after all",
@@ -67,7 +67,7 @@ func (a *adviser) notOpened() []found {
 	f := found{Finding: Finding{
 		ID: "not-opened",
 		What: fmt.Sprintf("Rooms sat warm or stale with windows shut and nothing mechanical running: %s %s %s",
-			between(s.h, s.low, s.high), a.inZones(s.zones), a.period()),
+			between(s.h, s.low, s.high, unitOf(s.zones)), a.inZones(s.zones), a.period()),
 		Confidence: confidence(s, n, 20),
 		RivalExplanations: []string{
 			"the windows were locked by the control, which is not logged",
@@ -96,7 +96,7 @@ func (a *adviser) clashes() []found {
 	f := found{Finding: Finding{
 		ID: "not-interlocked",
 		What: fmt.Sprintf("Windows stand open while the plant runs, in weather that needs no plant: %s %s %s",
-			between(s.h, s.low, s.high), a.inZones(s.zones), a.period()),
+			between(s.h, s.low, s.high, unitOf(s.zones)), a.inZones(s.zones), a.period()),
 		Confidence: confidence(s, n, 20),
 		RivalExplanations: append(a.alwaysOpen(s.zones),
 			"the plant's status says on while it idles",

@@ -10,8 +10,9 @@ import (
 )
 
 // between writes hours no finer than their bounds allow: 217.3 between 180 and
-// 260 is "about 220 h (180 to 260 h)"; without bounds, two figures.
-func between(h, low, high float64) string {
+// 260 is "about 220 h (180 to 260 h)"; without bounds, two figures. The unit
+// says whether hours of several zones were added up.
+func between(h, low, high float64, unit string) string {
 	step := 1.0
 	if w := high - low; w > 0 {
 		step = math.Pow(10, math.Floor(math.Log10(w/2)))
@@ -23,18 +24,29 @@ func between(h, low, high float64) string {
 		step = math.Pow(10, math.Floor(math.Log10(h))-1)
 	}
 	lo, hi := math.Floor(low/step+1e-9)*step, math.Ceil(high/step-1e-9)*step
-	text := fmt.Sprintf("about %s h", whole(math.Round(h/step)*step))
+	text := fmt.Sprintf("about %s %s", whole(math.Round(h/step)*step), unit)
 	if math.Round(h/step) == 0 {
-		text = fmt.Sprintf("under %s h", whole(step))
+		text = fmt.Sprintf("under %s %s", whole(step), unit)
 	}
 	if hi-lo < step/2 || high-low < step/2 {
 		return text
 	}
-	return fmt.Sprintf("%s (%s to %s h)", text, whole(lo), whole(hi))
+	if unit == "h" {
+		return fmt.Sprintf("%s (%s to %s h)", text, whole(lo), whole(hi))
+	}
+	return fmt.Sprintf("%s (%s to %s)", text, whole(lo), whole(hi))
 }
 
 // about writes hours to two figures.
-func about(h float64) string { return between(h, h, h) }
+func about(h float64) string { return between(h, h, h, "h") }
+
+// unitOf is the unit of hours added up over zones.
+func unitOf(zones []int) string {
+	if len(zones) > 1 {
+		return "zone-hours"
+	}
+	return "h"
+}
 
 // whole writes a number without decimals, with commas between thousands.
 func whole(v float64) string {

@@ -43,7 +43,7 @@ func (a *adviser) warmZones() []found {
 	}
 	f := found{Finding: Finding{
 		ID:         "too-warm",
-		What:       fmt.Sprintf("It is too warm %s: %s above the comfort limit %s (%s)", a.inZones(s.zones), between(s.h, s.low, s.high), a.period(), share),
+		What:       fmt.Sprintf("It is too warm %s: %s above the comfort limit %s (%s)", a.inZones(s.zones), between(s.h, s.low, s.high, unitOf(s.zones)), a.period(), share),
 		Confidence: confidence(s, events, 20),
 		RivalExplanations: []string{
 			"the sensor hangs in the sun, above equipment or in a duct",

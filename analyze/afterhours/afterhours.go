@@ -7,6 +7,7 @@ type Zone struct {
 	PlantConditioningH            float64 // heating or cooling
 	WindowsOpenH, WindowsUnknownH float64
 	PurgeH, PurgeAvailableH       float64
+	PurgeUnknownH                 float64 // night hours that cannot be judged
 	// Nights counts nights with plant or windows left on or open from evening
 	// to morning.
 	NightsPlantOn, NightsWindowsOpen, Nights int

@@ -87,6 +87,7 @@ func lookZone(in *Input, z int, nights []night) Zone {
 		}
 	}
 	out.PurgeH, out.PurgeAvailableH = sumS(in.Record, hours.CPurge, z), sumS(in.Record, hours.CPurgeAvailable, z)
+	out.PurgeUnknownH = sumS(in.Record, hours.CPurgeUnknown, z)
 	for _, n := range nights {
 		out.count(in, run, n)
 	}
@@ -182,7 +183,7 @@ func weigh(zones []Zone, s *hours.Summary) Zone {
 		for _, f := range []struct{ to, of *float64 }{
 			{&b.PlantOnH, &x.PlantOnH}, {&b.PlantUnknownH, &x.PlantUnknownH}, {&b.PlantConditioningH, &x.PlantConditioningH},
 			{&b.WindowsOpenH, &x.WindowsOpenH}, {&b.WindowsUnknownH, &x.WindowsUnknownH}, {&b.PurgeH, &x.PurgeH},
-			{&b.PurgeAvailableH, &x.PurgeAvailableH}, {&b.WarmUpH, &x.WarmUpH}, {&b.VacantH, &x.VacantH}, {&b.OccupancyUnknownH, &x.OccupancyUnknownH},
+			{&b.PurgeAvailableH, &x.PurgeAvailableH}, {&b.PurgeUnknownH, &x.PurgeUnknownH}, {&b.WarmUpH, &x.WarmUpH}, {&b.VacantH, &x.VacantH}, {&b.OccupancyUnknownH, &x.OccupancyUnknownH},
 		} {
 			*f.to += w * *f.of
 		}

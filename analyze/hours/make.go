@@ -84,6 +84,8 @@ func (r *Record) count(in *Input, j *judge, purge *purge, h int) {
 			add(CPurge)
 		case purgeOffered:
 			add(CPurgeAvailable)
+		case purgeUnknown:
+			add(CPurgeUnknown)
 		}
 		if j.run.Occupied[i] == running.OccupancyUnknown {
 			add(COccupiedUnknown)

@@ -15,6 +15,7 @@ const (
 	purgeNone purgeUse = iota
 	purgeOffered
 	purgeUsed
+	purgeUnknown // it cannot be said whether it was available, or whether it was used
 )
 
 // purge judges night purge in one zone: outside occupied time, within the
@@ -40,14 +41,18 @@ func (p *purge) at(i int) purgeUse {
 		return purgeNone
 	}
 	indoorC, outdoorC := float64(room.OperativeC[i]), float64(p.in.Outdoor.TempC[i])
-	if math.IsNaN(indoorC) || math.IsNaN(outdoorC) || indoorC < c.PurgeIndoorMinC ||
-		outdoorC > indoorC-c.PurgeDifferenceK || outdoorC < c.PurgeOutdoorMinC {
-		return purgeNone
+	switch {
+	case outdoorC < c.PurgeOutdoorMinC || indoorC < c.PurgeIndoorMinC || outdoorC > indoorC-c.PurgeDifferenceK:
+		return purgeNone // one known reason is enough
+	case math.IsNaN(indoorC) || math.IsNaN(outdoorC):
+		return purgeUnknown
 	}
 	switch {
 	case run.State[i] == running.Open, run.State[i] == running.Both && run.Plant[i] == uint8(site.PlantVent),
 		run.State[i] == running.Mech && run.Plant[i] == uint8(site.PlantVent):
 		return purgeUsed
+	case run.State[i] == running.Unknown:
+		return purgeUnknown
 	}
 	return purgeOffered
 }

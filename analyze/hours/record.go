@@ -99,6 +99,8 @@ const (
 	CSuitedPlantUnknown
 	// Ours: weather with air movement not known.
 	CSuitedFanUnknown
+	// Ours: night hours in which purge cannot be judged.
+	CPurgeUnknown
 	NumCols
 )
 
@@ -112,7 +114,7 @@ var colNames = [NumCols]string{
 	"not_needed_h", "ill_timed_h", "closed_unsuited_h", "closed_unsuited_stale_h", "no_opening_h",
 	"unjudged_h", "unjudged_suited_h",
 	"all_open_h", "all_mech_h", "all_both_h", "all_shut_h", "all_unknown_h", "purge_h", "purge_available_h",
-	"over_h", "under_h", "co2_over_h", "suited_plant_off_h", "suited_plant_unknown_h", "suited_fan_unknown_h",
+	"over_h", "under_h", "co2_over_h", "suited_plant_off_h", "suited_plant_unknown_h", "suited_fan_unknown_h", "purge_unknown_h",
 }
 
 // ColName is the column's name in the contract.

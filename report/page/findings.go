@@ -83,11 +83,24 @@ func (b *builder) outOfHours() section {
 	s.Blocks = append(s.Blocks, text("What ran or stood open while nobody was meant to be there, for the average occupant's zone. A night purge cools the building with night air through open windows while plant is off; it is available when the night is cool enough and the rooms are warm."))
 	t := table{ID: "out-of-hours-table", Caption: "Outside occupied time, hours " + b.span.Words,
 		Head: []column{col("Zone"), num("Plant on (h)"), num("of it heating or cooling (h)"), num("Warm-up (h)"), num("Plant unknown (h)"), num("Nights plant left on"),
-			num("Windows open (h)"), num("Windows unknown (h)"), num("Nights left open"), num("Night purge used (h)"), num("available (h)")}}
+			num("Windows open (h)"), num("Windows unknown (h)"), num("Nights left open"), num("Night purge used (h)"), num("available (h)"), num("not known (h)")}}
 	line := func(name string, z afterhours.Zone) []cell {
-		return row(name, words.HoursNumber(z.PlantOnH*k), words.HoursNumber(z.PlantConditioningH*k), words.HoursNumber(z.WarmUpH*k), words.HoursNumber(z.PlantUnknownH*k),
-			words.Count(int64(z.NightsPlantOn))+" of "+words.Count(int64(z.Nights)), words.HoursNumber(z.WindowsOpenH*k), words.HoursNumber(z.WindowsUnknownH*k),
-			words.Count(int64(z.NightsWindowsOpen))+" of "+words.Count(int64(z.Nights)), words.HoursNumber(z.PurgeH*k), words.HoursNumber(z.PurgeAvailableH*k))
+		// Of nothing known nothing is said, not zero.
+		nights := func(n, known int) string {
+			if known == 0 {
+				return words.Dash
+			}
+			return words.Count(int64(n)) + " of " + words.Count(int64(known))
+		}
+		hours := func(h, unknown float64) string {
+			if h == 0 && unknown > 0 {
+				return words.Dash
+			}
+			return words.HoursNumber(h * k)
+		}
+		return row(name, hours(z.PlantOnH, z.PlantUnknownH), hours(z.PlantConditioningH, z.PlantUnknownH), hours(z.WarmUpH, z.PlantUnknownH), words.HoursNumber(z.PlantUnknownH*k),
+			nights(z.NightsPlantOn, z.NightsPlantKnown), hours(z.WindowsOpenH, z.WindowsUnknownH), words.HoursNumber(z.WindowsUnknownH*k),
+			nights(z.NightsWindowsOpen, z.NightsWindowsKnown), hours(z.PurgeH, z.PurgeUnknownH), hours(z.PurgeAvailableH, z.PurgeUnknownH), words.HoursNumber(z.PurgeUnknownH*k))
 	}
 	all := line("building (average occupant)", x)
 	for i := range all {
@@ -100,7 +113,7 @@ func (b *builder) outOfHours() section {
 			t.Rows = append(t.Rows, line(b.w.Zone(z), r.Zones[z]))
 		}
 	}
-	t.Foot = []string{"Windows left open overnight: think of security, rain and frost before calling it a night purge."}
+	t.Foot = []string{words.Dash + " none seen, while some hours or all are not known. Nights are those of which at least half is known.", "Windows left open overnight: think of security, rain and frost before calling it a night purge."}
 	if foot != "" {
 		t.Foot = append(t.Foot, foot)
 	}

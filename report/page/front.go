@@ -1,6 +1,8 @@
 package page
 
 import (
+	"strings"
+
 	"sashlog/analyze/hours"
 	"sashlog/report/chart"
 	"sashlog/report/words"
@@ -79,7 +81,7 @@ func (b *builder) whereHoursWent() block {
 	loss("open, too cool", chart.AchievedCool, h(hours.CAchievedCool))
 	loss("open, stale air", chart.AchievedStale, h(hours.CAchievedStale))
 	loss("open, comfort or air not measured", chart.AchievedUnassessed, h(hours.CAchievedUnassessed))
-	gather("open: warm, cool, stale or not measured")
+	gather("")
 	total("open, comfortable and fresh", chart.AchievedOK, h(hours.CAchievedOK), "ran open", achieved)
 	return b.draw("where-hours-went",
 		"Where the average occupant's hours went, "+b.span.Words+". Each bar takes its hours off those above; orange could have been open.",
@@ -110,6 +112,13 @@ func gathered(losses []chart.HoursStep, label string, small float64) []chart.Hou
 	}
 	if len(few) < 2 {
 		return losses
+	}
+	if label == "" {
+		var parts []string
+		for _, l := range few {
+			parts = append(parts, strings.TrimPrefix(l.Label, "open, "))
+		}
+		label = "open: " + words.List(parts, len(parts))
 	}
 	rest := chart.HoursStep{Label: label, Class: few[0].Class}
 	most := 0.0

@@ -51,6 +51,7 @@ var colWords = [hours.NumCols]string{
 	hours.CPurge: "night purge used", hours.CPurgeAvailable: "night purge available",
 	hours.COver: "above the headline comfort limit", hours.CUnder: "below it", hours.CCO2Over: "above the CO2 limit",
 	hours.CSuitedPlantOff: "weather suitable and the plant known to be off", hours.CSuitedPlantUnknown: "weather suitable and the plant not known",
+	hours.CPurgeUnknown:     "night purge cannot be judged: a temperature, the windows or the plant are not known",
 	hours.CSuitedFanUnknown: "weather with air movement not known",
 }
 

@@ -48,7 +48,7 @@ func columnsAfter() []column {
 	return []column{valued(hours.VComfortLowC, 3), valued(hours.VComfortHighC, 3), counted(hours.COver), counted(hours.CUnder),
 		valued(hours.VOverKh, 5), valued(hours.VUnderKh, 5), valued(hours.VPeopleH, 5), valued(hours.VPersonH, 5),
 		valued(hours.VPersonOverH, 5), valued(hours.VPersonUnderH, 5), valued(hours.VCO2LimitPPM, 1), counted(hours.CCO2Over),
-		valued(hours.VCoverage, 5), counted(hours.CSuitedPlantOff), counted(hours.CSuitedPlantUnknown), counted(hours.CSuitedFanUnknown)}
+		valued(hours.VCoverage, 5), counted(hours.CSuitedPlantOff), counted(hours.CSuitedPlantUnknown), counted(hours.CSuitedFanUnknown), counted(hours.CPurgeUnknown)}
 }
 
 // hourWords are the texts of each hour, the same for every zone.

@@ -101,8 +101,8 @@ func (in *Input) outOfHours(rule privacy.Rule) *object {
 		h := &a.Zones[z]
 		o := (&object{}).set("id", rule.ID(z)).set("plant_on_h", num(h.PlantOnH)).set("plant_conditioning_h", num(h.PlantConditioningH)).
 			set("plant_unknown_h", num(h.PlantUnknownH)).set("warm_up_h", num(h.WarmUpH)).set("windows_open_h", num(h.WindowsOpenH)).
-			set("windows_unknown_h", num(h.WindowsUnknownH)).set("purge_h", num(h.PurgeH)).set("purge_available_h", num(h.PurgeAvailableH)).
-			set("nights_plant_on", h.NightsPlantOn).set("nights_windows_open", h.NightsWindowsOpen).set("nights", h.Nights)
+			set("windows_unknown_h", num(h.WindowsUnknownH)).set("purge_h", num(h.PurgeH)).set("purge_available_h", num(h.PurgeAvailableH)).set("purge_unknown_h", num(h.PurgeUnknownH)).
+			set("nights_plant_on", h.NightsPlantOn).set("nights_windows_open", h.NightsWindowsOpen).set("nights", h.Nights).set("nights_plant_known", h.NightsPlantKnown).set("nights_windows_known", h.NightsWindowsKnown)
 		zones = append(zones, o)
 	}
 	units := []any{}

@@ -98,8 +98,9 @@ func columnsOf(c hours.Class) []hours.Col {
 
 var stateCols = [running.NumStates]hours.Col{hours.CUnknown, hours.COpen, hours.CMech, hours.CBoth, hours.CShut}
 var allCols = [running.NumStates]hours.Col{hours.CAllUnknown, hours.CAllOpen, hours.CAllMech, hours.CAllBoth, hours.CAllShut}
-var suitCols = [potential.NumSuits]hours.Col{hours.CSuited, hours.CTooCold, hours.CTooWarm, hours.CTooHumid, hours.CTooWindy,
-	hours.CRain, hours.CPolluted, hours.CTooBrief, hours.CSuitedUnknown}
+var suitCols = [potential.NumSuits]hours.Col{potential.Suited: hours.CSuited, potential.TooCold: hours.CTooCold, potential.TooWarm: hours.CTooWarm,
+	potential.TooWarmAndMore: hours.CTooWarm, potential.TooHumid: hours.CTooHumid, potential.TooWindy: hours.CTooWindy, potential.Rain: hours.CRain,
+	potential.Polluted: hours.CPolluted, potential.TooBrief: hours.CTooBrief, potential.SuitUnknown: hours.CSuitedUnknown}
 
 func (m *maker) makeRecord() {
 	g := m.Grid
