@@ -92,6 +92,7 @@ func Load(path string, env func(string) string) (*Loaded, error) {
 	b.out.Site.Dir, b.out.Site.File = filepath.Dir(path), filepath.Base(path)
 	b.sum(b.out.Site.File, raw)
 	b.readTables()
+	b.checkPresence()
 	b.coverage()
 	if ps := b.problems(); len(ps) > 0 {
 		return nil, ps

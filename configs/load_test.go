@@ -247,6 +247,7 @@ points: p.csv
 		got = append(got, fmt.Sprintf("%d:%d %s", w.Line, w.Col, w.Text))
 	}
 	want := []string{
+		"2:12 occupied times follow presence, and no presence or people point belongs to a, b, c: nothing can be said of them",
 		`3:9 zone "a" does not say whether it opens: taken as openings to outdoors`,
 		`3:23 zone "b" has no points: nothing can be said about it`,
 		`4:14 plant unit "u" has no points: when it ran stays unknown`,

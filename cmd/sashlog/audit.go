@@ -158,6 +158,9 @@ func (job auditJob) analyse(ctx context.Context, p process) (*audited, error) {
 	if err := ctx.Err(); err != nil {
 		return nil, err
 	}
+	if !job.quiet {
+		tellIssues(p, ledger)
+	}
 	a := &audited{site: loaded.Site, criteria: loaded.Criteria, grid: g, ledger: ledger,
 		results: analyze.Run(analyze.Input{Site: loaded.Site, Criteria: loaded.Criteria, Grid: g}),
 		origin: provenance.Provenance{Version: versionWords(), Generated: p.now().UTC().Format(time.RFC3339), Command: job.command,
@@ -166,6 +169,28 @@ func (job auditJob) analyse(ctx context.Context, p process) (*audited, error) {
 		a.origin.ConfigFiles = append(a.origin.ConfigFiles, provenance.File{Path: f.Path, SHA256: f.SHA256, Bytes: f.Bytes})
 	}
 	return a, ctx.Err()
+}
+
+// issuesTold is how many messages about the logs the terminal shows; all are in
+// the report.
+const issuesTold = 5
+
+// tellIssues shows what the logs themselves gave rise to say.
+func tellIssues(p process, l *reading.Ledger) {
+	for i, is := range l.Issues {
+		if i == issuesTold {
+			fmt.Fprintf(p.stderr, "note: %d more messages about the logs are in the report\n", int64(len(l.Issues)-i)+l.IssuesDropped)
+			return
+		}
+		text := is.Text
+		if is.Where.File != "" {
+			text = is.Where.File + ": " + text
+		}
+		if is.Hint != "" {
+			text += "; hint: " + is.Hint
+		}
+		fmt.Fprintln(p.stderr, printable("note: "+text))
+	}
 }
 
 // run does the audit: load, read, analyse, write, say.

@@ -86,7 +86,11 @@ func (b *builder) co2Curves() block {
 	fa := b.in.Results.FreshAir
 	d := chart.CO2DurationData{Caption: chart.Caption{Title: "CO2 duration curves by zone and running state", Desc: "Share of occupied time above each CO2 level."}}
 	worst := b.co2Worst()
-	for _, z := range worst[:min(9, len(worst))] {
+	const most = 9
+	for _, z := range worst {
+		if len(d.Zones) == most {
+			break
+		}
 		p := chart.CO2Zone{Zone: b.w.Zone(z)}
 		for _, st := range statesShown {
 			curve := fa.Zones[z].Curve[st]
@@ -95,6 +99,9 @@ func (b *builder) co2Curves() block {
 			}
 			c := chart.CO2Curve{State: stateLook[st]}
 			for i := len(curve) - 1; i >= 0; i-- {
+				if i > 0 && curve[i] == 0 && curve[i-1] == 0 {
+					continue // never so high: the curve begins at the highest level met
+				}
 				c.Points = append(c.Points, chart.XY{X: curve[i] * 100, Y: fa.CurvePPM[i]})
 			}
 			p.Curves = append(p.Curves, c)
@@ -110,8 +117,8 @@ func (b *builder) co2Curves() block {
 		}
 	}
 	caption := "For how much of the occupied time CO2 lay above a level, by running state. A curve that lies high on the left is a state that runs short of air"
-	if len(worst) > 9 {
-		caption += "; the nine zones with the highest CO2"
+	if len(worst) > len(d.Zones) {
+		caption += "; the " + words.Count(int64(len(d.Zones))) + " zones with the highest CO2"
 	}
 	return b.draw("co2-duration", caption+".", "There is no CO2 curve to draw.",
 		func(o chart.Options) (chart.SVG, error) { return chart.CO2Duration(d, o) })

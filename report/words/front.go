@@ -95,6 +95,9 @@ func Answer(in Input) string {
 	if muchUnknown {
 		t += " For " + Duration(s.PerDay(unknown)) + " of it the windows or the plant are unknown."
 	}
+	if w := b.H[hours.CSuitedUnknown]; w > 0.05*b.Occupied.Value {
+		t += " In " + Share(w/b.Occupied.Value) + " of the occupied hours the weather is not known; they count as unsuited here, so the true hours may be more (weather suitable: " + s.PerDayBetween(b.Suited) + ")."
+	}
 	return t
 }
 

@@ -51,8 +51,7 @@ func sensorDoubt(in Input) string {
 	if !known(s.Value) || s.High-s.Low < 0.005 {
 		return ""
 	}
-	return "Sensors are never exact: if they are as accurate as usual, the true figure behind the " + Share(s.Value) + " lies between " + Share(s.Low) + " and " + Share(s.High) +
-		" nine times in ten; what matters most is " + DoubtPart(d.Largest()) + "."
+	return "Sensors of usual accuracy leave " + Share(s.Low) + " to " + Share(s.High) + " (nine times in ten); most of it is " + DoubtPart(d.Largest()) + "."
 }
 
 // DoubtPart names a source of error.
