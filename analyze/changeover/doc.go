@@ -32,6 +32,7 @@ var Doc = method.Doc{
 		"what acts as a limit need not be a setting: a habit, a call of another system or a hidden sensor looks the same",
 		"a change is told from 8 days with something to say on either side and from half a kelvin on; one date per limit",
 		"the interval holds the other limits as fitted",
+		"a limit that itself differs from day to day is read for openings on the far side, by about that spread",
 	},
 	Sources: []string{
 		method.Memory("Künsch, Annals of Statistics 17 (1989): block bootstrap"),

@@ -58,6 +58,9 @@ func (m *moments) events() int {
 // plant's own effect sets in within the step, so that of the step and the one
 // before the one further inside the limit counts.
 func (r *reason) reading(step int) float32 {
+	if r.zone < 0 { // the plant does not warm the weather
+		return r.tempC[step]
+	}
 	a, b := r.tempC[step], r.tempC[step-1]
 	if math.IsNaN(float64(a)) || math.IsNaN(float64(b)) || (b > a) == r.above {
 		return a

@@ -92,7 +92,7 @@ func (in *Input) reasons(zones []int) []reason {
 	}
 	add(in.Outdoor.TempC, -1)
 	for _, z := range zones {
-		add(smoothed(in.Indoor[z].OperativeC), z)
+		add(smoothed(in.Indoor[z].OperativeC, in.Grid.StepS), z)
 		if there := in.whilePresent(z); there != nil && len(zones) > 1 {
 			out = append(out, reason{there, true, z, true})
 		}
@@ -284,16 +284,18 @@ func (s *subject) spells(state int8, stepS int64) (minutes []float64, cut int) {
 	return minutes, cut
 }
 
-// smoothed is the mean of a step and the two before it, of those known: a
-// thermostat's own mass does the same, and it halves a sensor's noise.
-func smoothed(series []float32) []float32 {
-	if series == nil {
-		return nil
+// smoothed is the mean of a step and those before it within smoothMin, of those
+// known: a thermostat's own mass does the same, and it quietens a sensor's
+// noise.
+func smoothed(series []float32, stepS int64) []float32 {
+	back := int(smoothMin*60/stepS) - 1
+	if series == nil || back < 1 {
+		return series
 	}
 	out := make([]float32, len(series))
 	for i := range series {
 		sum, n := 0.0, 0
-		for k := max(0, i-2); k <= i; k++ {
+		for k := max(0, i-back); k <= i; k++ {
 			if v := float64(series[k]); !math.IsNaN(v) {
 				sum, n = sum+v, n+1
 			}
@@ -302,3 +304,5 @@ func smoothed(series []float32) []float32 {
 	}
 	return out
 }
+
+const smoothMin = 10

@@ -35,18 +35,21 @@ func levelsAround(levelC float64, fineK, coarseK float64) []float64 {
 
 const fineSteps = 16
 
-var blurFactors = []float64{0.6, 1.6}
+// columnBlurs are the blurs looked at: as sharp as can be (a limit that changed
+// looks blurred only over both parts), as fitted, and more.
+func columnBlurs(blurK float64) []float64 { return []float64{1.1 * sharpestK, blurK, 1.7 * blurK} }
 
 // surfaceOf works the surface of edge j out.
 func (m *model) surfaceOf(rows *moments, reasons []reason, j int) *surface {
 	e := m.edges[j]
-	s := &surface{levelC: levelsAround(e.levelC, math.Max(0.04, e.blurK/6), 0.4), blurs: len(blurFactors)}
+	s := &surface{levelC: levelsAround(e.levelC, math.Max(0.04, e.blurK/6), 0.4), blurs: len(columnBlurs(e.blurK))}
 	sign := reasons[e.reason].sign()
 	q := m.openOdds(rows, reasons)
 	cols := s.cols()
 	var day []float64
 	lowest, highest := s.levelC[0], s.levelC[len(s.levelC)-1]
-	reach := 8 * e.blurK * blurFactors[len(blurFactors)-1]
+	reach := 8 * 1.7 * e.blurK
+	blurs := columnBlurs(e.blurK)
 	near := math.Max(1, 3*e.blurK)
 	for i := range q {
 		if n := len(s.days); n == 0 || s.days[n-1] != rows.day[i] {
@@ -76,8 +79,8 @@ func (m *model) surfaceOf(rows *moments, reasons []reason, j int) *surface {
 		}
 		c := 0
 		for _, l := range s.levelC {
-			for _, f := range blurFactors {
-				day[c] += w * gain(closed, math.Min(1, without)*rows.freeOf(e.reason, sign, i, l, sharpestK+(e.blurK-sharpestK)*f))
+			for _, blurK := range blurs {
+				day[c] += w * gain(closed, math.Min(1, without)*rows.freeOf(e.reason, sign, i, l, blurK))
 				c++
 			}
 		}
@@ -168,5 +171,5 @@ func (s *surface) interval(from, to int, rng *rand.Rand) (low, high float64) {
 		levels = append(levels, s.levelOf(sum))
 	}
 	sort.Float64s(levels)
-	return quantile(levels, 0.025) - sharpestK/2, quantile(levels, 0.975) + sharpestK/2
+	return quantile(levels, 0.025) - sharpestK, quantile(levels, 0.975) + sharpestK
 }

@@ -1,6 +1,9 @@
 package lost
 
-import "math"
+import (
+	"math"
+	"math/rand/v2"
+)
 
 // A control that acts at a limit betrays it: every time the temperature passes
 // the limit, something follows. At any other level the same response follows
@@ -148,3 +151,44 @@ func (e *evidence) level(series []float32, rising bool, armed, response func(i i
 
 // bin is the greatest whole number of tenths not above v.
 func bin(v float64) int { return int(math.Floor(v/crossBinK + 1e-4)) }
+
+const levelDraws = 200
+
+// levelInterval draws days again for the 95 % interval of a level found by
+// level, never narrower than a bin to either side.
+func (e *evidence) levelInterval(series []float32, rising bool, armed, response func(i int) bool, levelC float64) (low, high float64) {
+	byDay := map[int32][]passing{}
+	var days []int32
+	answered := map[int]outcome{}
+	for _, p := range e.passings(series, rising, armed) {
+		d := e.cal.DayOf[p.step]
+		if byDay[d] == nil {
+			days = append(days, d)
+		}
+		byDay[d] = append(byDay[d], p)
+		for from, to := e.responses(p); from <= to; from++ {
+			if response(from) {
+				answered[p.step] = answeredOnce
+				break
+			}
+		}
+	}
+	if len(days) == 0 {
+		return math.NaN(), math.NaN()
+	}
+	rng := rand.New(rand.NewPCG(1, uint64(len(days)))) // the same days, the same interval
+	var levels []float64
+	for range levelDraws {
+		var drawn []passing
+		for range days {
+			drawn = append(drawn, byDay[days[rng.IntN(len(days))]]...)
+		}
+		if c := bestLevel(drawn, rising, func(p passing) outcome { return answered[p.step] }); !math.IsNaN(c.levelC) {
+			levels = append(levels, c.levelC)
+		}
+	}
+	if len(levels) < levelDraws/2 {
+		return math.NaN(), math.NaN()
+	}
+	return math.Min(levelC, quantile(levels, 0.025)) - crossBinK, math.Max(levelC, quantile(levels, 0.975)) + crossBinK
+}

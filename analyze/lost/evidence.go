@@ -23,8 +23,10 @@ type zoneEvidence struct {
 	runs     []run // of its plant
 	released []float32
 	setpoint []float32
-	units    []int // serving it
-	peers    []int // see peersOf
+	// overridden and cycling mark steps; overridden is nil when not logged.
+	overridden, cycling []bool
+	units               []int // serving it
+	peers               []int // see peersOf
 }
 
 // unitEvidence is one plant unit.

@@ -80,7 +80,8 @@ func marked(by []bool) int {
 // outdoors first, indoors only after few-room changeovers, since the room that
 // leads one always changes over at its own limit.
 func tests() []test {
-	return []test{neverUsedTest(), interlockTest(), clockTest(), outdoorLimitTest(), reopenTest(), fewRoomTest(), indoorLimitTest(), notOpenedTest()}
+	return []test{neverUsedTest(), interlockTest(), overrideTest(), clockTest(), outdoorLimitTest(), reopenTest(), lockedOutTest(), thermostatTest(),
+		fewRoomTest(), indoorLimitTest(), cyclingTest(), notOpenedTest()}
 }
 
 // Find lists the missed episodes of every zone with their causes and sums the
@@ -273,6 +274,8 @@ func gather(in *Input) *evidence {
 		e.zones[z].runs = plantRuns(in.Running.Zones[z].Plant)
 		e.zones[z].released = releaseOf(in, z)
 		e.zones[z].setpoint = setpointOf(in, z)
+		e.zones[z].overridden = overriddenAt(in, z)
+		e.zones[z].cycling = e.cyclesAt(e.zones[z].runs, in.Running.Zones[z].Plant)
 	}
 	e.gatherUnits()
 	for z := range e.zones {

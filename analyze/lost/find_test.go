@@ -292,7 +292,7 @@ func TestNotOpened(t *testing.T) {
 	// Locked windows are not for people to open.
 	b.Site.Points = append(b.Site.Points, site.Point{Owner: site.OwnerSite, Quantity: site.WindowEnable})
 	b.Grid.Columns = append(b.Grid.Columns, gridColumn(constant(b.Grid.N, 0)))
-	if r := b.find(); r.ByCauseH[0][NotOpened] != 0 || r.ByCauseH[0][Unexplained] != 5 {
+	if r := b.find(); r.ByCauseH[0][NotOpened] != 0 || r.ByCauseH[0][LockedOut] != 5 {
 		t.Errorf("locked: %+v", r.ByCauseH[0])
 	}
 }
@@ -322,7 +322,7 @@ func TestBridgesAndShortRuns(t *testing.T) {
 	if ep.FromStep != at24(9, 0) || ep.ToStep != at24(10, 0) || math.Abs(ep.Hours-0.75) > 1e-9 {
 		t.Errorf("%+v", ep)
 	}
-	if r.ByCauseS[0][Unexplained] != 55*60 {
+	if r.ByCauseS[0][ShortCycling] != 55*60 { // three starts in an hour and a half
 		t.Errorf("%+v: short runs count under their cause", r.ByCauseS[0])
 	}
 }

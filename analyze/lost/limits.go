@@ -18,9 +18,11 @@ type LimitPattern struct {
 	// UpperC: above this outdoor temperature it does not leave the zone to its
 	// windows, although the weather suits; LowerC: below. N counts the
 	// passings that changed what it did, Passed all.
-	UpperC, LowerC           float64
-	UpperN, LowerN           int
-	UpperPassed, LowerPassed int
+	UpperC, LowerC float64
+	// 95 % intervals of those, from days drawn again.
+	UpperLowC, UpperHighC, LowerLowC, LowerHighC float64
+	UpperN, LowerN                               int
+	UpperPassed, LowerPassed                     int
 	// FreeShareAbove, FreeShareBelow: share of the suitable hours beyond the
 	// limit with the plant off (or open, without plant) all the same;
 	// FreeShareWithin between the limits. Hours explained by the clock are left
@@ -47,7 +49,7 @@ const IndoorMarginK = 0.5
 
 func noLimit() LimitPattern {
 	nan := math.NaN()
-	return LimitPattern{UpperC: nan, LowerC: nan, IndoorC: nan, MarginK: nan, FreeShareAbove: nan, FreeShareBelow: nan, FreeShareWithin: nan}
+	return LimitPattern{UpperC: nan, LowerC: nan, UpperLowC: nan, UpperHighC: nan, LowerLowC: nan, LowerHighC: nan, IndoorC: nan, MarginK: nan, FreeShareAbove: nan, FreeShareBelow: nan, FreeShareWithin: nan}
 }
 
 // subject is what a limit may belong to: a plant unit or a zone without plant.
@@ -78,16 +80,20 @@ func (e *evidence) limitOf(s subject) LimitPattern {
 	x := e.exposureOf(s)
 	if c := e.level(e.in.Outdoor.TempC, true, uncalled, s.started); x.confirms(c, true) {
 		p.UpperC, p.UpperN, p.UpperPassed = c.levelC, c.followed, c.passed
+		p.UpperLowC, p.UpperHighC = e.levelInterval(e.in.Outdoor.TempC, true, uncalled, s.started, c.levelC)
 		p.FreeShareAbove, _ = x.share(c.levelC+limitSlackK, math.Inf(1))
 	}
-	lower := e.level(e.in.Outdoor.TempC, false, uncalled, s.started)
+	rising, armed, answer := false, uncalled, s.started
+	lower := e.level(e.in.Outdoor.TempC, rising, armed, answer)
 	if !x.confirms(lower, false) {
 		// Mornings warm up through the lower limit more often than open hours
 		// cool down through it.
-		lower = e.level(e.in.Outdoor.TempC, true, s.kept, s.stopped)
+		rising, armed, answer = true, s.kept, s.stopped
+		lower = e.level(e.in.Outdoor.TempC, rising, armed, answer)
 	}
 	if x.confirms(lower, false) && !(lower.levelC >= p.UpperC) {
 		p.LowerC, p.LowerN, p.LowerPassed = lower.levelC, lower.followed, lower.passed
+		p.LowerLowC, p.LowerHighC = e.levelInterval(e.in.Outdoor.TempC, rising, armed, answer, lower.levelC)
 		p.FreeShareBelow, _ = x.share(math.Inf(-1), lower.levelC-limitSlackK)
 	}
 	low, high := math.Inf(-1), math.Inf(1)

@@ -39,14 +39,22 @@ func outdoorLimitExplains(e *evidence, s *spell) verdict {
 		who = "the zone"
 	}
 	if above >= below {
-		why := fmt.Sprintf("%s ends open mode at about %.1f °C outdoors (%d of %s)", who, p.UpperC, p.UpperN, count(p.UpperPassed, "passing", "passings"))
+		why := fmt.Sprintf("%s ends open mode at about %.1f °C outdoors%s (%d of %s)", who, p.UpperC, within(p.UpperLowC, p.UpperHighC), p.UpperN, count(p.UpperPassed, "passing", "passings"))
 		if !math.IsNaN(suitedTo) {
 			why += fmt.Sprintf(", the weather suits up to %.1f °C that day", suitedTo)
 		}
 		return verdict{by, why, -1}
 	}
-	return verdict{by, fmt.Sprintf("%s allows open mode only from about %.1f °C outdoors (%d of %s), the weather suits from %.1f °C", who,
-		p.LowerC, p.LowerN, count(p.LowerPassed, "passing", "passings"), e.in.Criteria.OutdoorLowC), -1}
+	return verdict{by, fmt.Sprintf("%s allows open mode only from about %.1f °C outdoors%s (%d of %s), the weather suits from %.1f °C", who,
+		p.LowerC, within(p.LowerLowC, p.LowerHighC), p.LowerN, count(p.LowerPassed, "passing", "passings"), e.in.Criteria.OutdoorLowC), -1}
+}
+
+// within words a 95 % interval, empty where unknown.
+func within(low, high float64) string {
+	if math.IsNaN(low) || math.IsNaN(high) {
+		return ""
+	}
+	return fmt.Sprintf(", 95 %% interval %.1f to %.1f", low, high)
 }
 
 func indoorLimitTest() test {

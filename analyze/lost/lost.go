@@ -24,17 +24,21 @@ const (
 	Unexplained    Cause = iota
 	NeverUsed            // the opening is never used
 	NotInterlocked       // windows open with the plant running
+	Overridden           // a manual override was on
 	ClockStart           // the plant started by the clock
 	LimitTooTight        // changeover limit tighter than the climate allows
 	SlowToReopen
-	FewRoom   // few-room changeover
+	LockedOut     // windows locked with nothing running
+	BadThermostat // a thermostat that does not represent its space
+	FewRoom       // few-room changeover
+	ShortCycling
 	NotOpened // windows by hand that nobody opened while nothing mechanical ran
 	NumCauses
 )
 
 var causeWords = [NumCauses]string{"unexplained", "opening never used", "windows and plant not interlocked",
-	"plant started by the clock", "changeover limit tighter than the climate allows", "slow to reopen",
-	"few-room changeover", "windows not opened"}
+	"manual override", "plant started by the clock", "changeover limit tighter than the climate allows", "slow to reopen",
+	"windows locked without need", "thermostat that does not represent its space", "few-room changeover", "short cycling", "windows not opened"}
 
 func (c Cause) String() string { return causeWords[c] }
 

@@ -69,6 +69,9 @@ func (e *evidence) openingUse(z int) OpeningUse {
 // hadChance reports whether the opening could have been used at a step: the
 // zone's plant was off, or a peer ran open at the same time.
 func (e *evidence) hadChance(z, i int) bool {
+	if v := at(e.zones[z].released, i); v < 0.5 {
+		return false // logged as locked
+	}
 	if e.in.Running.Zones[z].Plant[i] == uint8(site.PlantOff) {
 		return true
 	}
