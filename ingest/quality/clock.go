@@ -5,10 +5,8 @@ import (
 	"fmt"
 	"math"
 	"path"
-	"runtime"
 	"slices"
 	"strings"
-	"sync"
 	"time"
 
 	"sashlog/configs/site"
@@ -41,24 +39,11 @@ func clocks(r *run) {
 	find := func(which func(k int) bool) {
 		c.sunUp() // before it is shared
 		c.addUp(out)
-		var wg sync.WaitGroup
-		next := make(chan int)
-		for range runtime.GOMAXPROCS(0) {
-			wg.Add(1)
-			go func() {
-				defer wg.Done()
-				for k := range next {
-					found[k] = c.find(c.logs[k], out)
-				}
-			}()
-		}
-		for k := range c.logs {
+		sideBySide(len(c.logs), func(k int) {
 			if which(k) {
-				next <- k
+				found[k] = c.find(c.logs[k], out)
 			}
-		}
-		close(next)
-		wg.Wait()
+		})
 	}
 	find(func(int) bool { return true })
 	for {

@@ -2,7 +2,9 @@ package quality
 
 import (
 	"math"
+	"runtime"
 	"slices"
+	"sync"
 
 	"gonum.org/v1/gonum/stat"
 
@@ -49,8 +51,6 @@ type logSeries struct {
 	count  []int       // points per nature
 	// a, b per relation: by index of the zone or plant.
 	a, b []map[int][]float64
-	// habit is the nature that follows the clock on the wall best, -1 none.
-	habit int
 }
 
 // clockRun is the check of all clocks of a site.
@@ -219,27 +219,55 @@ func (c *clockRun) addUp(out map[string]bool) {
 func (c *clockRun) gather() {
 	c.apart = c.seenApart()
 	byName := map[string]*logSeries{}
-	pools := map[string]map[[3]int]*pool{} // log; kind, index, owner
-	put := func(log string, kind, index, owner int, v []float64) {
+	for i := range c.site.Points {
+		name := c.site.Points[i].Source
+		l := byName[name]
+		if l == nil {
+			l = &logSeries{name: name, nature: make([][]float64, len(natures)), count: make([]int, len(natures)),
+				a: make([]map[int][]float64, len(relations)), b: make([]map[int][]float64, len(relations))}
+			byName[name] = l
+			c.logs = append(c.logs, l)
+		}
+		l.points = append(l.points, i)
+	}
+	sideBySide(len(c.logs), func(k int) { c.gatherLog(c.logs[k]) })
+}
+
+// sideBySide calls f for every index, on all cores.
+func sideBySide(n int, f func(k int)) {
+	var wg sync.WaitGroup
+	next := make(chan int)
+	for range min(n, runtime.GOMAXPROCS(0)) {
+		wg.Add(1)
+		go func() {
+			defer wg.Done()
+			for k := range next {
+				f(k)
+			}
+		}()
+	}
+	for k := range n {
+		next <- k
+	}
+	close(next)
+	wg.Wait()
+}
+
+// gatherLog pools what one log says.
+func (c *clockRun) gatherLog(l *logSeries) {
+	pools := map[[3]int]*pool{} // kind, index, owner
+	put := func(kind, index, owner int, v []float64) {
 		if v == nil {
 			return
 		}
 		k := [3]int{kind, index, owner}
-		if pools[log][k] == nil {
-			pools[log][k] = &pool{}
+		if pools[k] == nil {
+			pools[k] = &pool{}
 		}
-		pools[log][k].add(v)
+		pools[k].add(v)
 	}
-	for i := range c.site.Points {
+	for _, i := range l.points {
 		p := &c.site.Points[i]
-		l := byName[p.Source]
-		if l == nil {
-			l = &logSeries{name: p.Source, nature: make([][]float64, len(natures)), count: make([]int, len(natures)),
-				a: make([]map[int][]float64, len(relations)), b: make([]map[int][]float64, len(relations)), habit: -1}
-			byName[p.Source], pools[p.Source] = l, map[[3]int]*pool{}
-			c.logs = append(c.logs, l)
-		}
-		l.points = append(l.points, i)
 		col, ok := c.column(i)
 		if !ok || p.Placement == site.PlacementReturn {
 			continue // no reading left, or it follows the fan and not the room
@@ -261,7 +289,7 @@ func (c *clockRun) gather() {
 		}
 		for k, n := range natures {
 			if p.Owner == n.owner && slices.Contains(n.of, p.Quantity) {
-				put(p.Source, 0, k, 0, get(n.level))
+				put(0, k, 0, get(n.level))
 			}
 		}
 		for k, n := range relations {
@@ -269,35 +297,32 @@ func (c *clockRun) gather() {
 				continue
 			}
 			if slices.Contains(n.a, p.Quantity) {
-				put(p.Source, 1, k, p.Index, get(n.aLevel))
+				put(1, k, p.Index, get(n.aLevel))
 			}
 			if slices.Contains(n.b, p.Quantity) {
-				put(p.Source, 2, k, p.Index, get(false))
+				put(2, k, p.Index, get(false))
 			}
 		}
 	}
-	for _, l := range c.logs {
-		for k, p := range pools[l.name] {
-			switch m := p.mean(); k[0] {
-			case 0:
-				l.nature[k[1]], l.count[k[1]] = m, p.points
-			case 1, 2:
-				r := &relations[k[1]]
-				if r.sameMoment {
-					if m = moments(m); m == nil {
-						continue
-					}
-				}
-				side := &l.a[k[1]]
-				if k[0] == 2 {
-					side = &l.b[k[1]]
-				}
-				if *side == nil {
-					*side = map[int][]float64{}
-				}
-				(*side)[k[2]] = m
+	for k, p := range pools {
+		m := p.mean()
+		if k[0] == 0 {
+			l.nature[k[1]], l.count[k[1]] = m, p.points
+			continue
+		}
+		if relations[k[1]].sameMoment {
+			if m = moments(m); m == nil {
+				continue
 			}
 		}
+		side := &l.a[k[1]]
+		if k[0] == 2 {
+			side = &l.b[k[1]]
+		}
+		if *side == nil {
+			*side = map[int][]float64{}
+		}
+		(*side)[k[2]] = m
 	}
 }
 
