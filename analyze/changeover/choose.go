@@ -76,10 +76,10 @@ func (m *model) candidate(rows *moments, reasons []reason, skip func(r int) bool
 }
 
 // closely is how many reasons are looked at with all rows.
-const closely = 4
+const closely = 3
 
 // screenRows is how many rows a reason is first looked at with.
-const screenRows = 500
+const screenRows = 300
 
 // some lists at most most rows: all that changed, and every so many others.
 func (m *moments) some(most int) []int {
@@ -180,7 +180,7 @@ func (t *tryout) screen(coarse []int) {
 	if t.rows.opening {
 		rests = rests[:1]
 	}
-	step := math.Max(0.4, (hi-lo)/40)
+	step := math.Max(0.5, (hi-lo)/30)
 	for l := lo; l <= hi; l += step {
 		for _, x := range rests {
 			if g := t.gain(l, 0.25, x, coarse); g > t.roughGain {

@@ -22,7 +22,7 @@ var Doc = method.Doc{
 	Question: "Which limits does the building behave as if it had, and when did they change?",
 	Formula: "P(open) = c·Π(1 − p_k), p_k = 1/(1 + exp(∓(T_k − L_k)/s_k)): every limit L_k holds the unit (or zone) closed with a logistic probability of the outdoor temperature or of one " +
 		"room's temperature, something else with 1 − c; fitted by penalised maximum likelihood to the steps after an open one (closing) and after a closed one (opening); " +
-		"limits are added while twice the log-likelihood rises by 25 or more; intervals by 200 resamples of blocks of three days; " +
+		"limits are added while twice the log-likelihood rises by 25 or more; intervals by 150 resamples of blocks of three days; " +
 		"date of a change: the cut between days that raises the likelihood most, tested by shuffling the days, P corrected for all behaviours tried",
 	Limits: []string{
 		"occupied steps with a known state on either side only; steps that a start by the clock explains are left out",

@@ -151,10 +151,10 @@ func (in *Input) leaveClock(s *subject, cal *calendar.Calendar) {
 }
 
 // Of the steps at which nothing changed some are kept, with a weight that makes
-// up for it: every fourth within an hour of a change, else every twelfth. There
+// up for it: every fourth within an hour of a change, else every sixteenth. There
 // are many and they say little.
 const (
-	thinNear, thinFar = 4, 12
+	thinNear, thinFar = 4, 16
 	nearMin           = 60
 )
 

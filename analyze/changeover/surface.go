@@ -129,7 +129,7 @@ func (s *surface) sum(from, to int) []float64 {
 }
 
 const (
-	resamples = 200
+	resamples = 150
 	// blockDays are drawn together, so that a run of like days stays one.
 	blockDays = 3
 )

@@ -18,9 +18,9 @@ import "sashlog/analyze/method"
 var Doc = method.Doc{
 	Title:    "Who closes the building",
 	Question: "Which thermostat starts the plant that closes the other rooms, and what do they lose to it?",
-	Formula: "a start is led by the room that passed its observed limit (see observed changeover) in the half hour before, of several the one furthest beyond; " +
+	Formula: "a start is led by the room that passed its observed limit (see observed changeover, else the call of few-room changeovers) in the half hour before, of several the one furthest beyond; " +
 		"event study: its temperature less the mean of the same room at matched moments without a start (within 30 min of the same time of day, outdoors within 1.5 K, on other days), " +
-		"interval by resampled days; lost hours: missed hours of the other rooms while the run lasted, at least those with no other reason for it to run; " +
+		"interval by resampled days; lost hours: missed hours of the other rooms while the run lasted and the leading room went on calling or nothing else asked for it; at least those with no other reason, at most all; " +
 		"instead: the same runs, kept on only by what else asked for them",
 	Limits: []string{
 		"starts to heat, starts by the clock and starts while outdoors is beyond a limit have no leading room",

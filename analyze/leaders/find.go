@@ -135,6 +135,15 @@ func (in *Input) unitOf(s *changeover.Subject) *unit {
 			u.lowC = -least(-u.lowC, -l.LevelC)
 		}
 	}
+	// A room whose call shows only as it passes a level (see few-room changeover)
+	// calls as well.
+	if s.Index < len(in.Lost.Units) {
+		for _, c := range in.Lost.Units[s.Index].Calls {
+			if _, known := u.callC[c.Zone]; !known && !math.IsNaN(c.AboveC) {
+				u.callC[c.Zone] = c.AboveC
+			}
+		}
+	}
 	for z, c := range u.callC {
 		if calm, ok := u.calmC[z]; !ok || calm > c-0.2 {
 			u.calmC[z] = c - bandK

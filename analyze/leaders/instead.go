@@ -33,12 +33,19 @@ func (in *Input) leader(u *unit, z int, starts []int, st *study) (Leader, []floa
 		}
 		for i := s.FromStep; i < s.ToStep; i++ {
 			alone := !in.otherReason(u, z, &s, i)
+			its := alone || u.calling[z][i] // else the run goes on for somebody else
 			for _, o := range u.zones {
 				if !in.Record.Class[o][i].Missed() {
 					continue
 				}
 				if o == z {
-					l.OwnLostH += h
+					if its {
+						l.OwnLostH += h
+					}
+					continue
+				}
+				l.MostH += h
+				if !its {
 					continue
 				}
 				l.LostH += h

@@ -39,12 +39,13 @@ type Leader struct {
 	// ExcessK: how much warmer the room was at the starts it led than at matched
 	// moments; OthersExcessK the mean of the other rooms at the same starts.
 	ExcessK, OthersExcessK Interval
-	// LostH are missed hours of the other rooms during the runs it led; AloneH the
-	// part with no other reason to run. Person hours are NaN where people are not
+	// LostH are missed hours of the other rooms during the runs it led, as long as
+	// it went on calling or nothing else asked for them; AloneH the part with no
+	// other reason to run (the least), MostH all of those runs. Person hours are NaN where people are not
 	// given.
-	LostH, LostPersonH, AloneH float64
-	OwnLostH                   float64
-	Ignored, Moved, TwoCalls   Instead
+	LostH, LostPersonH, AloneH, MostH float64
+	OwnLostH                          float64
+	Ignored, Moved, TwoCalls          Instead
 }
 
 // Unit sums the starts of a unit up.

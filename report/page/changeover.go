@@ -221,7 +221,7 @@ func (b *builder) leaders() []block {
 			strings.ToUpper(words.Plural(n, "thermostat", "thermostats")[:1])+words.Plural(n, "thermostat", "thermostats")[1:], words.Share(e.Share.Value), words.Share(e.Share.Low), words.Share(e.Share.High))))
 	}
 	t := table{ID: "leaders", Caption: "Rooms whose thermostat starts the plant",
-		Head: []column{col("Zone"), col("Unit"), num("Starts led"), num("Calls from (°C)"), num("Warmer than usual by (K)"), num("Others lost (h)"), num("at least"), num("person-h"), num("If ignored: freed (h)"), num("own warm (h)"), num("If moved: freed (h)"), num("If two calls: freed (h)")}}
+		Head: []column{col("Zone"), col("Unit"), num("Starts led"), num("Calls from (°C)"), num("Warmer than usual by (K)"), num("Others lost (h)"), num("at least to at most"), num("person-h"), num("If ignored: freed (h)"), num("own warm (h)"), num("If moved: freed (h)"), num("If two calls: freed (h)")}}
 	for i := range r.Leaders {
 		l := &r.Leaders[i]
 		calls, excess := words.Number(l.LimitC, 1), words.Number(l.ExcessK.Value, 1)
@@ -230,11 +230,11 @@ func (b *builder) leaders() []block {
 		}
 		warm := words.HoursNumber(l.Ignored.OwnWarmLowH*k) + " to " + words.HoursNumber(l.Ignored.OwnWarmHighH*k)
 		t.Rows = append(t.Rows, row(b.w.Zone(l.Zone), b.w.Foreign(b.in.Site.Plant[l.Unit].ID), fmt.Sprint(l.Starts), calls, excess,
-			words.HoursNumber(l.LostH*k), words.HoursNumber(l.AloneH*k), words.HoursNumber(l.LostPersonH*k),
+			words.HoursNumber(l.LostH*k), words.HoursNumber(l.AloneH*k)+" to "+words.HoursNumber(l.MostH*k), words.HoursNumber(l.LostPersonH*k),
 			words.HoursNumber(l.Ignored.FreedH*k), warm, words.HoursNumber(l.Moved.FreedH*k), words.HoursNumber(l.TwoCalls.FreedH*k)))
 	}
 	t.Foot = []string{"Hours " + b.span.Words + ", summed over rooms. Warmer than usual: at the starts it led, against the same room at the same time of day in like weather without a start. " +
-		"At least: hours in which nothing else asked for the plant. Moved: the thermostat reads the mean of the unit's other rooms. Two calls: the plant starts only when two rooms call. " +
+		"At least: hours in which nothing else asked for the plant; at most: all hours of the runs it started. Moved: the thermostat reads the mean of the unit's other rooms. Two calls: the plant starts only when two rooms call. " +
 		"Own warm: hours the leading room would have been above its comfort limit; freed hours are at most those given, since rooms are warmer without cooling."}
 	return append(out, b.table(t))
 }

@@ -116,7 +116,7 @@ func (in *Input) leaders(rule privacy.Rule) any {
 		}
 		list = append(list, (&object{}).set("zone", rule.ID(l.Zone)).set("plant", in.Site.Plant[l.Unit].ID).set("calls_from_c", num(limit)).
 			set("starts", l.Starts).set("excess_k", excess).set("others_excess_k", interval(l.OthersExcessK)).
-			set("others_lost_h", figure{num(l.LostH), num(l.AloneH), num(l.LostH)}).set("others_lost_person_h", num(l.LostPersonH)).set("own_lost_h", num(l.OwnLostH)).
+			set("others_lost_h", figure{num(l.LostH), num(l.AloneH), num(l.MostH)}).set("others_lost_person_h", num(l.LostPersonH)).set("own_lost_h", num(l.OwnLostH)).
 			set("if_ignored", instead(&l.Ignored)).set("if_it_read_the_others_mean", instead(&l.Moved)).set("if_two_calls_were_needed", instead(&l.TwoCalls)))
 	}
 	for k := range r.Units {
