@@ -1,6 +1,7 @@
 package exceedance
 
 import (
+	"fmt"
 	"math"
 
 	"sashlog/analyze/comfort"
@@ -66,7 +67,8 @@ func (r *Result) at(in *indoor.Zone, z, i int, j *judge) verdict {
 	}
 	model, low, high, ok := j.band(i)
 	if !ok {
-		return verdict{model: model, known: true}
+		// Without a running mean nothing is known of limits.
+		return verdict{model: model, known: r.Zones[z].Limits.Model[i] != NoModel}
 	}
 	return verdict{model, true, true, beyond(t, high), beyond(-t, -low)}
 }
@@ -84,7 +86,7 @@ func beyond(x, limit float64) float64 {
 func (r *Result) total(s *site.Site, g *grid.Grid, in *indoor.Zone, run *running.Zone, z int, j *judge) Criterion {
 	c := Criterion{ID: j.id, Words: j.words, Source: j.source, Note: j.note, CalculationOnly: j.calculationOnly}
 	h := g.StepH()
-	var applies, notApplicable, unknown, over, under int
+	var applies, notApplicable, unknown, over, under, assumed int
 	for i := g.PeriodFrom; i < g.PeriodTo; i++ {
 		if run.Occupied[i] != running.Occupied {
 			continue
@@ -97,6 +99,9 @@ func (r *Result) total(s *site.Site, g *grid.Grid, in *indoor.Zone, run *running
 			notApplicable++
 		default:
 			applies++
+			if j.pmv != nil && j.pmv.assumed(i) {
+				assumed++
+			}
 			if v.over > 0 {
 				over++
 			}
@@ -108,6 +113,9 @@ func (r *Result) total(s *site.Site, g *grid.Grid, in *indoor.Zone, run *running
 		}
 	}
 	c.AppliesH, c.NotApplicableH, c.UnknownH = float64(applies)*h, float64(notApplicable)*h, float64(unknown)*h
+	if assumed > 0 {
+		c.Note += fmt.Sprintf("; indoor humidity is not known in %.0f of these hours and taken as 50 %%", float64(assumed)*h)
+	}
 	c.OverH, c.UnderH = float64(over)*h, float64(under)*h
 	c.PersonOverH, c.PersonUnderH = c.OverH*s.Zones[z].People, c.UnderH*s.Zones[z].People
 	c.OverShare, c.UnderShare = share(over, applies, unknown), share(under, applies, unknown)

@@ -67,7 +67,7 @@ func limitsOfDays(c criteria.Settings, days []outdoor.Day, cat comfort.Category,
 // limits: adaptive only where people can open windows, while no heating or
 // cooling runs and at least AdaptiveAfterH after it stopped (our assumption);
 // operative ranges by season elsewhere. Where plant is unknown the operative
-// ranges apply, the narrower of the two.
+// ranges apply, which are mostly the narrower of the two.
 func Limit(s *site.Site, c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor, run *running.Result) *Result {
 	r := &Result{Zones: make([]Zone, len(s.Zones)), Headline: headlineID(c)}
 	l := NewLimiter(s, c, g, out)

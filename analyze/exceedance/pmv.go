@@ -36,13 +36,23 @@ func newPMVJudge(c criteria.Settings, out *outdoor.Outdoor, cat comfort.Category
 	return p
 }
 
+// assumed reports whether the humidity of a step is not known and taken as
+// 50 %.
+func (p *pmvJudge) assumed(i int) bool {
+	return p.in.RHPct == nil || math.IsNaN(float64(p.in.RHPct[i]))
+}
+
 // vote returns the predicted mean vote at a step, NaN where it is unknown.
 func (p *pmvJudge) vote(i int) float64 {
 	t, rh := float64(p.in.OperativeC[i]), 50.0
 	if p.in.RHPct != nil && !math.IsNaN(float64(p.in.RHPct[i])) {
 		rh = float64(p.in.RHPct[i])
 	}
-	return comfort.PMV(comfort.Conditions{AirC: t, RadiantC: t, AirSpeedMS: p.speedMS, RHPct: rh, Met: p.met, Clo: p.clo[p.dayOf[i]]})
+	speed := p.speedMS
+	if p.in.AirSpeedMS != nil && !math.IsNaN(float64(p.in.AirSpeedMS[i])) {
+		speed = comfort.RelativeAirSpeedMS(float64(p.in.AirSpeedMS[i]), p.met)
+	}
+	return comfort.PMV(comfort.Conditions{AirC: t, RadiantC: t, AirSpeedMS: speed, RHPct: rh, Met: p.met, Clo: p.clo[p.dayOf[i]]})
 }
 
 // trim writes a limit without trailing zeros.

@@ -150,8 +150,11 @@ func (j *judge) suited(i int, state running.State) Class {
 		case site.PlantHeat:
 			return NotNeeded
 		}
-		if f.cool { // plant of unknown kind in a cool zone is taken to be heating
+		switch { // plant of unknown kind in a cool zone is taken to be heating
+		case f.cool:
 			return NotNeeded
+		case !f.tempKnown:
+			return UnjudgedSuited
 		}
 		return MissedUntyped
 	}

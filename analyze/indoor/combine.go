@@ -60,28 +60,17 @@ func prefer(s *site.Site, g *grid.Grid, z int, q site.Quantity, minShare float64
 }
 
 // operative settles what comfort is judged on: a logged operative temperature,
-// else the mean of air and globe temperature (ISO 7726: at low air speed the
-// operative temperature lies midway between air and radiant; a globe reads
-// close to it), else air temperature alone, else the thermostat.
+// else a globe's, which in the slow air of rooms reads close to it (ISO 7726),
+// else air temperature alone, else the thermostat.
 func (z *Zone) operative(logged, globe []float32) {
 	switch {
 	case logged != nil:
 		z.OperativeC, z.TempNote = logged, "operative temperature as logged"
-	case globe != nil && z.AirTempC != nil:
-		z.OperativeC, z.TempNote = mean(z.AirTempC, globe), "mean of air and globe temperature"
+	case globe != nil:
+		z.OperativeC, z.TempNote = globe, "globe temperature stands for operative temperature (slow air)"
 	case z.AirTempC != nil:
 		z.OperativeC, z.TempNote = z.AirTempC, "air temperature stands for operative temperature"
-	case globe != nil:
-		z.OperativeC, z.TempNote = globe, "globe temperature stands for operative temperature"
 	case z.ThermostatC != nil:
 		z.OperativeC, z.TempNote = z.ThermostatC, "the thermostat's reading stands for operative temperature"
 	}
-}
-
-func mean(a, b []float32) []float32 {
-	out := make([]float32, len(a))
-	for i := range out {
-		out[i] = (a[i] + b[i]) / 2
-	}
-	return out
 }

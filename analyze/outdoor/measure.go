@@ -16,10 +16,6 @@ import (
 // count. Our assumption.
 const dayCoverageMin = 0.8
 
-// prevailingDays is the length of the prevailing mean: the shortest ASHRAE 55
-// allows, so that short records can be judged too. Our choice.
-const prevailingDays = 7
-
 // Measure collects the measured weather of the site.
 func Measure(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Calendar) *Outdoor {
 	of := func(q site.Quantity) []float32 {
@@ -29,6 +25,9 @@ func Measure(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Cale
 				idx = append(idx, i)
 			}
 		}
+		if q == site.WindDirection && len(idx) > 1 {
+			return meanDirection(g, idx, c.StepCoverageMin)
+		}
 		return g.Average(idx, c.StepCoverageMin)
 	}
 	o := &Outdoor{
@@ -37,6 +36,8 @@ func Measure(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Cale
 		SolarWm2: of(site.Solar), CO2PPM: of(site.OutdoorCO2), PM25: of(site.OutdoorPM25),
 		DayOf: cal.DayOf,
 	}
+	// ASHRAE 55 allows 7 to 30 days.
+	o.prevailingDays = min(max(int(c.RunningMeanMinD), 7), 30)
 	o.Measured, o.dewLogged = o.TempC != nil, o.DewPointC != nil
 	o.humidity(g.N)
 	o.CO2DefaultPPM, o.CO2Source = c.OutdoorCO2PPM, "default for the year, from memory"
@@ -104,9 +105,9 @@ func (o *Outdoor) days(g *grid.Grid, cal *calendar.Calendar) {
 		}
 	}
 	en := comfort.RunningMeanEN(daily)
-	ashrae, err := comfort.PrevailingMean(daily, prevailingDays)
+	ashrae, err := comfort.PrevailingMean(daily, o.prevailingDays)
 	if err != nil {
-		panic(err) // prevailingDays is within the standard's range
+		panic(err) // the settings allow only the standard's range
 	}
 	month, err := comfort.PrevailingMean(daily, 30)
 	if err != nil {
@@ -128,4 +129,31 @@ func (o *Outdoor) OutdoorCO2(step int) float64 {
 		}
 	}
 	return o.CO2DefaultPPM
+}
+
+// meanDirection averages several wind vanes as unit vectors; opposite winds
+// that cancel out leave no direction.
+func meanDirection(g *grid.Grid, points []int, minShare float64) []float32 {
+	need := minShare * float64(g.StepS)
+	out := make([]float32, g.N)
+	for i := range out {
+		var sin, cos float64
+		n := 0
+		for _, p := range points {
+			if col := &g.Columns[p]; col.Mean != nil && float64(col.CoveredS[i]) >= need && col.CoveredS[i] > 0 && !math.IsNaN(float64(col.Mean[i])) {
+				s, c := math.Sincos(float64(col.Mean[i]) * math.Pi / 180)
+				sin, cos, n = sin+s, cos+c, n+1
+			}
+		}
+		if n == 0 || math.Hypot(sin, cos) < 1e-3*float64(n) {
+			out[i] = float32(math.NaN())
+			continue
+		}
+		deg := math.Atan2(sin, cos) * 180 / math.Pi
+		if deg < 0 {
+			deg += 360
+		}
+		out[i] = float32(math.Mod(deg, 360))
+	}
+	return out
 }

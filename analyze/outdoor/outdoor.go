@@ -17,6 +17,7 @@ type Outdoor struct {
 	CO2DefaultPPM            float64 // in force where not measured
 	HumidityLogged, Measured bool
 	dewLogged                bool
+	prevailingDays           int
 }
 
 // Day is one local day. Means are NaN when less than 80 % of the day is

@@ -133,3 +133,50 @@ func TestPlantEvidence(t *testing.T) {
 		t.Errorf("a unit nobody logs is unknown, not off: plant %d", z.Plant[0])
 	}
 }
+
+// What is not known of plant stays unknown; the definitions are the project's
+// own.
+func TestPlantNotKnown(t *testing.T) {
+	// A unit without any log, and the zone's own valves and local unit off:
+	// air may still be moved.
+	b := newBench(1, site.Changeover)
+	b.add(site.OwnerZone, site.Window, nan, 1)
+	b.add(site.OwnerZone, site.CoolingValve, nan, 0)
+	b.add(site.OwnerZone, site.PlantStatus, nan, 0)
+	if got := b.judge().State[0]; got != Unknown {
+		t.Errorf("a silent unit beside a shut valve: %v, want unknown", got)
+	}
+	// With its damper known to be shut nothing arrives.
+	b.add(site.OwnerZone, site.ZoneDamper, nan, 0)
+	if got := b.judge().State[0]; got != Open {
+		t.Errorf("a silent unit behind a shut damper: %v, want open", got)
+	}
+	// A damper says nothing of a unit that brings no air.
+	b = newBench(1, site.Changeover)
+	b.s.Plant[0].Air = site.AirNone
+	b.add(site.OwnerZone, site.Window, nan, 0)
+	b.add(site.OwnerZone, site.ZoneDamper, nan, 0)
+	b.add(site.OwnerPlant, site.PlantStatus, nan, 4)
+	if got := b.judge().State[0]; got != Mech {
+		t.Errorf("a ceiling that cools behind a shut damper: %v, want mechanical", got)
+	}
+	// A fan and a unit of unknown kind: it may be conditioning.
+	b = newBench(1, site.Concurrent)
+	b.s.Plant = append(b.s.Plant, site.Plant{ID: "second", Serves: []string{"z"}})
+	b.add(site.OwnerZone, site.Window, nan, 1)
+	b.add(site.OwnerPlant, site.PlantStatus, nan, 2)
+	b.s.Points = append(b.s.Points, site.Point{Owner: site.OwnerPlant, Index: 1, Quantity: site.PlantStatus, Share: nan})
+	b.g.Columns = append(b.g.Columns, grid.Column{Mean: []float32{1}, CoveredS: []uint16{300}})
+	if got := b.judge().State[0]; got != Both {
+		t.Errorf("a fan beside a unit of unknown kind: %v, want both", got)
+	}
+}
+
+// A zone of whose occupancy nothing is ever known has no weight.
+func TestNeverKnownHasNoWeight(t *testing.T) {
+	s := &site.Site{Zones: []site.Zone{{ID: "a", People: 3, Openings: site.Openings{Outdoors: true}}, {ID: "b", People: 9, Openings: site.Openings{Outdoors: true}}}}
+	w, _ := weigh(s, []Zone{{Occupied: []Occupancy{Occupied, OccupancyUnknown}}, {Occupied: []Occupancy{OccupancyUnknown, Vacant}}})
+	if w[0] != 1 || w[1] != 0 {
+		t.Errorf("weights %v", w)
+	}
+}

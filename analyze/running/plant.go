@@ -113,8 +113,8 @@ func plantEvidenceOf(s *site.Site, c criteria.Settings, g *grid.Grid, z int, uni
 			switch {
 			case known && best == before && !untyped:
 				add(uint8(site.PlantOn)) // air arrives from somewhere
-			case silent && !known && len(local) == 0:
-				// Valves say nothing of air that is merely moved.
+			case silent && !known:
+				// Valves and local units say nothing of air that is merely moved.
 				unknown = true
 			}
 		}

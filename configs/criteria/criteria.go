@@ -47,7 +47,7 @@ type Settings struct {
 	MetabolicMet     float64
 	ClothingClo      float64 // NaN: from the outdoor temperature at 06:00
 	AirSpeedMS       float64 // still air indoors, default 0.1
-	RunningMeanMinD  float64 // least days behind a running mean
+	RunningMeanMinD  float64 // days behind ASHRAE's prevailing mean, 7 to 30
 
 	// Fresh air.
 	CO2Category        string  // "I" | "II" | "III"

@@ -57,7 +57,7 @@ var fields = []field{
 	{key: "metabolic_met", at: func(s *Settings) any { return &s.MetabolicMet }, low: 0.8, high: 4},
 	{key: "clothing_clo", at: func(s *Settings) any { return &s.ClothingClo }, low: 0, high: 2},
 	{key: "air_speed_m_s", at: func(s *Settings) any { return &s.AirSpeedMS }, low: 0, high: 1},
-	{key: "running_mean_min_d", at: func(s *Settings) any { return &s.RunningMeanMinD }, low: 1, high: 30},
+	{key: "running_mean_min_d", at: func(s *Settings) any { return &s.RunningMeanMinD }, low: 7, high: 30},
 
 	{key: "co2_category", at: func(s *Settings) any { return &s.CO2Category }, words: categories},
 	{key: "co2_above_outdoor_ppm", at: func(s *Settings) any { return &s.CO2AboveOutdoorPPM }, low: 100, high: 5000},

@@ -106,7 +106,7 @@ func TestDecode(t *testing.T) {
 		{&degC, "-999.0", 0, reading.Missing}, {&degC, "NaN", 0, reading.Missing}, {&degC, "#VALUE!", 0, reading.Missing}, {&degC, "#N/A", 0, reading.Missing},
 		{&degC, "Bad", 0, reading.Missing}, {&degC, "---", 0, reading.Missing}, {&degC, "No Data", 0, reading.Missing}, {&degC, "null", 0, reading.Missing},
 		{&degC, "n/v", 0, reading.Missing}, {&degC, "-55.5", 0, reading.Missing}, {&degC, "-55.50", 0, reading.Missing}, // the log's own markers
-		{&power, "-999", -999, 0}, {&power, "-9999", -9999, 0}, // physical there
+		{&power, "-999", 0, reading.Missing}, {&power, "-9999", 0, reading.Missing}, {&power, "-998", -998, 0}, // no floor there, so these are markers
 		{&window, "Open", 1, 0}, {&window, "CLOSED", 0, 0}, {&window, "Ouvert", 1, 0}, {&window, "Ferm\u00e9", 0, 0}, {&window, "Ferme\u0301", 0, 0}, {&window, "Fermee", 0, 0},
 		{&window, "Offen", 1, 0}, {&window, "Zu", 0, 0}, {&window, "geschlossen", 0, 0}, {&window, "Aperto", 1, 0}, {&window, "Abierto", 1, 0}, {&window, "Ge\u00f6ffnet", 1, 0},
 		{&window, "1", 1, 0}, {&window, "0", 0, 0}, {&window, "1.0", 1, 0}, {&window, "TRUE", 1, 0}, {&window, "false", 0, 0},

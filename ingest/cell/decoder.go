@@ -192,7 +192,9 @@ func (d *Decoder) number(x float64) (float64, reading.Reason, string) {
 // marker reports whether x is a number that stands for a missing value; v is
 // x in the canonical unit.
 func (d *Decoder) marker(x, v float64) bool {
-	return (x == -999 || x == -9999 || x == -99999) && (v < d.low || v > d.high)
+	// A quantity without a physical floor, such as power, has no use for these
+	// numbers either.
+	return (x == -999 || x == -9999 || x == -99999) && (v < d.low || v > d.high || d.low <= -1e5)
 }
 
 func (d *Decoder) decode(b []byte) verdict {

@@ -188,7 +188,7 @@ func WriteComfortParquet(w io.Writer, in Input) error {
 	return t.close()
 }
 
-// byDay adds the hours of a protected room up to local days.
+// byDay adds the hours of a protected room up to local days, or weeks.
 type byDay struct {
 	in  *Input
 	put func(exceedance.Hourly)
@@ -198,12 +198,12 @@ type byDay struct {
 
 func (d *byDay) add(e exceedance.Hourly) {
 	list := d.in.Results.Hours.Hours
-	same := d.any && d.sum.Zone == e.Zone && d.sum.Criterion == e.Criterion && list[d.sum.Hour].Date == list[e.Hour].Date
+	same := d.any && d.sum.Zone == e.Zone && d.sum.Criterion == e.Criterion && sameSpan(list[d.sum.Hour].Date, list[e.Hour].Date, d.in.measuredPresence(e.Zone))
 	if !same {
 		d.end()
 		d.sum, d.any = exceedance.Hourly{Zone: e.Zone, Hour: e.Hour, Criterion: e.Criterion}, true
-		for d.sum.Hour > 0 && list[d.sum.Hour-1].Date == list[e.Hour].Date {
-			d.sum.Hour-- // the day begins at midnight
+		for d.sum.Hour > 0 && sameSpan(list[d.sum.Hour-1].Date, list[e.Hour].Date, d.in.measuredPresence(e.Zone)) {
+			d.sum.Hour-- // the day begins at midnight, the week on Monday
 		}
 	}
 	d.sum.Model = e.Model
