@@ -9,16 +9,16 @@ import (
 func (b *Builder) Readings(point int, list []reading.At) {
 	s := &b.series[point]
 	for len(list) > 0 {
-		if v := list[0].Value; v != v {
-			b.gap(point, list[0].UnixS)
-			list = list[1:]
-			continue
-		}
 		if !b.second && s.common() {
 			list = list[s.stretch(list, b.opt):]
 			if len(list) == 0 {
 				return
 			}
+		}
+		if v := list[0].Value; v != v {
+			b.gap(point, list[0].UnixS)
+			list = list[1:]
+			continue
 		}
 		b.Reading(point, list[0].UnixS, list[0].Value)
 		list = list[1:]

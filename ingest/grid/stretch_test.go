@@ -33,7 +33,7 @@ func TestReadingsAtOnceAreReadingsOneByOne(t *testing.T) {
 		kind := rapid.IntRange(0, 99)
 		var list []reading.At
 		at, v := int64(0), 20.0
-		for range rapid.IntRange(0, 1200).Draw(t, "readings") {
+		for range rapid.IntRange(150, 500).Draw(t, "readings") {
 			switch k := kind.Draw(t, "what"); {
 			case k < 2:
 				at += 20_000 // a gap

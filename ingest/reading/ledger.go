@@ -127,13 +127,14 @@ func Title(s *site.Site, point int) string {
 }
 
 // RejectedShare is the share of rejected among all readings of the period.
-// Empty cells and missing markers say that nothing was measured, and readings
-// outside the period were not asked for: neither counts.
+// Empty cells and missing markers say that nothing was measured, readings
+// outside the period were not asked for, and exports that overlap say the same
+// twice: none of these counts.
 func (l *Ledger) RejectedShare() float64 {
 	var all, rejected int64
 	for i := range l.Points {
 		p := &l.Points[i]
-		aside := p.Counts[Missing] + p.Counts[OutsidePeriod]
+		aside := p.Counts[Missing] + p.Counts[OutsidePeriod] + p.Counts[Duplicate]
 		all += p.RowsRead - aside
 		rejected += p.Rejected() - aside
 	}
