@@ -25,6 +25,9 @@ func Sure(in Input) []string {
 		}
 		out = append(out, strings.ToUpper(t[:1])+t[1:])
 	}
+	if n := withoutRunningMean(in); n > 0 {
+		out = append(out, Plural(n, "day", "days")+" cannot be judged because the outdoor temperature of the days before is not logged: comfort limits follow it. Weather from 30 days before the period would mend that.")
+	}
 	if t := sensorDoubt(in); t != "" {
 		out = append(out, t)
 	}
@@ -39,6 +42,21 @@ func Sure(in Input) []string {
 		out = append(out, t)
 	}
 	return out
+}
+
+// withoutRunningMean counts the days of the period whose own outdoor
+// temperature is known and that of the days before is not.
+func withoutRunningMean(in Input) (n int) {
+	o, g := in.Results.Outdoor, in.Grid
+	if o == nil || g == nil {
+		return 0
+	}
+	for _, d := range o.Days {
+		if d.ToStep > g.PeriodFrom && d.FromStep < g.PeriodTo && known(d.MeanC) && !known(d.RunningMeanENC) {
+			n++
+		}
+	}
+	return n
 }
 
 // sensorDoubt says what the sensors' own errors add.
