@@ -3,6 +3,7 @@ package answerable
 import (
 	"fmt"
 	"math"
+	"slices"
 	"strings"
 
 	"sashlog/configs/site"
@@ -113,6 +114,9 @@ func (a asked) ask(l *logs, known map[string]need) Question {
 	var ways []string
 	for k, n := range list {
 		q.note(n, counts[k], &ways)
+	}
+	if refused := l.refusedWindows(); len(refused) > 0 && slices.ContainsFunc(list, func(n need) bool { return n.words == windowWords }) {
+		ways = slices.Insert(ways, 0, "the contacts of "+strings.Join(refused, ", ")+" are mapped, but their readings were refused or never came: the chapter on the data says why, and points.csv can often put it right (open_value, values, column)")
 	}
 	q.Cheapest = strings.Join(ways, "; ")
 	return q

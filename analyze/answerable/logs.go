@@ -135,3 +135,20 @@ func (l *logs) any(z int, q ...site.Quantity) bool {
 	}
 	return false
 }
+
+// refusedWindows names zones whose window points are mapped and have no
+// readings left.
+func (l *logs) refusedWindows() []string {
+	var out []string
+	for z := range l.s.Zones {
+		mapped := false
+		for i := range l.s.Points {
+			p := &l.s.Points[i]
+			mapped = mapped || p.Owner == site.OwnerZone && p.Index == z && (p.Quantity == site.Window || p.Quantity == site.WindowOpening)
+		}
+		if mapped && l.windowShare[z] == 0 {
+			out = append(out, l.s.Zones[z].ID)
+		}
+	}
+	return out
+}

@@ -43,6 +43,9 @@ func described(words, cheapest string, has func(z *site.Zone) bool) need {
 	return need{words: words, cheapest: cheapest, met: func(l *logs, z int) float64 { return yes(has(&l.s.Zones[z])) }}
 }
 
+// windowWords is what the questions call window contacts.
+const windowWords = "window contacts or positions"
+
 // What the questions need, with the cheapest way to get it.
 func needs() map[string]need {
 	const contact = "a battery window contact with its own memory on the largest opening of each zone without one; two weeks in spring and two in autumn answer most"
@@ -53,7 +56,7 @@ func needs() map[string]need {
 		"wind direction":      siteNeed("wind direction", "hourly readings of the nearest weather station as a file", site.WindDirection),
 		"rain":                siteNeed("rain", "trend the rain sensor that the window control usually has, or the nearest weather station's file", site.Rain),
 		"outdoor CO2":         siteNeed("outdoor CO2", "put one of the room sensors outdoors in the shade for a week and write the level into the site file", site.OutdoorCO2),
-		"windows": {words: "window contacts or positions", cheapest: contact, met: func(l *logs, z int) float64 {
+		"windows": {words: windowWords, cheapest: contact, met: func(l *logs, z int) float64 {
 			if l.s.Zones[z].Openings.None() {
 				return math.NaN() // nothing to know: leaves the question without this zone
 			}

@@ -50,7 +50,7 @@ type verdict struct {
 	over, under float64 // degrees (or votes) beyond the limit, 0 inside
 }
 
-func (r *Result) at(in *indoor.Zone, z, i int, j *judge) verdict {
+func (r *Result) at(in *indoor.Zone, run *running.Zone, z, i int, j *judge) verdict {
 	if in.OperativeC == nil || math.IsNaN(float64(in.OperativeC[i])) {
 		return verdict{}
 	}
@@ -70,7 +70,15 @@ func (r *Result) at(in *indoor.Zone, z, i int, j *judge) verdict {
 		// Without a running mean nothing is known of limits.
 		return verdict{model: model, known: r.Zones[z].Limits.Model[i] != NoModel}
 	}
-	return verdict{model, true, true, beyond(t, high), beyond(-t, -low)}
+	v := verdict{model, true, true, beyond(t, high), beyond(-t, -low)}
+	if j.other != nil && run.PeopleCanOpen && run.Plant[i] == running.PlantUnknown {
+		// Which limits hold is not known; what both say is.
+		low, high := j.other(i)
+		if (beyond(t, high) > 0) != (v.over > 0) || (beyond(-t, -low) > 0) != (v.under > 0) {
+			return verdict{model: model}
+		}
+	}
+	return v
 }
 
 // beyond is how far x lies above limit, both rounded to 0.001; a limit that is
@@ -91,7 +99,7 @@ func (r *Result) total(s *site.Site, g *grid.Grid, in *indoor.Zone, run *running
 		if run.Occupied[i] != running.Occupied {
 			continue
 		}
-		v := r.at(in, z, i, j)
+		v := r.at(in, run, z, i, j)
 		switch {
 		case !v.known:
 			unknown++
@@ -150,7 +158,7 @@ func (r *Result) eachHour(g *grid.Grid, in *indoor.Zone, run *running.Zone, z in
 		if run.Occupied[i] != running.Occupied {
 			continue
 		}
-		v := r.at(in, z, i, j)
+		v := r.at(in, run, z, i, j)
 		if !v.applies {
 			continue
 		}

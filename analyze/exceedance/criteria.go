@@ -16,6 +16,9 @@ type judge struct {
 	// band returns the model and limits at a step; ok is false outside the
 	// criterion's validity.
 	band func(i int) (model string, low, high float64, ok bool)
+	// other returns the limits that would hold if the zone were free-running;
+	// nil where the criterion has only one line.
+	other func(i int) (low, high float64)
 	// pmv marks the PMV criterion, judged on the vote instead of a temperature.
 	pmv *pmvJudge
 }
@@ -46,6 +49,9 @@ func headlineJudge(c criteria.Settings, cat comfort.Category, l *Limits) judge {
 		m := l.Model[i]
 		return m.String(), float64(l.LowC[i]), float64(l.HighC[i]), m != NoModel
 	}}
+	if j.id != headlineIMAC {
+		j.other = func(i int) (float64, float64) { return float64(l.LowOfDayC[i]), float64(l.UpperOfDayC[i]) }
+	}
 	const ranges = "; EN 16798-1 operative range with plant"
 	switch j.id {
 	case headlineASHRAE55:
@@ -83,6 +89,10 @@ func enJudge(out *outdoor.Outdoor, cat comfort.Category, l *Limits) judge {
 	return judge{
 		id: "en16798-1-" + lower(cat), words: "EN 16798-1 category " + cat.String() + " as published: adaptive within a running mean of 10 to 30 °C, operative ranges with plant",
 		source: "EN 16798-1:2019 Annex B (categories I and III of the operative ranges from memory)",
+		other: func(i int) (float64, float64) {
+			b := days[out.DayOf[i]].free
+			return b.LowC, b.HighC
+		},
 		band: func(i int) (string, float64, float64, bool) {
 			d := &days[out.DayOf[i]]
 			switch {

@@ -39,6 +39,8 @@ type Limits struct {
 	// taken off, per step; it does not depend on the running state. WithFanC
 	// adds the site's fan speed. Zones may share both; nobody writes to them.
 	UpperOfDayC, WithFanC []float32
+	// LowOfDayC is the adaptive lower limit of the day, shared likewise.
+	LowOfDayC []float32
 }
 
 // Criterion is the outcome of one criterion in one zone over the period, in

@@ -243,3 +243,19 @@ func TestShortFreeSpells(t *testing.T) {
 		}
 	}
 }
+
+// With plant unknown, a temperature that the adaptive limits (21.4 to 28.4 °C)
+// and the cooling range (23 to 26 °C) judge alike is known, another is not.
+func TestPlantUnknown(t *testing.T) {
+	d := newDay(20, []float64{24, 27, 22, 29}, states(4, site.PlantOff))
+	for i := range d.run.Zones[0].Plant {
+		d.run.Zones[0].Plant[i] = running.PlantUnknown
+	}
+	c := criterion(t, d.result(), "en16798-1")
+	if c.AppliesH != 2 || c.UnknownH != 2 || c.OverH != 1 || c.UnderH != 0 {
+		t.Errorf("%+v", c)
+	}
+	if c = criterion(t, d.result(), "en16798-1-ii"); c.AppliesH != 2 || c.UnknownH != 2 {
+		t.Errorf("as published: %+v", c)
+	}
+}

@@ -67,7 +67,8 @@ func limitsOfDays(c criteria.Settings, days []outdoor.Day, cat comfort.Category,
 // limits: adaptive only where people can open windows, while no heating or
 // cooling runs and at least AdaptiveAfterH after it stopped (our assumption);
 // operative ranges by season elsewhere. Where plant is unknown the operative
-// ranges apply, which are mostly the narrower of the two.
+// ranges stand in; Count counts such a step as unknown where the adaptive
+// limits would judge it otherwise.
 func Limit(s *site.Site, c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor, run *running.Result) *Result {
 	r := &Result{Zones: make([]Zone, len(s.Zones)), Headline: headlineID(c)}
 	l := NewLimiter(s, c, g, out)
@@ -87,8 +88,8 @@ type Limiter struct {
 
 // perDay is what zones of one category with the same fan share.
 type perDay struct {
-	days           []dayLimits
-	upper, withFan []float32
+	days                  []dayLimits
+	upper, withFan, lower []float32
 }
 
 // NewLimiter works out what depends on the day.
@@ -107,10 +108,10 @@ func NewLimiter(s *site.Site, c criteria.Settings, g *grid.Grid, out *outdoor.Ou
 		}
 		p := known[k]
 		if p == nil {
-			p = &perDay{days: limitsOfDays(c, out.Days, k.category, fan), upper: make([]float32, g.N), withFan: make([]float32, g.N)}
+			p = &perDay{days: limitsOfDays(c, out.Days, k.category, fan), upper: make([]float32, g.N), withFan: make([]float32, g.N), lower: make([]float32, g.N)}
 			for i := range p.upper {
 				d := &p.days[out.DayOf[i]]
-				p.upper[i], p.withFan[i] = float32(d.upperC), float32(d.withFanC)
+				p.upper[i], p.withFan[i], p.lower[i] = float32(d.upperC), float32(d.withFanC), float32(d.adaptive.LowC)
 			}
 			known[k] = p
 		}
@@ -128,7 +129,7 @@ func (l *Limiter) Upper(z int) []float32 { return l.kind[z].upper }
 func (l *Limiter) Zone(z int, free []bool) Limits {
 	p := l.kind[z]
 	limits := limitsOfZone(l.g, l.out, free, p.days)
-	limits.UpperOfDayC, limits.WithFanC = p.upper, p.withFan
+	limits.UpperOfDayC, limits.WithFanC, limits.LowOfDayC = p.upper, p.withFan, p.lower
 	return limits
 }
 
