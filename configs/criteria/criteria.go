@@ -58,6 +58,23 @@ type Settings struct {
 	DecayStartAbovePPM float64 // a decay event starts at least so far above outdoors
 	MinDecayEvents     int
 
+	// What the climate offers, by the heat balance and at night.
+	ClimateGainsWm2         float64 // heat from people, sun and equipment per floor area
+	ClimateLossWm2K         float64 // conductance of the envelope per floor area
+	ClimateMinAirChangePerH float64 // outdoor air needed for the people
+	ClimateMaxAirChangePerH float64 // most the openings can be expected to bring
+	ClimateHeatingC         float64 // set-points of the heat balance
+	ClimateCoolingC         float64
+	NightStoreC             float64 // temperature of the mass that stores cold
+
+	// Wind.
+	BreezeAboveC       float64 // outdoors above this, a breeze is wanted
+	WindCalmMS         float64 // slower wind is calm and has no direction
+	WindMastM          float64 // height of the anemometer above ground
+	WindMastTerrain    string  // one of Terrains
+	WindOpeningM       float64 // height of the openings above ground
+	WindOpeningTerrain string
+
 	// Accuracy of sensors, as ranges that hold 95 times in 100.
 	AccuracyOutdoorTempK float64
 	AccuracyIndoorTempK  float64

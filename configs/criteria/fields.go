@@ -19,6 +19,10 @@ type field struct {
 
 var categories = []string{"I", "II", "III"}
 
+// Terrains are the roughnesses of the ground a wind may have come over, from
+// rough to smooth.
+var Terrains = []string{"city", "suburb", "country", "water"}
+
 // fields lists every number in the order reports print them.
 var fields = []field{
 	{key: "outdoor_low_c", at: func(s *Settings) any { return &s.OutdoorLowC }, low: -20, high: 30},
@@ -66,6 +70,21 @@ var fields = []field{
 	{key: "co2_per_person_l_s", at: func(s *Settings) any { return &s.CO2PerPersonLs }, low: 0.0005, high: 0.02},
 	{key: "decay_start_above_ppm", at: func(s *Settings) any { return &s.DecayStartAbovePPM }, low: 50, high: 2000},
 	{key: "min_decay_events", at: func(s *Settings) any { return &s.MinDecayEvents }, low: 1, high: 1000},
+
+	{key: "climate_gains_w_m2", at: func(s *Settings) any { return &s.ClimateGainsWm2 }, low: 0, high: 500},
+	{key: "climate_loss_w_m2_k", at: func(s *Settings) any { return &s.ClimateLossWm2K }, low: 0, high: 20},
+	{key: "climate_min_air_change_per_h", at: func(s *Settings) any { return &s.ClimateMinAirChangePerH }, low: 0, high: 20},
+	{key: "climate_max_air_change_per_h", at: func(s *Settings) any { return &s.ClimateMaxAirChangePerH }, low: 0.1, high: 100},
+	{key: "climate_heating_c", at: func(s *Settings) any { return &s.ClimateHeatingC }, low: 10, high: 26},
+	{key: "climate_cooling_c", at: func(s *Settings) any { return &s.ClimateCoolingC }, low: 20, high: 35},
+	{key: "night_store_c", at: func(s *Settings) any { return &s.NightStoreC }, low: 15, high: 35},
+
+	{key: "breeze_above_c", at: func(s *Settings) any { return &s.BreezeAboveC }, low: 0, high: 45},
+	{key: "wind_calm_m_s", at: func(s *Settings) any { return &s.WindCalmMS }, low: 0, high: 3},
+	{key: "wind_mast_m", at: func(s *Settings) any { return &s.WindMastM }, low: 1, high: 200},
+	{key: "wind_mast_terrain", at: func(s *Settings) any { return &s.WindMastTerrain }, words: Terrains},
+	{key: "wind_opening_m", at: func(s *Settings) any { return &s.WindOpeningM }, low: 1, high: 400},
+	{key: "wind_opening_terrain", at: func(s *Settings) any { return &s.WindOpeningTerrain }, words: Terrains},
 
 	{key: "accuracy_outdoor_temp_k", at: func(s *Settings) any { return &s.AccuracyOutdoorTempK }, low: 0, high: 5},
 	{key: "accuracy_indoor_temp_k", at: func(s *Settings) any { return &s.AccuracyIndoorTempK }, low: 0, high: 5},
