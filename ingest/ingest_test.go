@@ -188,7 +188,8 @@ func rows(day string, v string) string {
 
 func TestPeriod(t *testing.T) {
 	log := "time,t\n" + rows("2024-01-31", "20.1") + rows("2024-02-01", "20.2") + rows("2024-02-02", "20.4")
-	// From the readings: 31 January to 3 February local, 30 days before it.
+	// From the readings: 31 January to 2 February local, since the last reading,
+	// at local midnight, begins no day; 30 days before it.
 	g, l := read(t, small(t, map[string]string{"log.csv": log}, ""), ingest.Options{})
 	if got := g.Time(0).Format("2006-01-02 15:04"); got != "2024-01-01 00:00" {
 		t.Errorf("grid begins %s", got)
@@ -196,11 +197,11 @@ func TestPeriod(t *testing.T) {
 	if got := g.Time(g.PeriodFrom).Format("2006-01-02 15:04"); got != "2024-01-31 00:00" {
 		t.Errorf("period begins %s", got)
 	}
-	if got := g.Time(g.PeriodTo).Format("2006-01-02 15:04"); got != "2024-02-04 00:00" || g.N != g.PeriodTo {
+	if got := g.Time(g.PeriodTo).Format("2006-01-02 15:04"); got != "2024-02-03 00:00" || g.N != g.PeriodTo {
 		t.Errorf("period ends %s", got)
 	}
-	if l.Points[0].Counts[reading.Accepted] != 72 {
-		t.Errorf("%d accepted", l.Points[0].Counts[reading.Accepted])
+	if l.Points[0].Counts[reading.Accepted] != 71 || l.Points[0].Counts[reading.OutsidePeriod] != 1 {
+		t.Errorf("%d accepted, %d outside", l.Points[0].Counts[reading.Accepted], l.Points[0].Counts[reading.OutsidePeriod])
 	}
 	// Options go before the site file.
 	g, l = read(t, small(t, map[string]string{"log.csv": log}, "period: {from: 2024-01-31, to: 2024-02-02}\n"), ingest.Options{To: site.Date{Year: 2024, Month: 2, Day: 1}})

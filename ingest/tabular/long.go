@@ -40,7 +40,9 @@ func (m *Mapper) longRow(cells [][]byte, starts []int, text []byte, st clock.Sta
 				to.Reject(t.point, reading.Truncated, m.where(0), "")
 			case len(cells[col]) == 0 && !several:
 				to.Reject(t.point, reading.Missing, m.where(startOf(starts, col)), "")
-				m.gap(t, u, to)
+				if t.cov {
+					m.gap(t, u, to)
+				}
 			default:
 				m.cell(t, cells[col], u, startOf(starts, col), to)
 			}

@@ -311,7 +311,7 @@ func (m *Mapper) cell(t *target, b []byte, unixS int64, col int, to reading.Sink
 		m.NoChange++ // nothing written: nothing changed
 	default:
 		to.Reject(t.point, r, m.where(col), text)
-		if text != "" { // an empty cell of a sampled point is no sample, nothing more
+		if t.cov && text != "" { // a sampled value holds a few intervals anyway
 			m.gap(t, unixS, to)
 		}
 	}
