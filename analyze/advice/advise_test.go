@@ -162,7 +162,11 @@ func TestEveryCauseHasAFinding(t *testing.T) {
 		if c == lost.FewRoom {
 			led = 2
 		}
-		lose(&in, int(c)%2, c, 8, int(c), led)
+		zone := 0
+		if c == lost.SlowToReopen {
+			zone = 1
+		}
+		lose(&in, zone, c, 8, int(c), led)
 	}
 	in.Lost.Patterns[0].Clock = lost.ClockPattern{Found: true, Minutes: []int{390}, Share: 0.87, HoldMinute: 570}
 	in.Lost.Patterns[1].Clock = in.Lost.Patterns[0].Clock
