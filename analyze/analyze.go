@@ -10,22 +10,26 @@
 //  7. freshair: was the air fresh enough in each running state?
 //  8. lost: which hours were missed, in which episodes, and why?
 //  9. afterhours: what ran or stood open when nobody was there?
-//  10. longterm: how did the season compare by published indices, and whom does the average hide?
-//  11. doubt: how far could the sensors' own errors move all this?
-//  12. votes: what did the occupants say, and do the models predict it?
-//  13. energy: what did the plant use in hours that could have been open?
-//  14. changeover: which limits does the building behave as if it had, and when did they change?
-//  15. leaders: which room's thermostat closes the building?
-//  16. answerable: what can these logs answer at all?
-//  17. advice: what should be done first?
+//  10. climate: what could this climate have offered, by published ways of counting?
+//  11. breeze: where did the wind come from, also when it was wanted, and what did it do?
+//  12. longterm: how did the season compare by published indices, and whom does the average hide?
+//  13. doubt: how far could the sensors' own errors move all this?
+//  14. votes: what did the occupants say, and do the models predict it?
+//  15. energy: what did the plant use in hours that could have been open?
+//  16. changeover: which limits does the building behave as if it had, and when did they change?
+//  17. leaders: which room's thermostat closes the building?
+//  18. answerable: what can these logs answer at all?
+//  19. advice: what should be done first?
 package analyze
 
 import (
 	"sashlog/analyze/advice"
 	"sashlog/analyze/afterhours"
 	"sashlog/analyze/answerable"
+	"sashlog/analyze/breeze"
 	"sashlog/analyze/calendar"
 	"sashlog/analyze/changeover"
+	"sashlog/analyze/climate"
 	"sashlog/analyze/doubt"
 	"sashlog/analyze/energy"
 	"sashlog/analyze/exceedance"
@@ -59,6 +63,8 @@ type Results struct {
 	Running    *running.Result
 	Exceedance *exceedance.Result
 	Potential  *potential.Result
+	Climate    *climate.Result
+	Breeze     *breeze.Result
 	Hours      *hours.Record
 	Summary    *hours.Summary
 	FreshAir   *freshair.Result

@@ -1,7 +1,9 @@
 package analyze
 
 import (
+	"sashlog/analyze/breeze"
 	"sashlog/analyze/changeover"
+	"sashlog/analyze/climate"
 	"sashlog/analyze/comfort"
 	"sashlog/analyze/doubt"
 	"sashlog/analyze/energy"
@@ -21,8 +23,9 @@ import (
 // analyses run; the report's appendix and the list of methods print from it.
 func Methods() []method.Doc {
 	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc, doubt.Doc, votes.Doc, energy.Doc, changeover.Doc, leaders.Doc}
+	docs = append(append(docs, climate.Docs()...), breeze.Docs()...)
 	// What no figure of the report rests on is not listed.
-	unused := map[string]bool{comfort.SETDoc.Title: true, comfort.CoolingEffectDoc.Title: true, comfort.DraughtDoc.Title: true}
+	unused := map[string]bool{comfort.DraughtDoc.Title: true}
 	for _, d := range comfort.Docs() {
 		if !unused[d.Title] {
 			docs = append(docs, d)

@@ -4,8 +4,10 @@ import (
 	"sashlog/analyze/advice"
 	"sashlog/analyze/afterhours"
 	"sashlog/analyze/answerable"
+	"sashlog/analyze/breeze"
 	"sashlog/analyze/calendar"
 	"sashlog/analyze/changeover"
+	"sashlog/analyze/climate"
 	"sashlog/analyze/cores"
 	"sashlog/analyze/doubt"
 	"sashlog/analyze/energy"
@@ -50,11 +52,16 @@ func Run(in Input) *Results {
 			r.AfterHours = afterhours.Look(afterhours.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor,
 				Running: r.Running, Record: r.Hours, Summary: r.Summary})
 		},
+		func() {
+			r.Climate = climate.Offered(climate.Input{Site: s, Criteria: c, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor,
+				Running: r.Running, Exceedance: r.Exceedance, Potential: r.Potential})
+		},
 		func() { r.Energy = energy.Assess(energy.Input{Site: s, Grid: g, Running: r.Running, Record: r.Hours}) },
 		func() {
 			r.Doubt = doubt.Estimate(doubt.Input{Input: record, Calendar: r.Calendar, Weights: r.Summary.Weights, Seed: 1})
 		},
 	)
+	r.Breeze = breeze.Catch(breeze.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Running: r.Running, Potential: r.Potential})
 	r.LongTerm = longterm.Assess(longterm.Input{Site: s, Criteria: c, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor,
 		Running: r.Running, Exceedance: r.Exceedance})
 	r.Votes = votes.Compare(votes.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running, Exceedance: r.Exceedance})
