@@ -94,8 +94,8 @@ func WriteJSON(w io.Writer, in Input) error {
 		set("building", totalObject(&in.Results.Summary.Building).set("weighted_by", in.Results.Summary.WeightedBy)).
 		set("zones", in.zoneList(rule)).set("months", in.months()).set("quality", in.quality(rule)).
 		set("episodes", in.episodeList(rule)).set("lost_to", in.lostTo()).
-		set("fresh_air", in.freshAir()).set("potential", in.potential()).set("comfort_spread", in.comfortSpread(rule)).
-		set("wind", nil).set("changeover", in.changeover(rule)).set("votes", in.votes()).set("energy", in.energy()).
+		set("fresh_air", in.freshAir()).set("potential", in.climateInto(in.potential(), rule)).set("comfort_spread", in.comfortSpread(rule)).
+		set("wind", in.wind(rule)).set("changeover", in.changeover(rule)).set("votes", in.votes()).set("energy", in.energy()).
 		set("out_of_hours", in.outOfHours(rule)).set("uncertainty", in.uncertainty()).set("findings", in.findings(rule))
 	enc := json.NewEncoder(w)
 	enc.SetEscapeHTML(true)

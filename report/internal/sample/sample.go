@@ -58,6 +58,7 @@ func Make(o Options) Sample {
 	m.makeConditions()
 	m.makeRecord()
 	m.makeAnswers()
+	m.makeClimate()
 	m.makeLedger()
 	return m.Sample
 }
