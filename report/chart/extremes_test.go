@@ -49,6 +49,21 @@ func TestNothingToShow(t *testing.T) {
 			return ExceedanceCurve(ExceedanceCurveData{Caption: c, Curves: []NamedCurve{{"a", None, []XY{{nan, 1}}}}}, o)
 		},
 		"rose without sectors": func() (SVG, error) { return SpeedRose(SpeedRoseData{Caption: c}, o) },
+		"ways of unknown": func() (SVG, error) {
+			return HoursByWay(HoursByWayData{Caption: c, Ways: []WayHours{{"a", none, nan}}}, o)
+		},
+		"added of nothing": func() (SVG, error) {
+			return AddedHours(AddedHoursData{Caption: c, Steps: []string{"a"}, Zones: []ZoneAdded{{"z", []float64{0}, ""}}}, o)
+		},
+		"rates of unknown": func() (SVG, error) {
+			return GroupRates(GroupRatesData{Caption: c, Groups: []GroupRate{{"a", none, 2}}, Usual: 1}, o)
+		},
+		"roses of calm": func() (SVG, error) {
+			return WindRoses(WindRosesData{Caption: c, Bands: []string{"a"}, Roses: []NamedRose{{"a", "", make4(0), 100}}}, o)
+		},
+		"fields of nothing": func() (SVG, error) {
+			return ComfortFields(ComfortFieldsData{Caption: c, Columns: []string{"a"}, Rows: []string{"b"}, Hours: [][]FieldHours{{{}}}}, o)
+		},
 		"rose of calm": func() (SVG, error) {
 			return SpeedRose(SpeedRoseData{Caption: c, Bands: []string{"a"}, Sectors: make4(0)}, o)
 		},
@@ -97,6 +112,24 @@ func TestRefusals(t *testing.T) {
 		"sectors": {func() (SVG, error) {
 			return SpeedRose(SpeedRoseData{Caption: c, Bands: []string{"a"}, Sectors: [][]float64{{1}}}, o)
 		}, "1 sectors"},
+		"ways": {func() (SVG, error) {
+			return HoursByWay(HoursByWayData{Caption: c, Ways: []WayHours{{"a", Bounded{-1, 0, 0}, 1}}}, o)
+		}, "must be 0 to 1e9"},
+		"steps": {func() (SVG, error) {
+			return AddedHours(AddedHoursData{Caption: c, Steps: []string{"a"}, Zones: []ZoneAdded{{"z", nil, ""}}}, o)
+		}, "0 values for 1 steps"},
+		"rates": {func() (SVG, error) {
+			return GroupRates(GroupRatesData{Caption: c, Groups: []GroupRate{{"a", Bounded{1, -2, 3}, 2}}}, o)
+		}, "must be 0 to 1e9"},
+		"roses": {func() (SVG, error) {
+			return WindRoses(WindRosesData{Caption: c, Roses: make([]NamedRose, 4)}, o)
+		}, "at most 3"},
+		"petals": {func() (SVG, error) {
+			return WindRoses(WindRosesData{Caption: c, Bands: []string{"a"}, Roses: []NamedRose{{"a", "", make4(120), 0}}}, o)
+		}, "must be 0 to 100"},
+		"fields": {func() (SVG, error) {
+			return ComfortFields(ComfortFieldsData{Caption: c, Columns: []string{"a"}, Rows: []string{"b"}, Hours: [][]FieldHours{{}}}, o)
+		}, "0 fields for 1 columns"},
 		"hours rows": {func() (SVG, error) {
 			return OutdoorQuadrants(OutdoorQuadrantsData{Caption: c, Points: []OutdoorPoint{{1, 1, Open}}, Hours: make4(1)}, o)
 		}, "hours have 4 rows, limits make 1"},

@@ -38,6 +38,13 @@ func figures() []figure {
 		{"strip-3", func(o Options) (SVG, error) { return EpisodeStrip(sampleStrip(3), o) }},
 		{"exceedance-curve", func(o Options) (SVG, error) { return ExceedanceCurve(sampleCurve(), o) }},
 		{"changeover-curve", func(o Options) (SVG, error) { return ChangeoverCurve(sampleChangeover(), o) }},
+		{"hours-by-way", func(o Options) (SVG, error) { return HoursByWay(sampleWays(), o) }},
+		{"added-hours", func(o Options) (SVG, error) { return AddedHours(sampleAdded(12), o) }},
+		{"added-hours-70", func(o Options) (SVG, error) { return AddedHours(sampleAdded(70), o) }},
+		{"group-rates", func(o Options) (SVG, error) { return GroupRates(sampleRates(), o) }},
+		{"wind-roses", func(o Options) (SVG, error) { return WindRoses(sampleRoses(3), o) }},
+		{"wind-roses-1", func(o Options) (SVG, error) { return WindRoses(sampleRoses(1), o) }},
+		{"comfort-fields", func(o Options) (SVG, error) { return ComfortFields(sampleFields(), o) }},
 		{"rose", func(o Options) (SVG, error) { return SpeedRose(sampleRose(), o) }},
 	}
 }

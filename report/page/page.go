@@ -6,7 +6,7 @@
 // The steps, in the order of the document:
 //
 //  1. page one: the answer, what the hours went to, worst zones, first actions
-//  2. the year, the weather, the zones, comfort, fresh air
+//  2. the year, the weather, the wind, the zones, comfort, fresh air
 //  3. what was missed and why, the findings in full, out of hours
 //  4. what the logs can answer, how good the data are
 //  5. methods, provenance, cautions
@@ -144,7 +144,7 @@ func newBuilder(in Input) *builder {
 
 func (b *builder) sections() []section {
 	list := []section{
-		b.year(), b.weather(), b.zones(), b.comfort(), b.said(), b.air(), b.lost(), b.changeover(), b.findings(), b.outOfHours(),
+		b.year(), b.weather(), b.wind(), b.zones(), b.comfort(), b.said(), b.air(), b.lost(), b.changeover(), b.findings(), b.outOfHours(),
 		b.answerable(), b.quality(), b.methods(), b.provenance(), b.cautions(),
 	}
 	list = slices.DeleteFunc(list, func(s section) bool { return s.ID == "" })

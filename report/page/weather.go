@@ -28,7 +28,8 @@ func (b *builder) weather() section {
 		t.Foot = []string{"Brackets: from no unknown hour suitable to all of them."}
 		s.Blocks = append(s.Blocks, b.table(t))
 	}
-	if y := p.Typical; y != nil {
+	// The typical year has a part of its own where the climate was worked out.
+	if y := p.Typical; y != nil && b.in.Results.Climate == nil {
 		s.Blocks = append(s.Blocks, text("Against a typical year ("+words.Clean(y.Name)+", plain band with humidity limit, "+words.Plural(y.Months, "month", "months")+" compared): "+
 			words.Hours(y.MeasuredH)+" were in the band as measured, "+words.Hours(y.TypicalH)+" in the typical year. Mean outdoor temperature "+
 			words.Unit(y.MeasuredMeanC, 1, "°C")+" as measured, "+words.Unit(y.TypicalMeanC, 1, "°C")+" in the typical year. The typical year only says whether the logged weather was normal; it never stands in for measured weather."))
@@ -37,6 +38,7 @@ func (b *builder) weather() section {
 		s.Blocks = append(s.Blocks, text("Which tests the logs allowed (not logged means not tested, never calm or dry):"), block{List: b.foreign(p.Tested)})
 	}
 	s.Blocks = append(s.Blocks, b.outdoorAir())
+	s.Blocks = append(s.Blocks, b.climate()...)
 	return s
 }
 
