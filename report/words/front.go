@@ -18,6 +18,8 @@ type Front struct {
 	// WorstBy says what the worst zones are the worst by.
 	WorstBy string
 	First   []Action
+	// FirstNote explains person-hours where the actions give them.
+	FirstNote string
 	Sure    []string
 }
 
@@ -30,8 +32,8 @@ type Figure struct {
 type Worst struct{ Zone, People, Text string }
 
 // Action is one thing to do first. What gives the hours with their bounds;
-// Size is the hours again with the person-hours, Load the people and
-// person-hours alone.
+// Size is the hours again with the person-hours, Load the people and what it
+// is for the average occupant.
 type Action struct{ What, Size, Load, Do, Look string }
 
 // FrontOf makes page one.
@@ -44,6 +46,9 @@ func FrontOf(in Input) Front {
 			break
 		}
 		f.First = append(f.First, action(in, x))
+		if occupantHours(in, x) == "" && personHours(x) != "" {
+			f.FirstNote = "person-hours are hours times the usual number of people"
+		}
 	}
 	f.Sure = Sure(in)
 	return f
@@ -207,11 +212,40 @@ func action(in Input, f advice.Finding) Action {
 	if p := findingPeople(in, f); p != "" {
 		load = append(load, p)
 	}
-	if p := personHours(f); p != "" {
+	if p := occupantHours(in, f); p != "" {
+		load = append(load, p)
+	} else if p := personHours(f); p != "" {
 		load = append(load, p)
 	}
-	a.Load = strings.Join(load, ", ")
+	a.Load = strings.Join(load, "; ")
 	return a
+}
+
+// occupantHours writes a finding's person-hours as hours of the average
+// occupant, so that they stand beside the other figures of page one. Empty
+// where building figures are not weighted by people.
+func occupantHours(in Input, f advice.Finding) string {
+	sum := in.Results.Summary
+	if !known(f.PersonH) || sum.WeightedBy != "people" {
+		return ""
+	}
+	people := 0.0
+	for z, w := range sum.Weights {
+		if w > 0 {
+			people += in.Results.Hours.People[z]
+		}
+	}
+	for _, id := range f.Zones {
+		if z := in.Site.ZoneIndex(id); z < 0 || sum.Weights[z] == 0 {
+			return "" // the building figures leave this zone out
+		}
+	}
+	if !(people > 0) {
+		return ""
+	}
+	s := in.SpanOf()
+	h := f.PersonH / people * s.PerYear
+	return HoursBetween(h, h*ratio(f.Low, f.Hours), h*ratio(f.High, f.Hours)) + " " + s.Words + " for the average occupant"
 }
 
 // FindingSize writes a finding's hours with bounds and its person-hours.
