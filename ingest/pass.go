@@ -209,6 +209,16 @@ func (n *notes) Reading(point int, unixS int64, v float64) {
 	n.belt.put(point, unixS, v)
 }
 
+// Block takes rows of a wide file at once.
+func (n *notes) Block(rows *reading.Block) *reading.Block {
+	before := n.readings
+	n.readings += int64(len(rows.UnixS) * len(rows.Points))
+	if told := n.readings/tellEach - before/tellEach; told > 0 {
+		n.told += n.meter.add(told * tellEach * bytesOfAReading)
+	}
+	return n.belt.block(rows)
+}
+
 // Gap takes its place among the readings of the point.
 func (n *notes) Gap(point int, unixS int64) { n.belt.put(point, unixS, math.NaN()) }
 

@@ -27,25 +27,33 @@ func Short(b []byte, mark byte) (v float64, n int) {
 	if len(b) < 8 {
 		return short(b, mark)
 	}
+	if v, n = Word(binary.LittleEndian.Uint64(b), mark); n == 0 {
+		return short(b, mark)
+	}
+	return v, n
+}
+
+// Word is Short for the number at the front of eight bytes, the first in the
+// lowest byte; n is at most 7. n is 0 for everything else: a sign, a number that
+// may go on behind the eight bytes, no number.
+func Word(w uint64, mark byte) (v float64, n int) {
 	// Digits become 0 to 9, every other byte 10 or more.
-	x := binary.LittleEndian.Uint64(b) ^ 0x3030303030303030
+	x := w ^ 0x3030303030303030
 	other := ((x&0x7f7f7f7f7f7f7f7f + 0x7676767676767676) | x) & 0x8080808080808080
 	n = bits.TrailingZeros64(other) >> 3
 	if n == 0 || n == 8 {
-		return short(b, mark)
+		return 0, 0
 	}
-	if b[n] != mark {
+	if byte(w>>(8*n)) != mark {
 		return float64(eight(x, n)), n
 	}
-	if other &= other - 1; other == 0 {
-		return short(b, mark)
-	}
+	other &= other - 1
 	digits := bits.TrailingZeros64(other)>>3 - 1
-	if digits == n {
-		return 0, 0 // nothing after the mark
+	if other == 0 || digits == n { // goes on, or nothing after the mark
+		return 0, 0
 	}
 	whole := uint64(1)<<(8*n) - 1
-	return float64(eight(x&whole|x>>8&^whole, digits)) / pow10[digits-n], digits + 1
+	return float64(eight(x&whole|x>>8&^whole, digits)) / pow10[(digits-n)&7], digits + 1
 }
 
 // eight is the number that the first digits of a word spell, the first in its

@@ -8,7 +8,6 @@ import (
 	"pgregory.net/rapid"
 
 	"sashlog/configs/site"
-	"sashlog/ingest/reading"
 )
 
 // A point that says it has no value does not go on holding the one before: an
@@ -16,18 +15,26 @@ import (
 // and from 3 h on; in whatever order the records come.
 func TestSilenceEndsTheHold(t *testing.T) {
 	nan := math.NaN()
-	records := []reading.At{{UnixS: 0, Value: 1}, {UnixS: 3600, Value: nan}, {UnixS: 3 * 3600, Value: 0}, {UnixS: 4 * 3600, Value: nan}, {UnixS: 4 * 3600, Value: 1}}
+	type record struct {
+		unixS int64
+		value float64
+	}
+	records := []record{{0, 1}, {3600, nan}, {3 * 3600, 0}, {4 * 3600, nan}, {4 * 3600, 1}}
 	rapid.Check(t, func(t *rapid.T) {
-		list := rapid.Permutation(records).Draw(t, "order")
+		var unixS []int64
+		var values []float64
+		for _, r := range rapid.Permutation(records).Draw(t, "order") {
+			unixS, values = append(unixS, r.unixS), append(values, r.value)
+		}
 		b := NewBuilder(siteOf(site.Point{Quantity: site.Window, Logging: site.COV}), Options{Rule: rules})
 		defer b.Close()
-		b.Readings(0, list)
+		b.Readings(0, unixS, values)
 		again, err := b.Again()
 		if err != nil {
 			t.Fatal(err)
 		}
 		if len(again) > 0 {
-			b.Readings(0, list)
+			b.Readings(0, unixS, values)
 		}
 		if err := b.Sort(); err != nil {
 			t.Fatal(err)

@@ -5,23 +5,23 @@ import (
 	"sashlog/ingest/reading"
 )
 
-// Readings takes several readings of one point, as Reading takes each.
-func (b *Builder) Readings(point int, list []reading.At) {
+// Readings takes several readings of one point, as Reading takes each: unixS
+// and values are equally long; NaN says that the point fell silent,
+// reading.Nothing is passed over.
+func (b *Builder) Readings(point int, unixS []int64, values []float64) {
 	s := &b.series[point]
-	for len(list) > 0 {
+	for at := 0; at < len(unixS); at++ {
 		if !b.second && s.common() {
-			list = list[s.stretch(list, b.opt):]
-			if len(list) == 0 {
+			if at += s.stretch(unixS[at:], values[at:], b.opt); at == len(unixS) {
 				return
 			}
 		}
-		if v := list[0].Value; v != v {
-			b.gap(point, list[0].UnixS)
-			list = list[1:]
-			continue
+		switch v := values[at]; {
+		case v != v:
+			b.gap(point, unixS[at])
+		case v != reading.Nothing:
+			b.Reading(point, unixS[at], v)
 		}
-		b.Reading(point, list[0].UnixS, list[0].Value)
-		list = list[1:]
 	}
 }
 
@@ -36,67 +36,65 @@ func (s *series) common() bool {
 // happens, and returns how many it took: Builder.Reading, take, join, accept
 // and emit in one loop, with what changes from reading to reading at hand. A
 // test holds it to the stages.
-func (s *series) stretch(list []reading.At, o Options) int {
-	least, most := int64(instantLeast), int64(instantMost)
+func (s *series) stretch(unixS []int64, values []float64, o Options) int {
+	most := int64(instantMost)
+	floor := max(s.lastT-1, s.pending.t, instantLeast-1) // instants go on above it
 	if o.ToUTC != 0 {
-		least, most = max(least, o.FromUTC), min(most, o.ToUTC-1)
+		floor, most = max(floor, o.FromUTC-1), min(most, o.ToUTC-1)
 	}
+	low, high, spike, holdS, shiftS, frozenS := s.low, s.high, s.spike, s.holdS, s.shiftS, s.frozenS
 	pendingT, pendingQ := s.pending.t, s.pending.q
 	candT, candQ := s.cand.t, s.cand.q
 	curT, curQ := s.curT, s.curQ
-	lastT, sum := s.lastT, s.sum
 	acc, hist := &s.acc, s.hist
-	var taken int
-	var n int64
-	for taken < len(list) {
-		t, v := list[taken].UnixS, list[taken].Value
-		if t < lastT || t <= pendingT || t < least || t > most || !(v >= s.low && v <= s.high) {
+	resolution, minQ, maxQ, sum := s.resolution, s.minQ, s.maxQ, s.sum
+	accEnd, accSum, covered, readings := acc.end, acc.sum, acc.covered, acc.readings
+	taken := 0
+	values = values[:len(unixS)]
+	for i, t := range unixS {
+		v := values[i]
+		if t <= floor || t > most || !(v >= low && v <= high) {
 			break
 		}
 		// The pending instant goes on; it leaves the stages as the value that
 		// holds from now on, or as a candidate for a spike in its place.
-		nextT, nextQ := pendingT-s.shiftS, pendingQ
+		nextT, nextQ := pendingT-shiftS, pendingQ
 		emitT, emitQ := nextT, nextQ
-		if s.spike > 0 {
-			if up := candQ - curQ; up > s.spike || up < -s.spike {
+		if spike > 0 {
+			if up := candQ - curQ; up > spike || up < -spike {
 				break // perhaps a spike
 			}
 			emitT, emitQ = candT, candQ
 		}
 		d := emitT - curT
-		if d > s.holdS {
+		if d > holdS {
 			break // a gap
 		}
 		if hist != nil {
 			hist.Counts[hist.Bins.index(v)]++
 		}
 		taken++
-		lastT, pendingT, pendingQ = t, t, quantise(v)
+		floor, pendingT, pendingQ = t, t, quantise(v)
 		candT, candQ = nextT, nextQ
-		if emitT <= acc.end {
-			acc.sum += curQ * d
-			acc.covered += d
+		if emitT < accEnd {
+			accSum += curQ * d
+			covered += d
 		} else {
+			acc.sum, acc.covered, acc.readings = accSum, covered, readings
 			acc.hold(curT, emitT, curQ)
-		}
-		if emitT >= acc.end {
 			acc.at(emitT)
+			accEnd, accSum, covered, readings = acc.end, acc.sum, acc.covered, acc.readings
 		}
-		acc.readings++
+		readings++
 		if c := emitQ - curQ; c != 0 {
-			if c = abs(c); c < s.resolution || s.resolution == 0 {
-				s.resolution = c
+			if c = abs(c); c < resolution || resolution == 0 {
+				resolution = c
 			}
-			if emitQ < s.minQ {
-				s.minQ = emitQ
-			} else if emitQ > s.maxQ {
-				s.maxQ = emitQ
-			}
+			minQ, maxQ = min(minQ, emitQ), max(maxQ, emitQ)
 		}
-		n++
 		sum += emitQ
 		curT, curQ = emitT, emitQ
-		if s.frozenS > 0 {
+		if frozenS > 0 {
 			s.sameRun(emitT, emitQ)
 		}
 	}
@@ -104,8 +102,10 @@ func (s *series) stretch(list []reading.At, o Options) int {
 		return 0
 	}
 	s.rows += int64(taken)
-	s.n += n
-	s.lastT, s.sum = lastT, sum
+	s.n += int64(taken)
+	s.lastT, s.sum = pendingT, sum
+	s.resolution, s.minQ, s.maxQ = resolution, minQ, maxQ
+	acc.sum, acc.covered, acc.readings = accSum, covered, readings
 	s.pending.t, s.pending.q = pendingT, pendingQ
 	if s.spike > 0 {
 		s.cand = instant{t: candT, q: candQ, said: 1}

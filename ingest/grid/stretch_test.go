@@ -31,7 +31,8 @@ func TestReadingsAtOnceAreReadingsOneByOne(t *testing.T) {
 			opt.FromUTC, opt.ToUTC = 20_000, 400_000
 		}
 		kind := rapid.IntRange(0, 99)
-		var list []reading.At
+		var unixS []int64
+		var values []float64
 		at, v := int64(0), 20.0
 		for range rapid.IntRange(150, 500).Draw(t, "readings") {
 			switch k := kind.Draw(t, "what"); {
@@ -51,27 +52,30 @@ func TestReadingsAtOnceAreReadingsOneByOne(t *testing.T) {
 				x = v + 15 // a spike
 			case k == 4:
 				x = math.NaN() // fell silent
+			case k == 5:
+				x = reading.Nothing
 			case k < 60:
 				v += float64(k%9-4) / 10
 				x = v
 			}
-			list = append(list, reading.At{UnixS: at, Value: x})
+			unixS, values = append(unixS, at), append(values, x)
 		}
 		one, many := NewBuilder(s, opt), NewBuilder(s, opt)
 		defer one.Close()
 		defer many.Close()
 		feed := func() {
-			for _, r := range list {
-				if math.IsNaN(r.Value) {
-					one.gap(0, r.UnixS)
-					continue
+			for i, v := range values {
+				switch {
+				case math.IsNaN(v):
+					one.gap(0, unixS[i])
+				case v != reading.Nothing:
+					one.Reading(0, unixS[i], v)
 				}
-				one.Reading(0, r.UnixS, r.Value)
 			}
-			for rest := list; len(rest) > 0; {
-				n := rapid.IntRange(1, len(rest)).Draw(t, "parcel")
-				many.Readings(0, rest[:n])
-				rest = rest[n:]
+			for from := 0; from < len(values); {
+				to := from + rapid.IntRange(1, len(values)-from).Draw(t, "parcel")
+				many.Readings(0, unixS[from:to], values[from:to])
+				from = to
 			}
 		}
 		feed()

@@ -3,7 +3,10 @@
 // rejected with a reason.
 package reading
 
-import "context"
+import (
+	"context"
+	"math"
+)
 
 // Reason is why a reading was rejected.
 type Reason uint8
@@ -82,12 +85,37 @@ type Sink interface {
 // so the value before it does not hold beyond that instant.
 type Gapper interface{ Gap(point int, unixS int64) }
 
-// At is one value of a point known from elsewhere; NaN says that the point fell
-// silent.
-type At struct {
-	UnixS int64
-	Value float64
+// BlockRows is how many rows a block takes. It is odd, so that the places of one
+// row, a column apart, do not fall on each other in the processor's cache.
+const BlockRows = 63
+
+// Block holds rows of a wide log column by column: what several points said at
+// the same instants.
+type Block struct {
+	// Points are indexes into Site.Points, each once.
+	Points []int
+	// UnixS are the instants of the rows, in the order met.
+	UnixS []int64
+	// Values has BlockRows places per point, in the order of Points: a value, NaN
+	// where the point fell silent, or Nothing.
+	Values []float64
 }
+
+// Nothing stands in a block where a row holds no reading of the point: it was
+// rejected, or nothing was written. No reading has this value.
+var Nothing = math.Inf(-1)
+
+// NewBlock returns an empty block for points that are all different.
+func NewBlock(points []int) *Block {
+	return &Block{Points: points, UnixS: make([]int64, 0, BlockRows), Values: make([]float64, BlockRows*len(points))}
+}
+
+// Column is what point i of Points said, row by row.
+func (b *Block) Column(i int) []float64 { return b.Values[i*BlockRows:][:len(b.UnixS)] }
+
+// Blocker is a sink that takes whole blocks, which costs less than reading by
+// reading. It may keep the block and returns an empty one for the same points.
+type Blocker interface{ Block(*Block) *Block }
 
 // Source is one file or database query that yields readings.
 type Source interface {

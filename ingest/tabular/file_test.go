@@ -4,7 +4,9 @@ import (
 	"bytes"
 	"compress/gzip"
 	"context"
+	"errors"
 	"fmt"
+	"math"
 	"math/rand/v2"
 	"os"
 	"path/filepath"
@@ -197,6 +199,98 @@ func TestPlainLinesAreLikeQuoted(t *testing.T) {
 	})
 	if accepted == 0 {
 		t.Error("nothing was accepted in any of the runs")
+	}
+}
+
+// blockRecord takes blocks, and hands them on reading by reading.
+type blockRecord struct {
+	record
+	blocks int
+}
+
+func (r *blockRecord) Gap(p int, at int64) {
+	r.events = append(r.events, event{Point: p, At: at, Value: math.NaN()})
+}
+
+func (r *blockRecord) Block(b *reading.Block) *reading.Block {
+	r.blocks++
+	for i, p := range b.Points {
+		for k, v := range b.Column(i) {
+			if math.IsNaN(v) {
+				r.Gap(p, b.UnixS[k])
+			} else if v != reading.Nothing {
+				r.Reading(p, b.UnixS[k], v)
+			}
+		}
+	}
+	return reading.NewBlock(b.Points)
+}
+
+// ungrouped takes the same without blocks.
+type ungrouped struct{ record }
+
+func (r *ungrouped) Gap(p int, at int64) {
+	r.events = append(r.events, event{Point: p, At: at, Value: math.NaN()})
+}
+
+// Rows taken as blocks hold, point by point, the readings, silences and
+// rejects of rows taken one by one, in the same order: with empty and bad
+// cells, bad times, short and quoted rows, and a repeated hour in between.
+func TestBlocksAreLikeRows(t *testing.T) {
+	cells := []string{"", "21.5", "-3", "400", "bad", "-999", "20.", "2"}
+	states := []string{"Open", "Closed", "1", "0", "", "---"}
+	blocks, held := 0, 0
+	rapid.Check(t, func(rt *rapid.T) {
+		start := time.Date(2025, 10, 25, 22, 0, 0, 0, time.UTC)
+		text := []byte("Time;A;B;W\n")
+		for i := range rapid.IntRange(1, 200).Draw(rt, "rows") {
+			ts := start.Add(time.Duration(i) * 5 * time.Minute).In(zurich(t)).Format("2006-01-02 15:04")
+			kind := rapid.IntRange(0, 40).Draw(rt, "kind")
+			if kind == 0 {
+				ts = "?"
+			}
+			row := fmt.Sprintf("%s;%s;%s;%s", ts, rapid.SampledFrom(cells).Draw(rt, "a"), rapid.SampledFrom(cells).Draw(rt, "b"), rapid.SampledFrom(states).Draw(rt, "w"))
+			switch kind {
+			case 1:
+				row = ts + ";7"
+			case 2:
+				row = "\"" + strings.ReplaceAll(row, ";", "\";\"") + "\""
+			}
+			text = append(text, row+"\n"...)
+		}
+		points := []site.Point{{Column: "A", Quantity: site.AirTemp, Unit: "degC"}, {Column: "B", Quantity: site.CO2, Unit: "ppm", Logging: site.COV}, {Column: "W", Quantity: site.Window, Logging: site.COV}}
+		f, err := openBytes(t, "x.csv", text, site.Log{Separator: ';', Decimal: '.', TimeColumn: "Time", HeaderRow: 1}, points)
+		if err != nil {
+			rt.Skip(err)
+		}
+		var grouped blockRecord
+		var single ungrouped
+		if err := errors.Join(f.Read(context.Background(), &grouped), f.Read(context.Background(), &single)); err != nil {
+			rt.Fatal(err)
+		}
+		for p := range points {
+			of := func(all []event, rejects bool) (out []event) {
+				for _, e := range all {
+					if e.Point == p && (e.Reason != reading.Accepted) == rejects {
+						out = append(out, e)
+					}
+				}
+				return out
+			}
+			for _, rejects := range []bool{false, true} {
+				if d := cmp.Diff(of(single.events, rejects), of(grouped.events, rejects), cmpopts.EquateNaNs()); d != "" {
+					rt.Fatalf("point %d, rejects %v: blocks differ from rows:\n%s", p, rejects, d)
+				}
+			}
+		}
+		if !reflect.DeepEqual(single.issues, grouped.issues) {
+			rt.Fatalf("issues differ: %q and %q", single.issues, grouped.issues)
+		}
+		blocks += grouped.blocks
+		held += int(bytes.Count(text, []byte("2025-10-26 02:30")))
+	})
+	if blocks == 0 || held == 0 {
+		t.Errorf("%d blocks, %d rows of the repeated hour: nothing was tried", blocks, held)
 	}
 }
 

@@ -12,6 +12,7 @@ import (
 
 // Finish ends a pass: it releases held rows and reports what the pass met.
 func (m *Mapper) Finish() {
+	m.rows.flush()
 	if m.order != nil {
 		m.order.Flush(m.to)
 	}

@@ -31,6 +31,7 @@ type Mapper struct {
 	order  *clock.Series   // wide, per point: one order of rows
 	orders []*clock.Series // long: by target
 
+	rows     *rows    // wide, per point: readings wait here for a sink that takes blocks; else nil
 	targets  []target // wide, per point: by column
 	keys     map[string]*entry
 	joined   []byte
@@ -108,6 +109,7 @@ func NewMapper(s Setup, to reading.Sink) (*Mapper, error) {
 	}
 	if s.Frame.Layout != site.Long {
 		m.order = m.series(sampled)
+		m.rows = newRows(to, m.targets)
 		return m, nil
 	}
 	m.keys = map[string]*entry{}
@@ -241,7 +243,7 @@ func (m *Mapper) Row(line int64, cells [][]byte, starts []int, padded bool) {
 			return
 		}
 	} else {
-		to, u = m.place(st, m.order)
+		to, u = m.placeRow(st)
 	}
 	for i := len(m.frame.Names); i < len(cells); i++ {
 		if len(cells[i]) > 0 {
@@ -300,6 +302,9 @@ func (m *Mapper) time(cells [][]byte) (text []byte, st clock.Stamp, f clock.Faul
 
 // cell hands over one cell as a reading or a reject.
 func (m *Mapper) cell(t *target, b []byte, unixS int64, col int, to reading.Sink) {
+	if m.rows != nil && to == reading.Sink(m.rows) {
+		m.rows.nothing(t.point)
+	}
 	v, r, text := t.dec.Decode(b)
 	switch {
 	case r == reading.Accepted:
@@ -320,7 +325,11 @@ func (m *Mapper) cell(t *target, b []byte, unixS int64, col int, to reading.Sink
 // gap tells that a record held no value. Instants that are not sure are passed
 // over.
 func (m *Mapper) gap(t *target, unixS int64, to reading.Sink) {
-	if m.gapper != nil && to == m.to {
+	switch {
+	case m.gapper == nil:
+	case to == m.to:
 		m.gapper.Gap(t.point, unixS)
+	case m.rows != nil && to == reading.Sink(m.rows):
+		m.rows.Gap(t.point, unixS)
 	}
 }

@@ -2,6 +2,7 @@ package tabular
 
 import (
 	"bytes"
+	"encoding/binary"
 
 	"sashlog/ingest/cell"
 	"sashlog/ingest/clock"
@@ -19,6 +20,7 @@ type plainer struct {
 	starts []int
 	cells  [][]byte
 	names  nameCache
+	quick  []quick
 }
 
 func newPlainer(m *Mapper, sep byte, style cell.Style) *plainer {
@@ -71,63 +73,116 @@ func (p *plainer) line(no int64, b []byte, end int) {
 			return
 		}
 	} else {
-		to, u = m.place(st, m.order)
+		to, u = m.placeRow(st)
 	}
 	p.wide(b, end, u, to)
 }
 
+// quick is what taking a target's cell where it stands needs.
+type quick struct {
+	mode           quickMode
+	again          bool // the next target stands in the same column
+	factor, offset float64
+	// The state met last with the separator behind it, as a word of eight bytes.
+	word, mask uint64
+	length     int
+	value      float64
+}
+
+type quickMode uint8
+
+const (
+	notQuick quickMode = iota
+	quickNumber
+	quickWord
+)
+
+func (p *plainer) quicks() []quick {
+	ts := p.m.targets
+	q := make([]quick, len(ts))
+	for i := range ts {
+		q[i].again = i+1 < len(ts) && ts[i+1].col == ts[i].col
+		if ts[i].dec.Plain {
+			q[i].mode, q[i].factor, q[i].offset = quickNumber, ts[i].dec.Factor, ts[i].dec.Offset
+		}
+	}
+	return q
+}
+
+// learn notes the state met last.
+func (q *quick) learn(t *target, sep byte) {
+	n := len(t.hit)
+	if q.mode == quickNumber || n == 0 || n > 7 {
+		return
+	}
+	var b [8]byte
+	copy(b[:], t.hit)
+	b[n] = sep
+	q.mode, q.word, q.mask = quickWord, binary.LittleEndian.Uint64(b[:]), ^uint64(0)>>(56-8*n)
+	q.length, q.value = n, t.hitValue
+}
+
 // wide hands over the cells of a line.
 func (p *plainer) wide(b []byte, end int, u int64, to reading.Sink) {
-	m, sep := p.m, p.sep
+	m, sep, mark := p.m, p.sep, p.mark
+	var values []float64 // of this row, a column apart
+	if m.rows != nil && to == reading.Sink(m.rows) {
+		values = m.rows.block.Values[m.rows.row:]
+	}
+	if p.quick == nil {
+		p.quick = p.quicks()
+	}
 	col, at := 0, 0
-	for i := range m.targets {
-		t := &m.targets[i]
-		for col < t.col {
-			j := bytes.IndexByte(b[at:end], sep)
-			if j < 0 {
-				m.cut(i, to)
-				return
+	for i := range p.quick {
+		q := &p.quick[i]
+		if want := m.targets[i].col; col < want {
+			for ; col < want; col++ {
+				j := bytes.IndexByte(b[at:end], sep)
+				if j < 0 {
+					m.cut(i, to)
+					return
+				}
+				at += j + 1
 			}
-			at += j + 1
-			col++
 		}
-		again := i+1 < len(m.targets) && m.targets[i+1].col == col
-		if t.dec.Plain {
-			if v, n := cell.Short(b[at:], p.mark); n > 0 && v > -999 {
-				if c := b[at+n]; c == sep || at+n == end {
-					to.Reading(t.point, u, t.dec.Scale(v))
-					if !again {
-						at += n
-						if c == sep && at < end {
-							at++
-							col++
-						}
-					}
-					continue
+		v, n := 0.0, -1 // the cell's value and length when it is quickly read
+		if at+8 <= len(b) {
+			w := binary.LittleEndian.Uint64(b[at:])
+			switch q.mode {
+			case quickNumber:
+				x, k := cell.Word(w, mark)
+				if k == 0 {
+					x, k = cell.Short(b[at:], mark)
+				}
+				if k > 0 && x > -999 && (b[at+k] == sep || at+k == end) {
+					v, n = float64(x*q.factor)+q.offset, k
+				}
+			case quickWord:
+				if w&q.mask == q.word && at+q.length < end {
+					v, n = q.value, q.length
 				}
 			}
-		} else if n := len(t.hit); n > 0 && at+n <= end && string(b[at:at+n]) == string(t.hit) && (at+n == end || b[at+n] == sep) {
-			to.Reading(t.point, u, t.hitValue)
-			if !again {
-				at += n
-				if at < end {
-					at++
-					col++
-				}
+		}
+		if n >= 0 {
+			if values != nil {
+				values[i*reading.BlockRows] = v
+			} else {
+				to.Reading(m.targets[i].point, u, v)
 			}
+		} else {
+			if n = bytes.IndexByte(b[at:end], sep); n < 0 {
+				n = end - at
+			}
+			t := &m.targets[i]
+			m.cell(t, b[at:at+n], u, at+1, to)
+			q.learn(t, sep)
+		}
+		if q.again {
 			continue
 		}
-		stop := end
-		if j := bytes.IndexByte(b[at:end], sep); j >= 0 {
-			stop = at + j
-		}
-		m.cell(t, b[at:stop], u, at+1, to)
-		if !again {
-			at = stop
-			if at < end {
-				at++
-				col++
-			}
+		if at += n; at < end {
+			at++
+			col++
 		}
 	}
 	// Something written past the last named column?
