@@ -82,6 +82,7 @@ func (p *plainer) line(no int64, b []byte, end int) {
 type quick struct {
 	mode           quickMode
 	again          bool // the next target stands in the same column
+	point          int
 	factor, offset float64
 	// The state met last with the separator behind it, as a word of eight bytes.
 	word, mask uint64
@@ -101,6 +102,7 @@ func (p *plainer) quicks() []quick {
 	ts := p.m.targets
 	q := make([]quick, len(ts))
 	for i := range ts {
+		q[i].point = ts[i].point
 		q[i].again = i+1 < len(ts) && ts[i+1].col == ts[i].col
 		if ts[i].dec.Plain {
 			q[i].mode, q[i].factor, q[i].offset = quickNumber, ts[i].dec.Factor, ts[i].dec.Offset
@@ -167,7 +169,7 @@ func (p *plainer) wide(b []byte, end int, u int64, to reading.Sink) {
 			if values != nil {
 				values[i*reading.BlockRows] = v
 			} else {
-				to.Reading(m.targets[i].point, u, v)
+				to.Reading(q.point, u, v)
 			}
 		} else {
 			if n = bytes.IndexByte(b[at:end], sep); n < 0 {

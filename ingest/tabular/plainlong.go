@@ -14,51 +14,57 @@ import (
 func (p *plainer) long(no int64, b []byte, end int) bool {
 	m := p.m
 	f := m.frame
-	if f.Time < 0 || len(f.Keys) != 1 || len(f.Values) != 1 {
+	if f.Time < 0 || len(f.Keys) != 1 || len(f.Values) != 1 || p.maxCol >= longCells {
 		return false
 	}
-	p.starts = p.starts[:0]
+	var starts [longCells + 1]int // of the cells, and one behind the last
 	at := 0
-	for range p.maxCol {
-		p.starts = append(p.starts, at)
+	for c := range p.maxCol {
+		starts[c] = at
 		if at = until(b, at, end, p.sep) + 1; at > end {
 			return false // a cell is missing
 		}
 	}
-	p.starts = append(p.starts, at, until(b, at, end, p.sep)+1)
-	text := b[p.starts[f.Time] : p.starts[f.Time+1]-1]
-	name := b[p.starts[f.Keys[0]] : p.starts[f.Keys[0]+1]-1]
-	value := b[p.starts[f.Values[0]] : p.starts[f.Values[0]+1]-1]
-	e := p.names.find(name, m.keys)
-	if e == nil || len(e.targets[0]) != 1 {
+	starts[p.maxCol] = at
+	starts[p.maxCol+1] = until(b, at, end, p.sep) + 1
+	i := p.names.find(b[starts[f.Keys[0]]:starts[f.Keys[0]+1]-1], m.keys)
+	if i < 0 {
 		return false
 	}
-	i := e.targets[0][0]
-	t := &m.targets[i]
+	if p.quick == nil {
+		p.quick = p.quicks()
+	}
+	q := &p.quick[i]
+	from, to := starts[f.Values[0]], starts[f.Values[0]+1]-1
 	var v float64
-	switch {
-	case t.dec.Plain:
-		var n int
+	switch q.mode {
+	case quickNumber:
 		// b goes on behind the cell, so that Short can take a whole word.
-		if v, n = cell.Short(b[p.starts[f.Values[0]]:], p.mark); n == 0 || n != len(value) || v <= -999 {
+		x, n := cell.Short(b[from:], p.mark)
+		if n == 0 || n != to-from || x <= -999 {
 			return false
 		}
-		v = t.dec.Scale(v)
-	case len(t.hit) > 0 && string(value) == string(t.hit):
-		v = t.hitValue
+		v = float64(x*q.factor) + q.offset
 	default:
-		return false
+		t := &m.targets[i]
+		if len(t.hit) == 0 || string(b[from:to]) != string(t.hit) {
+			return false
+		}
+		v = t.hitValue
 	}
-	st, fault := m.stamp(text)
+	st, fault := m.stamp(b[starts[f.Time] : starts[f.Time+1]-1])
 	if fault != clock.Fine {
 		return false
 	}
 	m.line = no
 	m.Rows++
-	to, u := m.place(st, m.orders[i])
-	to.Reading(t.point, u, v)
+	sink, u := m.place(st, m.orders[i])
+	sink.Reading(q.point, u, v)
 	return true
 }
+
+// longCells is how many cells of a long row are looked through at most.
+const longCells = 8
 
 // until finds the separator at or after a place, or the end. Cells of logs are
 // short, so eight bytes at a time beat a call.
@@ -81,16 +87,21 @@ func until(b []byte, at, end int, sep byte) int {
 	return end
 }
 
-// nameCache holds names of a long log met before, one in each place; what a
-// hash costs less than the map's matters once per row.
+// nameCache holds names of a long log met before, each near the place its hash
+// gives; what a hash costs less than the map's matters once per row.
 type nameCache [1024]struct {
-	name  string
-	entry *entry
+	name string
+	// target is the index of the name's only target, -1 when it has others.
+	target int
 }
 
-func (c *nameCache) find(name []byte, all map[string]*entry) *entry {
+// nameProbes is how many places are looked at for a name.
+const nameProbes = 4
+
+// find returns the index of the target that rows of the name go to, or -1.
+func (c *nameCache) find(name []byte, all map[string]*entry) int {
 	if len(name) == 0 {
-		return nil
+		return -1
 	}
 	h := uint64(len(name))
 	if n := len(name); n >= 8 {
@@ -100,13 +111,29 @@ func (c *nameCache) find(name []byte, all map[string]*entry) *entry {
 			h = h<<8 ^ uint64(b)
 		}
 	}
-	place := &c[h*0x9e3779b97f4a7c15>>54]
-	if string(name) == place.name {
-		return place.entry
+	at := h * 0x9e3779b97f4a7c15 >> 54
+	for i := range uint64(nameProbes) {
+		place := &c[(at+i)%uint64(len(c))]
+		if string(name) == place.name {
+			return place.target
+		}
+		if place.name == "" {
+			return c.learn(at+i, name, all)
+		}
 	}
-	if e := all[string(name)]; e != nil {
-		place.name, place.entry = string(name), e
-		return e
+	return c.learn(at, name, all)
+}
+
+// learn looks a name up and keeps it in a place.
+func (c *nameCache) learn(at uint64, name []byte, all map[string]*entry) int {
+	e := all[string(name)]
+	if e == nil {
+		return -1
 	}
-	return nil
+	place := &c[at%uint64(len(c))]
+	place.name, place.target = string(name), -1
+	if len(e.targets[0]) == 1 {
+		place.target = e.targets[0][0]
+	}
+	return place.target
 }
