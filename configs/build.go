@@ -232,7 +232,7 @@ func (b *builder) privacy() {
 func (b *builder) criteria() {
 	b.out.Criteria = b.settings()
 	c := b.out.Criteria
-	if v := b.out.Site.OutdoorCO2PPM; !math.IsNaN(v) && b.tree.has("criteria.outdoor_co2_ppm") && v != c.OutdoorCO2PPM {
+	if v := b.out.Site.OutdoorCO2PPM; !math.IsNaN(v) && b.tree.has("criteria.outdoor_co2_ppm") && !math.IsNaN(c.OutdoorCO2PPM) && v != c.OutdoorCO2PPM {
 		b.tree.at("criteria.outdoor_co2_ppm", "keep one of them",
 			"outdoor_co2_ppm is %g here and %g in site: they contradict each other", c.OutdoorCO2PPM, v)
 	}

@@ -40,7 +40,11 @@ func Measure(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Cale
 	o.prevailingDays = min(max(int(c.RunningMeanMinD), 7), 30)
 	o.Measured, o.dewLogged = o.TempC != nil, o.DewPointC != nil
 	o.humidity(g.N)
-	o.CO2DefaultPPM, o.CO2Source = c.OutdoorCO2PPM, "default for the year, from memory"
+	o.CO2DefaultPPM, o.CO2Source = c.OutdoorCO2PPM, "from the settings"
+	if math.IsNaN(c.OutdoorCO2PPM) {
+		year := g.Time((g.PeriodFrom + g.PeriodTo) / 2).Year()
+		o.CO2DefaultPPM, o.CO2Source = CO2OfYearPPM(year), fmt.Sprintf("default for %d, from memory", year)
+	}
 	if !math.IsNaN(s.OutdoorCO2PPM) {
 		o.CO2DefaultPPM, o.CO2Source = s.OutdoorCO2PPM, "site file"
 	}
@@ -50,6 +54,11 @@ func Measure(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Cale
 	o.days(g, cal)
 	return o
 }
+
+// CO2OfYearPPM is the outdoor CO2 of a year where nothing better is known: the
+// global mean of 2024 was about 423 ppm and rises by about 2.5 ppm a year (from
+// memory). Towns lie 10 to 50 ppm above it, nights more than days.
+func CO2OfYearPPM(year int) float64 { return 423 + 2.5*float64(year-2024) }
 
 // humidity derives whichever of dew point and relative humidity was not
 // logged from the other and the temperature.

@@ -50,13 +50,20 @@ type Settings struct {
 	RunningMeanMinD  float64 // days behind ASHRAE's prevailing mean, 7 to 30
 
 	// Fresh air.
-	CO2Category        string  // "I" | "II" | "III"
-	CO2AboveOutdoorPPM float64 // limit above outdoors of CO2Category
-	OutdoorCO2PPM      float64 // when not logged and not given by the site
-	OutdoorCO2DoubtPPM float64
-	CO2PerPersonLs     float64
-	DecayStartAbovePPM float64 // a decay event starts at least so far above outdoors
-	MinDecayEvents     int
+	CO2Category          string  // "I" | "II" | "III"
+	CO2AboveOutdoorPPM   float64 // limit above outdoors of CO2Category
+	OutdoorCO2PPM        float64 // when not logged and not given by the site; NaN: by the year
+	OutdoorCO2DoubtPPM   float64
+	CO2PerPersonLs       float64
+	CO2PerPersonDoubtPct float64 // how far it may be off
+	PeopleDoubtPct       float64 // how far the usual number may be off where nobody counts
+	CO2Baseline          string  // "stated" | "corrected": what is done about a sensor's offset
+	DecayStartAbovePPM   float64 // a decay event starts at least so far above outdoors
+	MinDecayEvents       int
+	FreshAirLsPerson     float64 // the site's own least outdoor air, 0: none
+	PollutionClass       string  // of the building, EN 16798-1: one of Pollutions
+	AirSpaceUse          string  // of the rooms, ASHRAE 62.1: one of SpaceUses
+	AirDistribution      float64 // zone air distribution effectiveness E_z of ASHRAE 62.1
 
 	// What the climate offers, by the heat balance and at night.
 	ClimateGainsWm2         float64 // heat from people, sun and equipment per floor area

@@ -23,6 +23,13 @@ var categories = []string{"I", "II", "III"}
 // rough to smooth.
 var Terrains = []string{"city", "suburb", "country", "water"}
 
+// Pollutions are the classes of pollution by the building itself of EN 16798-1.
+var Pollutions = []string{"very-low", "low", "not-low"}
+
+// SpaceUses are uses of rooms ASHRAE 62.1 sets the outdoor air for.
+var SpaceUses = []string{"office", "classroom-5-8", "classroom-9-up", "lecture-classroom", "computer-lab", "library",
+	"meeting", "reception", "dining", "music"}
+
 // fields lists every number in the order reports print them.
 var fields = []field{
 	{key: "outdoor_low_c", at: func(s *Settings) any { return &s.OutdoorLowC }, low: -20, high: 30},
@@ -68,8 +75,15 @@ var fields = []field{
 	{key: "outdoor_co2_ppm", at: func(s *Settings) any { return &s.OutdoorCO2PPM }, low: 300, high: 1000},
 	{key: "outdoor_co2_doubt_ppm", at: func(s *Settings) any { return &s.OutdoorCO2DoubtPPM }, low: 0, high: 300},
 	{key: "co2_per_person_l_s", at: func(s *Settings) any { return &s.CO2PerPersonLs }, low: 0.0005, high: 0.02},
+	{key: "co2_per_person_doubt_pct", at: func(s *Settings) any { return &s.CO2PerPersonDoubtPct }, low: 0, high: 90},
+	{key: "people_doubt_pct", at: func(s *Settings) any { return &s.PeopleDoubtPct }, low: 0, high: 90},
+	{key: "co2_baseline", at: func(s *Settings) any { return &s.CO2Baseline }, words: []string{"stated", "corrected"}},
 	{key: "decay_start_above_ppm", at: func(s *Settings) any { return &s.DecayStartAbovePPM }, low: 50, high: 2000},
 	{key: "min_decay_events", at: func(s *Settings) any { return &s.MinDecayEvents }, low: 1, high: 1000},
+	{key: "fresh_air_l_s_person", at: func(s *Settings) any { return &s.FreshAirLsPerson }, low: 0, high: 100},
+	{key: "pollution_class", at: func(s *Settings) any { return &s.PollutionClass }, words: Pollutions},
+	{key: "air_space_use", at: func(s *Settings) any { return &s.AirSpaceUse }, words: SpaceUses},
+	{key: "air_distribution", at: func(s *Settings) any { return &s.AirDistribution }, low: 0.3, high: 1.5},
 
 	{key: "climate_gains_w_m2", at: func(s *Settings) any { return &s.ClimateGainsWm2 }, low: 0, high: 500},
 	{key: "climate_loss_w_m2_k", at: func(s *Settings) any { return &s.ClimateLossWm2K }, low: 0, high: 20},
@@ -93,8 +107,11 @@ var fields = []field{
 	{key: "accuracy_co2_pct", at: func(s *Settings) any { return &s.AccuracyCO2Pct }, low: 0, high: 30},
 }
 
-// auto is how files write a clothing that follows the outdoor temperature.
+// auto is how files write a clothing that follows the outdoor temperature and
+// an outdoor CO2 that follows the year.
 const auto = "auto"
+
+func (f *field) mayBeAuto() bool { return f.key == "clothing_clo" || f.key == "outdoor_co2_ppm" }
 
 // Keys lists every key a site file may set, in the order of reports.
 func Keys() []string {
@@ -120,7 +137,7 @@ func (f *field) put(s *Settings, text string) error {
 		return f.putWord(s, text)
 	}
 	to, isFloat := f.at(s).(*float64)
-	if f.key == "clothing_clo" && text == auto {
+	if f.mayBeAuto() && text == auto {
 		*to = math.NaN()
 		return nil
 	}
@@ -128,6 +145,9 @@ func (f *field) put(s *Settings, text string) error {
 	if err != nil || math.IsNaN(v) || math.IsInf(v, 0) {
 		if f.key == "clothing_clo" {
 			return fmt.Errorf("must be a number of clo or %s", auto)
+		}
+		if f.mayBeAuto() {
+			return fmt.Errorf("must be a number or %s", auto)
 		}
 		return fmt.Errorf("must be a number")
 	}
