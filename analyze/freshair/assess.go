@@ -4,6 +4,8 @@ import (
 	"fmt"
 	"math"
 
+	"sashlog/analyze/calendar"
+	"sashlog/analyze/cores"
 	"sashlog/analyze/indoor"
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/running"
@@ -20,7 +22,24 @@ type Input struct {
 	Outdoor  *outdoor.Outdoor
 	Indoor   []indoor.Zone
 	Running  *running.Result
+	// Calendar gives the days a balance is fitted over; nil: 24 h each.
+	Calendar *calendar.Calendar
+	// Baselines are the offsets of the zones' CO2, by [Baselines]; nil: unknown.
+	Baselines []Baseline
 }
+
+// offsetDoubtPPM is how far the difference between a zone's reading and outdoor
+// air may be off, 95 times in 100: outdoor level and sensor together, or, where
+// the offset was taken off, what the weeks leave open.
+func (in *Input) offsetDoubtPPM(z int) float64 {
+	if in.Baselines != nil && in.Baselines[z].Corrected {
+		return math.Max(correctedDoubtPPM, in.Baselines[z].SpreadPPM)
+	}
+	return math.Hypot(in.Criteria.OutdoorCO2DoubtPPM, in.Criteria.AccuracyCO2PPM)
+}
+
+// correctedDoubtPPM is left when the offset was taken off; our assumption.
+const correctedDoubtPPM = 20
 
 // Assess judges the CO2 of every zone over occupied time and measures air
 // change rates where the logs allow it.
@@ -32,9 +51,10 @@ func Assess(in Input) *Result {
 		Sentence: "Low CO2 with few people proves little: it shows that little was given off, not that much air came in. " +
 			"Air change rates and counted people say more than the level alone.",
 	}
-	for z := range in.Site.Zones {
-		r.Zones = append(r.Zones, assessZone(&in, z, r.CurvePPM))
-	}
+	r.Zones = make([]Zone, len(in.Site.Zones))
+	cores.Each(len(r.Zones), func(z int) { r.Zones[z] = assessZone(&in, z, r.CurvePPM) })
+	r.RebreathedCaution = rebreathedCaution
+	r.Plants = comparePlants(&in, r.Zones)
 	return r
 }
 
@@ -84,6 +104,13 @@ func assessZone(in *Input, z int, curve []float64) Zone {
 		}
 		out.Curve[s] = byState[s].durations(curve)
 	}
-	out.AirChange = airChanges(in, z)
+	for s := range out.Rebreathed {
+		out.Rebreathed[s] = byState[s].rebreathed()
+	}
+	if in.Baselines != nil {
+		out.Baseline = in.Baselines[z]
+	}
+	out.Required = requirements(in.Criteria, in.Site.Zones[z].People, in.Site.Zones[z].AreaM2)
+	out.airChanges(in, z)
 	return out
 }

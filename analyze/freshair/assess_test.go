@@ -61,7 +61,7 @@ func TestRatesPerState(t *testing.T) {
 	}
 	z := Assess(in).Zones[0]
 	m := z.AirChange[running.Mech]
-	if m.Events != 4 || math.Abs(m.MedianPerH-1.15) > 1e-3 || math.Abs(m.LowPerH-1) > 1e-3 || math.Abs(m.HighPerH-1.5) > 1e-3 {
+	if m.Events != 4 || math.Abs(m.MedianPerH-1.15) > 1e-3 || math.Abs(m.FromPerH-1) > 1e-3 || math.Abs(m.ToPerH-1.5) > 1e-3 || m.Way != ByDecay {
 		t.Errorf("mechanical: %+v", m)
 	}
 	// 1.15 per hour of 200 m3.

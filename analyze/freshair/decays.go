@@ -23,9 +23,12 @@ const (
 
 const decayMethod = "fall of CO2 after the room empties: regression of ln(C - C outdoors) against time, from 90 % to 37 % of the start where that holds 3 readings (ASTM E741, ISO 12569, ASTM D6245, at second hand)"
 
-// event is one decay found and fitted.
+// event is one decay found and fitted. outdoorLow and outdoorHigh are fits with
+// the outdoor level off by its doubt, offLow and offHigh with the doubt in the
+// sensor's offset on top.
 type event struct {
-	fit, outdoorLow, outdoorHigh Fit
+	fit, outdoorLow, outdoorHigh, offLow, offHigh Fit
+	from, to                                      int // steps
 }
 
 // tally counts, for one running state, the decays found and those that were no
@@ -33,22 +36,6 @@ type event struct {
 type tally struct {
 	events                       []event
 	emptied, low, short, unclear int
-}
-
-// airChanges finds the decays of zone z and summarises them per state.
-func airChanges(in *Input, z int) [running.NumStates]AirChange {
-	var tallies [running.NumStates]tally
-	if in.Indoor[z].CO2PPM != nil {
-		for _, span := range emptySpans(in, z) {
-			state := in.Running.Zones[z].State[span.from]
-			tallies[state].try(in, z, span)
-		}
-	}
-	var out [running.NumStates]AirChange
-	for s := range out {
-		out[s] = tallies[s].airChange(in, z, running.State(s))
-	}
-	return out
 }
 
 // span is a run of steps [from, to).
@@ -136,11 +123,14 @@ func (t *tally) try(in *Input, z int, s span) {
 	doubt := in.Criteria.OutdoorCO2DoubtPPM
 	low, errLow := FitDecay(timeH, ppm, outdoorPPM-doubt)
 	high, errHigh := FitDecay(timeH, ppm, outdoorPPM+doubt)
-	if errLow != nil || errHigh != nil { // a floor so near outdoors proves nothing
+	off := in.offsetDoubtPPM(z)
+	offLow, errOffLow := FitDecay(timeH, ppm, outdoorPPM-off)
+	offHigh, errOffHigh := FitDecay(timeH, ppm, outdoorPPM+off)
+	if errLow != nil || errHigh != nil || errOffLow != nil || errOffHigh != nil { // a floor so near outdoors proves nothing
 		t.unclear++
 		return
 	}
-	t.events = append(t.events, event{fit, low, high})
+	t.events = append(t.events, event{fit, low, high, offLow, offHigh, start, start + int(timeH[len(timeH)-1]/g.StepH()+0.5) + 1})
 }
 
 // readings gathers the readings of a span from the share from of the start
@@ -155,8 +145,8 @@ func readings(in *Input, z int, s span, peak, from, to float64) (timeH, ppm []fl
 			continue
 		}
 		above := c - outdoorPPM
-		// The floor keeps clear of the doubt in the outdoor level.
-		if above < to*peak*(1-1e-6) || above < math.Max(decayFloorPPM, in.Criteria.OutdoorCO2DoubtPPM+10) {
+		// The floor keeps clear of the doubt in the levels.
+		if above < to*peak*(1-1e-6) || above < math.Max(decayFloorPPM, in.offsetDoubtPPM(z)+10) {
 			break
 		}
 		if above > from*peak*(1+1e-6) && len(ppm) == 0 {
@@ -166,40 +156,6 @@ func readings(in *Input, z int, s span, peak, from, to float64) (timeH, ppm []fl
 		ppm = append(ppm, c)
 	}
 	return timeH, ppm, outdoorPPM
-}
-
-// airChange summarises the decays of one state.
-func (t *tally) airChange(in *Input, z int, state running.State) AirChange {
-	nan := math.NaN()
-	a := AirChange{MedianPerH: nan, LowPerH: nan, HighPerH: nan, FlowLs: nan, FlowLsPerson: nan, MedianR2: nan,
-		OutdoorLowPerH: nan, OutdoorHighPerH: nan, AtUsualPeoplePPM: nan, Events: len(t.events), Method: decayMethod}
-	need := max(1, in.Criteria.MinDecayEvents)
-	if len(t.events) < need {
-		a.NotMeasurable = t.why(in, z, state, need)
-		return a
-	}
-	var rates, r2, low, high []float64
-	a.LowPerH, a.HighPerH = math.Inf(1), math.Inf(-1)
-	for _, e := range t.events {
-		rates, r2 = append(rates, e.fit.AirChangePerH), append(r2, e.fit.R2)
-		low, high = append(low, e.outdoorLow.AirChangePerH), append(high, e.outdoorHigh.AirChangePerH)
-		a.LowPerH, a.HighPerH = math.Min(a.LowPerH, e.fit.AirChangePerH), math.Max(a.HighPerH, e.fit.AirChangePerH)
-		a.Points += e.fit.N
-	}
-	a.MedianPerH, a.MedianR2 = median(rates), median(r2)
-	a.OutdoorLowPerH, a.OutdoorHighPerH = median(low), median(high)
-	zone := &in.Site.Zones[z]
-	volume := zone.AreaM2 * zone.HeightM
-	if !(volume > 0) {
-		return a
-	}
-	a.FlowLs = a.MedianPerH * volume / 3.6
-	if zone.People > 0 {
-		a.FlowLsPerson = a.FlowLs / zone.People
-		b := Balance{VolumeM3: volume, FlowLs: a.FlowLs, GenerationLs: zone.People * in.Criteria.CO2PerPersonLs, OutdoorPPM: in.Outdoor.CO2DefaultPPM}
-		a.AtUsualPeoplePPM = b.After(4, b.OutdoorPPM)
-	}
-	return a
 }
 
 // why says in one sentence why there is no rate.

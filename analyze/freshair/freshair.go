@@ -21,6 +21,21 @@ type Zone struct {
 	State  [running.NumStates]Levels
 	// AirChange per running state, from decays after the room empties.
 	AirChange [running.NumStates]AirChange
+	// Decays are those found in all states, in order of time.
+	Decays []Decay
+	// NeighbourShare is how far the zones of the same floor stood above outdoors
+	// during this zone's decays, as a share of this zone's own excess, median;
+	// NaN when unknown. Air that comes from them is no outdoor air: a decay
+	// measures outdoor air plus (1 - share) of the air exchanged with them.
+	NeighbourShare float64
+	// Required are the amounts of outdoor air asked for, Verdicts how each
+	// state's measured flow stands to them.
+	Required []Requirement
+	Verdicts [running.NumStates][]Verdict
+	// Rebreathed is the time mean of the share of air breathed before, per state
+	// and (index NumStates) in all; NaN where unknown.
+	Rebreathed [running.NumStates + 1]float64
+	Baseline   Baseline
 	// Curve is the duration curve: Curve[i] is the share of known occupied
 	// time above CurvePPM[i], per state and (index NumStates) all together.
 	Curve [running.NumStates + 1][]float64
@@ -44,14 +59,54 @@ type Levels struct {
 	Category            string // the best category held for 95 % of known time
 }
 
-// AirChange is an air change rate fitted to decays in one running state. All
-// rates are NaN when not measurable.
+// Decay is one fall of CO2 after a room emptied.
+type Decay struct {
+	State         running.State
+	FromStep      int
+	ToStep        int // after the last reading used
+	AirChangePerH float64
+}
+
+// Way is a way of measuring an air change rate.
+type Way string
+
+// Ways, in the order of trust. The first of decay and counted balance that is
+// measurable stands for the state; the others are shown beside it.
+const (
+	ByDecay     Way = "decay"                     // fall after the room empties
+	ByCounted   Way = "balance, people counted"   // whole days, with a counter
+	ByBuildUp   Way = "build-up"                  // rise with constant people
+	ByScheduled Way = "balance, people scheduled" // whole days, usual people in occupied time: an upper value
+)
+
+// Estimate is the rate of a state by one way. All rates are NaN when not
+// measurable, and NotMeasurable says why.
+type Estimate struct {
+	Way                           Way
+	MedianPerH, LowPerH, HighPerH float64 // typical rate with its 95 % interval
+	FromPerH, ToPerH              float64 // range over the events
+	Events                        int
+	NotMeasurable                 string
+	// OffsetLogLow and OffsetLogHigh are the parts of the interval, of ln A,
+	// that come from outdoor level, sensor offset and people and are common to
+	// all events.
+	OffsetLogLow, OffsetLogHigh float64
+}
+
+// AirChange is the air change rate of one running state by the most trusted
+// way. All rates are NaN when not measurable.
 type AirChange struct {
-	MedianPerH, LowPerH, HighPerH float64 // over the decays found
+	// MedianPerH is the typical rate; LowPerH and HighPerH bound it 95 times in
+	// 100: events, correlated readings, outdoor level, sensor offset, people.
+	MedianPerH, LowPerH, HighPerH float64
+	FromPerH, ToPerH              float64 // range over the events
 	FlowLs, FlowLsPerson          float64 // NaN without volume or people
 	Events                        int
-	Method                        string
-	NotMeasurable                 string // why not, when Events is too few
+	Way                           Way
+	// Estimates are all ways, in the order of trust.
+	Estimates     []Estimate
+	Method        string
+	NotMeasurable string // why not, when Events is too few
 	// MedianR2 and Points describe the fits: the median coefficient of
 	// determination and the number of readings used in all decays.
 	MedianR2 float64
@@ -69,6 +124,10 @@ type Result struct {
 	Zones       []Zone
 	CurvePPM    []float64
 	OutdoorNote string
-	LimitsPPM   [3]float64 // above outdoors, categories I, II, III
-	Sentence    string     // that low CO2 with few people proves little
+	// Plants compares, per plant unit, rates with it running and with everything
+	// shut.
+	Plants            []PlantAir
+	RebreathedCaution string
+	LimitsPPM         [3]float64 // above outdoors, categories I, II, III
+	Sentence          string     // that low CO2 with few people proves little
 }

@@ -70,6 +70,16 @@ func (c *collector) levels(stepH, ownLimitPPM float64) Levels {
 	return l
 }
 
+// rebreathed is the time mean of the share of air breathed before; not the
+// share at the mean level, since levels below outdoors count as none.
+func (c *collector) rebreathed() float64 {
+	sum := 0.0
+	for _, v := range c.above {
+		sum += RebreathedFraction(v, 0)
+	}
+	return sum / float64(len(c.above))
+}
+
 // durations gives the share of known time above each level; ppm is sorted.
 func (c *collector) durations(levels []float64) []float64 {
 	out := make([]float64, len(levels))
