@@ -103,6 +103,9 @@ type AirChange struct {
 	FlowLs, FlowLsPerson          float64 // NaN without volume or people
 	Events                        int
 	Way                           Way
+	// UpperOnly: so slow that air exchanged with neighbours, which counts as
+	// outdoor air, may be most of it.
+	UpperOnly bool
 	// Estimates are all ways, in the order of trust.
 	Estimates     []Estimate
 	Method        string

@@ -96,19 +96,28 @@ func TestTransientSensitivity(t *testing.T) {
 }
 
 // Arithmetic on the published balance (ASHRAE Fundamentals ch. 16 eq. 16 to
-// 22): the levels of a build-up of 1.08 per hour must give the rate back, with
-// neither people nor outdoor level known.
-func TestFitBuildUp(t *testing.T) {
-	b, err := FitBuildUp([]float64{0, 0.5, 1, 2, 3}, []float64{420, 781.618, 992.351, 1186.718, 1252.725})
+// 22): 200 m3, 10 people of 0.0052 L/s, 60 L/s of outdoor air of 420 ppm. The
+// levels are those printed with it, and a fit to the means of the steps between
+// them, taken from the closed form, must give 1.08 per hour back.
+func TestBuildUpGivesTheRateBack(t *testing.T) {
+	b := Balance{VolumeM3: 200, FlowLs: 60, GenerationLs: 0.052, OutdoorPPM: 420}
+	const stepH = 1.0 / 12
+	s := &Spell{StepH: stepH, VolumeM3: 200, Regimes: 1}
+	for i := range 36 {
+		t0, t1 := float64(i)*stepH, float64(i+1)*stepH
+		a := 1.08
+		s.PPM = append(s.PPM, 1286.667+(420-1286.667)*(math.Exp(-a*t0)-math.Exp(-a*t1))/(a*stepH))
+		s.GenerationLs, s.OutdoorPPM, s.Regime = append(s.GenerationLs, 0.052), append(s.OutdoorPPM, 420), append(s.Regime, 0)
+	}
+	end, _ := s.Follow(420, []float64{b.AirChangePerH()})
+	for step, want := range map[int]float64{6: 781.618, 12: 992.351, 24: 1186.718, 36: 1252.725} {
+		near(t, "level", end[step-1], want, 1e-3)
+	}
+	f, err := s.Fit()
 	if err != nil {
 		t.Fatal(err)
 	}
-	near(t, "rate", b.AirChangePerH, 1.08, 1e-4)
-	near(t, "steady", b.SteadyPPM, 1286.667, 0.02)
-	near(t, "start", b.StartPPM, 420, 0.02)
-	if _, err := FitBuildUp([]float64{0, 1, 2, 3, 4}, []float64{500, 500, 500, 500, 500}); err == nil {
-		t.Error("a flat level says nothing of the rate")
-	}
+	near(t, "rate", f.AirChangePerH[0], 1.08, 1e-4)
 }
 
 // AR(1): n (1-r)/(1+r) independent readings, arithmetic on the published

@@ -141,6 +141,9 @@ func fitSpell(in *Input, z int, at span, people func(int) float64, volumeM3, few
 // empty where nothing could be tried.
 func buildUps(in *Input, z int) (byState [running.NumStates][]measured, why string) {
 	room, run, g := &in.Indoor[z], &in.Running.Zones[z], in.Grid
+	if zone := &in.Site.Zones[z]; !(zone.AreaM2*zone.HeightM > 0) {
+		return byState, "floor area or height are not given"
+	}
 	if room.People == nil {
 		return byState, "people are not counted: those who come one by one look like slow air"
 	}
@@ -164,20 +167,32 @@ func buildUps(in *Input, z int) (byState [running.NumStates][]measured, why stri
 	return byState, ""
 }
 
+// rise fits the rate to one rise with the CO2 the counted people give off. A
+// fit that leaves their CO2 open as well is only clear where air changes fast,
+// so the rises it can use would make every room look well aired.
 func rise(in *Input, z int, at span) (measured, bool) {
-	var timeH, ppm []float64
+	zone := &in.Site.Zones[z]
+	s := Spell{StepH: in.Grid.StepH(), VolumeM3: zone.AreaM2 * zone.HeightM, Regimes: 1}
+	first, last, known := math.NaN(), math.NaN(), 0
 	for i := at.from; i < at.to; i++ {
-		if c := float64(in.Indoor[z].CO2PPM[i]); !math.IsNaN(c) {
-			timeH, ppm = append(timeH, float64(i-at.from)*in.Grid.StepH()), append(ppm, c)
+		c := float64(in.Indoor[z].CO2PPM[i])
+		if !math.IsNaN(c) {
+			if known == 0 {
+				first = c
+			}
+			last, known = c, known+1
 		}
+		s.PPM, s.OutdoorPPM, s.Regime = append(s.PPM, c), append(s.OutdoorPPM, in.Outdoor.OutdoorCO2(i)), append(s.Regime, 0)
+		s.GenerationLs = append(s.GenerationLs, float64(in.Indoor[z].People[i])*in.Criteria.CO2PerPersonLs)
 	}
-	if len(ppm) < risePointsMin || ppm[len(ppm)-1]-ppm[0] < in.Criteria.DecayStartAbovePPM {
+	if known < risePointsMin || !(last-first >= in.Criteria.DecayStartAbovePPM) {
 		return measured{}, false
 	}
-	b, err := FitBuildUp(timeH, ppm)
-	if err != nil || b.R2 < riseR2Min || !(b.LogSE <= riseLogSEMax) || b.AirChangePerH <= rateLeastPerH*1.01 || b.AirChangePerH >= rateMostPerH*0.99 ||
-		timeH[len(timeH)-1]*b.AirChangePerH < 1 { // less than one turn of the air shows no bend
+	f, err := s.Fit()
+	if err != nil || f.R2 < riseR2Min || !(f.LogSE[0] <= riseLogSEMax) || f.AirChangePerH[0] <= rateLeastPerH*1.01 || f.AirChangePerH[0] >= rateMostPerH*0.99 {
 		return measured{}, false
 	}
-	return measured{perH: b.AirChangePerH, logSE: b.LogSE}, true
+	people := f.PerLogGeneration[0] * math.Log(1+in.Criteria.CO2PerPersonDoubtPct/100)
+	shift := math.Hypot(people, f.PerOutdoorPPM[0]*in.offsetDoubtPPM(z))
+	return measured{f.AirChangePerH[0], f.LogSE[0], shift, shift}, true
 }

@@ -6,6 +6,9 @@ import (
 	"gonum.org/v1/gonum/mat"
 )
 
+// Bounds of a rate a fit may find, 1/h.
+const rateLeastPerH, rateMostPerH = 0.01, 20.0
+
 // Spell is a stretch of equal steps whose CO2 is followed with the people in
 // the room. All slices have one value per step.
 type Spell struct {
