@@ -43,8 +43,16 @@ func estimate(way Way, events []measured, need int, why string) Estimate {
 	e.LowPerH = math.Exp(typical - math.Hypot(typical-sampleLow, e.OffsetLogLow))
 	e.HighPerH = math.Exp(typical + math.Hypot(sampleHigh-typical, e.OffsetLogHigh))
 	e.FromPerH, e.ToPerH = math.Exp(logs[0]), math.Exp(logs[len(logs)-1])
+	if e.HighPerH > widestRatio*e.LowPerH {
+		e.NotMeasurable = fmt.Sprintf("%d events disagree too much: anything between %.2g and %.2g per hour", e.Events, e.LowPerH, e.HighPerH)
+		e.MedianPerH, e.LowPerH, e.HighPerH, e.FromPerH, e.ToPerH = nan, nan, nan, nan, nan
+	}
 	return e
 }
+
+// widestRatio is the ratio of the ends of an interval beyond which a rate is not
+// worth stating; our assumption.
+const widestRatio = 10
 
 // orderedMin is the least number whose extremes hold the median 95 times in
 // 100: 1 - 2/2^6.
@@ -119,7 +127,7 @@ func (out *Zone) airChanges(in *Input, z int) {
 		if !counted {
 			a.Estimates[1], a.Estimates[3] = unused, balance
 		}
-		a.take(in, z, whyDecay, len(t.events))
+		a.take(in, z, len(t.events))
 		out.judge(s)
 	}
 	slices.SortFunc(out.Decays, func(a, b Decay) int { return a.FromStep - b.FromStep })
@@ -132,11 +140,11 @@ func (out *Zone) airChanges(in *Input, z int) {
 var stands = map[Way]bool{ByDecay: true, ByCounted: true}
 
 // take makes the most trusted way that is measurable the state's rate.
-func (a *AirChange) take(in *Input, z int, why string, decays int) {
+func (a *AirChange) take(in *Input, z int, decays int) {
 	nan := math.NaN()
 	a.MedianPerH, a.LowPerH, a.HighPerH, a.FromPerH, a.ToPerH = nan, nan, nan, nan, nan
 	a.FlowLs, a.FlowLsPerson, a.AtUsualPeoplePPM = nan, nan, nan
-	a.NotMeasurable, a.Events, a.Method = why, decays, wayMethods[ByDecay]
+	a.NotMeasurable, a.Events, a.Method = a.Estimates[0].NotMeasurable, decays, wayMethods[ByDecay]
 	for i := range a.Estimates {
 		e := &a.Estimates[i]
 		if e.NotMeasurable != "" || !stands[e.Way] {
