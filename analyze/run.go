@@ -32,6 +32,7 @@ func Run(in Input) *Results {
 
 	r.Outdoor = outdoor.Measure(s, c, g, r.Calendar)
 	r.Indoor = indoor.Combine(s, c, g)
+	baselines := freshair.Baselines(c, r.Indoor, r.Outdoor, g)
 	r.Running = running.Judge(s, c, g, r.Calendar, r.Indoor)
 	r.Exceedance = exceedance.Limit(s, c, g, r.Outdoor, r.Running)
 	r.Exceedance.Count(s, c, g, r.Outdoor, r.Indoor, r.Running, hourOf)
@@ -42,7 +43,8 @@ func Run(in Input) *Results {
 	r.Summary = hours.Sum(r.Hours, g, r.Calendar, r.Running)
 	cores.Together(
 		func() {
-			r.FreshAir = freshair.Assess(freshair.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running})
+			r.FreshAir = freshair.Assess(freshair.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
+				Calendar: r.Calendar, Baselines: baselines})
 		},
 		func() {
 			r.Lost = lost.Find(lost.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
@@ -61,7 +63,7 @@ func Run(in Input) *Results {
 			r.Doubt = doubt.Estimate(doubt.Input{Input: record, Calendar: r.Calendar, Weights: r.Summary.Weights, Seed: 1})
 		},
 	)
-	r.Breeze = breeze.Catch(breeze.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Running: r.Running, Potential: r.Potential})
+	r.Breeze = breeze.Catch(breeze.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Running: r.Running, Potential: r.Potential, Decays: openDecays(r.FreshAir)})
 	r.LongTerm = longterm.Assess(longterm.Input{Site: s, Criteria: c, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor,
 		Running: r.Running, Exceedance: r.Exceedance})
 	r.Votes = votes.Compare(votes.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running, Exceedance: r.Exceedance})
@@ -74,4 +76,17 @@ func Run(in Input) *Results {
 		Exceedance: r.Exceedance, Potential: r.Potential, Record: r.Hours, Summary: r.Summary, FreshAir: r.FreshAir,
 		Lost: r.Lost, AfterHours: r.AfterHours})
 	return r
+}
+
+// openDecays are the air change rates measured in open mode, for the wind.
+func openDecays(f *freshair.Result) []breeze.Decay {
+	var out []breeze.Decay
+	for z := range f.Zones {
+		for _, d := range f.Zones[z].Decays {
+			if d.State == running.Open {
+				out = append(out, breeze.Decay{Zone: z, FromStep: d.FromStep, ToStep: d.ToStep, AirChangePerH: d.AirChangePerH})
+			}
+		}
+	}
+	return out
 }

@@ -94,7 +94,7 @@ func WriteJSON(w io.Writer, in Input) error {
 		set("building", totalObject(&in.Results.Summary.Building).set("weighted_by", in.Results.Summary.WeightedBy)).
 		set("zones", in.zoneList(rule)).set("months", in.months()).set("quality", in.quality(rule)).
 		set("episodes", in.episodeList(rule)).set("lost_to", in.lostTo()).
-		set("fresh_air", in.freshAir()).set("potential", in.climateInto(in.potential(), rule)).set("comfort_spread", in.comfortSpread(rule)).
+		set("fresh_air", in.freshAir(rule)).set("potential", in.climateInto(in.potential(), rule)).set("comfort_spread", in.comfortSpread(rule)).
 		set("wind", in.wind(rule)).set("changeover", in.changeover(rule)).set("votes", in.votes()).set("energy", in.energy()).
 		set("out_of_hours", in.outOfHours(rule)).set("uncertainty", in.uncertainty()).set("findings", in.findings(rule))
 	enc := json.NewEncoder(w)
@@ -138,7 +138,7 @@ func (in *Input) zoneList(rule privacy.Rule) []any {
 		if rule.Protected(z) {
 			people = math.NaN()
 		}
-		o.set("people_h", plain(people)).set("comfort", in.comfort(z)).set("long_term", in.longTerm(z)).set("sensor_interval", in.zoneDoubt(z)).set("co2", in.co2(z)).set("air_change", in.airChange(z)).
+		o.set("people_h", plain(people)).set("comfort", in.comfort(z)).set("long_term", in.longTerm(z)).set("sensor_interval", in.zoneDoubt(z)).set("co2", in.co2(z)).set("air_change", in.airChange(z)).set("fresh_air", in.freshAirOf(z)).
 			set("lost_to_h", causes(in.Results.Lost.ByCauseH[z]))
 		out = append(out, o)
 	}
@@ -184,17 +184,6 @@ func levels(known *float64, unknown, mean, p95, above float64, over [4]float64, 
 	return (&object{}).set("known_h", num(*known)).set("unknown_h", num(unknown)).set("mean_ppm", num(mean)).set("p95_ppm", num(p95)).
 		set("above_outdoor_mean_ppm", num(above)).set("above_category_i_h", num(over[0])).set("above_category_ii_h", num(over[1])).
 		set("above_category_iii_h", num(over[2])).set("above_site_limit_h", num(over[3])).set("category", category)
-}
-
-func (in *Input) airChange(z int) *object {
-	o := &object{}
-	for s := running.State(0); s < running.NumStates; s++ {
-		a := &in.Results.FreshAir.Zones[z].AirChange[s]
-		o.set(s.String(), (&object{}).set("median_per_h", num(a.MedianPerH)).set("low_per_h", num(a.LowPerH)).set("high_per_h", num(a.HighPerH)).
-			set("flow_l_s", num(a.FlowLs)).set("flow_l_s_person", num(a.FlowLsPerson)).set("events", a.Events).
-			set("method", a.Method).set("not_measurable", a.NotMeasurable))
-	}
-	return o
 }
 
 func (in *Input) episodeList(rule privacy.Rule) []any {

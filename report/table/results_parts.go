@@ -70,15 +70,6 @@ func texts(s []string) []string {
 
 func (in *Input) lostTo() *object { return causes(in.Results.Lost.BuildingH) }
 
-func (in *Input) freshAir() *object {
-	f := in.Results.FreshAir
-	limits := &object{}
-	for i, name := range []string{"I", "II", "III"} {
-		limits.set(name, num(f.LimitsPPM[i]))
-	}
-	return (&object{}).set("limits_above_outdoor_ppm", limits).set("outdoor", f.OutdoorNote).set("caution", f.Sentence)
-}
-
 func (in *Input) potential() *object {
 	p := in.Results.Potential
 	methods := []any{}

@@ -92,9 +92,9 @@ func (m *maker) makeZone(z int) {
 		fz.State[s] = level
 		fz.State[s].KnownH = t.H[stateCols[s]]
 		fz.AirChange[s] = freshair.AirChange{MedianPerH: math.NaN(), LowPerH: math.NaN(), HighPerH: math.NaN(), FlowLs: math.NaN(), FlowLsPerson: math.NaN(),
-			OutdoorLowPerH: math.NaN(), OutdoorHighPerH: math.NaN(), AtUsualPeoplePPM: math.NaN(), Events: 1, NotMeasurable: "1 decay, at least 5 are needed"}
+			FromPerH: math.NaN(), ToPerH: math.NaN(), OutdoorLowPerH: math.NaN(), OutdoorHighPerH: math.NaN(), AtUsualPeoplePPM: math.NaN(), Events: 1, NotMeasurable: "1 decay, at least 5 are needed"}
 	}
-	fz.AirChange[running.Open] = freshair.AirChange{MedianPerH: 3.1, LowPerH: 2.2, HighPerH: 4.6, FlowLs: 155, FlowLsPerson: 155 / people, OutdoorLowPerH: 2.6, OutdoorHighPerH: 3.7, AtUsualPeoplePPM: 880, Events: 14, Method: "decay after the room empties"}
+	fz.AirChange[running.Open] = freshair.AirChange{MedianPerH: 3.1, LowPerH: 2.4, HighPerH: 4.1, FromPerH: 1.8, ToPerH: 5.2, FlowLs: 155, FlowLsPerson: 155 / people, OutdoorLowPerH: 2.6, OutdoorHighPerH: 3.7, AtUsualPeoplePPM: 880, Events: 14, Method: "decay after the room empties"}
 	fz.All = level
 	for s := range fz.Curve {
 		for k := range r.FreshAir.CurvePPM {
