@@ -4,7 +4,10 @@
 //
 //  1. levels: CO2 over occupied time, per running state and in all
 //  2. curve: how long it was above each level
-//  3. decays: air change rates from the fall of CO2 after a room empties
+//  3. decays, spells: air change rates from the fall of CO2 after a room
+//     empties, from whole days with people, and from rises
+//  4. estimate: the typical rate of each state with its interval
+//  5. required, plantair, rebreathed, baseline: what the rates and levels mean
 //
 // CO2 is never averaged over running states to get an air flow: the mean of C
 // gives the mean of 1/Q and not 1 over the mean of Q (ASHRAE Fundamentals

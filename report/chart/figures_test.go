@@ -1,6 +1,7 @@
 package chart
 
 import (
+	"math"
 	"os"
 	"path/filepath"
 	"testing"
@@ -45,8 +46,16 @@ func figures() []figure {
 		{"wind-roses", func(o Options) (SVG, error) { return WindRoses(sampleRoses(3), o) }},
 		{"wind-roses-1", func(o Options) (SVG, error) { return WindRoses(sampleRoses(1), o) }},
 		{"comfort-fields", func(o Options) (SVG, error) { return ComfortFields(sampleFields(), o) }},
+		{"air-change", func(o Options) (SVG, error) { return AirChange(sampleAirChange(), o) }},
 		{"rose", func(o Options) (SVG, error) { return SpeedRose(sampleRose(), o) }},
 	}
+}
+
+func sampleAirChange() AirChangeData {
+	return AirChangeData{Caption: cap1("Air change rate by zone and running state"), Rows: []AirChangeRow{
+		{"L1.01 <South>", Open, Bounded{2.6, 1.7, 4.2}, 12, false}, {"", Mech, Bounded{1.05, 0.8, 1.4}, 30, false}, {"", Shut, Bounded{0.14, 0.08, 0.2}, 9, true},
+		{"L2.01", Open, Bounded{math.NaN(), math.NaN(), math.NaN()}, 0, false}, {"", Mech, Bounded{0.2, 0.15, 0.3}, 5, true},
+	}}
 }
 
 // TestWriteSamples writes the sample figures to the folder named by
