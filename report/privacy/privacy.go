@@ -9,6 +9,7 @@ import (
 	"fmt"
 	"sort"
 	"strings"
+	"time"
 	"unicode"
 	"unicode/utf8"
 
@@ -24,6 +25,7 @@ type Rule struct {
 	internal bool
 	codes    bool
 	zones    []site.Zone
+	presence bool // occupied times are measured unless a zone says otherwise
 	found    []replacement
 }
 
@@ -31,7 +33,7 @@ type replacement struct{ from, to string }
 
 // For returns the rule a site asks for.
 func For(s *site.Site) Rule {
-	r := Rule{internal: s.Privacy.Internal, codes: s.Privacy.Codes, zones: s.Zones}
+	r := Rule{internal: s.Privacy.Internal, codes: s.Privacy.Codes, zones: s.Zones, presence: s.Occupancy.Source == site.ByPresence}
 	if !r.codes {
 		return r
 	}
@@ -70,6 +72,31 @@ func (r Rule) Protected(zone int) bool {
 		return false
 	}
 	return few(r.zones[zone].People)
+}
+
+// ByWeek reports whether a protected zone is told by week: its occupied hours
+// are measured, so that each of them says that somebody was there.
+func (r Rule) ByWeek(zone int) bool {
+	if !r.Protected(zone) {
+		return false
+	}
+	if own := r.zones[zone].OccupancySource; own != "" {
+		return own == site.ByPresence
+	}
+	return r.presence
+}
+
+// SameSpan reports whether two days of a protected zone are told together: the
+// same day, or the same week from Monday.
+func (r Rule) SameSpan(zone int, a, b site.Date) bool {
+	if a == b || !r.ByWeek(zone) {
+		return a == b
+	}
+	monday := func(d site.Date) site.Date {
+		t := d.Start(time.UTC)
+		return site.DateOf(t.AddDate(0, 0, -(int(t.Weekday())+6)%7))
+	}
+	return monday(a) == monday(b)
 }
 
 func few(people float64) bool { return people > 0 && people <= FewPeople }

@@ -7,6 +7,7 @@ import (
 	"github.com/parquet-go/parquet-go"
 
 	"sashlog/analyze/exceedance"
+	"sashlog/analyze/hours"
 	"sashlog/report/privacy"
 )
 
@@ -168,7 +169,7 @@ func WriteComfortParquet(w io.Writer, in Input) error {
 			failed = t.flush()
 		}
 	}
-	daily := byDay{in: &in, put: put}
+	daily := byDay{list: in.Results.Hours.Hours, rule: rule, put: put}
 	each := in.Results.Exceedance.EachHour
 	if each == nil { // nothing was counted
 		each = func(func(exceedance.Hourly)) {}
@@ -190,19 +191,20 @@ func WriteComfortParquet(w io.Writer, in Input) error {
 
 // byDay adds the hours of a protected room up to local days, or weeks.
 type byDay struct {
-	in  *Input
-	put func(exceedance.Hourly)
-	sum exceedance.Hourly
-	any bool
+	list []hours.Hour
+	rule privacy.Rule
+	put  func(exceedance.Hourly)
+	sum  exceedance.Hourly
+	any  bool
 }
 
 func (d *byDay) add(e exceedance.Hourly) {
-	list := d.in.Results.Hours.Hours
-	same := d.any && d.sum.Zone == e.Zone && d.sum.Criterion == e.Criterion && sameSpan(list[d.sum.Hour].Date, list[e.Hour].Date, d.in.measuredPresence(e.Zone))
+	list := d.list
+	same := d.any && d.sum.Zone == e.Zone && d.sum.Criterion == e.Criterion && d.rule.SameSpan(e.Zone, list[d.sum.Hour].Date, list[e.Hour].Date)
 	if !same {
 		d.end()
 		d.sum, d.any = exceedance.Hourly{Zone: e.Zone, Hour: e.Hour, Criterion: e.Criterion}, true
-		for d.sum.Hour > 0 && sameSpan(list[d.sum.Hour-1].Date, list[e.Hour].Date, d.in.measuredPresence(e.Zone)) {
+		for d.sum.Hour > 0 && d.rule.SameSpan(e.Zone, list[d.sum.Hour-1].Date, list[e.Hour].Date) {
 			d.sum.Hour-- // the day begins at midnight, the week on Monday
 		}
 	}

@@ -11,7 +11,6 @@ import (
 	"math"
 	"strconv"
 	"strings"
-	"time"
 	"unicode"
 
 	"sashlog/analyze"
@@ -62,7 +61,7 @@ func (in *Input) eachRow(rule privacy.Rule, f func(*row) error) error {
 		protected := rule.Protected(z)
 		for h := 0; h < len(rec.Hours); {
 			to := h + 1
-			for protected && to < len(rec.Hours) && sameSpan(rec.Hours[h].Date, rec.Hours[to].Date, in.measuredPresence(z)) {
+			for protected && to < len(rec.Hours) && rule.SameSpan(z, rec.Hours[h].Date, rec.Hours[to].Date) {
 				to++
 			}
 			r.fill(rec, z, h, to)
@@ -79,29 +78,6 @@ func (in *Input) eachRow(rule privacy.Rule, f func(*row) error) error {
 		}
 	}
 	return nil
-}
-
-// measuredPresence reports whether a zone's occupied hours are measured: then
-// each of them says that somebody was there.
-func (in *Input) measuredPresence(z int) bool {
-	source := in.Site.Occupancy.Source
-	if own := in.Site.Zones[z].OccupancySource; own != "" {
-		source = own
-	}
-	return source == site.ByPresence
-}
-
-// sameSpan reports whether two days belong to one row of a protected room: the
-// same day, or the same week from Monday.
-func sameSpan(a, b site.Date, weeks bool) bool {
-	if a == b || !weeks {
-		return a == b
-	}
-	monday := func(d site.Date) site.Date {
-		t := d.Start(time.UTC)
-		return site.DateOf(t.AddDate(0, 0, -(int(t.Weekday())+6)%7))
-	}
-	return monday(a) == monday(b)
 }
 
 // fill adds up the hours [from, to) of a zone.

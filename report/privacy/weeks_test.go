@@ -1,4 +1,4 @@
-package table
+package privacy
 
 import (
 	"testing"
@@ -15,8 +15,16 @@ func TestWeeks(t *testing.T) {
 		weeks bool
 		want  bool
 	}{{7, 7, false, true}, {7, 8, false, false}, {7, 13, true, true}, {13, 14, true, false}, {14, 20, true, true}} {
-		if got := sameSpan(day(c.a), day(c.b), c.weeks); got != c.want {
+		s := &site.Site{Zones: []site.Zone{{ID: "a", People: 2}}}
+		if c.weeks {
+			s.Zones[0].OccupancySource = site.ByPresence
+		}
+		if got := For(s).SameSpan(0, day(c.a), day(c.b)); got != c.want {
 			t.Errorf("%d and %d, weeks %v: %v", c.a, c.b, c.weeks, got)
 		}
+	}
+	site := &site.Site{Zones: []site.Zone{{ID: "a", People: 2}, {ID: "b", People: 20}}, Occupancy: site.Occupancy{Source: site.ByPresence}}
+	if r := For(site); !r.ByWeek(0) || r.ByWeek(1) {
+		t.Error("with presence measured everywhere the room for two is told by week, the one for twenty is not protected")
 	}
 }
