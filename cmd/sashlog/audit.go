@@ -251,7 +251,10 @@ func printPDF(ctx context.Context, p process, into string, pages page.Input) err
 		return nil
 	}
 	out, err := writeOutputs(ctx, into, "report.pdf", []output{{"report.pdf", func(w io.Writer) error {
-		return pdf.Print(ctx, browser, func(w io.Writer) error { return page.Write(w, pages) }, w)
+		return pdf.Print(ctx, browser, func(w io.Writer) error {
+			pages.PrintOnly = true
+			return page.Write(w, pages)
+		}, w)
 	}}})
 	if err != nil {
 		return err

@@ -12,10 +12,10 @@ import (
 
 // sheet is a short document of its own: a question and its sections.
 type sheet struct {
-	Title, RunningHead, Paper, Building, Question string
-	Invented                                      bool
-	Style                                         template.CSS
-	Sections                                      []section
+	Title, RunningHead, Paper, Building, Question, Policy string
+	Invented                                              bool
+	Style                                                 template.CSS
+	Sections                                              []section
 }
 
 // write writes a sheet. Nothing is written when it cannot be made.
@@ -36,11 +36,12 @@ func (b *builder) write(w io.Writer, s sheet) error {
 	for i := range s.Sections {
 		s.Sections[i].Number = i + 1
 	}
+	s.Policy = unsealed
 	var buf bytes.Buffer
 	if err := t.ExecuteTemplate(&buf, "comparison.html", s); err != nil {
 		return fmt.Errorf("page: %w", err)
 	}
-	_, err = w.Write(harmless(buf.Bytes()))
+	_, err = w.Write(seal(harmless(buf.Bytes())))
 	return err
 }
 

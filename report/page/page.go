@@ -1,7 +1,8 @@
-// Package page makes the report: one HTML file without scripts or network
-// access that reads on a screen and prints to A4 and Letter. It shows figures
-// of the analyses in the words of package words and the drawings of package
-// chart, and computes none itself.
+// Package page makes the report: one HTML file without network access that
+// reads on a screen and prints to A4 and Letter. It shows figures of the
+// analyses in the words of package words and the drawings of package chart, and
+// computes none itself. A script of its own (look/) shows single days and zones
+// from data packed inside the file; without it everything else still reads.
 //
 // The steps, in the order of the document:
 //
@@ -43,6 +44,8 @@ type Input struct {
 	Provenance provenance.Provenance
 	// Paper is "A4" or "Letter"; empty means A4.
 	Paper string
+	// PrintOnly leaves out what only answers on a screen.
+	PrintOnly bool
 }
 
 //go:embed templates/*.html templates/*.css
@@ -54,6 +57,10 @@ type document struct {
 	Style                     template.CSS
 	Front                     front
 	Sections                  []section
+	Look                      look
+	PrintOnly                 bool
+	// Policy is the content security policy; see seal.
+	Policy string
 }
 
 // Write writes the whole report. Nothing is written when it cannot be made.
@@ -61,6 +68,13 @@ func Write(w io.Writer, in Input) error {
 	style, err := files.ReadFile("templates/style.css")
 	if err != nil {
 		return fmt.Errorf("page: %w", err)
+	}
+	if !in.PrintOnly {
+		more, err := files.ReadFile("templates/look.css")
+		if err != nil {
+			return fmt.Errorf("page: %w", err)
+		}
+		style = append(style, more...)
 	}
 	t, err := template.New("").Funcs(template.FuncMap{"main": mainPart, "bounds": boundsPart}).ParseFS(files, "templates/*.html")
 	if err != nil {
@@ -76,13 +90,35 @@ func Write(w io.Writer, in Input) error {
 	}
 	b := newBuilder(in)
 	doc := document{Title: b.w.Building() + ": open mode report", RunningHead: shorten(b.w.Marked(), 60),
-		Paper: paper, Style: template.CSS(style), Front: b.front(), Sections: b.sections()}
+		Paper: paper, Style: template.CSS(style), Front: b.front(), Sections: b.sections(), PrintOnly: in.PrintOnly, Policy: unsealed}
+	if doc.Look, err = b.look(); err != nil {
+		return err
+	}
 	var buf bytes.Buffer
 	if err := t.ExecuteTemplate(&buf, "page.html", doc); err != nil {
 		return fmt.Errorf("page: %w", err)
 	}
-	_, err = w.Write(harmless(buf.Bytes()))
+	_, err = w.Write(seal(harmless(buf.Bytes())))
 	return err
+}
+
+// unsealed stands where the policy will: the digests are known only when the
+// document is.
+const unsealed = "default-src 'none'"
+
+// seal writes the content security policy of the finished document into its
+// head.
+func seal(doc []byte) []byte {
+	between := func(open, end string) string {
+		_, rest, ok := bytes.Cut(doc, []byte(open))
+		text, _, _ := bytes.Cut(rest, []byte(end))
+		if !ok {
+			return ""
+		}
+		return string(text)
+	}
+	return bytes.Replace(doc, []byte(`content="`+template.HTMLEscapeString(unsealed)+`"`),
+		[]byte(`content="`+policy(between("<style>", "</style>"), between("<script>", "</script>"))+`"`), 1)
 }
 
 // mainPart and boundsPart cut a figure from the bounds in brackets after it.
