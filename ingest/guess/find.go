@@ -107,7 +107,7 @@ func (p *Proposal) special(f *logfile.File) string {
 	case logfile.Workbook:
 		return ""
 	}
-	switch strings.ToLower(path.Ext(strings.TrimSuffix(f.Base, ".gz"))) {
+	switch strings.ToLower(path.Ext(f.Unpacked())) {
 	case ".yaml", ".yml", ".json", ".md", ".html", ".htm", ".xml", ".ttl", ".py", ".r", ".sql":
 		return "not a log, by its ending"
 	}

@@ -2,7 +2,6 @@ package logfile
 
 import (
 	"archive/zip"
-	"bytes"
 	"crypto/sha256"
 	"encoding/hex"
 	"errors"
@@ -15,6 +14,7 @@ import (
 	"sync"
 
 	"github.com/klauspost/compress/gzip"
+	"github.com/klauspost/compress/zstd"
 )
 
 // Reader reads the expanded bytes of a file and sums the bytes as stored.
@@ -41,69 +41,24 @@ func (c *counter) Read(p []byte) (int, error) {
 	return n, err
 }
 
-// Open opens the file for reading, expanding it when it is compressed. sum
-// asks for the checksum of the stored bytes.
+// Open opens the file for reading, expanding it when it is packed. sum asks
+// for the checksum of the stored bytes.
 func (f *File) Open(sum bool) (*Reader, error) {
 	fh, err := os.Open(f.disk)
 	if err != nil {
 		return nil, Failure{f.Name, plainErr(err)}
 	}
-	r := &Reader{close: []io.Closer{fh}, file: f}
-	var src io.Reader = fh
-	capped := false
-	if f.member != "" {
-		st, err := fh.Stat()
-		var z *zip.Reader
-		if err == nil {
-			z, err = zip.NewReader(fh, st.Size())
-		}
-		if err != nil {
-			fh.Close()
-			return nil, Failure{f.Name, fmt.Errorf("damaged zip archive: %w", err)}
-		}
-		m, err := member(z, f.member)
-		if err != nil {
-			fh.Close()
-			return nil, Failure{f.Name, fmt.Errorf("damaged zip archive: %w", err)}
-		}
-		r.close = append(r.close, m)
-		src, capped = m, true
-	}
-	r.count = &counter{r: src}
-	if sum && f.member == "" {
+	r := &Reader{close: []io.Closer{fh}, file: f, count: &counter{r: fh}}
+	if sum && f.sum == nil {
 		r.count.h = sha256.New()
 	}
-	src = r.count
-	head := make([]byte, 2)
-	n, err := io.ReadFull(src, head)
-	if err != nil && err != io.EOF && err != io.ErrUnexpectedEOF {
+	src, err := r.expand(fh, r.count, f.layers)
+	if err != nil {
 		r.Close()
-		return nil, Failure{f.Name, plainErr(err)}
-	}
-	src = io.MultiReader(bytes.NewReader(head[:n]), src)
-	if n == 2 && head[0] == 0x1f && head[1] == 0x8b {
-		z, err := gzip.NewReader(src)
-		if err != nil {
-			r.Close()
-			return nil, Failure{f.Name, fmt.Errorf("damaged gzip data: %w", err)}
-		}
-		src, capped = z, true
-	}
-	if capped {
-		src = &limited{src, MaxExpanded}
+		return nil, Failure{f.Name, plainWords(err)}
 	}
 	r.Reader = &named{src, f.Name}
 	return r, nil
-}
-
-// member opens an archive's member by its exact name.
-func member(z *zip.Reader, name string) (io.ReadCloser, error) {
-	for _, m := range z.File {
-		if m.Name == name {
-			return m.Open()
-		}
-	}
-	return nil, errors.New("the member is gone")
 }
 
 // Close closes the file.
@@ -164,21 +119,6 @@ func SumFile(p string) (int64, string, error) {
 	return n, hex.EncodeToString(h.Sum(nil)), err
 }
 
-// limited ends with an error, not silently, when too much has been read.
-type limited struct {
-	r    io.Reader
-	left int64
-}
-
-func (l *limited) Read(p []byte) (int, error) {
-	if l.left <= 0 {
-		return 0, fmt.Errorf("expands to more than %d GiB; hint: unpack and look at it", MaxExpanded>>30)
-	}
-	n, err := l.r.Read(p)
-	l.left -= int64(n)
-	return n, err
-}
-
 // named adds the file's name to errors and plain words to the usual ones.
 type named struct {
 	r    io.Reader
@@ -187,15 +127,24 @@ type named struct {
 
 func (r *named) Read(p []byte) (int, error) {
 	n, err := r.r.Read(p)
-	switch {
-	case err == nil || err == io.EOF:
+	if err == nil || err == io.EOF {
 		return n, err
-	case errors.Is(err, io.ErrUnexpectedEOF):
-		err = fmt.Errorf("the compressed data end too early (%w); hint: the file was cut off, copy it again", err)
-	case errors.Is(err, gzip.ErrChecksum), errors.Is(err, zip.ErrChecksum):
-		err = fmt.Errorf("the compressed data are damaged (%w); hint: copy the file again", err)
 	}
-	return n, Failure{r.name, plainErr(err)}
+	return n, Failure{r.name, plainErr(plainWords(cause(err)))}
+}
+
+// plainWords says what damaged packed data mean.
+func plainWords(err error) error {
+	switch {
+	case errors.Is(err, io.ErrUnexpectedEOF):
+		return fmt.Errorf("the compressed data end too early (%w); hint: the file was cut off, copy it again", err)
+	case errors.Is(err, gzip.ErrChecksum), errors.Is(err, zip.ErrChecksum), errors.Is(err, zstd.ErrCRCMismatch),
+		errors.Is(err, zstd.ErrReservedBlockType), errors.Is(err, zstd.ErrMagicMismatch):
+		return fmt.Errorf("the compressed data are damaged (%w); hint: copy the file again", err)
+	case errors.Is(err, zstd.ErrWindowSizeExceeded), errors.Is(err, zstd.ErrDecoderSizeExceeded):
+		return fmt.Errorf("the Zstandard data ask for more than %d MiB of memory; hint: pack it without a long window", windowMost>>20)
+	}
+	return err
 }
 
 // plainErr drops the path of this machine from an error of the file system.

@@ -31,8 +31,16 @@ type Book struct {
 const maxXML = 4 << 30
 
 func openBook(f *logfile.File) (*excelize.File, error) {
-	x, err := excelize.OpenFile(f.Path(), excelize.Options{RawCellValue: true, UnzipSizeLimit: 2 * maxXML})
+	r, err := f.Open(false)
 	if err != nil {
+		return nil, err
+	}
+	defer r.Close()
+	x, err := excelize.OpenReader(r, excelize.Options{RawCellValue: true, UnzipSizeLimit: 2 * maxXML})
+	if err != nil {
+		if _, ok := err.(logfile.Failure); ok {
+			return nil, err
+		}
 		return nil, logfile.Failure{Name: f.Name, Err: fmt.Errorf("damaged or protected workbook: %w", err)}
 	}
 	return x, nil

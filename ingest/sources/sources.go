@@ -224,7 +224,7 @@ func (o *opener) pointsOf(log *site.Log, f *logfile.File) []int {
 	var ps []int
 	for i := range o.site.Points {
 		p := &o.site.Points[i]
-		if !means(p.Source, log.Name) && !means(p.Source, f.Base) && (f.Archive() == "" || !means(p.Source, f.Archive())) && !means(p.Source, strings.TrimSuffix(f.Base, ".gz")) {
+		if !means(p.Source, log.Name) && !means(p.Source, f.Base) && (f.Archive() == "" || !means(p.Source, f.Archive())) && !means(p.Source, f.Unpacked()) {
 			continue
 		}
 		o.sourced[i] = true
