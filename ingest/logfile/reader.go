@@ -107,6 +107,15 @@ func (a *archiveSum) get() (int64, string, error) {
 	return a.n, a.sha, a.err
 }
 
+// Sum returns the size and SHA-256 of the file as stored; for a member of an
+// archive they are the archive's.
+func (f *File) Sum() (n int64, sha string, err error) {
+	if f.sum != nil {
+		return f.sum.get()
+	}
+	return SumFile(f.disk)
+}
+
 // SumFile returns the size and SHA-256 of a file on disk.
 func SumFile(p string) (int64, string, error) {
 	fh, err := os.Open(p)

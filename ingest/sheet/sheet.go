@@ -200,7 +200,7 @@ func (b *Book) Read(ctx context.Context, to reading.Sink) error {
 	})
 	b.End(m, b.notes)
 	if err == nil {
-		b.Ledger.Bytes, b.Ledger.SHA256, err = logfile.SumFile(b.file.Path())
+		b.Ledger.Bytes, b.Ledger.SHA256, err = b.file.Sum()
 	}
 	return err
 }

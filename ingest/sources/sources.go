@@ -14,6 +14,7 @@ import (
 	"sashlog/configs/site"
 	"sashlog/ingest/cell"
 	"sashlog/ingest/clock"
+	"sashlog/ingest/columnar"
 	"sashlog/ingest/logfile"
 	"sashlog/ingest/reading"
 	"sashlog/ingest/sheet"
@@ -212,7 +213,7 @@ func (o *opener) open(log *site.Log, f *logfile.File, points []int) (looked, err
 	case logfile.Foreign:
 		return nil, fmt.Errorf("not a log: %s", f.What)
 	case logfile.Parquet:
-		return nil, errors.New("a Parquet file cannot be read as a log yet; export CSV or XLSX")
+		return columnar.Open(o.site, log, f, wanted)
 	case logfile.Workbook:
 		return sheet.Open(o.site, log, f, wanted)
 	}
