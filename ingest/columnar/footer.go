@@ -194,7 +194,12 @@ func checkChunk(r io.ReaderAt, size, rows int64, m *format.ColumnMetaData) (larg
 	if m.NumValues != rows {
 		return 0, fmt.Errorf("%d values in a group of %d rows: %w", m.NumValues, rows, errCut)
 	}
+	if err := checkCodec(m.Codec); err != nil {
+		return 0, err
+	}
 	var protocol thrift.CompactProtocol
+	var body bodies
+	defer body.close()
 	var dict, values int64
 	buf := make([]byte, 512)
 	for at < end && values < rows {
@@ -209,7 +214,8 @@ func checkChunk(r io.ReaderAt, size, rows int64, m *format.ColumnMetaData) (larg
 		if expanded > pageMost {
 			return 0, fmt.Errorf("a page expands to %d MiB, more than %d; hint: write it with smaller pages", expanded>>20, pageMost>>20)
 		}
-		var count int64
+		var count, plain int64 // plain: bytes of levels, which are not packed
+		packed := true
 		switch {
 		case h.Type == format.DictionaryPage && h.DictionaryPageHeader.Valid:
 			if count = int64(h.DictionaryPageHeader.V.NumValues); count > expanded {
@@ -223,12 +229,22 @@ func checkChunk(r io.ReaderAt, size, rows int64, m *format.ColumnMetaData) (larg
 			v := &h.DataPageHeaderV2.V
 			count = int64(v.NumValues)
 			values += count
-			if levels := int64(v.RepetitionLevelsByteLength) + int64(v.DefinitionLevelsByteLength); levels > stored || v.RepetitionLevelsByteLength < 0 || v.DefinitionLevelsByteLength < 0 {
+			plain = int64(v.RepetitionLevelsByteLength) + int64(v.DefinitionLevelsByteLength)
+			if plain > min(stored, expanded) || v.RepetitionLevelsByteLength < 0 || v.DefinitionLevelsByteLength < 0 {
 				return 0, fmt.Errorf("a page whose levels take more bytes than it has: %w", errCut)
 			}
+			packed = !v.IsCompressed.Valid || v.IsCompressed.V
 		}
 		if count < 0 || count > valuesMost || values > rows {
 			return 0, fmt.Errorf("a page claims %d values in a group of %d rows (at most %d are read at once): %w", count, rows, valuesMost, errCut)
+		}
+		if codec := m.Codec; stored > plain {
+			if !packed {
+				codec = format.Uncompressed
+			}
+			if err := body.check(codec, r, at+n+plain, stored-plain, expanded-plain); err != nil {
+				return 0, err
+			}
 		}
 		largest = max(largest, expanded+9*count) // levels, and indexes or values
 		at += n + stored

@@ -67,6 +67,11 @@ func (o *opened) check() error {
 		if len(m.RowGroups[i].Columns) != len(leafElements(m)) {
 			return fmt.Errorf("row group %d has %d columns, the schema %d: %w", i+1, len(m.RowGroups[i].Columns), len(leafElements(m)), errCut)
 		}
+		for j := range m.RowGroups[i].Columns {
+			if m.RowGroups[i].Columns[j].MetaData.Codec != m.RowGroups[0].Columns[j].MetaData.Codec {
+				return fmt.Errorf("row group %d packs column %d in another way than the first: not read", i+1, j+1)
+			}
+		}
 		rows += n
 	}
 	return nil
