@@ -158,6 +158,11 @@ func (o *opener) log(ctx context.Context, li int) error {
 			continue
 		}
 		l, err := o.open(log, f, points)
+		if errors.As(err, new(tabular.NoLog)) && len(files) > 1 && !o.named(f, points) {
+			o.problem(Problem{Kind: PassedOver, Where: reading.Where{File: f.Name}, Point: -1, Log: li, Count: 1,
+				Text: "passed over: it holds no times and none of the mapped columns"})
+			continue
+		}
 		if err != nil {
 			o.refused(li, f, err)
 			continue
@@ -180,6 +185,17 @@ func (o *opener) log(ctx context.Context, li int) error {
 			Text: fmt.Sprintf("%s of log %q not mapped: %s", tabular.Count(int64(len(names)), "column", "columns"), log.Name, few(names))})
 	}
 	return o.order(ctx, li, opened)
+}
+
+// named reports whether one of the points names the file itself, and not the
+// log, folder or archive it lies in.
+func (o *opener) named(f *logfile.File, points []int) bool {
+	for _, i := range points {
+		if p := &o.site.Points[i]; means(p.Source, f.Base) || means(p.Source, f.Unpacked()) || sameName(p.Column, f.Stem()) {
+			return true
+		}
+	}
+	return false
 }
 
 // told marks the points of a log whose failure is told already.

@@ -38,6 +38,29 @@ func (u Unsettled) Error() string { return u.Cause.Error() }
 // Unwrap returns the cause.
 func (u Unsettled) Unwrap() error { return u.Cause }
 
+// NoLog is a text that holds neither times nor any of the names looked for.
+type NoLog struct{ Why Unsettled }
+
+func (n NoLog) Error() string { return n.Why.Error() }
+
+// Unwrap returns why it is not taken as a log.
+func (n NoLog) Unwrap() error { return n.Why }
+
+// unsettled says why the head of a file is not taken as a log.
+func unsettled(text []byte, latin bool, wanted []string, why error) error {
+	names := map[string]bool{}
+	for _, w := range wanted {
+		names[cell.Fold(w)] = true
+	}
+	cells := strings.FieldsFunc(cell.Text(text, latin), func(r rune) bool { return strings.ContainsRune(";\t,|\"\r\n", r) })
+	for _, c := range cells {
+		if f := formOf(c); f == formStamp || f == formDate || f == formNumber && (unixLike(c) || serialLike(c)) || names[cell.Fold(c)] {
+			return Unsettled{why}
+		}
+	}
+	return NoLog{Unsettled{why}}
+}
+
 // NotSettled makes an Unsettled from a message.
 func NotSettled(format string, args ...any) Unsettled {
 	return Unsettled{fmt.Errorf(format, args...)}
@@ -94,11 +117,11 @@ func Look(r io.Reader, log *site.Log, wanted []string) (d Dialect, rows []HeadRo
 		}
 	}
 	if err := d.findSep(text, log, whole); err != nil {
-		return d, nil, Unsettled{err}
+		return d, nil, unsettled(text, d.Style.Latin, wanted, err)
 	}
 	rows = splitHead(text, d.Sep, d.Style.Latin, whole)
 	if d.Frame, err = FrameOf(rows, log, wanted); err != nil {
-		return d, rows, Unsettled{err}
+		return d, rows, unsettled(text, d.Style.Latin, wanted, err)
 	}
 	for i, n := range d.Frame.Names {
 		if strings.ContainsRune(n, '\ufffd') {
