@@ -102,9 +102,7 @@ func (p *Proposal) special(f *logfile.File) string {
 		return "empty"
 	case logfile.Foreign:
 		return "not a log: " + f.What
-	case logfile.Parquet:
-		return "a Parquet file: not read by this scan; export CSV or XLSX"
-	case logfile.Workbook:
+	case logfile.Parquet, logfile.Workbook:
 		return ""
 	}
 	switch strings.ToLower(path.Ext(f.Unpacked())) {

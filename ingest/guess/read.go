@@ -146,7 +146,7 @@ func newOrOld(l *Log, s *shape, key string, v int) *adder {
 	case l.Setting.Layout == site.Long:
 		t.Column, t.name, t.around = key, key, name
 	default:
-		t.Column = name
+		t.Column, t.unitText = name, s.said[name]
 		if l.bySource {
 			t.Source = s.file.Base
 		}

@@ -9,6 +9,7 @@ import (
 	"sashlog/configs/site"
 	"sashlog/ingest/cell"
 	"sashlog/ingest/clock"
+	"sashlog/ingest/columnar"
 	"sashlog/ingest/logfile"
 	"sashlog/ingest/sheet"
 	"sashlog/ingest/tabular"
@@ -38,7 +39,8 @@ type shape struct {
 	keys    []int
 	values  []int
 	names   []string
-	generic bool // a single value column whose name says nothing
+	said    map[string]string // units by column, by the file's metadata
+	generic bool              // a single value column whose name says nothing
 
 	order    site.DateOrder
 	proof    string
@@ -55,7 +57,11 @@ func (p *Proposal) look(ctx context.Context, f *logfile.File) []*shape {
 		return nil
 	}
 	if f.Kind != logfile.Workbook {
-		s, err := p.lookText(ctx, f)
+		with := p.lookText
+		if f.Kind == logfile.Parquet {
+			with = lookParquet
+		}
+		s, err := with(ctx, f)
 		if err != nil {
 			p.note(f.Name, "not taken for a log: "+err.Error())
 			return nil
@@ -86,6 +92,19 @@ func (p *Proposal) look(ctx context.Context, f *logfile.File) []*shape {
 		out = append(out, s)
 	}
 	return out
+}
+
+// lookParquet looks at a Parquet file, whose columns say what they hold.
+func lookParquet(ctx context.Context, f *logfile.File) (*shape, error) {
+	s := &shape{file: f, style: cell.Style{Mark: '.', Declared: true}}
+	c, err := columnar.Open(&site.Site{}, &s.log, f, nil)
+	if err != nil {
+		return nil, errors.New(cause(err))
+	}
+	s.rows, s.said = c, c.Units()
+	s.notes = append(s.notes, "Parquet file")
+	s.notes = append(s.notes, c.Frame().Notes...)
+	return s, s.settle(ctx)
 }
 
 // titleRows is how far down the names of columns are looked for.
