@@ -20,8 +20,8 @@ func newScan(p process) *cobra.Command {
 	cmd := &cobra.Command{
 		Use:   "scan PATH...",
 		Short: "look at unknown exports and propose a site file and a points table",
-		Long: `scan looks at folders and files of exports that nobody described (text, gzip, zip,
-XLSX), finds out how each is written, guesses which column is what of which room
+		Long: `scan looks at folders and files of exports that nobody described (text, XLSX, Parquet;
+plain or packed), finds out how each is written, guesses which column is what of which room
 or plant unit, and writes into the output folder:
 
   site.yaml     the proposed site file; lines marked TO FILL IN need a person

@@ -82,7 +82,7 @@ func damaged(f *logfile.File, err error) error {
 	if errors.As(err, &fe) {
 		return err
 	}
-	return logfile.Failure{Name: f.Name, Err: fmt.Errorf("Parquet file: %w", err)}
+	return logfile.Failure{Name: f.Name, Err: fmt.Errorf("%s: %w", "Parquet file", err)}
 }
 
 // cursor runs over the values of one column of a row group.
