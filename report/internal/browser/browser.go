@@ -217,8 +217,9 @@ func (p *Page) event(method string, params json.RawMessage) {
 	}
 }
 
-// Open opens a document in a window of a width and height.
-func (b *Browser) Open(t testing.TB, document string, width, height int) *Page {
+// Open opens a document in a window of a width and height, after before, if
+// any, has prepared it.
+func (b *Browser) Open(t testing.TB, document string, width, height int, before func(*Page)) *Page {
 	t.Helper()
 	file := filepath.Join(t.TempDir(), "document.html")
 	if err := os.WriteFile(file, []byte(document), 0o600); err != nil {
@@ -236,6 +237,9 @@ func (b *Browser) Open(t testing.TB, document string, width, height int) *Page {
 		p.Call(t, domain+".enable", nil, nil)
 	}
 	p.Resize(t, width, height)
+	if before != nil {
+		before(p)
+	}
 	p.Call(t, "Page.navigate", map[string]any{"url": "file://" + filepath.ToSlash(file)}, nil)
 	select {
 	case <-p.loaded:

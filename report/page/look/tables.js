@@ -11,14 +11,14 @@ function zoneTables() {
   return out;
 }
 
-// onlyZone hides the rows of other zones, or shows all again (zone -1), and
-// says so under each table.
+// onlyZone hides the rows of other zones on the screen, or shows all again
+// (zone -1), and says so under each table. Print has them all.
 function onlyZone(tables, zone) {
   for (const t of tables) {
     let shown = 0;
     for (const [row, name] of t.rows) {
-      row.hidden = zone >= 0 && name !== label(zone);
-      shown += row.hidden ? 0 : 1;
+      row.classList.toggle('other', zone >= 0 && name !== label(zone));
+      shown += row.matches('.other') ? 0 : 1;
     }
     if (!t.said) {
       t.said = make('p', { class: 'foot only' });
