@@ -47,6 +47,12 @@ func figures() []figure {
 		{"wind-roses-1", func(o Options) (SVG, error) { return WindRoses(sampleRoses(1), o) }},
 		{"comfort-fields", func(o Options) (SVG, error) { return ComfortFields(sampleFields(), o) }},
 		{"air-change", func(o Options) (SVG, error) { return AirChange(sampleAirChange(), o) }},
+		{"zone-plan", func(o Options) (SVG, error) { return ZonePlan(samplePlan(3, 6), o) }},
+		{"zone-plan-200", func(o Options) (SVG, error) { return ZonePlan(samplePlan(5, 40), o) }},
+		{"running-mean", func(o Options) (SVG, error) { return RunningMean(sampleRunningMean(), o) }},
+		{"known-calendar", func(o Options) (SVG, error) { return KnownCalendar(sampleKnown(365), o) }},
+		{"known-calendar-2", func(o Options) (SVG, error) { return KnownCalendar(sampleKnown(2), o) }},
+		{"doubt-bars", func(o Options) (SVG, error) { return DoubtBars(sampleDoubt(), o) }},
 		{"rose", func(o Options) (SVG, error) { return SpeedRose(sampleRose(), o) }},
 	}
 }
@@ -75,4 +81,72 @@ func TestWriteSamples(t *testing.T) {
 		}
 		t.Logf("%-20s %6d bytes", f.name, len(svg))
 	}
+}
+
+func samplePlan(floors, zones int) ZonePlanData {
+	r := sampleRandom()
+	d := ZonePlanData{Caption: cap1("Share reached by floor and place"), Legend: "reached of the possible"}
+	for i := range floors {
+		fl := PlanFloor{Name: "Floor " + number(float64(i+1), 0)}
+		for z := range zones {
+			x := PlanZone{Zone: harmfulNames[z%len(harmfulNames)], Side: []Side{South, North, West, East, Middle, South}[(z+i)%6], Share: r.Float64(), Words: "48 % of 700 h"}
+			switch {
+			case x.Side == Middle && z%2 == 0:
+				x.NoOpening, x.Share, x.Words = true, math.NaN(), ""
+			case z == 1 && i == 1:
+				x.Share, x.Words = math.NaN(), "not known"
+			}
+			fl.Zones = append(fl.Zones, x)
+		}
+		d.Floors = append(d.Floors, fl)
+	}
+	return d
+}
+
+func sampleRunningMean() RunningMeanData {
+	d := RunningMeanData{Caption: cap1("Indoor temperature against the running mean"), StepC: 0.5}
+	for x := 8.0; x < 26; x += 0.5 {
+		for y := 19.0; y < 29; y += 0.5 {
+			if h := 90*math.Exp(-math.Pow((y-21.5-0.25*(x-8))/1.4, 2)) - 3; h > 0 {
+				d.Hours = append(d.Hours, RunningMeanField{x, y, h})
+			}
+		}
+	}
+	for i, k := range []float64{2, 3, 4} {
+		b := RunningMeanBand{Name: "category " + []string{"I", "II", "III"}[i], Highlights: i == 1}
+		for x := 10.0; x <= 30; x += 5 {
+			b.Low, b.High = append(b.Low, XY{x, 0.33*x + 18.8 - k - 1}), append(b.High, XY{x, 0.33*x + 18.8 + k})
+		}
+		d.Bands = append(d.Bands, b)
+	}
+	return d
+}
+
+func sampleKnown(days int) KnownCalendarData {
+	r := sampleRandom()
+	d := KnownCalendarData{Caption: cap1("What was known on each day"), FirstDay: jan1()}
+	for i, name := range []string{"outdoor temperature", "window contacts", "plant status", "indoor temperature", "CO₂", "people <i>"} {
+		row := KnownRow{Name: name}
+		for k := range days {
+			v := 0.97 + 0.03*r.Float64()
+			switch {
+			case i == 1 && k > 200 && k < 215:
+				v = 0
+			case i == 4 && k%9 == 0:
+				v = 0.3
+			case i == 5 && k < 100:
+				v = math.NaN()
+			case i == 2 && k%31 == 0:
+				v = 0.8
+			}
+			row.Days = append(row.Days, v)
+		}
+		d.Rows = append(d.Rows, row)
+	}
+	return d
+}
+
+func sampleDoubt() DoubtBarsData {
+	return DoubtBarsData{Caption: cap1("What the doubt is made of"), XTitle: "missed hours (± h per year)", Parts: []DoubtPart{
+		{"hours that cannot be judged", 44, true}, {"outdoor humidity", 21, false}, {"outdoor temperature", 9, false}, {"indoor temperature", 14.5, false}, {"CO₂ <x>", 0, false}}}
 }

@@ -25,7 +25,7 @@ func (b *builder) headline(z int) *exceedance.Criterion {
 func (b *builder) comfort() section {
 	s := section{ID: "comfort", Title: "Comfort: how long, by how much, for how many"}
 	s.Blocks = append(s.Blocks, text("A comfort criterion gives a zone a lowest and a highest temperature. Occupied time above it counts as too warm, below it as too cool, and the two are kept apart. In open mode the limits follow the outdoor temperature of the past days, since people who can open windows accept more (the adaptive model); while plant cools or heats they are fixed. Degree-hours (K·h) add up by how much and how long; person-hours multiply hours by the usual number of people."))
-	s.Blocks = append(s.Blocks, b.exceedanceChart())
+	s.Blocks = append(s.Blocks, b.exceedanceChart(), b.againstRunningMean())
 	head := table{ID: "comfort-headline", Caption: "Occupied time outside the headline criterion",
 		Head: []column{col("Zone"), num("Judged (h)"), num("Too warm (h)"), num("share"), num("K·h"), num("person-h"), num("Too cool (h)"), num("share"), num("K·h"), num("person-h"), num("Not known (h)")}}
 	zones, foot := b.capped(b.order)

@@ -4,6 +4,7 @@ import (
 	"strings"
 
 	"sashlog/analyze/doubt"
+	"sashlog/report/chart"
 	"sashlog/report/words"
 )
 
@@ -34,7 +35,15 @@ func (b *builder) doubtParts() []block {
 		"Together the sensors leave: suited " + words.HoursBetween(total.SuitedH.Value*k, total.SuitedH.Low*k, total.SuitedH.High*k) + ", achieved " +
 			words.HoursBetween(total.AchievedH.Value*k, total.AchievedH.Low*k, total.AchievedH.High*k) + ", missed " +
 			words.HoursBetween(total.MissedH.Value*k, total.MissedH.Low*k, total.MissedH.High*k) + "."}
-	return append(out, b.table(t))
+	bars := chart.DoubtBarsData{Caption: chart.Caption{Title: "What the doubt in the missed hours is made of", Desc: "A bar per source of doubt."}, XTitle: "missed hours of the average occupant (± h " + b.span.Words + ")",
+		Parts: []chart.DoubtPart{{Name: "hours that cannot be judged", Half: d.UnknownHalfH * k, Unknown: true}}}
+	for p := doubt.Part(0); p < doubt.NumParts; p++ {
+		if d.Logged[p] {
+			bars.Parts = append(bars.Parts, chart.DoubtPart{Name: p.String(), Half: total.MissedH.HalfWidth[p] * k})
+		}
+	}
+	return append(out, b.draw("doubt-bars", "How far each source of doubt alone could move the hours missed. The longest bar is the one worth shortening first; the table says how.",
+		"No source of doubt moves the missed hours.", func(o chart.Options) (chart.SVG, error) { return chart.DoubtBars(bars, o) }), b.table(t))
 }
 
 func shrinks(p doubt.Part) string {

@@ -47,7 +47,7 @@ func (b *builder) quality() section {
 		s.Blocks = append(s.Blocks, b.table(t))
 	}
 	s.Blocks = append(s.Blocks, b.checks()...)
-	s.Blocks = append(s.Blocks, b.coverage())
+	s.Blocks = append(s.Blocks, b.knownCalendar(), b.coverage())
 	s.Blocks = append(s.Blocks, b.clockTable()...)
 	s.Blocks = append(s.Blocks, b.clocks())
 	s.Blocks = append(s.Blocks, b.issues()...)

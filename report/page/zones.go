@@ -53,7 +53,7 @@ func (b *builder) zones() section {
 		t.Foot = append(t.Foot, words.Dash+" not known: the points it needs are not logged or never usable in this zone (see What these logs can answer).")
 	}
 	t.Foot = append(t.Foot, b.privacySentences()...)
-	s.Blocks = append(s.Blocks, b.table(t), b.league())
+	s.Blocks = append(s.Blocks, b.table(t), b.plan(), b.league())
 	if sens := b.sensitivity(); sens != nil {
 		s.Blocks = append(s.Blocks, heading("What counts as open"), text("A zone counts as open above a share of its opening area. The answer at three thresholds:"), b.table(*sens))
 	}

@@ -20,7 +20,7 @@ type Front struct {
 	First   []Action
 	// FirstNote explains person-hours where the actions give them.
 	FirstNote string
-	Sure    []string
+	Sure      []string
 }
 
 // Figure is one of the figures of page one.
