@@ -84,7 +84,7 @@ func ZonePlan(d ZonePlanData, o Options) (SVG, error) {
 	if unknown {
 		entries = append(entries, legendEntry{label: Unjudged.Label(), class: Unjudged})
 	}
-	const noteH, floorGap, labelW = 10, 7, 52
+	const noteH, floorGap, labelW = 10, 7, 60
 	floorH := vg.Length(math.Max(52, math.Min(108, 520/float64(len(d.Floors)))))
 	_, legendH := layLegend(entries, f.width)
 	height := legendH + (floorH+floorGap)*vg.Length(len(d.Floors)) + noteH

@@ -3,6 +3,7 @@ package page
 import (
 	"time"
 
+	"sashlog/analyze/calendar"
 	"sashlog/configs/site"
 	"sashlog/report/chart"
 )
@@ -11,6 +12,10 @@ import (
 func (b *builder) knownCalendar() block {
 	g := b.in.Grid
 	d := chart.KnownCalendarData{Caption: chart.Caption{Title: "What was known on each day, by kind of reading", Desc: "A row per kind of reading, a mark per day."}}
+	days := b.in.Results.Calendar
+	if days == nil {
+		days = calendar.Of(g)
+	}
 	var order []site.Quantity
 	points := map[site.Quantity][]int{}
 	for i := range b.in.Site.Points {
@@ -23,7 +28,7 @@ func (b *builder) knownCalendar() block {
 	for _, q := range order[:min(len(order), 24)] {
 		trait, _ := q.Trait()
 		row := chart.KnownRow{Name: trait.Words}
-		for _, day := range b.in.Results.Calendar.Days {
+		for _, day := range days.Days {
 			from, to := max(day.FromStep, g.PeriodFrom), min(day.ToStep, g.PeriodTo)
 			if to <= from {
 				continue

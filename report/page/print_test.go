@@ -163,7 +163,7 @@ func wholeFigures(t *testing.T, doc string, sheets []string, width, height float
 	}
 	p.Ask(t, `[...document.querySelectorAll("figure")].map(f => {
 		const r = f.getBoundingClientRect(), right = Math.max(r.right, ...[...f.querySelectorAll("svg, svg text")].map(e => e.getBoundingClientRect().right));
-		const words = [...f.querySelectorAll("svg text")].map(e => e.textContent.trim()).sort((a, b) => b.length - a.length).slice(0, 5);
+		const words = [...f.querySelectorAll("svg text")].map(e => [...e.childNodes].filter(n => n.nodeType === 3).map(n => n.textContent).join("").trim()).sort((a, b) => b.length - a.length).slice(0, 5);
 		return {name: f.querySelector("figcaption").textContent.trim().slice(0, 40), break: getComputedStyle(f).breakInside, right, height: r.height, words};
 	})`, &figures)
 	if len(figures) < 10 {
