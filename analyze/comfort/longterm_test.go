@@ -21,6 +21,23 @@ func TestOperative(t *testing.T) {
 	}
 }
 
+// Globe of 100 mm, 53.2 °C in air of 30 °C at 0.3 m/s: 74.8 °C (from memory:
+// check value of an open formula library for ISO 7726; the equation, read in a
+// public text, gives it). A globe as warm as the air says the surfaces are too.
+func TestRadiantFromGlobe(t *testing.T) {
+	near(t, "published", RadiantFromGlobeC(53.2, 30, 0.3, 0.1), 74.8, 0.05)
+	near(t, "equal", RadiantFromGlobeC(24, 24, 0.1, GlobeDiameterM), 24, 1e-9)
+	near(t, "still air", RadiantFromGlobeC(26, 24, 0, GlobeDiameterM), 26+1.4*math.Pow(2/0.15, 0.25)*2/(0.95*5.67e-8*4*math.Pow(299.15, 3)), 0.02)
+	if RadiantFromGlobeC(22, 24, 0.2, GlobeDiameterM) >= 22 {
+		t.Error("a globe cooler than the air means colder surfaces still")
+	}
+	for _, x := range []float64{RadiantFromGlobeC(math.NaN(), 24, 0.1, 0.15), RadiantFromGlobeC(24, 24, -1, 0.15), RadiantFromGlobeC(24, 24, 0.1, 0), RadiantFromGlobeC(-100, 90, 5, 0.15)} {
+		if !math.IsNaN(x) {
+			t.Errorf("%g, want nothing", x)
+		}
+	}
+}
+
 // Schiavon & Lee 2013 (from memory), continuity recomputed.
 func TestClothing(t *testing.T) {
 	near(t, "-10 °C", ClothingClo(-10), 1.00, 0)

@@ -6,15 +6,47 @@ import (
 	"sashlog/analyze/method"
 )
 
-// OperativeDoc documents [OperativeISO] and [OperativeASHRAE].
+// OperativeDoc documents [OperativeISO], [OperativeASHRAE] and
+// [RadiantFromGlobeC].
 var OperativeDoc = method.Doc{
 	Title:    "Operative temperature (ISO 7726, ASHRAE 55)",
 	Question: "Which one temperature stands for the air and the surfaces together?",
 	Formula: "ISO 7726: (t_a sqrt(10 v) + t_r) / (1 + sqrt(10 v)); " +
-		"ASHRAE 55: A t_a + (1 - A) t_r, A = 0.5 below 0.2 m/s, 0.6 to below 0.6 m/s, 0.7 to 1.0 m/s",
-	Limits:   []string{"air speed up to 1 m/s", "a globe thermometer in still air reads close to it"},
-	Sources:  []string{method.Public("ISO 7726:1998; CIBSE Guide A"), method.Public("ASHRAE 55-2023")},
+		"ASHRAE 55: A t_a + (1 - A) t_r, A = 0.5 below 0.2 m/s, 0.6 to below 0.6 m/s, 0.7 to 1.0 m/s; " +
+		"t_r from a globe: ((t_g + 273.15)^4 + h (t_g - t_a) / (0.95 · 5.67e-8))^(1/4) - 273.15, " +
+		"h the greater of 1.4 (|t_g - t_a| / d)^0.25 and 6.3 v^0.6 / d^0.4",
+	Limits: []string{
+		"air speed up to 1 m/s",
+		"a globe is taken as black, 150 mm wide, at least 10 minutes in place; small globes read nearer to the air",
+		"without a reading of air beside it a globe stands for the operative temperature; without a globe the air temperature does (our assumption: the surfaces are as warm as the air)",
+		"surface temperatures of single walls or slabs are not used: one surface is not the room",
+	},
+	Sources: []string{
+		method.Public("ISO 7726:1998; CIBSE Guide A"), method.Public("ASHRAE 55-2023"),
+		method.Recomputed("ISO 7726:1998 Annex B, globe thermometer"),
+	},
 	Standing: method.Published,
+}
+
+// GlobeDiameterM is the diameter of the standard globe thermometer. ISO 7726.
+const GlobeDiameterM = 0.15
+
+// RadiantFromGlobeC returns the mean radiant temperature from a black globe of
+// a diameter in m, the air temperature beside it and the air speed (0 and
+// more). NaN for negative speeds or diameters. ISO 7726:1998 Annex B.
+func RadiantFromGlobeC(globeC, airC, airSpeedMS, diameterM float64) float64 {
+	if !(airSpeedMS >= 0 && diameterM > 0) {
+		return math.NaN()
+	}
+	const zeroC = 273.15
+	natural := 1.4 * math.Sqrt(math.Sqrt(math.Abs(globeC-airC)/diameterM))
+	forced := 6.3 * math.Pow(airSpeedMS, 0.6) / math.Pow(diameterM, 0.4)
+	g := globeC + zeroC
+	fourth := g*g*g*g + math.Max(natural, forced)*(globeC-airC)/(0.95*5.67e-8)
+	if fourth <= 0 {
+		return math.NaN()
+	}
+	return math.Sqrt(math.Sqrt(fourth)) - zeroC
 }
 
 // OperativeISO returns the operative temperature from air and mean radiant
