@@ -4,7 +4,7 @@
 //  1. outdoor: what was it like outside?
 //  2. indoor: what was it like in each zone?
 //  3. running: when was each zone occupied, and what was it doing?
-//  4. exceedance: which comfort limits apply, and how long were they exceeded?
+//  4. exceedance: which comfort limits apply, and how long were they exceeded? predicted: what would people be predicted to feel?
 //  5. potential: when did the weather suit open mode?
 //  6. hours: where did the occupied hours go?
 //  7. freshair: was the air fresh enough in each running state?
@@ -41,6 +41,7 @@ import (
 	"sashlog/analyze/lost"
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/potential"
+	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/analyze/votes"
 	"sashlog/configs/criteria"
@@ -61,6 +62,7 @@ type Results struct {
 	Outdoor    *outdoor.Outdoor
 	Indoor     []indoor.Zone
 	Running    *running.Result
+	Predicted  *predicted.Result
 	Exceedance *exceedance.Result
 	Potential  *potential.Result
 	Climate    *climate.Result

@@ -20,6 +20,7 @@ import (
 	"sashlog/analyze/lost"
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/potential"
+	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/analyze/votes"
 )
@@ -35,7 +36,8 @@ func Run(in Input) *Results {
 	baselines := freshair.Baselines(c, r.Indoor, r.Outdoor, g)
 	r.Running = running.Judge(s, c, g, r.Calendar, r.Indoor)
 	r.Exceedance = exceedance.Limit(s, c, g, r.Outdoor, r.Running)
-	r.Exceedance.Count(s, c, g, r.Outdoor, r.Indoor, r.Running, hourOf)
+	r.Predicted = predicted.Sense(predicted.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running})
+	r.Exceedance.Count(s, c, g, r.Outdoor, r.Indoor, r.Running, r.Predicted, hourOf)
 	r.Potential = potential.Judge(s, c, g, r.Calendar, r.Outdoor, r.Running, r.Exceedance)
 	record := hours.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor,
 		Running: r.Running, Exceedance: r.Exceedance, Potential: r.Potential, Calendar: r.Calendar, Hours: clockHours}
@@ -65,8 +67,8 @@ func Run(in Input) *Results {
 	)
 	r.Breeze = breeze.Catch(breeze.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Running: r.Running, Potential: r.Potential, Decays: openDecays(r.FreshAir)})
 	r.LongTerm = longterm.Assess(longterm.Input{Site: s, Criteria: c, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor,
-		Running: r.Running, Exceedance: r.Exceedance})
-	r.Votes = votes.Compare(votes.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running, Exceedance: r.Exceedance})
+		Running: r.Running, Predicted: r.Predicted, Exceedance: r.Exceedance})
+	r.Votes = votes.Compare(votes.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running, Predicted: r.Predicted, Exceedance: r.Exceedance})
 	r.Changeover = changeover.Read(changeover.Input{Site: s, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor,
 		Running: r.Running, Potential: r.Potential, Lost: r.Lost, Seed: 1})
 	r.Leaders = leaders.Find(leaders.Input{Site: s, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,

@@ -115,6 +115,12 @@ var DraughtDoc = method.Doc{
 	Standing: method.Published,
 }
 
+// DraughtInRange reports whether ISO 7730 gives a draught rate: air at 20 to
+// 26 °C, slower than 0.5 m/s, turbulence 10 to 60 % (ranges from memory).
+func DraughtInRange(airC, airSpeedMS, turbulencePct float64) bool {
+	return airC >= 20 && airC <= 26 && airSpeedMS >= 0 && airSpeedMS < 0.5 && turbulencePct >= 10 && turbulencePct <= 60
+}
+
 // DraughtRate returns the percentage of people dissatisfied by draught, 0 to
 // 100, from the local air temperature, mean speed and turbulence intensity in
 // per cent.

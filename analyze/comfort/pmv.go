@@ -133,13 +133,11 @@ func PPD(pmv float64) float64 {
 	return 100 - 95*math.Exp(-v*(0.03353*v+0.2179))
 }
 
-// PMVOutOfRange names the conditions for which ISO 7730 does not vouch, in
-// order; nil when all are inside. An unknown condition counts as outside.
-func PMVOutOfRange(c Conditions, pmv float64) []string {
-	var out []string
+// pmvRange is the range of ISO 7730:2005 4.1 (from memory).
+func pmvRange(c Conditions, pmv float64, outside func(name string)) {
 	check := func(name string, x, low, high float64) {
 		if !(x >= low && x <= high) {
-			out = append(out, name)
+			outside(name)
 		}
 	}
 	check("air temperature", c.AirC, 10, 30)
@@ -149,9 +147,24 @@ func PMVOutOfRange(c Conditions, pmv float64) []string {
 	check("metabolic rate", c.Met, 0.8, 4)
 	check("clothing", c.Clo, 0, 2)
 	if !(pmv > -2 && pmv < 2) {
-		out = append(out, "predicted mean vote")
+		outside("predicted mean vote")
 	}
+}
+
+// PMVOutOfRange names the conditions for which ISO 7730 does not vouch, in
+// order; nil when all are inside. An unknown condition counts as outside.
+func PMVOutOfRange(c Conditions, pmv float64) []string {
+	var out []string
+	pmvRange(c, pmv, func(name string) { out = append(out, name) })
 	return out
+}
+
+// PMVInRange reports whether ISO 7730 vouches for the conditions and the vote;
+// false where one is unknown.
+func PMVInRange(c Conditions, pmv float64) bool {
+	inside := true
+	pmvRange(c, pmv, func(string) { inside = false })
+	return inside
 }
 
 // RelativeAirSpeedMS adds the air speed that activity itself makes,

@@ -20,7 +20,7 @@ type Table struct {
 // test looks at the middle of every cell, where straight lines err most, and
 // at random places.
 const (
-	TableSETWithinK     = 0.1
+	TableSETWithinK     = 0.12
 	TableCoolingWithinK = 0.07
 	TablePMVWithin      = 0.02
 

@@ -16,6 +16,7 @@ import (
 	"sashlog/analyze/indoor"
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/potential"
+	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
@@ -91,7 +92,8 @@ func audited(t testing.TB, o demo.Options, before, after Span, untouched []int) 
 	in.Indoor = indoor.Combine(s, c, g)
 	in.Running = running.Judge(s, c, g, cal, in.Indoor)
 	in.Exceedance = exceedance.Limit(s, c, g, in.Outdoor, in.Running)
-	in.Exceedance.Count(s, c, g, in.Outdoor, in.Indoor, in.Running, hourOf)
+	felt := predicted.Sense(predicted.Input{Site: s, Criteria: c, Grid: g, Outdoor: in.Outdoor, Indoor: in.Indoor, Running: in.Running})
+	in.Exceedance.Count(s, c, g, in.Outdoor, in.Indoor, in.Running, felt, hourOf)
 	pot := potential.Judge(s, c, g, cal, in.Outdoor, in.Running, in.Exceedance)
 	in.Record = hours.Make(hours.Input{Site: s, Criteria: c, Grid: g, Outdoor: in.Outdoor, Indoor: in.Indoor, Running: in.Running,
 		Exceedance: in.Exceedance, Potential: pot, Calendar: cal, Hours: list})

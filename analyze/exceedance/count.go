@@ -4,10 +4,10 @@ import (
 	"fmt"
 	"math"
 
-	"sashlog/analyze/comfort"
 	"sashlog/analyze/cores"
 	"sashlog/analyze/indoor"
 	"sashlog/analyze/outdoor"
+	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
@@ -16,18 +16,13 @@ import (
 
 // Count fills in how long each zone was outside each criterion in its occupied
 // time of the period. hourOf gives the index of the local hour a step is in.
-func (r *Result) Count(s *site.Site, c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor, in []indoor.Zone, run *running.Result, hourOf []int32) {
+func (r *Result) Count(s *site.Site, c criteria.Settings, g *grid.Grid, out *outdoor.Outdoor, in []indoor.Zone, run *running.Result, felt *predicted.Result, hourOf []int32) {
 	judges := make([][]judge, len(r.Zones))
 	cores.Each(len(r.Zones), func(z int) {
 		zone := &r.Zones[z]
 		cat := categoryOf(c, &s.Zones[z])
 		judges[z] = judgesOf(c, out, cat, &zone.Limits, run.Zones[z].PeopleCanOpen)
-		judges[z] = append(judges[z], judge{
-			id: "pmv", words: "PMV within ±" + trim(comfort.PMVLimit(cat)) + " (category " + cat.String() + ") while operative ranges apply",
-			source: "ISO 7730:2005; EN 16798-1:2019 Table B.1; clothing by Schiavon & Lee 2013 unless given (from memory)",
-			note:   "degree-hours are hours times the vote beyond the limit",
-			pmv:    newPMVJudge(c, out, cat, &in[z]),
-		})
+		judges[z] = append(judges[z], voteJudges(cat, &felt.Zones[z])...)
 		zone.Criteria = nil
 		for k := range judges[z] {
 			zone.Criteria = append(zone.Criteria, r.total(s, g, &in[z], &run.Zones[z], z, &judges[z][k]))
@@ -55,15 +50,19 @@ func (r *Result) at(in *indoor.Zone, run *running.Zone, z, i int, j *judge) verd
 		return verdict{}
 	}
 	t := float64(in.OperativeC[i])
-	if j.pmv != nil {
+	if j.votes != nil {
 		if l := &r.Zones[z].Limits; l.Free[i] || l.Model[i] == NoModel {
 			return verdict{known: true}
 		}
-		v := j.pmv.vote(i)
-		if math.IsNaN(v) {
+		vote := float64(j.votes.list[i])
+		if math.IsNaN(vote) {
 			return verdict{}
 		}
-		return verdict{"PMV", true, true, beyond(v, j.pmv.limit), beyond(-v, j.pmv.limit)}
+		v := verdict{j.votes.words, true, true, beyond(vote, j.votes.limit), beyond(-vote, j.votes.limit)}
+		if j.votes.zone.Outside[i] && v.over == 0 && v.under == 0 {
+			return verdict{known: true} // the method does not vouch for comfort here
+		}
+		return v
 	}
 	model, low, high, ok := j.band(i)
 	if !ok {
@@ -107,7 +106,7 @@ func (r *Result) total(s *site.Site, g *grid.Grid, in *indoor.Zone, run *running
 			notApplicable++
 		default:
 			applies++
-			if j.pmv != nil && j.pmv.assumed(i) {
+			if j.votes != nil && j.votes.zone.AssumedHumidity(i) {
 				assumed++
 			}
 			if v.over > 0 {

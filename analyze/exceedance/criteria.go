@@ -19,8 +19,8 @@ type judge struct {
 	// other returns the limits that would hold if the zone were free-running;
 	// nil where the criterion has only one line.
 	other func(i int) (low, high float64)
-	// pmv marks the PMV criterion, judged on the vote instead of a temperature.
-	pmv *pmvJudge
+	// votes marks a criterion judged on predicted votes instead of temperatures.
+	votes *votes
 }
 
 // judgesOf lists the criteria of a zone in the order they are printed.

@@ -9,6 +9,7 @@ import (
 	"sashlog/analyze/comfort"
 	"sashlog/analyze/indoor"
 	"sashlog/analyze/outdoor"
+	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
@@ -57,7 +58,8 @@ func (d *day) result() *Result {
 	for i := range hourOf {
 		hourOf[i] = int32(i)
 	}
-	r.Count(d.s, d.c, d.g, d.out, d.in, d.run, hourOf)
+	felt := predicted.Sense(predicted.Input{Site: d.s, Criteria: d.c, Grid: d.g, Outdoor: d.out, Indoor: d.in, Running: d.run})
+	r.Count(d.s, d.c, d.g, d.out, d.in, d.run, felt, hourOf)
 	return r
 }
 

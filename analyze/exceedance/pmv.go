@@ -1,58 +1,41 @@
 package exceedance
 
 import (
-	"math"
 	"strconv"
 
 	"sashlog/analyze/comfort"
-	"sashlog/analyze/indoor"
-	"sashlog/analyze/outdoor"
-	"sashlog/configs/criteria"
+	"sashlog/analyze/predicted"
 )
 
-// pmvJudge works out the predicted mean vote in the steps in which operative
-// ranges apply. Humidity is read where logged, else 50 %; clothing follows the
-// outdoor temperature at 06:00 unless given; air and radiant temperature are
-// taken as equal to the operative temperature.
-type pmvJudge struct {
-	limit   float64 // |PMV| allowed
-	met     float64
-	speedMS float64
-	clo     []float64 // per day
-	in      *indoor.Zone
-	dayOf   []int32
+// votes is a criterion on predicted mean votes, in the steps in which the
+// operative ranges apply.
+type votes struct {
+	limit float64 // of |PMV|
+	list  []float32
+	zone  *predicted.Zone
+	words string // of a vote, for the table of hours
 }
 
-func newPMVJudge(c criteria.Settings, out *outdoor.Outdoor, cat comfort.Category, in *indoor.Zone) *pmvJudge {
-	p := &pmvJudge{limit: comfort.PMVLimit(cat), met: c.MetabolicMet, in: in, dayOf: out.DayOf,
-		speedMS: comfort.RelativeAirSpeedMS(c.AirSpeedMS, c.MetabolicMet), clo: make([]float64, len(out.Days))}
-	for d := range out.Days {
-		clo := c.ClothingClo
-		if math.IsNaN(clo) {
-			clo = comfort.ClothingClo(out.Days[d].SixAMC)
-		}
-		p.clo[d] = comfort.DynamicClo(clo, c.MetabolicMet)
-	}
-	return p
-}
+// ashraePMVLimit is the comfort zone of ASHRAE 55, whatever the category.
+const ashraePMVLimit = 0.5
 
-// assumed reports whether the humidity of a step is not known and taken as
-// 50 %.
-func (p *pmvJudge) assumed(i int) bool {
-	return p.in.RHPct == nil || math.IsNaN(float64(p.in.RHPct[i]))
-}
-
-// vote returns the predicted mean vote at a step, NaN where it is unknown.
-func (p *pmvJudge) vote(i int) float64 {
-	t, rh := float64(p.in.OperativeC[i]), 50.0
-	if p.in.RHPct != nil && !math.IsNaN(float64(p.in.RHPct[i])) {
-		rh = float64(p.in.RHPct[i])
+// voteJudges are the criteria on predicted votes, by ISO 7730 and by ASHRAE 55.
+func voteJudges(cat comfort.Category, zone *predicted.Zone) []judge {
+	const note = "degree-hours are hours times the vote beyond the limit; beyond the range of ISO 7730 an hour counts as too warm or too cool, never as comfortable"
+	return []judge{
+		{
+			id: "pmv", words: "PMV within ±" + trim(comfort.PMVLimit(cat)) + " (category " + cat.String() + ") while operative ranges apply",
+			source: "ISO 7730:2005; EN 16798-1:2019 Table B.1; clothing by Schiavon & Lee 2013 unless given (from memory)",
+			note:   note,
+			votes:  &votes{comfort.PMVLimit(cat), zone.Vote, zone, "PMV"},
+		},
+		{
+			id: "ashrae55-pmv", words: "ASHRAE 55 comfort zone, PMV within ±" + trim(ashraePMVLimit) + " with the cooling effect of moving air, while operative ranges apply",
+			source: "ASHRAE 55-2023 Appendices B and D (read in public texts; check values recomputed and agree); limit of air speed without control from memory",
+			note:   note + "; people's own movement alone already moves the air at more than 0.1 m/s",
+			votes:  &votes{ashraePMVLimit, zone.Elevated, zone, "PMV, ASHRAE 55"},
+		},
 	}
-	speed := p.speedMS
-	if p.in.AirSpeedMS != nil && !math.IsNaN(float64(p.in.AirSpeedMS[i])) {
-		speed = comfort.RelativeAirSpeedMS(float64(p.in.AirSpeedMS[i]), p.met)
-	}
-	return comfort.PMV(comfort.Conditions{AirC: t, RadiantC: t, AirSpeedMS: speed, RHPct: rh, Met: p.met, Clo: p.clo[p.dayOf[i]]})
 }
 
 // trim writes a limit without trailing zeros.

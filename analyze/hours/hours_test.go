@@ -12,6 +12,7 @@ import (
 	"sashlog/analyze/indoor"
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/potential"
+	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
@@ -46,7 +47,8 @@ func (w *world) judge(c criteria.Settings) (*Record, *Summary, *running.Result) 
 	in := indoor.Combine(w.s, c, w.g)
 	run := running.Judge(w.s, c, w.g, cal, in)
 	exc := exceedance.Limit(w.s, c, w.g, out, run)
-	exc.Count(w.s, c, w.g, out, in, run, hourOf)
+	felt := predicted.Sense(predicted.Input{Site: w.s, Criteria: c, Grid: w.g, Outdoor: out, Indoor: in, Running: run})
+	exc.Count(w.s, c, w.g, out, in, run, felt, hourOf)
 	pot := potential.Judge(w.s, c, w.g, cal, out, run, exc)
 	rec := Make(Input{Site: w.s, Criteria: c, Grid: w.g, Outdoor: out, Indoor: in, Running: run, Exceedance: exc,
 		Potential: pot, Calendar: cal, Hours: list})

@@ -8,14 +8,18 @@ package indoor
 type Zone struct {
 	AirTempC []float32
 	// OperativeC is what comfort is judged on; TempNote says how it came about
-	// ("operative logged", "air and globe", "air temperature stands for operative").
+	// and what was assumed.
 	OperativeC []float32
 	TempNote   string
+	// RadiantC is the mean radiant temperature, known where a globe and the air
+	// beside it are.
+	RadiantC   []float32
 	RHPct      []float32
 	CO2PPM     []float32
 	People     []float32
 	Presence   []float32
 	AirSpeedMS []float32
+	FanOn      []float32 // share of the step a fan was on
 	// ThermostatC is the thermostat's own reading.
 	ThermostatC []float32
 }

@@ -23,7 +23,6 @@ func Assess(in Input) *Result {
 func assessZone(in *Input, z int, spans *spanIndex) Zone {
 	room, run, lim := &in.Indoor[z], &in.Running.Zones[z], &in.Exceedance.Zones[z].Limits
 	cat := categoryOf(in, z)
-	votes := newVoter(in, room.RHPct)
 	voteLimit := comfort.PMVLimit(cat)
 	h := in.Grid.StepH()
 	out := Zone{MeanPPDPct: math.NaN()}
@@ -58,8 +57,8 @@ func assessZone(in *Input, z int, spans *spanIndex) Zone {
 			out.OutsideH.Cool += h
 			out.WeightedH.Cool += h * weight(t, low, middle)
 		}
-		vote := votes.at(i, day, t)
-		if math.IsNaN(vote) {
+		vote := float64(in.Predicted.Zones[z].Vote[i])
+		if math.IsNaN(vote) || in.Predicted.Zones[z].Outside[i] {
 			out.NoVoteH += h
 			continue
 		}
@@ -102,41 +101,6 @@ func categoryOf(in *Input, z int) comfort.Category {
 		return cat
 	}
 	return comfort.CategoryII
-}
-
-// voter gives the predicted mean vote of a step: air and radiant temperature
-// as the operative temperature, humidity where logged, else 50 %.
-type voter struct {
-	rh      []float32
-	met     float64
-	speedMS float64
-	clo     []float64 // per day
-}
-
-func newVoter(in *Input, rh []float32) *voter {
-	c := in.Criteria
-	v := &voter{rh: rh, met: c.MetabolicMet, speedMS: comfort.RelativeAirSpeedMS(c.AirSpeedMS, c.MetabolicMet), clo: make([]float64, len(in.Outdoor.Days))}
-	for d := range v.clo {
-		clo := c.ClothingClo
-		if math.IsNaN(clo) {
-			clo = comfort.ClothingClo(in.Outdoor.Days[d].SixAMC)
-		}
-		v.clo[d] = comfort.DynamicClo(clo, c.MetabolicMet)
-	}
-	return v
-}
-
-func (v *voter) at(i, day int, t float64) float64 {
-	rh := 50.0
-	if v.rh != nil && !math.IsNaN(float64(v.rh[i])) {
-		rh = float64(v.rh[i])
-	}
-	c := comfort.Conditions{AirC: t, RadiantC: t, AirSpeedMS: v.speedMS, RHPct: rh, Met: v.met, Clo: v.clo[day]}
-	vote := comfort.PMV(c)
-	if len(comfort.PMVOutOfRange(c, vote)) > 0 {
-		return math.NaN()
-	}
-	return vote
 }
 
 // roomsWithin works out the share of rooms that keep to the allowed deviation.

@@ -10,6 +10,7 @@ import (
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/indoor"
 	"sashlog/analyze/outdoor"
+	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
@@ -41,7 +42,13 @@ func hourly(from time.Time, runningMeanC float64, people []float64, low, high fl
 		in.Exceedance.Zones = append(in.Exceedance.Zones, exceedance.Zone{Limits: lim})
 		in.Indoor = append(in.Indoor, indoor.Zone{OperativeC: list})
 	}
+	in.sense()
 	return in
+}
+
+// sense works out what people would be predicted to feel.
+func (in *Input) sense() {
+	in.Predicted = predicted.Sense(predicted.Input{Site: in.Site, Criteria: in.Criteria, Grid: in.Grid, Outdoor: in.Outdoor, Indoor: in.Indoor, Running: in.Running})
 }
 
 func near(t *testing.T, what string, got, want, within float64) {
@@ -146,6 +153,7 @@ func TestAverageHidesAFew(t *testing.T) {
 func TestNothingKnown(t *testing.T) {
 	in := hourly(time.Date(2025, 7, 1, 9, 0, 0, 0, time.UTC), nan, []float64{nan}, float32(nan), float32(nan), []float32{24, 24})
 	in.Indoor[0].OperativeC = nil
+	in.sense()
 	r := Assess(in)
 	z := r.Zones[0]
 	if z.KnownH != 0 || z.UnknownH != 2 || !math.IsNaN(z.MeanPPDPct) || z.TM52.AnythingJudged || z.Deviations[Period].Spans != 0 {

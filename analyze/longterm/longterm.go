@@ -11,6 +11,7 @@ import (
 	"sashlog/analyze/indoor"
 	"sashlog/analyze/method"
 	"sashlog/analyze/outdoor"
+	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
@@ -26,6 +27,7 @@ type Input struct {
 	Outdoor    *outdoor.Outdoor
 	Indoor     []indoor.Zone
 	Running    *running.Result
+	Predicted  *predicted.Result
 	Exceedance *exceedance.Result
 }
 

@@ -6,7 +6,6 @@ import (
 
 	"gonum.org/v1/gonum/stat"
 
-	"sashlog/analyze/comfort"
 	"sashlog/analyze/running"
 	"sashlog/configs/site"
 )
@@ -42,7 +41,7 @@ func Compare(in Input) *Result {
 			r.NoTemperature++
 			continue
 		}
-		j.pmv = in.pmvAt(v.Zone, i, j.tempC)
+		j.pmv = in.Predicted.Zones[v.Zone].VoteAt(i)
 		all = append(all, j)
 		if j.state == running.Unknown {
 			r.StateUnknown++
@@ -66,27 +65,6 @@ func (in *Input) tempAt(z, i int) float64 {
 		return float64(t[i])
 	}
 	return math.NaN()
-}
-
-// pmvAt is the predicted mean vote of a step, by the assumptions of the
-// comfort analysis: radiant as air temperature, 50 % where humidity is not
-// logged, clothing by the outdoor temperature at 06:00 unless given.
-func (in *Input) pmvAt(z, i int, t float64) float64 {
-	c := in.Criteria
-	clo, rh := c.ClothingClo, 50.0
-	if math.IsNaN(clo) {
-		clo = comfort.ClothingClo(in.Outdoor.Days[in.Outdoor.DayOf[i]].SixAMC)
-	}
-	if h := in.Indoor[z].RHPct; h != nil && !math.IsNaN(float64(h[i])) {
-		rh = float64(h[i])
-	}
-	x := comfort.Conditions{AirC: t, RadiantC: t, AirSpeedMS: comfort.RelativeAirSpeedMS(c.AirSpeedMS, c.MetabolicMet), RHPct: rh, Met: c.MetabolicMet,
-		Clo: comfort.DynamicClo(clo, c.MetabolicMet)}
-	vote := comfort.PMV(x)
-	if len(comfort.PMVOutOfRange(x, vote)) > 0 {
-		return math.NaN()
-	}
-	return vote
 }
 
 func groupOf(list []joined) Group {

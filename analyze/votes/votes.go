@@ -7,6 +7,7 @@ import (
 	"sashlog/analyze/indoor"
 	"sashlog/analyze/method"
 	"sashlog/analyze/outdoor"
+	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
@@ -21,6 +22,7 @@ type Input struct {
 	Outdoor    *outdoor.Outdoor
 	Indoor     []indoor.Zone
 	Running    *running.Result
+	Predicted  *predicted.Result
 	Exceedance *exceedance.Result
 }
 

@@ -12,6 +12,7 @@ import (
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/indoor"
 	"sashlog/analyze/outdoor"
+	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
@@ -153,6 +154,7 @@ func TestCompare(t *testing.T) {
 	add(5, 1, math.NaN(), site.NotAsked, site.TooWarmComplaint)    // not known
 	add(30, 0, math.NaN(), site.NotAsked, site.TooCoolComplaint)   // not explained
 	add(1000, 0, math.NaN(), site.NotAsked, site.TooCoolComplaint) // outside the period
+	in.Predicted = predicted.Sense(predicted.Input{Site: in.Site, Criteria: in.Criteria, Grid: in.Grid, Outdoor: in.Outdoor, Indoor: in.Indoor, Running: in.Running})
 	r := Compare(in)
 	if r.Given != 36 || r.NoTemperature != 1 || r.OutsidePeriod != 2 || r.All.Votes != 30 {
 		t.Errorf("%+v", r)
