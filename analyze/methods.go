@@ -15,6 +15,7 @@ import (
 	"sashlog/analyze/lost"
 	"sashlog/analyze/method"
 	"sashlog/analyze/potential"
+	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/analyze/votes"
 )
@@ -22,14 +23,7 @@ import (
 // Methods lists the documentation of every method in use, in the order the
 // analyses run; the report's appendix and the list of methods print from it.
 func Methods() []method.Doc {
-	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc, doubt.Doc, votes.Doc, energy.Doc, changeover.Doc, leaders.Doc}
+	docs := []method.Doc{running.Doc, potential.Doc, hours.Doc, predicted.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc, doubt.Doc, votes.Doc, energy.Doc, changeover.Doc, leaders.Doc}
 	docs = append(append(docs, climate.Docs()...), breeze.Docs()...)
-	// What no figure of the report rests on is not listed.
-	unused := map[string]bool{comfort.DraughtDoc.Title: true}
-	for _, d := range comfort.Docs() {
-		if !unused[d.Title] {
-			docs = append(docs, d)
-		}
-	}
-	return docs
+	return append(docs, comfort.Docs()...)
 }

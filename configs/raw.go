@@ -66,6 +66,7 @@ type rawZone struct {
 	FanMS    *float64    `mapstructure:"fan_m_s"`
 	Scheme   string      `mapstructure:"scheme"`
 	Category string      `mapstructure:"category"`
+	Use      string      `mapstructure:"use"`
 	Occupied rawOccupied `mapstructure:"occupied"`
 }
 

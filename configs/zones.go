@@ -33,6 +33,7 @@ func (b *builder) zones() {
 			FanSpeedMS: b.positive(path+".fan_m_s", r.FanMS, 3, " m/s"),
 			Scheme:     word(b, path+".scheme", r.Scheme, site.Changeover, site.Changeover, site.Concurrent, site.Zoned),
 			Category:   word(b, path+".category", r.Category, "", "I", "II", "III"),
+			Use:        word(b, path+".use", r.Use, site.UseOther, site.UseOther, site.UseBedroom, site.UseLiving),
 		}
 		if z.Name == "" {
 			z.Name = z.ID

@@ -77,6 +77,7 @@ func assessZone(in *Input, z int, spans *spanIndex) Zone {
 	if out.TM52 = tm52.Result(); out.TM52.WorstDayKh > 0 {
 		out.TM52Date = in.Outdoor.Days[out.TM52.WorstDay].Date
 	}
+	out.Home = homeOf(in, z, out.TM52)
 	out.Deviations = dev.deviations()
 	return out
 }

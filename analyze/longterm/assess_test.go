@@ -149,6 +149,51 @@ func TestAverageHidesAFew(t *testing.T) {
 	}
 }
 
+// CIBSE TM59:2017: 3285 night hours a year allow 32 hours above 26 °C in a
+// bedroom and not 33; day hours count for neither. A living room has only
+// criterion a; a room whose people cannot open windows is held to 3 % of its
+// occupied hours; an office to nothing.
+func TestHomes(t *testing.T) {
+	year := func(hot int, use site.Use, canOpen bool) Home {
+		temps := make([]float32, 365*24)
+		nights := 0
+		for i := range temps {
+			temps[i] = 24
+			if h := i % 24; (h >= 22 || h < 7) && nights < hot {
+				temps[i] = 26.1
+				nights++
+			} else if h == 12 && i < 24*100 {
+				temps[i] = 26.5
+			}
+		}
+		in := hourly(time.Date(2025, 1, 1, 0, 0, 0, 0, time.UTC), 20, []float64{1}, 20, 27, temps)
+		in.Site.Zones[0].Use = use
+		in.Running.Zones[0].PeopleCanOpen = canOpen
+		return Assess(in).Zones[0].Home
+	}
+	if o := year(32, site.UseBedroom, true); o.NightH != 3285 || o.NightOver26H != 32 || !o.Known || !o.Passes {
+		t.Errorf("32 h: %+v", o)
+	}
+	if o := year(33, site.UseBedroom, true); o.NightOver26H != 33 || !o.Known || o.Passes {
+		t.Errorf("33 h: %+v", o)
+	}
+	if o := year(33, site.UseLiving, true); o.NightH != 0 || !o.Passes {
+		t.Errorf("living room: %+v", o)
+	}
+	// 100 hours by day and 162 or 163 by night, of 8760: 3 % are 262.8.
+	if o := year(162, site.UseBedroom, false); !o.Mechanical || o.Over26H != 262 || !o.Passes {
+		t.Errorf("262 h: %+v", o)
+	}
+	if o := year(163, site.UseLiving, false); o.Passes {
+		t.Errorf("263 h: %+v", o)
+	}
+	for _, use := range []site.Use{"", site.UseOther} {
+		if o := year(400, use, true); o.NotApplicable == "" || o.Known || o.Passes {
+			t.Errorf("office: %+v", o)
+		}
+	}
+}
+
 // Nothing known is no index, and nothing divides by it.
 func TestNothingKnown(t *testing.T) {
 	in := hourly(time.Date(2025, 7, 1, 9, 0, 0, 0, time.UTC), nan, []float64{nan}, float32(nan), float32(nan), []float32{24, 24})

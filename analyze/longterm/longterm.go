@@ -53,6 +53,7 @@ type Zone struct {
 	// TM52Date is the day with the greatest weighted exceedance.
 	TM52     comfort.TM52Result
 	TM52Date site.Date
+	Home     Home
 	// Deviations say how the time outside spreads over days, weeks, months and
 	// the whole period.
 	Deviations []Deviation
@@ -131,16 +132,17 @@ const hiddenShare = 0.2
 var Doc = method.Doc{
 	Title:    "Long-term comfort: indices of a season, allowed deviations, and people the average hides",
 	Question: "How long and how badly was a zone outside comfort over the period, and is anybody always worse off than the average?",
-	Formula: "ISO 7730 Annex H, methods A to E; TM52 criteria 1 to 3 (two failures: overheating); share of occupied time outside per day, week, month and period against 3 % and 5 %; " +
+	Formula: "ISO 7730 Annex H, methods A to E; TM52 criteria 1 to 3 (two failures: overheating); TM59 in homes; share of occupied time outside per day, week, month and period against 3 % and 5 %; " +
 		"hours in which at least 20 % of people are outside while the weighted mean temperature lies within the weighted mean limits",
 	Limits: []string{
 		"methods A and B use the headline limits; the optimum of method B is the middle of the limits (our assumption)",
 		"methods C to E leave out steps in which the predicted mean vote is outside the range of ISO 7730",
 		"TM52 was written for buildings without cooling: here a calculation over all occupied hours; its season in the south is November to March (our assumption)",
+		"TM59 only where the site file names a bedroom, living room or kitchen: of the hours audited, as far as known, not of a whole year where less was audited (our reading); 3 % of occupied hours above 26 °C where people cannot open windows",
 		"spans of which less than half the occupied time is known do not count",
 	},
 	Sources: []string{
-		method.Memory("ISO 7730:2005 Annex H"), method.Public("CIBSE TM52:2013 section 6.1.2"),
+		method.Memory("ISO 7730:2005 Annex H"), method.Public("CIBSE TM52:2013 section 6.1.2"), method.Public("CIBSE TM59:2017, criteria a and b; homes with mostly mechanical ventilation in outline"),
 		method.Memory("EN 15251:2007 Annex G, 3 % and 5 % of occupied time; CEN/TR 16798-2:2019 keeps the idea"),
 	},
 	Standing: method.FromMemory,

@@ -172,7 +172,19 @@ type Zone struct {
 	// Category overrides the headline comfort category (I, II, III) when not
 	// empty.
 	Category string
+	// Use is what the zone is for, where a method asks for it.
+	Use Use
 }
+
+// Use is what a zone is for. Homes have overheating criteria of their own.
+type Use string
+
+// Uses.
+const (
+	UseOther   Use = "other"
+	UseBedroom Use = "bedroom"
+	UseLiving  Use = "living" // living room or kitchen
+)
 
 // AirKind is what air a plant unit brings.
 type AirKind string

@@ -52,6 +52,7 @@ func (b *builder) comfort() section {
 		s.Blocks = append(s.Blocks, b.table(head))
 	}
 	s.Blocks = append(s.Blocks, b.criteriaTable(zones, foot)...)
+	s.Blocks = append(s.Blocks, b.predictedVotes(zones, foot)...)
 	s.Blocks = append(s.Blocks, b.longTerm(zones, foot)...)
 	return s
 }

@@ -55,7 +55,70 @@ func (b *builder) longTerm(zones []int, foot string) []block {
 	if !math.IsNaN(lt.RoomsWithin5) {
 		t.Foot = append(t.Foot, fmt.Sprintf("Rooms within 3 %% over the whole period: %s; within 5 %%: %s (by %s).", words.Share(lt.RoomsWithin3), words.Share(lt.RoomsWithin5), lt.RoomsBy))
 	}
-	return append(out, b.table(t))
+	out = append(out, b.table(t), b.spans(lt, zones, foot))
+	return append(out, b.homes(lt)...)
+}
+
+// spans shows how the time outside spreads over days, weeks, months and the
+// whole period.
+func (b *builder) spans(lt *longterm.Result, zones []int, foot string) block {
+	t := table{ID: "comfort-deviation", Caption: "Allowed deviation: spans with more than 3 % and more than 5 % of occupied time outside", Small: true,
+		Head: []column{col("Zone")}}
+	for s := longterm.Day; s <= longterm.Period; s++ {
+		name := map[longterm.Span]string{longterm.Day: "Days", longterm.Week: "Weeks", longterm.Month: "Months", longterm.Period: "Period"}[s]
+		t.Head = append(t.Head, num(name+" over 3 % / 5 %"), num("worst"))
+	}
+	for _, z := range zones {
+		if z >= len(lt.Zones) {
+			continue
+		}
+		r := row(b.w.Zone(z))
+		for _, d := range lt.Zones[z].Deviations {
+			if d.Spans == 0 {
+				r = append(r, cell{Text: words.Dash}, cell{Text: words.Dash})
+				continue
+			}
+			r = append(r, cell{Text: words.Count(int64(d.Over3)) + "\u00a0/\u00a0" + words.Count(int64(d.Over5)) + " of " + words.Count(int64(d.Spans))}, cell{Text: words.Share(d.WorstShare)})
+		}
+		t.Rows = append(t.Rows, r)
+	}
+	t.Foot = []string{"Worst: the greatest share of known occupied time outside in one span. Spans less than half known do not count. EN 15251 Annex G (from memory) allows 3 % or 5 % in each span; CEN/TR 16798-2 keeps the idea."}
+	if foot != "" {
+		t.Foot = append(t.Foot, foot)
+	}
+	return b.table(t)
+}
+
+// homes shows TM59's criteria for the zones of homes, or why there are none.
+func (b *builder) homes(lt *longterm.Result) []block {
+	t := table{ID: "comfort-homes", Caption: "Overheating of homes (TM59)", Small: true, Head: []column{col("Zone"), keep("Criterion"),
+		num("Time 1 K or more too warm, season"), num("Nights above 26 °C (h)"), num("Occupied above 26 °C (h)"), keep("Outcome")}}
+	for _, z := range b.order {
+		if z >= len(lt.Zones) || lt.Zones[z].Home.NotApplicable != "" {
+			continue
+		}
+		o := &lt.Zones[z].Home
+		which, nights, occupied := "a", words.Dash, words.Dash
+		if o.NightH+o.NightUnknownH > 0 {
+			which, nights = "a and b", words.HoursNumber(o.NightOver26H)+" of "+words.HoursNumber(o.NightH)
+		}
+		if o.Mechanical {
+			which, occupied = "windows shut", words.HoursNumber(o.Over26H)+" of "+words.HoursNumber(o.OccupiedH)
+		}
+		outcome := "not known"
+		switch {
+		case o.Known && o.Passes:
+			outcome = "passes"
+		case o.Known:
+			outcome = "overheats"
+		}
+		t.Rows = append(t.Rows, row(b.w.Zone(z), which, words.Share(o.AShare), nights, occupied, outcome))
+	}
+	if len(t.Rows) == 0 {
+		return []block{text("TM59, the criteria for homes, does not apply: the site file names no bedroom, living room or kitchen with a logged temperature.")}
+	}
+	t.Foot = []string{"a: at most 3 % of occupied time in the season 1 K or more above TM52's limit; b, bedrooms: at most 1 % of the hours from 22:00 to 07:00 above 26 °C (33 hours of a year fail); windows people cannot open: at most 3 % of occupied hours above 26 °C. Hours audited, not brought to a year."}
+	return []block{b.table(t)}
 }
 
 func over(d longterm.Deviation) string {

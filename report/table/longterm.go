@@ -27,7 +27,17 @@ func (in *Input) longTerm(z int) any {
 		set("tm52", (&object{}).set("judged", tm.AnythingJudged).set("season_h", num(tm.SeasonH)).set("exceeded_h", num(tm.ExceededH)).
 			set("exceeded_share", num(tm.ExceededShare)).set("worst_day_kh", num(tm.WorstDayKh)).set("max_excess_k", num(tm.MaxExcessK)).
 			set("unknown_h", num(tm.UnknownH)).set("fails", tm.Fails[:]).set("overheats", tm.Overheats)).
-		set("deviations", deviations)
+		set("tm59", home(&o.Home)).set("deviations", deviations)
+}
+
+// home writes TM59's outcome, or why there is none.
+func home(o *longterm.Home) *object {
+	if o.NotApplicable != "" {
+		return (&object{}).set("applies", false).set("why_not", o.NotApplicable)
+	}
+	return (&object{}).set("applies", true).set("mechanical", o.Mechanical).set("a_share", num(o.AShare)).set("night_h", num(o.NightH)).
+		set("night_over_26_h", num(o.NightOver26H)).set("night_unknown_h", num(o.NightUnknownH)).set("occupied_h", num(o.OccupiedH)).
+		set("over_26_h", num(o.Over26H)).set("known", o.Known).set("passes", o.Passes)
 }
 
 func sides(s longterm.Sides) *object {
