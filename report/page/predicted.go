@@ -67,12 +67,16 @@ func (b *builder) takenForGranted() string {
 	}
 	share := func(h float64) string { return words.Share(h / all) }
 	c := b.in.Criteria
-	parts := []string{
-		fmt.Sprintf("surfaces as warm as the air in %s of these hours", share(radiant)),
-		fmt.Sprintf("air at %s m/s in %s", words.Number(c.AirSpeedMS, 1), share(speed)),
-		fmt.Sprintf("humidity of 50 %% in %s", share(rh)),
-		fmt.Sprintf("%s met", words.Number(c.MetabolicMet, 1)),
+	var parts []string
+	add := func(h float64, what string) {
+		if h > 0 {
+			parts = append(parts, what+" in "+share(h))
+		}
 	}
+	add(radiant, "surfaces as warm as the air")
+	add(speed, "air at "+words.Number(c.AirSpeedMS, 1)+" m/s")
+	add(rh, "humidity of 50 %")
+	parts = append(parts, "an activity of "+words.Number(c.MetabolicMet, 1)+" met")
 	out := []string{"Taken for granted: " + words.List(parts, 0) + "; clothing by the outdoor temperature at 06:00 unless the site file gives it."}
 	if !anySpeed {
 		out = append(out, "Air speed is not logged in any zone, so draught cannot be judged.")
