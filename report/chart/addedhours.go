@@ -82,6 +82,7 @@ func AddedHours(d AddedHoursData, o Options) (SVG, error) {
 			put(cv, sty, vg.Point{X: c.Max.X + 5, Y: y(i)}, addedText(zones[i]), rows.right)
 		}
 	}
+	rows.say = func(i int) string { return addedText(zones[i]) }
 	return rows.render(f), nil
 }
 

@@ -97,6 +97,7 @@ func AirChange(d AirChangeData, o Options) (SVG, error) {
 			put(cv, sty, vg.Point{X: c.Max.X + 5, Y: y(i)}, rateText(rows[i]), z.right)
 		}
 	}
+	z.say = func(i int) string { return rateText(rows[i]) + rows[i].PerH.words(1, "") }
 	return z.render(f), nil
 }
 

@@ -28,6 +28,7 @@ type canvas struct {
 	style string   // attributes of the pending path
 	path  pathData // pending path
 	text  string   // attributes of the open text group, "" when none is open
+	said  strings.Builder
 }
 
 type drawState struct {
@@ -273,10 +274,25 @@ func (c *canvas) DrawImage(rect vg.Rectangle, img image.Image) {
 		short(math.Min(x0, x1)), short(math.Min(y0, y1)), short(math.Abs(x1-x0)), short(math.Abs(y1-y0)), buf.String())
 }
 
-// content ends the drawing and returns what stands between the svg tags.
+// say gives a place of the drawing the words a browser shows under the pointer.
+func (c *canvas) say(at vg.Rectangle, text string) {
+	x0, y0 := c.top().m.apply(at.Min)
+	x1, y1 := c.top().m.apply(at.Max)
+	if text = clean(text); text == "" || !drawable(x0) || !drawable(y0) || !drawable(x1) || !drawable(y1) {
+		return
+	}
+	fmt.Fprintf(&c.said, `<rect x="%s" y="%s" width="%s" height="%s"><title>%s</title></rect>`+"\n",
+		short(math.Min(x0, x1)), short(math.Min(y0, y1)), short(math.Abs(x1-x0)), short(math.Abs(y1-y0)), html.EscapeString(text))
+}
+
+// content ends the drawing and returns what stands between the svg tags; the
+// places that say something lie unseen over the rest.
 func (c *canvas) content() string {
 	c.endText()
 	c.flush()
+	if c.said.Len() > 0 {
+		c.body.WriteString("<g pointer-events=\"all\">\n" + c.said.String() + "</g>\n")
+	}
 	return c.body.String()
 }
 

@@ -86,7 +86,7 @@ func ComfortFields(d ComfortFieldsData, o Options) (SVG, error) {
 				x := left + colW*vg.Length(c) + 4
 				for i, v := range h.parts() {
 					w := (colW - 8) * vg.Length(known(v)/most)
-					bars = append(bars, bar{fieldClasses[i], rect(x, y0+4, x+w, y0+13)})
+					bars = append(bars, bar{class: fieldClasses[i], Rectangle: rect(x, y0+4, x+w, y0+13)})
 					x += w
 				}
 			}

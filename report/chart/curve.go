@@ -3,6 +3,7 @@ package chart
 import (
 	"image/color"
 	"math"
+	"strings"
 
 	"gonum.org/v1/plot"
 	"gonum.org/v1/plot/vg"
@@ -138,4 +139,45 @@ func alignSides(plots []*plot.Plot, boxes []draw.Canvas) {
 	for i, p := range plots {
 		p.Draw(boxes[i])
 	}
+}
+
+// namedCurve is a curve with the name it has in the legend.
+type namedCurve struct {
+	name string
+	pts  []XY
+}
+
+// sayCurves tells, in so many slices along the plot, what each curve's value is
+// in the middle of the slice.
+func sayCurves(cv *canvas, c draw.Canvas, p *plot.Plot, slices int, curves []namedCurve, head func(x float64) string, unit string) {
+	fx, _ := p.Transforms(&c)
+	wide := (p.X.Max - p.X.Min) / float64(slices)
+	for k := range slices {
+		x := p.X.Min + (float64(k)+0.5)*wide
+		var parts []string
+		for _, cu := range curves {
+			if y, ok := valueAt(cu.pts, x); ok {
+				parts = append(parts, clean(cu.name)+" "+number(y, 0)+unit)
+			}
+		}
+		if len(parts) > 0 {
+			cv.say(rect(fx(x-wide/2), c.Min.Y, fx(x+wide/2), c.Max.Y), head(x)+": "+strings.Join(parts, "; "))
+		}
+	}
+}
+
+// valueAt is a curve's value between its two nearest points; X must not
+// decrease.
+func valueAt(pts []XY, x float64) (y float64, ok bool) {
+	for i := 1; i < len(pts); i++ {
+		a, b := pts[i-1], pts[i]
+		if !(a.X <= x && x <= b.X) || !drawable(a.Y) || !drawable(b.Y) {
+			continue
+		}
+		if b.X == a.X {
+			return b.Y, true
+		}
+		return a.Y + (b.Y-a.Y)*(x-a.X)/(b.X-a.X), true
+	}
+	return 0, false
 }

@@ -83,10 +83,10 @@ func Exceedance(d ExceedanceData, o Options) (SVG, error) {
 		var bars []bar
 		for i := from; i < to; i++ {
 			if v := zones[i].TooWarm.Value; v > 0 {
-				bars = append(bars, bar{TooWarm, rect(fx(0), y(i)-h*0.32, fx(v), y(i)+h*0.32)})
+				bars = append(bars, bar{class: TooWarm, Rectangle: rect(fx(0), y(i)-h*0.32, fx(v), y(i)+h*0.32)})
 			}
 			if v := zones[i].TooCool.Value; v > 0 {
-				bars = append(bars, bar{TooCool, rect(fx(-v), y(i)-h*0.32, fx(0), y(i)+h*0.32)})
+				bars = append(bars, bar{class: TooCool, Rectangle: rect(fx(-v), y(i)-h*0.32, fx(0), y(i)+h*0.32)})
 			}
 		}
 		drawBars(cv, bars)
@@ -99,6 +99,10 @@ func Exceedance(d ExceedanceData, o Options) (SVG, error) {
 				whisker(cv, c, fx(-b.High), fx(-b.Low), y(i), h*0.35, inkText)
 			}
 		}
+	}
+	rows.say = func(i int) string {
+		z := zones[i]
+		return "too warm " + number(z.TooWarm.Value, 1) + z.TooWarm.words(1, "") + ", too cool " + number(z.TooCool.Value, 1) + z.TooCool.words(1, "")
 	}
 	return rows.render(f), nil
 }

@@ -77,6 +77,11 @@ func ExceedanceCurve(d ExceedanceCurveData, o Options) (SVG, error) {
 			for i, cu := range d.Curves {
 				strokeCurve(c, p, cu.Points, styles[i])
 			}
+			named := make([]namedCurve, len(d.Curves))
+			for i, cu := range d.Curves {
+				named[i] = namedCurve{cu.Name, cu.Points}
+			}
+			sayCurves(cv, c, p, 20, named, func(x float64) string { return "above " + number(x, 1) + " °C" }, " %")
 			for i, l := range d.Limits {
 				x := fx(l.Value)
 				if !c.ContainsX(x) {

@@ -91,5 +91,12 @@ func GroupRates(d GroupRatesData, o Options) (SVG, error) {
 			put(cv, sty, vg.Point{X: c.Max.X + 5, Y: y(i)}, text(d.Groups[i]), rows.right)
 		}
 	}
+	rows.say = func(i int) string {
+		g := d.Groups[i]
+		if !drawable(g.Rate.Value) {
+			return text(g)
+		}
+		return number(g.Rate.Value, 2) + g.Rate.words(1, "") + ", " + text(g)
+	}
 	return rows.render(f), nil
 }

@@ -11,10 +11,12 @@ const (
 	hatchWidth = vg.Length(0.45)
 )
 
-// bar is a rectangle of one class, to be filled and hatched.
+// bar is a rectangle of one class, to be filled and hatched; say is what a
+// browser shows under the pointer, if anything.
 type bar struct {
 	class Class
 	vg.Rectangle
+	say string
 }
 
 // drawBars fills the bars class by class, then hatches them class by class, so
@@ -49,6 +51,11 @@ func drawBars(cv *canvas, bars []bar) {
 	for _, b := range bars {
 		if b.class != None && paleFill(b.class) && b.Max.X-b.Min.X > 0.5 && b.Max.Y-b.Min.Y > 0.5 {
 			cv.Stroke(b.Path())
+		}
+	}
+	for _, b := range bars {
+		if b.say != "" {
+			cv.say(b.Rectangle, b.say)
 		}
 	}
 }

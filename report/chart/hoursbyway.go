@@ -81,6 +81,14 @@ func HoursByWay(d HoursByWayData, o Options) (SVG, error) {
 			put(cv, sty, vg.Point{X: c.Max.X + 5, Y: y(i)}, wayText(d.Ways[i]), rows.right)
 		}
 	}
+	rows.say = func(i int) string {
+		w := d.Ways[i]
+		t := wayText(w) + w.Hours.words(1, " h")
+		if drawable(w.Second) && d.Second != "" {
+			t += "; " + clean(d.Second) + " " + hoursText(w.Second) + " h"
+		}
+		return t
+	}
 	return rows.render(f), nil
 }
 

@@ -2,6 +2,7 @@ package chart
 
 import (
 	"regexp"
+	"strconv"
 	"strings"
 	"testing"
 
@@ -87,12 +88,18 @@ func TestDocument(t *testing.T) {
 			t.Errorf("%s: font family %q", f.name, p.root["font-family"])
 		}
 		ids := map[string]int{}
-		for _, e := range p.elements {
+		for i, e := range p.elements {
 			if id := e.attr["id"]; id != "" {
 				ids[id]++
 			}
 			switch e.name {
 			case "svg", "title", "desc", "path", "g", "text", "tspan", "image":
+			case "rect": // a place with words for the pointer
+				at := func(k string) float64 { v, _ := strconv.ParseFloat(e.attr[k], 64); return v }
+				if says := p.elements[i-1]; says.name != "title" || strings.Contains(says.text, "NaN") || !strings.Contains(says.text, ": ") ||
+					at("x") < -0.1 || at("y") < -0.1 || at("x")+at("width") > p.w+0.1 || at("y")+at("height") > p.h+0.1 {
+					t.Errorf("%s: a place says %q at %v", f.name, says.text, e.attr)
+				}
 			default:
 				t.Errorf("%s: element %q", f.name, e.name)
 			}

@@ -66,7 +66,7 @@ func drawLegend(cv *canvas, left, top, width vg.Length, entries []legendEntry) {
 	for i, e := range entries {
 		x := left + places[i].x
 		if e.line == nil && e.band == nil && !e.dot {
-			bars = append(bars, bar{e.class, rect(x, mid(i)-swatchH/2, x+swatchW, mid(i)+swatchH/2)})
+			bars = append(bars, bar{class: e.class, Rectangle: rect(x, mid(i)-swatchH/2, x+swatchW, mid(i)+swatchH/2)})
 		}
 	}
 	drawBars(cv, bars)

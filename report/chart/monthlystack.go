@@ -1,6 +1,8 @@
 package chart
 
 import (
+	"fmt"
+	"strings"
 	"time"
 
 	"gonum.org/v1/plot"
@@ -68,13 +70,20 @@ func MonthlyStack(d MonthlyStackData, o Options) (SVG, error) {
 			var bars []bar
 			half := min((fx(1)-fx(0))*0.36, 25)
 			for i, m := range d.Months {
-				sum := 0.0
+				sum, said := 0.0, []string(nil)
 				for k, h := range m.Hours {
 					if h > 0 {
-						bars = append(bars, bar{d.Classes[k],
-							rect(fx(float64(i)+0.5)-half, fy(sum), fx(float64(i)+0.5)+half, fy(sum+h))})
+						said = append(said, d.Classes[k].Label()+" "+hoursText(h)+" h")
+						b := bar{class: d.Classes[k], Rectangle: rect(fx(float64(i)+0.5)-half, fy(sum), fx(float64(i)+0.5)+half, fy(sum+h))}
+						if len(d.Months) <= 24 && b.Size().Y > 1.5 { // else nobody can point at it
+							b.say = fmt.Sprintf("%s %d: %s, %s h", m.Month, m.Year, d.Classes[k].Label(), hoursText(h))
+						}
+						bars = append(bars, b)
 						sum += h
 					}
+				}
+				if len(d.Months) > 24 && sum > 0 {
+					cv.say(rect(fx(float64(i)+0.5)-half, fy(0), fx(float64(i)+0.5)+half, fy(sum)), fmt.Sprintf("%s %d: %s", m.Month, m.Year, strings.Join(said, ", ")))
 				}
 			}
 			drawBars(cv, bars)

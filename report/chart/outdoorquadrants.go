@@ -259,7 +259,7 @@ func drawBins(cv *canvas, c draw.Canvas, p *plot.Plot, pts []OutdoorPoint) {
 		x := c.Min.X + vg.Length((float64(k%nx)+0.5)*px)
 		y := c.Min.Y + vg.Length((float64(k/nx)+0.5)*py)
 		half := vg.Length(math.Max(0.5, (pitch-0.6)/2*math.Sqrt(float64(b.total)/float64(most))))
-		bars = append(bars, bar{class, rect(x-half, y-half, x+half, y+half)})
+		bars = append(bars, bar{class: class, Rectangle: rect(x-half, y-half, x+half, y+half)})
 	}
 	drawBars(cv, bars)
 }

@@ -99,7 +99,7 @@ func (s strip) bars(cv *canvas) *plot.Plot {
 					j++
 				}
 				at := rect(fx(s.hour(i)), y0, fx(s.hour(j)), y1)
-				bars = append(bars, bar{class, at})
+				bars = append(bars, bar{class: class, Rectangle: at})
 				words = append(words, word{text, at, class})
 				i = j
 			}

@@ -75,7 +75,7 @@ func WhereHoursWent(d WhereHoursWentData, o Options) (SVG, error) {
 				if s.Total {
 					from, to = 0, s.Hours
 				}
-				bars = append(bars, bar{s.Class, rect(fx(from), fy(float64(i)+0.15), fx(to), fy(float64(i)+0.85))})
+				bars = append(bars, bar{s.Class, rect(fx(from), fy(float64(i)+0.15), fx(to), fy(float64(i)+0.85)), clean(s.Label) + ": " + stepText(s)})
 			}
 			drawBars(cv, bars)
 			for i := range d.Steps[1:] {

@@ -109,6 +109,7 @@ func ZoneLeague(d ZoneLeagueData, o Options) (SVG, error) {
 			put(cv, sty, vg.Point{X: c.Max.X + 5, Y: y(i)}, shareText(zones[i]), rows.right)
 		}
 	}
+	rows.say = func(i int) string { return shareText(zones[i]) + zones[i].Share.words(100, " %") }
 	return rows.render(f), nil
 }
 

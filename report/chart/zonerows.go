@@ -25,6 +25,14 @@ func (b Bounded) top() float64 {
 	return b.Value
 }
 
+// words are the bounds in brackets, where there are any.
+func (b Bounded) words(scale float64, unit string) string {
+	if !b.hasBounds() {
+		return ""
+	}
+	return " (" + number(b.Low*scale, 1) + " to " + number(b.High*scale, 1) + unit + ")"
+}
+
 // maxZoneRows is the most zones one figure shows; the rest are counted in a note.
 const maxZoneRows = 60
 
@@ -42,6 +50,8 @@ type zoneRows struct {
 	right vg.Length
 	// note is a line below, such as what was left out and why.
 	note string
+	// say gives the words a browser shows under the pointer on row i.
+	say func(i int) string
 	// draw draws rows from..to; row i lies at height y(i), h high.
 	draw func(cv *canvas, c draw.Canvas, p *plot.Plot, from, to int, y func(i int) vg.Length, h vg.Length)
 }
@@ -109,6 +119,9 @@ func (z zoneRows) render(f frame) SVG {
 				z.draw(cv, c, p, from, to, y, rowH)
 				for i := from; i < to; i++ {
 					put(cv, sty, vg.Point{X: x0 + left, Y: y(i)}, z.names[i], left)
+					if z.say != nil {
+						cv.say(rect(x0, y(i)-rowH/2, x0+colW, y(i)+rowH/2), z.names[i]+": "+z.say(i))
+					}
 				}
 			}))
 			box := area

@@ -65,10 +65,13 @@ type lookClass struct {
 	Hatch string `json:"hatch,omitempty"`
 }
 
-// lookCarpet is a carpet of the report that answers to a click.
+// lookCarpet is a carpet of the report that answers to the pointer: its hours
+// one letter each, from "A" in the order of Labels, day by day.
 type lookCarpet struct {
-	FirstDay string `json:"first_day"`
-	Days     int    `json:"days"`
+	FirstDay string   `json:"first_day"`
+	Days     int      `json:"days"`
+	Hours    string   `json:"hours"`
+	Labels   []string `json:"labels"`
 }
 
 var hatchNames = map[chart.Hatch]string{chart.Rising: "rising", chart.Falling: "falling", chart.Level: "level", chart.Upright: "upright", chart.Crossed: "crossed"}
@@ -123,7 +126,7 @@ func (b *builder) look() (look, error) {
 	if err != nil {
 		return look{}, err
 	}
-	d := lookData{Data: packed, Plant: plantLooks, Suits: suitLooks(), Unknown: lookOf(chart.Unknown), Carpets: b.lookCarpets()}
+	d := lookData{Data: packed, Plant: plantLooks, Suits: suitLooks(), Unknown: lookOf(chart.Unknown), Carpets: b.carpets}
 	var months []time.Time
 	for _, m := range packed.Months[:len(packed.Months)-1] {
 		months = append(months, time.Unix(packed.StartUTC+int64(m)*packed.StepS, 0).In(b.in.Grid.Loc))
@@ -213,11 +216,22 @@ func (b *builder) lookTotals(months []time.Time) (keys []string, totals [][][]in
 	return keys, totals
 }
 
-// lookCarpets are the carpets of the report by the id of their figure.
-func (b *builder) lookCarpets() map[string]lookCarpet {
-	first, days := b.carpet(func(hours.Hour) chart.Class { return chart.None })
+// keepCarpet keeps a carpet for the pointer.
+func (b *builder) keepCarpet(id string, first time.Time, days [][24]chart.Class) {
 	c := lookCarpet{FirstDay: first.Format("2006-01-02"), Days: len(days)}
-	return map[string]lookCarpet{"outcome-carpet": c, "running-carpet": c}
+	letter := map[chart.Class]byte{}
+	var text []byte
+	for _, day := range days {
+		for _, class := range day {
+			if _, ok := letter[class]; !ok {
+				letter[class] = byte('A' + len(letter))
+				c.Labels = append(c.Labels, class.Label())
+			}
+			text = append(text, letter[class])
+		}
+	}
+	c.Hours = string(text)
+	b.carpets[id] = c
 }
 
 // lookStart is the zone to begin with, the first in the order of the report

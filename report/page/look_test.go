@@ -177,6 +177,9 @@ func TestPicker(t *testing.T) {
 		}
 		d.p.Click(t, at.X+c.left+(width-c.left-c.right)*(19.5/days), at.Y)
 		d.p.Until(t, `document.getElementById("look-day").value === "2031-05-20"`)
+		if c.left == 0 {
+			d.p.Until(t, `/^Tuesday 20 May 2031, 1[12]:00: [a-z]/.test(document.querySelector("`+c.picture+` title").textContent)`)
+		}
 	}
 	quiet(t, d.p)
 }

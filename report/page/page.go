@@ -168,6 +168,8 @@ type builder struct {
 	tables  int
 	// places are the figures and tables by id, for links from findings.
 	places map[string]place
+	// carpets are the drawn carpets by the id of their figure.
+	carpets map[string]lookCarpet
 	// exported gathers figures on their own, when wanted.
 	exported []Exported
 }
@@ -175,7 +177,7 @@ type builder struct {
 func newBuilder(in Input) *builder {
 	rule := privacy.For(in.Site)
 	w := words.Input{Site: in.Site, Criteria: in.Criteria, Grid: in.Grid, Ledger: in.Ledger, Results: in.Results, Privacy: rule}
-	return &builder{in: in, w: w, rule: rule, span: w.SpanOf(), order: words.Order(w), places: map[string]place{}}
+	return &builder{in: in, w: w, rule: rule, span: w.SpanOf(), order: words.Order(w), places: map[string]place{}, carpets: map[string]lookCarpet{}}
 }
 
 func (b *builder) sections() []section {

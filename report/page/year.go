@@ -117,6 +117,7 @@ func (b *builder) outcomeCarpet() block {
 		}
 		return best
 	})
+	b.keepCarpet("outcome-carpet", first, days)
 	return b.draw("outcome-carpet",
 		"Outcome of every hour, for most of the people. Look for orange: at which hours, in which months, the building could have been open. White is outside occupied times.",
 		"No hour of this period has an outcome to draw.",
@@ -152,6 +153,7 @@ func (b *builder) stateCarpet() block {
 		}
 		return stateLook[best]
 	})
+	b.keepCarpet("running-carpet", first, days)
 	return b.draw("running-carpet",
 		"What most of the people's zones were doing in every hour, day and night. Look for plant that starts at the same hour every day, and for plant or windows left on or open overnight.",
 		"The running state of the zones is not known for any hour.",

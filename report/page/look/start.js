@@ -117,10 +117,18 @@ function reportCarpets() {
     if (!image || !data.carpets[id]) continue;
     image.classList.add('carpet');
     const carpet = data.carpets[id];
+    const place = e => {
+      const r = image.getBoundingClientRect();
+      return { day: Math.floor((e.clientX - r.left) / r.width * carpet.days), hour: Math.floor((r.bottom - e.clientY) / r.height * 24) };
+    };
     image.addEventListener('click', e => {
-      const r = image.getBoundingClientRect(), day = Math.floor((e.clientX - r.left) / r.width * carpet.days);
-      chooseDay(dayOf(carpet.first_day) + day);
+      chooseDay(dayOf(carpet.first_day) + place(e).day);
       byId('look-day-title').scrollIntoView();
+    });
+    const hint = image.appendChild(make('svg:title', {}));
+    image.addEventListener('pointermove', e => {
+      const { day, hour } = place(e), letter = carpet.hours.charCodeAt(24 * day + hour) - 65;
+      hint.textContent = carpet.labels[letter] ? `${dateWords(new Date(Date.parse(carpet.first_day + 'T00:00:00Z') + day * 864e5))}, ${two(hour)}:00: ${carpet.labels[letter]}` : '';
     });
   }
 }
