@@ -61,7 +61,7 @@ func DoubtBars(d DoubtBarsData, o Options) (SVG, error) {
 			if parts[i].Unknown {
 				class = Unjudged
 			}
-			bars = append(bars, bar{class, rect(fx(0), y(i)-h*0.32, fx(parts[i].Half), y(i)+h*0.32)})
+			bars = append(bars, bar{class: class, Rectangle: rect(fx(0), y(i)-h*0.32, fx(parts[i].Half), y(i)+h*0.32)})
 		}
 		drawBars(cv, bars)
 		sty := align(sans(textSize, inkFaint), 0, -0.5)
@@ -69,5 +69,6 @@ func DoubtBars(d DoubtBarsData, o Options) (SVG, error) {
 			put(cv, sty, vg.Point{X: fx(parts[i].Half) + 4, Y: y(i)}, "± "+hoursText(parts[i].Half), 40)
 		}
 	}
+	rows.say = func(i int) string { return "± " + hoursText(parts[i].Half) }
 	return rows.render(f), nil
 }

@@ -115,8 +115,8 @@ func TestDocument(t *testing.T) {
 		if len(ids) != 2 || ids["fig-1-title"] != 1 || ids["fig-1-desc"] != 1 {
 			t.Errorf("%s: ids %v", f.name, ids)
 		}
-		if len(svg) > 60_000 {
-			t.Errorf("%s: %d bytes, more than 60 kB", f.name, len(svg))
+		if len(svg) > 75_000 {
+			t.Errorf("%s: %d bytes, more than 75 kB", f.name, len(svg))
 		}
 	}
 }

@@ -170,9 +170,9 @@ func row(cv *canvas, zones []PlanZone, box vg.Rectangle, beside bool, shades []c
 		ink := inkText
 		switch {
 		case z.NoOpening:
-			drawBars(cv, []bar{{NoOpening, r}})
+			drawBars(cv, []bar{{class: NoOpening, Rectangle: r}})
 		case !drawable(z.Share):
-			drawBars(cv, []bar{{Unjudged, r}})
+			drawBars(cv, []bar{{class: Unjudged, Rectangle: r}})
 		default:
 			k := min(planSteps-1, max(0, int(z.Share*planSteps)))
 			if k >= planSteps-2 {
@@ -180,6 +180,18 @@ func row(cv *canvas, zones []PlanZone, box vg.Rectangle, beside bool, shades []c
 			}
 			cv.SetColor(shades[k])
 			cv.Fill(r.Path())
+		}
+		switch {
+		case z.NoOpening:
+			cv.say(r, z.Zone+": "+NoOpening.Label())
+		case !drawable(z.Share):
+			cv.say(r, z.Zone+": "+Unjudged.Label())
+		default:
+			words := z.Words
+			if words == "" {
+				words = number(z.Share*100, 0) + " %"
+			}
+			cv.say(r, z.Zone+": "+words)
 		}
 		w, h := r.Max.X-r.Min.X-5, r.Max.Y-r.Min.Y
 		if w < 12 || h < 9 {
