@@ -93,7 +93,7 @@ func Offered(in Input) *Result {
 	r.Balance, r.HeightNote = balanceOf(in.Site, in.Criteria, in.Running)
 	occ := occupiedShare(in.Grid, in.Running)
 	r.Outdoors, r.Indoors = fieldsOf(&in)
-	typical := typicalRecord(in.Site, in.Criteria, in.Grid, in.Calendar, occ, in.Outdoor)
+	typical := typicalRecord(in.Site, in.Criteria, in.Grid, occ, in.Outdoor)
 	var typicalBare []vote
 	if typical != nil {
 		r.Typical, typicalBare = r.offer(in.Criteria, typical)

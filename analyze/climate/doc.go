@@ -94,13 +94,14 @@ var AirSpeedDoc = method.Doc{
 var NormalDoc = method.Doc{
 	Title:    "Was this a normal year? Measured weather against a typical year",
 	Question: "Would the climate usually have offered as many suitable hours?",
-	Formula: "the same rule (lower limit, adaptive limit of the day less the rise, dew point) on each measured step and on the same clock hour of the typical year, both only where both are known; " +
+	Formula: "the same rule (lower limit, adaptive limit of the day less the rise, dew point) on each measured step and on the same hour, by standard time, of the typical year, both only where both are known; " +
 		"a month within 1.5 K of the typical one is as usual; a year within 1 K and 10 % of the suitable hours is normal",
 	Limits: []string{
 		"a typical year is put together from months of past decades and shows no spread between years; the limits of 1.5 K, 1 K and 10 % are our assumption",
 		"its station may lie elsewhere and higher or lower than the site",
 		"wind, rain and pollution are left out on both sides",
 		"the running mean of the first days of a typical year uses its own last days",
+		"a typical year is kept in standard time; its days, nights and occupied hours follow the site's clock with the daylight saving of the period's first common year",
 	},
 	Sources:  []string{"a comparison of this project; weather file format after the data dictionary of the US Department of Energy"},
 	Standing: method.OurAssumption,

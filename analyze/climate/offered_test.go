@@ -77,7 +77,7 @@ func year(offsetK float64) Input {
 // typicalDaysOf gives the days of a record of 395 days the means that the same
 // weather has as a typical year.
 func typicalDaysOf(c criteria.Settings, out *outdoor.Outdoor, cal *calendar.Calendar) []outdoor.Day {
-	days := typicalDays(c, out.TempC[30*24:], 2023)
+	days, _ := typicalDays(c, out.TempC[30*24:], localHours(&grid.Grid{StartUTC: time.Date(2023, 1, 1, 0, 0, 0, 0, time.UTC).Unix(), StepS: 3600, N: hoursOfYear, Loc: time.UTC}, 2023), 2023)
 	list := make([]outdoor.Day, len(cal.Days))
 	for d := range list {
 		list[d] = days[(d-30+365)%365]
@@ -337,6 +337,68 @@ func TestHourOfYear(t *testing.T) {
 		}
 		if got := hourOfYear(at.Unix(), c.offset); got != c.want {
 			t.Errorf("%s: %d, want %d", c.at, got, c.want)
+		}
+	}
+}
+
+// A typical year is kept in standard time, but people and their days follow the
+// clock of the site. In Zurich clocks stood an hour ahead from 26 March to 29
+// October 2023, from 31 March to 27 October 2024 and from 30 March to 26 October
+// 2025 (IANA time zone data base), so that a day from 8 to 18 o'clock lies in
+// the hours 8 to 17 of a typical January day and 7 to 16 of a July day, whether
+// it comes from the site's times or from a record. A record of the leap year
+// 2024 is laid out by the clock of 2025.
+func TestTypicalYearFollowsTheClock(t *testing.T) {
+	zurich, err := time.LoadLocation("Europe/Zurich")
+	if err != nil {
+		t.Fatal(err)
+	}
+	const january, july = 20, 181 + 9
+	for _, recorded := range []bool{false, true} {
+		in := year(0)
+		start := time.Date(2023, 1, 1, 0, 0, 0, 0, zurich).Unix()
+		n := 24 // one day: all else by the site's times
+		spring, autumn := 59+25, 273+28
+		if recorded {
+			n, spring, autumn = 366*24, 59+29, 273+25
+			start = time.Date(2024, 1, 1, 0, 0, 0, 0, zurich).Unix()
+			in.Site.Occupancy.Times = nil
+		}
+		g := &grid.Grid{StartUTC: start, StepS: 3600, N: n, PeriodTo: n, Loc: zurich, Typical: in.Grid.Typical}
+		occ := make([]float32, n)
+		for i := range occ {
+			if h := g.Time(i).In(zurich).Hour(); h >= 8 && h < 18 {
+				occ[i] = 1
+			}
+		}
+		r := typicalRecord(in.Site, in.Criteria, g, occ, in.Outdoor)
+		for day, first := range map[int]int{january: 8, spring - 1: 8, spring: 7, july: 7, autumn - 1: 7, autumn: 8} {
+			for h := range 24 {
+				want := float32(0)
+				if h >= first && h < first+10 {
+					want = 1
+				}
+				if got := r.occ[day*24+h]; got != want {
+					t.Errorf("recorded %v, day %d, hour %d of standard time: %v, want %v", recorded, day, h, got, want)
+				}
+			}
+		}
+		// The day is that of the clock: it begins an hour earlier in July, has 23
+		// hours in March and 25 in October, and the night begins at 18:00 standard
+		// time.
+		d := r.out.Days[july]
+		if d.FromStep != july*24-1 || d.ToStep != july*24+23 {
+			t.Errorf("July day from %d to %d", d.FromStep, d.ToStep)
+		}
+		if m, o := r.out.Days[spring], r.out.Days[autumn]; m.ToStep-m.FromStep != 23 || o.ToStep-o.FromStep != 25 {
+			t.Errorf("%d and %d hours", m.ToStep-m.FromStep, o.ToStep-o.FromStep)
+		}
+		if got, want := d.SixAMC, float64(r.out.TempC[july*24+5]); got != want {
+			t.Errorf("six o'clock: %v, want %v", got, want)
+		}
+		night, ok := r.nightBefore(july)
+		if !ok || night[0] != float64(r.out.TempC[(july-1)*24+18]) {
+			t.Errorf("night begins with %v", night)
 		}
 	}
 }

@@ -4,7 +4,6 @@ import (
 	"math"
 	"time"
 
-	"sashlog/analyze/calendar"
 	"sashlog/analyze/comfort"
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/running"
@@ -78,11 +77,12 @@ func hoursOfYearByStep(g *grid.Grid, offsetH float64) []int16 {
 	return out
 }
 
-// typicalRecord lays a typical year out as a grid, with the daily and running
-// means that belong to it. Its occupied time is that of the measured period
-// where the period covers the same hour of the year, else the site's times on
-// the weekdays of the period's first year.
-func typicalRecord(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Calendar, occ []float32, tested *outdoor.Outdoor) *record {
+// typicalRecord lays a typical year out as a grid in its standard time, with
+// days, and the daily and running means that belong to them, by the site's own
+// clock with its daylight saving. Its occupied time is that of the measured
+// period where the period holds the same day and clock hour, else the site's
+// times on the weekdays of the period's first common year.
+func typicalRecord(s *site.Site, c criteria.Settings, g *grid.Grid, occ []float32, tested *outdoor.Outdoor) *record {
 	y := g.Typical
 	if y == nil || len(y.TempC) != hoursOfYear || len(y.DewPointC) != hoursOfYear {
 		return nil
@@ -92,34 +92,67 @@ func typicalRecord(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calenda
 		year++
 	}
 	start := time.Date(year, 1, 1, 0, 0, 0, 0, time.UTC).Unix() - int64(y.OffsetH*3600)
-	zone := time.FixedZone("standard time", int(y.OffsetH*3600))
 	r := &record{name: y.Name, wrap: true, offsetH: y.OffsetH,
-		g: &grid.Grid{StartUTC: start, StepS: 3600, N: hoursOfYear, PeriodTo: hoursOfYear, Loc: zone}}
-	r.out = &outdoor.Outdoor{TempC: y.TempC, Measured: true, DayOf: make([]int32, hoursOfYear), Days: typicalDays(c, y.TempC, year)}
+		g: &grid.Grid{StartUTC: start, StepS: 3600, N: hoursOfYear, PeriodTo: hoursOfYear, Loc: g.Loc}}
+	local := localHours(r.g, year)
+	r.out = &outdoor.Outdoor{TempC: y.TempC, Measured: true}
+	r.out.Days, r.out.DayOf = typicalDays(c, y.TempC, local, year)
 	if tested.HumidityLogged {
 		r.out.DewPointC, r.out.HumidityLogged = y.DewPointC, true
 	}
-	for k := range r.out.DayOf {
-		r.out.DayOf[k] = int32(k / 24)
-	}
-	r.occ = make([]float32, hoursOfYear)
-	n := make([]float32, hoursOfYear)
-	at := hoursOfYearByStep(g, y.OffsetH)
+	sum, n := make([]float32, hoursOfYear), make([]float32, hoursOfYear)
+	at := clockHourByStep(g)
 	for i := g.PeriodFrom; i < g.PeriodTo; i++ {
-		r.occ[at[i]] += occ[i]
+		sum[at[i]] += occ[i]
 		n[at[i]]++
 	}
-	for k := range r.occ {
-		if n[k] > 0 {
-			r.occ[k] /= n[k]
-			continue
-		}
-		local := time.Unix(start+int64(k)*3600+1800, 0).In(g.Loc)
-		if scheduled(s, local) {
+	r.occ = make([]float32, hoursOfYear)
+	for k, clock := range local {
+		switch {
+		case n[clock] > 0:
+			r.occ[k] = sum[clock] / n[clock]
+		case scheduled(s, time.Unix(start+int64(k)*3600+1800, 0).In(g.Loc)):
 			r.occ[k] = 1
 		}
 	}
 	return r
+}
+
+// localHours gives, for each hour of a typical year, the day of the year and
+// clock hour in local time, as day*24 + hour. Hours that the local clock puts
+// into another year stay on the first or last day, so that days follow each
+// other.
+func localHours(g *grid.Grid, year int) []int16 {
+	out := make([]int16, g.N)
+	for k := range out {
+		t := time.Unix(g.StartUTC+int64(k)*g.StepS+g.StepS/2, 0).In(g.Loc)
+		day := daysBefore[t.Month()-1] + t.Day() - 1
+		switch {
+		case t.Year() < year:
+			day = 0
+		case t.Year() > year:
+			day = hoursOfYear/24 - 1
+		}
+		out[k] = int16(day*24 + t.Hour())
+	}
+	return out
+}
+
+// clockHourByStep maps every step to the day of a common year and the clock
+// hour, local time with its daylight saving, that it falls in.
+func clockHourByStep(g *grid.Grid) []int16 {
+	out := make([]int16, g.N)
+	last, hour := int64(math.MinInt64), 0
+	for i := range out {
+		at := g.StartUTC + int64(i)*g.StepS
+		if q := at / 900; q != last { // offsets are multiples of a quarter of an hour
+			t := time.Unix(at, 0).In(g.Loc)
+			_, offsetS := t.Zone()
+			last, hour = q, hourOfYear(at, float64(offsetS)/3600)
+		}
+		out[i] = int16(hour)
+	}
+	return out
 }
 
 func leap(year int) bool { return year%4 == 0 && (year%100 != 0 || year%400 == 0) }
@@ -140,32 +173,42 @@ func scheduled(s *site.Site, local time.Time) bool {
 	return false
 }
 
-// typicalDays works out the means of the days of a typical year, whose first
-// days follow on its last.
-func typicalDays(c criteria.Settings, tempC []float32, year int) []outdoor.Day {
+// typicalDays works out the days of a typical year by the local clock, whose
+// first days follow on its last, and the day of each hour.
+func typicalDays(c criteria.Settings, tempC []float32, local []int16, year int) (days []outdoor.Day, dayOf []int32) {
 	const lead = grid.LeadDays
-	days := make([]outdoor.Day, hoursOfYear/24)
+	days, dayOf = make([]outdoor.Day, hoursOfYear/24), make([]int32, hoursOfYear)
+	for d := range days {
+		days[d] = outdoor.Day{Date: site.DateOf(time.Date(year, 1, 1+d, 12, 0, 0, 0, time.UTC)), FromStep: -1, SixAMC: math.NaN()}
+	}
+	sum, n := make([]float64, len(days)), make([]float64, len(days))
+	for k, clock := range local {
+		d := &days[clock/24]
+		dayOf[k] = int32(clock / 24)
+		if d.FromStep < 0 {
+			d.FromStep = k
+		}
+		d.ToStep = k + 1
+		if v := float64(tempC[k]); !math.IsNaN(v) {
+			sum[clock/24] += v
+			n[clock/24]++
+		}
+		if clock%24 == 6 {
+			d.SixAMC = float64(tempC[k])
+		}
+	}
 	daily := make([]float64, len(days)+lead)
 	for d := range days {
-		sum, n := 0.0, 0
-		for _, v := range tempC[d*24 : d*24+24] {
-			if v == v {
-				sum += float64(v)
-				n++
-			}
+		days[d].MeanC = math.NaN()
+		if n[d] >= 0.8*float64(days[d].ToStep-days[d].FromStep) { // as for measured days
+			days[d].MeanC = sum[d] / n[d]
 		}
-		mean := math.NaN()
-		if n >= 20 { // 80 % of the day, as for measured days
-			mean = sum / float64(n)
-		}
-		date := site.DateOf(time.Date(year, 1, 1+d, 12, 0, 0, 0, time.UTC))
-		days[d] = outdoor.Day{Date: date, FromStep: d * 24, ToStep: d*24 + 24, MeanC: mean, SixAMC: float64(tempC[d*24+6])}
-		daily[d+lead] = mean
+		daily[d+lead] = days[d].MeanC
 	}
 	copy(daily, daily[len(days):])
 	en := comfort.RunningMeanEN(daily)
-	n := min(max(int(c.RunningMeanMinD), 7), 30)
-	ashrae, err1 := comfort.PrevailingMean(daily, n)
+	least := min(max(int(c.RunningMeanMinD), 7), 30)
+	ashrae, err1 := comfort.PrevailingMean(daily, least)
 	month, err2 := comfort.PrevailingMean(daily, 30)
 	if err1 != nil || err2 != nil {
 		panic("climate: days of the prevailing mean out of range") // the settings allow only the standard's range
@@ -173,5 +216,5 @@ func typicalDays(c criteria.Settings, tempC []float32, year int) []outdoor.Day {
 	for d := range days {
 		days[d].RunningMeanENC, days[d].RunningMeanASHRAEC, days[d].Mean30DaysC = en[d+lead], ashrae[d+lead], month[d+lead]
 	}
-	return days
+	return days, dayOf
 }
