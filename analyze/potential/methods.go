@@ -95,7 +95,8 @@ func bandVerdict(c criteria.Settings, tempC, dewC float64, humidity bool) Suit {
 }
 
 // typical compares the measured weather with a typical year by the plain band
-// with humidity limit, in the site's occupied times. Each month's measured
+// with humidity limit, in the site's occupied times by its clock; the typical
+// year itself is in standard time. Each month's measured
 // share is applied to the same month of the typical year, so that a record of
 // part of a year is compared with that part only.
 func typical(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Calendar, out *outdoor.Outdoor) *TypicalPotential {
@@ -106,15 +107,16 @@ func typical(s *site.Site, c criteria.Settings, g *grid.Grid, cal *calendar.Cale
 	type tally struct{ occupied, inBand, sumC, n float64 }
 	var typ, meas [12]tally
 	humidity := out.HumidityLogged
+	start := time.Date(2023, 1, 1, 0, 30, 0, 0, time.UTC).Unix() - int64(g.Typical.OffsetH*3600) // a common year
 	for h := range g.Typical.TempC {
-		at := time.Date(2023, 1, 1, h, 0, 0, 0, time.UTC) // a common year; local standard time
+		at := time.Unix(start+int64(h)*3600, 0).In(g.Loc)
 		k := &typ[at.Month()-1]
 		temp := float64(g.Typical.TempC[h])
 		if !math.IsNaN(temp) {
 			k.sumC += temp
 			k.n++
 		}
-		if !scheduled(s, at.Weekday(), at.Hour()*60+30) {
+		if !scheduled(s, at.Weekday(), at.Hour()*60+at.Minute()) {
 			continue
 		}
 		k.occupied++
