@@ -65,7 +65,7 @@ func Run(in Input) *Results {
 			r.Doubt = doubt.Estimate(doubt.Input{Input: record, Calendar: r.Calendar, Weights: r.Summary.Weights, Seed: 1})
 		},
 	)
-	r.Breeze = breeze.Catch(breeze.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Running: r.Running, Potential: r.Potential, Decays: openDecays(r.FreshAir)})
+	r.Breeze = breeze.Catch(breeze.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Running: r.Running, Potential: r.Potential, Rates: openRates(r.FreshAir)})
 	r.LongTerm = longterm.Assess(longterm.Input{Site: s, Criteria: c, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor,
 		Running: r.Running, Predicted: r.Predicted, Exceedance: r.Exceedance})
 	r.Votes = votes.Compare(votes.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running, Predicted: r.Predicted, Exceedance: r.Exceedance})
@@ -80,15 +80,20 @@ func Run(in Input) *Results {
 	return r
 }
 
-// openDecays are the air change rates measured in open mode, for the wind.
-func openDecays(f *freshair.Result) []breeze.Decay {
-	var out []breeze.Decay
-	for z := range f.Zones {
-		for _, d := range f.Zones[z].Decays {
-			if d.State == running.Open {
-				out = append(out, breeze.Decay{Zone: z, FromStep: d.FromStep, ToStep: d.ToStep, AirChangePerH: d.AirChangePerH})
+// openRates are the air change rates measured in open mode, for the wind: those
+// of the ways that may stand for a state.
+func openRates(f *freshair.Result) []breeze.Rate {
+	var out []breeze.Rate
+	add := func(z int, day bool, events []freshair.Event) {
+		for _, e := range events {
+			if e.State == running.Open {
+				out = append(out, breeze.Rate{Zone: z, Day: day, FromStep: e.FromStep, ToStep: e.ToStep, AirChangePerH: e.AirChangePerH})
 			}
 		}
+	}
+	for z := range f.Zones {
+		add(z, false, f.Zones[z].Decays)
+		add(z, true, f.Zones[z].Days)
 	}
 	return out
 }

@@ -11,10 +11,12 @@ import (
 	"sashlog/ingest/grid"
 )
 
-// Decay is one measured air change rate of a zone in open mode, over the steps
-// [FromStep, ToStep).
-type Decay struct {
+// Rate is one measured air change rate of a zone in open mode, over the steps
+// in open mode of [FromStep, ToStep): a decay of CO2, or a day with the people
+// counted.
+type Rate struct {
 	Zone             int
+	Day              bool
 	FromStep, ToStep int
 	AirChangePerH    float64
 }
@@ -27,8 +29,8 @@ type Input struct {
 	Outdoor   *outdoor.Outdoor
 	Running   *running.Result
 	Potential *potential.Result
-	// Decays are those of open mode.
-	Decays []Decay
+	// Rates are those of open mode.
+	Rates []Rate
 }
 
 // Result is what the wind did.
@@ -50,7 +52,7 @@ type Result struct {
 	// wanted wind first; FacesUnknown the zones with openings and no direction.
 	Facings      []Facing
 	FacesUnknown []int
-	Drive        *Drive // nil without decays in open mode
+	Drive        *Drive // nil without rates in open mode
 }
 
 // Catch works the answer out.

@@ -6,7 +6,7 @@
 //  1. speed: the wind at the height of the openings, from that of the mast
 //  2. roses: all hours, occupied suited hours, hours when a breeze is wanted
 //  3. facings: which direction's openings catch the wanted wind
-//  4. drive: air change measured in open mode against wind speed and sector
+//  4. drive: air change measured in open mode against wind speed and sector, with intervals
 package breeze
 
 import "sashlog/analyze/method"
@@ -66,15 +66,17 @@ var FacingDoc = method.Doc{
 var DriveDoc = method.Doc{
 	Title:    "Measured air change in open mode against the wind",
 	Question: "Does the wind drive the air change of open rooms?",
-	Formula: "each decay of CO2 found in open mode is held against the mean wind at the openings and the mean direction over the same time; " +
-		"medians by speed class and by sector; rates of several zones as multiples of each zone's own median; slope by least squares with its 95 % interval (Student's t)",
+	Formula: "each air change rate measured in open mode, from a decay of CO2 or from a day with the people counted, is held against the mean wind at the openings and the mean direction over the same open steps; " +
+		"rates of several zones and ways as multiples of the median of the zone's rates by the same way; median by speed class, by side (calm, windward, leeward) and by 8 sectors, with its 95 % interval by order statistics of their logarithms " +
+		"(Student's t below 6 rates); slope by least squares with its 95 % interval (Student's t), rates of one day counting as one",
 	Limits: []string{
-		"decays happen when rooms empty, mostly in the evening, when wind is often weaker than by day",
+		"decays happen when rooms empty, mostly in the evening, when wind is often weaker than by day; counted days hold for the whole of the open time",
 		"temperature difference and opening area vary too and are not taken out",
-		"groups of fewer decays than the site's minimum are counted and not judged",
-		"decays of one zone on neighbouring days are not independent: the interval is somewhat too narrow",
+		"groups of fewer rates than the site's minimum, and those whose interval spans more than a factor of 10, are counted and not judged; a slope needs 6 days",
+		"wind with a steadiness below 0.7 over the time of a rate has no direction",
+		"sectors join zones that face different ways where more than one was measured; windward and leeward do not",
 	},
-	Sources:  []string{"decays: see the method of the air change rate; grouping of this project"},
+	Sources:  []string{"rates: see the method of the air change rate; grouping of this project"},
 	Standing: method.OurAssumption,
 }
 

@@ -61,7 +61,11 @@ var SectorNames = [Sectors]string{"N", "NNE", "NE", "ENE", "E", "ESE", "SE", "SS
 // Sector returns the sector, 0 to 15, that a direction in degrees lies in;
 // -1 for NaN. Sectors are centred on their names: north is 348.75° to below
 // 11.25°.
-func Sector(deg float64) int {
+func Sector(deg float64) int { return sectorOf(deg, Sectors) }
+
+// sectorOf is the one of n sectors, the first centred on north, that a
+// direction lies in; -1 for NaN.
+func sectorOf(deg float64, n int) int {
 	if math.IsNaN(deg) || math.IsInf(deg, 0) {
 		return -1
 	}
@@ -69,7 +73,8 @@ func Sector(deg float64) int {
 	if deg < 0 {
 		deg += 360
 	}
-	return int((deg+360.0/Sectors/2)/(360.0/Sectors)) % Sectors
+	wide := 360 / float64(n)
+	return int((deg+wide/2)/wide) % n
 }
 
 // OffDeg is the angle, 0 to 180°, between two directions.

@@ -18,6 +18,7 @@ type measured struct {
 	// offLow and offHigh are how far ln A moves down and up when what is common
 	// to all events is off by its doubt; both are positive.
 	offLow, offHigh float64
+	span            span // steps
 }
 
 // estimate is the typical rate of events with its interval: the spread over
@@ -38,7 +39,7 @@ func estimate(way Way, events []measured, need int, why string) Estimate {
 	slices.Sort(logs)
 	e.MedianPerH = median(rates)
 	typical := math.Log(e.MedianPerH)
-	sampleLow, sampleHigh := medianInterval(logs, math.Sqrt(mean(se)))
+	sampleLow, sampleHigh := MedianInterval(logs, math.Sqrt(mean(se)))
 	e.OffsetLogLow, e.OffsetLogHigh = median(low), median(high)
 	e.LowPerH = math.Exp(typical - math.Hypot(typical-sampleLow, e.OffsetLogLow))
 	e.HighPerH = math.Exp(typical + math.Hypot(sampleHigh-typical, e.OffsetLogHigh))
@@ -58,11 +59,11 @@ const widestRatio = 10
 // 100: 1 - 2/2^6.
 const orderedMin = 6
 
-// medianInterval bounds the median of sorted values at 95 %: by order statistics
+// MedianInterval bounds the median of sorted values, at least one, at 95 %: by order statistics
 // (binomial; Conover, Practical Nonparametric Statistics, from memory), with
 // fewer than six by Student's t with the larger of the spread and the error of
-// one event.
-func medianInterval(sorted []float64, eventSE float64) (low, high float64) {
+// one event (eventSE, 0 where not known).
+func MedianInterval(sorted []float64, eventSE float64) (low, high float64) {
 	n := len(sorted)
 	mid := quantile(sorted, 0.5)
 	if n >= orderedMin {
@@ -104,8 +105,13 @@ func (out *Zone) airChanges(in *Input, z int) {
 		for _, e := range t.events {
 			ln := math.Log(e.fit.AirChangePerH)
 			decays = append(decays, measured{e.fit.AirChangePerH, e.fit.LogSE,
-				ln - math.Log(e.offLow.AirChangePerH), math.Log(e.offHigh.AirChangePerH) - ln})
-			out.Decays = append(out.Decays, Decay{running.State(s), e.from, e.to, e.fit.AirChangePerH})
+				ln - math.Log(e.offLow.AirChangePerH), math.Log(e.offHigh.AirChangePerH) - ln, span{e.from, e.to}})
+			out.Decays = append(out.Decays, Event{running.State(s), e.from, e.to, e.fit.AirChangePerH})
+		}
+		if counted {
+			for _, d := range days[s] {
+				out.Days = append(out.Days, Event{running.State(s), d.span.from, d.span.to, d.perH})
+			}
 		}
 		way, other := ByScheduled, ByCounted
 		if counted {
@@ -130,7 +136,9 @@ func (out *Zone) airChanges(in *Input, z int) {
 		a.take(in, z, len(t.events))
 		out.judge(s)
 	}
-	slices.SortFunc(out.Decays, func(a, b Decay) int { return a.FromStep - b.FromStep })
+	for _, events := range [][]Event{out.Decays, out.Days} {
+		slices.SortStableFunc(events, func(a, b Event) int { return a.FromStep - b.FromStep })
+	}
 	out.NeighbourShare = neighbourShare(in, z, out.Decays)
 }
 
@@ -210,7 +218,7 @@ var wayMethods = map[Way]string{
 
 // neighbourShare is the median over decays of the mean excess of the zones on
 // the same floor over this zone's.
-func neighbourShare(in *Input, z int, decays []Decay) float64 {
+func neighbourShare(in *Input, z int, decays []Event) float64 {
 	if in.Site.Zones[z].Floor == "" {
 		return math.NaN()
 	}

@@ -24,8 +24,9 @@ type Zone struct {
 	State  [running.NumStates]Levels
 	// AirChange per running state, from decays after the room empties.
 	AirChange [running.NumStates]AirChange
-	// Decays are those found in all states, in order of time.
-	Decays []Decay
+	// Decays are those found in all states, Days the whole days with people
+	// counted, one entry for each state of a day; both in order of time.
+	Decays, Days []Event
 	// NeighbourShare is how far the zones of the same floor stood above outdoors
 	// during this zone's decays, as a share of this zone's own excess, median;
 	// NaN when unknown. Air that comes from them is no outdoor air: a decay
@@ -62,8 +63,9 @@ type Levels struct {
 	Category            string // the best category held for 95 % of known time
 }
 
-// Decay is one fall of CO2 after a room emptied.
-type Decay struct {
+// Event is one measurement of an air change rate: a fall of CO2 after a room
+// emptied, or a day with people counted, of which the steps in State count.
+type Event struct {
 	State         running.State
 	FromStep      int
 	ToStep        int // after the last reading used

@@ -247,12 +247,12 @@ func TestMedianInterval(t *testing.T) {
 		for i := range v {
 			v[i] = float64(i)
 		}
-		if low, high := medianInterval(v, 0); low != float64(want) || high != float64(n-1-want) {
+		if low, high := MedianInterval(v, 0); low != float64(want) || high != float64(n-1-want) {
 			t.Errorf("%d: %v to %v, want %d from each end", n, low, high, want)
 		}
 	}
 	// Three values: Student's t of 2 degrees of freedom is 4.303.
-	low, high := medianInterval([]float64{-1, 0, 1}, 0)
+	low, high := MedianInterval([]float64{-1, 0, 1}, 0)
 	near(t, "three", high, 4.303/math.Sqrt(3), 1e-3)
 	near(t, "three", low, -4.303/math.Sqrt(3), 1e-3)
 }

@@ -133,7 +133,7 @@ func fitSpell(in *Input, z int, at span, people func(int) float64, volumeM3, few
 			continue
 		}
 		shift := f.PerOutdoorPPM[r] * off
-		byState[state] = append(byState[state], measured{a, f.LogSE[r], math.Hypot(f.PerLogGeneration[r]*fewer, shift), math.Hypot(f.PerLogGeneration[r]*more, shift)})
+		byState[state] = append(byState[state], measured{a, f.LogSE[r], math.Hypot(f.PerLogGeneration[r]*fewer, shift), math.Hypot(f.PerLogGeneration[r]*more, shift), at})
 	}
 }
 
@@ -194,5 +194,5 @@ func rise(in *Input, z int, at span) (measured, bool) {
 	}
 	people := f.PerLogGeneration[0] * math.Log(1+in.Criteria.CO2PerPersonDoubtPct/100)
 	shift := math.Hypot(people, f.PerOutdoorPPM[0]*in.offsetDoubtPPM(z))
-	return measured{f.AirChangePerH[0], f.LogSE[0], shift, shift}, true
+	return measured{f.AirChangePerH[0], f.LogSE[0], shift, shift, at}, true
 }

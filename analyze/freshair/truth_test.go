@@ -225,7 +225,7 @@ func TestTruthRecovered(t *testing.T) {
 
 // truths are the true rates in a zone's decays of a state, one each, and in the
 // occupied steps of the state.
-func truths(in *Input, tr *demo.Truth, k int, s running.State, decays []Decay) (inDecays, inUse []float64) {
+func truths(in *Input, tr *demo.Truth, k int, s running.State, decays []Event) (inDecays, inUse []float64) {
 	for _, d := range decays {
 		if d.State == s {
 			inDecays = append(inDecays, trueRate(tr, k, d.FromStep, d.ToStep))
