@@ -24,9 +24,9 @@ func sampleAdded(n int) AddedHoursData {
 
 func sampleRates() GroupRatesData {
 	nan := math.NaN()
-	d := GroupRatesData{Caption: cap1("Air change by wind sector"), XTitle: "air change as a multiple of the zone's median", Usual: 1, UsualLabel: "usual for the zone", Counted: "decays"}
-	for s, name := range []string{"N", "NNE", "NE", "ENE", "E", "ESE", "SE", "SSE", "S", "SSW", "SW", "WSW", "W", "WNW", "NW", "NNW"} {
-		v := 1 + 0.4*math.Cos(float64(s-10)/16*2*math.Pi)
+	d := GroupRatesData{Caption: cap1("Air change by wind sector"), XTitle: "air change, times what is usual in the zone", Usual: 1, UsualLabel: "usual in the zone", Counted: "rates"}
+	for s, name := range []string{"N", "NE", "E", "SE", "S", "SW", "W", "NW"} {
+		v := 1 + 0.4*math.Cos(float64(s-5)/8*2*math.Pi)
 		g := GroupRate{name, Bounded{v, v * 0.8, v * 1.3}, 3 + s}
 		if s%5 == 1 {
 			g.Rate, g.Count = Bounded{nan, nan, nan}, s%3

@@ -24,15 +24,16 @@ type GroupRatesData struct {
 	Counted string
 }
 
-// GroupRate is one group: median and quartiles, NaN when it is too small.
+// GroupRate is one group: median and its 95 % interval, NaN when the group
+// cannot be judged.
 type GroupRate struct {
 	Group string
 	Rate  Bounded
 	Count int
 }
 
-// GroupRates draws a dot for the median of each group on a bar from quartile
-// to quartile, in the given order. Groups too small to judge show their count.
+// GroupRates draws a dot for the median of each group with a whisker for its
+// interval, in the given order. Groups that cannot be judged show their count.
 func GroupRates(d GroupRatesData, o Options) (SVG, error) {
 	o.record(d)
 	f, err := newFrame("group rates", d.Caption, o)
@@ -42,13 +43,13 @@ func GroupRates(d GroupRatesData, o Options) (SVG, error) {
 	if len(d.Groups) > maxZoneRows {
 		return "", f.errorf("%d groups: at most %d", len(d.Groups), maxZoneRows)
 	}
-	rows := zoneRows{xTitle: d.XTitle, most: 6, legend: []legendEntry{{label: "median", class: AchievedOK, dot: true}, {label: "middle half", band: rgb(0xB5D8EE)}}}
+	rows := zoneRows{xTitle: d.XTitle, most: 6, legend: []legendEntry{{label: "median", class: AchievedOK, dot: true}, {label: "holds 95 times in 100", line: inkText, width: 0.8}}}
 	most := 0.0
 	sty := align(sans(textSize, inkFaint), 0, -0.5)
 	text := func(g GroupRate) string {
 		t := fmt.Sprintf("%s %s", number(float64(g.Count), 0), clean(d.Counted))
 		if !drawable(g.Rate.Value) && g.Count > 0 {
-			t += ", too few"
+			t += ", not judged"
 		}
 		return t
 	}
@@ -72,14 +73,13 @@ func GroupRates(d GroupRatesData, o Options) (SVG, error) {
 	rows.hi = ceilNice(most, 6)
 	rows.draw = func(cv *canvas, c draw.Canvas, p *plot.Plot, from, to int, y func(int) vg.Length, h vg.Length) {
 		fx, _ := p.Transforms(&c)
-		cv.SetColor(rgb(0xB5D8EE))
-		for i := from; i < to; i++ {
-			if b := d.Groups[i].Rate; drawable(b.Value) && b.hasBounds() {
-				cv.Fill(rect(fx(b.Low), y(i)-h*0.28, fx(b.High), y(i)+h*0.28).Path())
-			}
-		}
 		if drawable(d.Usual) {
 			c.StrokeLine2(hline(inkFaint, 0.8, 3, 2), fx(d.Usual), c.Min.Y, fx(d.Usual), c.Max.Y)
+		}
+		for i := from; i < to; i++ {
+			if b := d.Groups[i].Rate; drawable(b.Value) && b.hasBounds() {
+				whisker(cv, c, fx(b.Low), fx(b.High), y(i), h*0.35, inkText)
+			}
 		}
 		cv.SetColor(AchievedOK.Look().Fill)
 		for i := from; i < to; i++ {

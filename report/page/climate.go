@@ -283,6 +283,9 @@ func (b *builder) comfortFields(c *climate.Result) []block {
 			case h == n:
 				name = fmt.Sprintf("above %g %s", f.HumidityEdges[n-1], unit)
 			}
+			if h > len(f.HumidityEdges) && fieldHours(f, h) == 0 {
+				continue // humidity is always known
+			}
 			var fields []chart.FieldHours
 			for t := range f.HoursH[h] {
 				x, k := f.HoursH[h][t], b.span.PerYear
@@ -298,4 +301,15 @@ func (b *builder) comfortFields(c *climate.Result) []block {
 	return []block{heading("Where the hours lay, and how comfortable they were"),
 		one("fields-outdoors", "Occupied hours by outdoor air and comfort", "Occupied hours of the average occupant by outdoor temperature and dew point, split by comfort indoors, hours "+b.span.Words+".", &c.Outdoors, "°C"),
 		one("fields-indoors", "Occupied hours by indoor air and comfort", "The same by indoor temperature and relative humidity.", &c.Indoors, "%")}
+}
+
+// fieldHours are all hours of one row of fields.
+func fieldHours(f *climate.Fields, row int) float64 {
+	sum := 0.0
+	for t := range f.HoursH[row] {
+		for _, h := range f.HoursH[row][t] {
+			sum += h
+		}
+	}
+	return sum
 }

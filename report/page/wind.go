@@ -5,7 +5,6 @@ import (
 	"math"
 
 	"sashlog/analyze/breeze"
-	"sashlog/analyze/running"
 	"sashlog/report/chart"
 	"sashlog/report/words"
 )
@@ -128,56 +127,7 @@ func (b *builder) facings(w *breeze.Result) []block {
 	return append(out, b.table(t))
 }
 
-// openRates counts the air change rates measured in open mode.
-func (b *builder) openRates() int {
-	n := 0
-	for _, z := range b.in.Results.FreshAir.Zones {
-		n += z.AirChange[running.Open].Events
-	}
-	return n
-}
-
 func (b *builder) heightWords(s *breeze.Speed) string {
 	return fmt.Sprintf("Speeds at the openings are those of the mast times %s: mast %g m high over %s, openings %g m over %s (ASHRAE Fundamentals ch. 24). The roughness of EN 16798-7 would give %s. Heights and terrain are settings; below the mean height of the obstacles about neither is reliable.",
 		words.Number(s.Factor, 2), s.MastM, words.Clean(s.MastTerrain), s.OpeningM, words.Clean(s.OpeningTerrain), words.Number(s.ENFactor, 2))
-}
-
-func (b *builder) driven(w *breeze.Result) []block {
-	out := []block{heading("Did the wind drive the air change?")}
-	d := w.Drive
-	if d == nil && b.openRates() > 0 {
-		return append(out, note("Not worked out: "+words.Plural(b.openRates(), "air change rate was", "air change rates were")+" measured in open mode, but single rates are not held against the wind yet."))
-	}
-	if d == nil || len(d.Points) == 0 {
-		return append(out, note("No air change rate was measured in open mode together with the wind, so this cannot be said. It takes rooms that empty with their windows open and CO2 well above outdoors."))
-	}
-	switch {
-	case math.IsNaN(d.SlopePerMS):
-		out = append(out, text("Too few measured air change rates to say."))
-	case d.Driven:
-		out = append(out, text(fmt.Sprintf("Yes: each m/s more at the openings came with %s of a zone's usual air change more (%s to %s).", words.Share(d.SlopePerMS), words.Share(d.SlopeLow), words.Share(d.SlopeHigh))))
-	default:
-		out = append(out, text(fmt.Sprintf("Not shown: the change per m/s lies between %s and %s times a zone's usual air change, which includes none.", words.Number(d.SlopeLow, 2), words.Number(d.SlopeHigh, 2))))
-	}
-	data := chart.GroupRatesData{Caption: chart.Caption{Title: "Air change in open mode by the sector the wind came from", Desc: "Median and middle half of measured air change rates as multiples of each zone's own median."},
-		XTitle: "air change as a multiple of the zone's median", Usual: 1, UsualLabel: "usual for the zone", Counted: "decays"}
-	for _, g := range d.Sectors {
-		data.Groups = append(data.Groups, chart.GroupRate{Group: g.Name, Rate: chart.Bounded{Value: g.Median, Low: g.Low, High: g.High}, Count: g.Decays})
-	}
-	out = append(out, b.draw("air-change-sectors", "Air change measured in open mode by the sector the wind came from. Sectors to the right of the line drive more air than usual through the zones.",
-		"No sector has enough measured air change rates to be drawn.", func(o chart.Options) (chart.SVG, error) { return chart.GroupRates(data, o) }))
-	t := table{ID: "air-change-wind", Caption: "Air change in open mode against the wind at the openings", Small: true,
-		Head: []column{col("Wind"), num("Decays"), num("Zones"), num("Median (per h)"), num("Times the zone's median"), num("Middle half")}}
-	for _, g := range append(append([]breeze.Group{}, d.Speeds...), d.Sides...) {
-		half := words.Dash
-		if !math.IsNaN(g.Low) {
-			half = words.Number(g.Low, 2) + " to " + words.Number(g.High, 2)
-		}
-		t.Rows = append(t.Rows, row(trimmed(words.Sentence(g.Name)), words.Count(int64(g.Decays)), words.Count(int64(g.Zones)), words.Number(g.MedianPerH, 1), words.Number(g.Median, 2), half))
-	}
-	t.Foot = []string{fmt.Sprintf("Groups of fewer than %d decays are not judged. Decays happen when rooms empty, mostly in the evening; temperature and opening area vary too.", d.Least)}
-	if d.NoWind > 0 {
-		t.Foot = append(t.Foot, words.Plural(d.NoWind, "decay", "decays")+" without a known wind left out.")
-	}
-	return append(out, b.table(t))
 }

@@ -29,7 +29,14 @@ func (in *Input) wind(rule privacy.Rule) any {
 			set("windward_share", num(f.WindwardShare)).set("windward_mean_m_s", num(f.MeanWindwardMS)))
 	}
 	return o.set("roses", roses).set("wanted_suited_h", num(w.WantedSuitedH)).set("facings", facings).
-		set("zones_without_direction", rule.IDs(in.zoneIDs(w.FacesUnknown))).set("ventilation", driveObject(w.Drive))
+		set("zones_without_direction", rule.IDs(in.zoneIDs(w.FacesUnknown))).set("ventilation", in.ventilation(w.Drive, rule))
+}
+
+func (in *Input) ventilation(d *breeze.Drive, rule privacy.Rule) any {
+	if d == nil {
+		return nil
+	}
+	return driveObject(d, rule.IDs(in.zoneIDs(d.Zones)))
 }
 
 func (in *Input) zoneIDs(zones []int) []string {
@@ -59,19 +66,23 @@ func roseObject(r *breeze.Rose) *object {
 		set("speed_classes", breeze.ClassNames).set("sectors", sectors)
 }
 
-func driveObject(d *breeze.Drive) any {
-	if d == nil {
-		return nil
-	}
+func driveObject(d *breeze.Drive, zones any) *object {
 	groups := func(list []breeze.Group) []any {
 		out := []any{}
 		for _, g := range list {
-			out = append(out, (&object{}).set("group", g.Name).set("decays", g.Decays).set("zones", g.Zones).
+			out = append(out, (&object{}).set("group", g.Name).set("rates", g.Rates()).set("decays", g.Decays).set("days", g.Days).set("zones", g.Zones).
 				set("relative", figure{num(g.Median), num(g.Low), num(g.High)}).set("median_per_h", num(g.MedianPerH)))
 		}
 		return out
 	}
-	return (&object{}).set("decays", len(d.Points)).set("decays_without_wind", d.NoWind).set("least_decays", d.Least).
+	decays := 0
+	for _, p := range d.Points {
+		if !p.Day {
+			decays++
+		}
+	}
+	return (&object{}).set("rates", len(d.Points)).set("decays", decays).set("days_counted", len(d.Points)-decays).set("rates_without_wind", d.NoWind).
+		set("rates_alone", d.Alone).set("least_rates", d.Least).set("zones", zones).set("different_days", d.Days).
 		set("slope_per_m_s", figure{num(d.SlopePerMS), num(d.SlopeLow), num(d.SlopeHigh)}).set("driven", d.Driven).
 		set("by_speed", groups(d.Speeds)).set("by_side", groups(d.Sides)).set("by_sector", groups(d.Sectors))
 }

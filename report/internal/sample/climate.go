@@ -108,18 +108,18 @@ func (m *maker) makeBreeze() {
 	b.Facings = []breeze.Facing{{FaceDeg: 180, Zones: zones, WindwardH: 90, LeewardH: 50, CalmH: 20, UnknownH: 5, WindwardShare: 0.5625, MeanWindwardMS: 1.7},
 		{FaceDeg: 0, Zones: zones[:1], WindwardH: 20, LeewardH: 120, CalmH: 20, UnknownH: 5, WindwardShare: 0.125, MeanWindwardMS: 1.1}}
 	nan := math.NaN()
-	d := &breeze.Drive{Least: 3, NoWind: 2, SlopePerMS: 0.2, SlopeLow: 0.1, SlopeHigh: 0.3, Driven: true, Points: make([]breeze.Point, 40)}
+	d := &breeze.Drive{Least: 3, NoWind: 2, SlopePerMS: 0.2, SlopeLow: 0.1, SlopeHigh: 0.3, Driven: true, Days: 31, Zones: zones[:1], Points: make([]breeze.Point, 40)}
 	group := func(name string, n int, v float64) breeze.Group {
-		g := breeze.Group{Name: name, Decays: n, Zones: min(n, 3), Median: v, Low: v * 0.7, High: v * 1.4, MedianPerH: 3 * v}
+		g := breeze.Group{Name: name, Decays: n / 2, Days: n - n/2, Zones: min(n, 3), Median: v, Low: v * 0.7, High: v * 1.4, MedianPerH: 3 * v}
 		if n < 3 {
 			g.Median, g.Low, g.High, g.MedianPerH = nan, nan, nan, nan
 		}
 		return g
 	}
 	d.Speeds = []breeze.Group{group("below 1 m/s", 12, 0.8), group("1 to 2 m/s", 16, 1), group("2 to 3 m/s", 9, 1.3), group("3 to 4 m/s", 3, 1.6), group("4 m/s and more", 0, 1)}
-	d.Sides = []breeze.Group{group("calm", 5, 0.7), group("windward", 20, 1.2), group("leeward", 15, 0.9), group("direction not known", 0, 1)}
-	for s, name := range breeze.SectorNames {
-		d.Sectors = append(d.Sectors, group(name, s%6, 0.8+float64(s)/30))
+	d.Sides = []breeze.Group{group("calm", 5, 0.7), group("windward", 20, 1.2), group("leeward", 15, 0.9), group("direction turning or not known", 0, 1)}
+	for s, name := range []string{"N", "NE", "E", "SE", "S", "SW", "W", "NW"} {
+		d.Sectors = append(d.Sectors, group(name, s%6, 0.8+float64(s)/15))
 	}
 	b.Drive = d
 }
