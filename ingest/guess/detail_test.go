@@ -138,23 +138,25 @@ func TestDamaged(t *testing.T) {
 	}
 }
 
-// TestWeatherFiles: a typical year and a public archive's hourly file are told
-// apart from logs; the year's place is proposed (Chicago O'Hare, 41.98 north,
-// 87.92 west, 201 m, in the file's first line).
+// TestWeatherFiles: a typical year is told apart from logs and its place
+// proposed (Chicago O'Hare, 41.98 north, 87.92 west, 201 m, in the file's first
+// line); a public station's hourly file is proposed as the site's weather.
 func TestWeatherFiles(t *testing.T) {
 	p, err := guess.Scan(context.Background(), guess.Options{Paths: []string{"../../testdata/real/weather-tmy3-isd"}, Into: t.TempDir()})
-	if err != nil || len(p.Logs) != 0 || p.Typical == nil {
+	if err != nil || len(p.Logs) != 1 || p.Typical == nil {
 		t.Fatalf("%v, %d logs, typical year %v", err, len(p.Logs), p.Typical)
 	}
 	if y := p.Typical; y.LatitudeDeg != 41.98 || y.LongitudeDeg != -87.92 || y.ElevationM != 201 {
 		t.Errorf("place %+v", y)
 	}
-	fixed := false
-	for _, f := range p.Files {
-		fixed = fixed || strings.Contains(f.What, "fixed columns")
+	found := map[site.Quantity]bool{}
+	for _, tr := range p.Tracks {
+		found[tr.Quantity] = true
 	}
-	if !fixed {
-		t.Errorf("the hourly file is not recognised: %v", p.Files)
+	for _, q := range []site.Quantity{site.OutdoorTemp, site.OutdoorDewPoint, site.WindSpeed, site.WindDirection, site.Rain} {
+		if !found[q] {
+			t.Errorf("%s is not proposed", q)
+		}
 	}
 }
 

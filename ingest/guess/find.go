@@ -1,7 +1,6 @@
 package guess
 
 import (
-	"bufio"
 	"bytes"
 	"fmt"
 	"io"
@@ -133,8 +132,6 @@ func (p *Proposal) special(f *logfile.File) string {
 		return "a points table of sashlog"
 	case strings.HasPrefix(line, "from,to,zones,kind"):
 		return "a diary of sashlog"
-	case fixedWidth(head):
-		return "hourly weather in fixed columns (temperature, dew point, pressure, wind, in universal time): recognised, but not proposed as a log; export the station as CSV with names of columns"
 	}
 	return ""
 }
@@ -151,28 +148,4 @@ func (p *Proposal) typical(f *logfile.File, line string) string {
 	}
 	p.Typical.Count++
 	return fmt.Sprintf("typical-year weather (EPW) of %s; never stands in for measured weather", strings.TrimSpace(c[1]))
-}
-
-// fixedWidth reports rows of twelve whole numbers that begin with a date: the
-// hourly weather files of public archives.
-func fixedWidth(head []byte) bool {
-	s := bufio.NewScanner(bytes.NewReader(head))
-	good := 0
-	for n := 0; s.Scan() && n < 20; n++ {
-		f := strings.Fields(s.Text())
-		if len(f) != 12 || strings.ContainsAny(s.Text(), ",;\t|") {
-			if good >= 10 {
-				break // the cut-off last line
-			}
-			return false
-		}
-		for i, lim := range [][2]int{{1900, 2200}, {1, 12}, {1, 31}, {0, 23}} {
-			v, err := strconv.Atoi(f[i])
-			if err != nil || v < lim[0] || v > lim[1] {
-				return false
-			}
-		}
-		good++
-	}
-	return good > 0
 }

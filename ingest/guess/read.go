@@ -147,6 +147,9 @@ func newOrOld(l *Log, s *shape, key string, v int) *adder {
 		t.Column, t.name, t.around = key, key, name
 	default:
 		t.Column, t.unitText = name, s.said[name]
+		if w, ok := s.rows.(interface{ StampedAtEnd(string) bool }); ok && w.StampedAtEnd(name) {
+			t.Stamp = site.StampEnd
+		}
 		if l.bySource {
 			t.Source = s.file.Base
 		}

@@ -12,6 +12,7 @@ import (
 	"sashlog/ingest/columnar"
 	"sashlog/ingest/logfile"
 	"sashlog/ingest/sheet"
+	"sashlog/ingest/station"
 	"sashlog/ingest/tabular"
 )
 
@@ -58,8 +59,11 @@ func (p *Proposal) look(ctx context.Context, f *logfile.File) []*shape {
 	}
 	if f.Kind != logfile.Workbook {
 		with := p.lookText
-		if f.Kind == logfile.Parquet {
+		switch {
+		case f.Kind == logfile.Parquet:
 			with = lookParquet
+		case station.Recognise(f):
+			with = lookStation
 		}
 		s, err := with(ctx, f)
 		if err != nil {
@@ -104,6 +108,18 @@ func lookParquet(ctx context.Context, f *logfile.File) (*shape, error) {
 	s.rows, s.said = c, c.Units()
 	s.notes = append(s.notes, "Parquet file")
 	s.notes = append(s.notes, c.Frame().Notes...)
+	return s, s.settle(ctx)
+}
+
+// lookStation looks at hourly weather of a public station.
+func lookStation(ctx context.Context, f *logfile.File) (*shape, error) {
+	s := &shape{file: f, style: cell.Style{Mark: '.', Declared: true}}
+	w, err := station.Open(&site.Site{}, &s.log, f, nil)
+	if err != nil {
+		return nil, errors.New(cause(err))
+	}
+	s.rows, s.said = w, w.Units()
+	s.notes = append(s.notes, "hourly weather of a public station in fixed columns, universal time")
 	return s, s.settle(ctx)
 }
 

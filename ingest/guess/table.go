@@ -35,7 +35,7 @@ func (p *Proposal) row(t *Track, source string, q site.Quantity) []string {
 	if q == "" {
 		unit = ""
 	}
-	return []string{clean(source), clean(t.Column), t.Owner, string(q), unit, logging, "", "", "", t.Values, placement, "", clean(t.Note())}
+	return []string{clean(source), clean(t.Column), t.Owner, string(q), unit, logging, string(t.Stamp), "", "", t.Values, placement, "", clean(t.Note())}
 }
 
 // clean keeps a cell on one line.

@@ -20,7 +20,9 @@ type Track struct {
 	// (the key of a long log's rows, the file, the sheet).
 	name, around string
 	unitText     string // unit written beside the values
-	index        int
+	// Stamp is where in its interval a value stands, empty when not known.
+	Stamp site.Stamp
+	index int
 
 	Guess
 	names *naming

@@ -18,6 +18,7 @@ import (
 	"sashlog/ingest/logfile"
 	"sashlog/ingest/reading"
 	"sashlog/ingest/sheet"
+	"sashlog/ingest/station"
 	"sashlog/ingest/tabular"
 )
 
@@ -232,6 +233,9 @@ func (o *opener) open(log *site.Log, f *logfile.File, points []int) (looked, err
 		return columnar.Open(o.site, log, f, wanted)
 	case logfile.Workbook:
 		return sheet.Open(o.site, log, f, wanted)
+	}
+	if station.Recognise(f) {
+		return station.Open(o.site, log, f, wanted)
 	}
 	return tabular.Open(o.site, log, f, wanted)
 }
