@@ -106,6 +106,9 @@ func Open(s *site.Site, log *site.Log, f *logfile.File, wanted []string) (*Book,
 	return b, nil
 }
 
+// rowsMost is how many rows a sheet has at most.
+const rowsMost = 1 << 20
+
 // eachRow calls fn with every row of a sheet, 1-based, until it returns false.
 func eachRow(ctx context.Context, x *excelize.File, sheet string, fn func(no int64, cells []string) bool) error {
 	rows, err := x.Rows(sheet)
@@ -114,6 +117,9 @@ func eachRow(ctx context.Context, x *excelize.File, sheet string, fn func(no int
 	}
 	defer rows.Close()
 	for no := int64(1); rows.Next(); no++ {
+		if no > rowsMost {
+			return fmt.Errorf("sheet %q: a row beyond %d, the most a workbook holds; hint: the workbook is damaged: save it again", sheet, rowsMost)
+		}
 		if no%1024 == 0 && ctx.Err() != nil {
 			return ctx.Err()
 		}
