@@ -1,11 +1,11 @@
 #!/usr/bin/env bash
 # Installs what the tests need beside Go: a browser for the report, tools that read PDF, the report's font, a C compiler for
-# the race detector, and into the cache folder the checks of accessibility that run in the browser. As root on Debian;
-# elsewhere it says what is missing.
+# the race detector, R and pandas for the worked examples of docs/, and into the cache folder the checks of accessibility that
+# run in the browser. As root on Debian; elsewhere it says what is missing.
 set -u
 axe=4.14.1 # the tests name the same version
 cache="${SASHLOG_CACHE:-${XDG_CACHE_HOME:-$HOME/.cache}/sashlog}"
-declare -A need=([chromium]=chromium [pdftotext]=poppler-utils [pdffonts]=poppler-utils [gcc]=gcc)
+declare -A need=([chromium]=chromium [pdftotext]=poppler-utils [pdffonts]=poppler-utils [gcc]=gcc [Rscript]=r-base-core)
 [ -s "$cache/axe-core-$axe/node_modules/axe-core/axe.min.js" ] || need[npm]=npm
 missing=()
 for program in "${!need[@]}"; do
@@ -14,6 +14,8 @@ done
 if ! { command -v fc-list >/dev/null 2>&1 && fc-list | grep -qi liberation; } && ! ls /usr/share/fonts/truetype/liberation* >/dev/null 2>&1; then
   missing+=(fonts-liberation)
 fi
+# Debian's own Python, since packages of it are no use to another.
+/usr/bin/python3 -c 'import pandas, matplotlib' >/dev/null 2>&1 || missing+=(python3-pandas python3-matplotlib)
 [ -e /usr/include/stdio.h ] || missing+=(libc6-dev)
 # A package by its exact version and nothing that runs at installation.
 checks() {

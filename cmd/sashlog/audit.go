@@ -56,6 +56,7 @@ where the occupied hours went, and writes into the output folder:
   comfort.parquet  hours outside each comfort criterion
   episodes.csv     the missed episodes and their causes
   readings.csv     what became of every logged point's readings
+  data-dictionary.csv  what every column and key of these files means
   figure-*         with --figures, every figure as SVG and its data as CSV
   report.pdf       with --pdf, where a Chromium browser is installed
 
@@ -286,6 +287,7 @@ func outputsOf(tables table.Input, pages page.Input) []output {
 		{"readings.csv", func(w io.Writer) error { return table.WriteReadingsCSV(w, tables) }},
 		{"results.json", func(w io.Writer) error { return table.WriteJSON(w, tables) }},
 		{"results.schema.json", func(w io.Writer) error { _, err := w.Write(table.Schema()); return err }},
+		{"data-dictionary.csv", table.WriteDictionary},
 		{"report.html", func(w io.Writer) error { return page.Write(w, pages) }},
 	}
 }
