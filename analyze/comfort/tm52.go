@@ -16,6 +16,7 @@ var TM52Doc = method.Doc{
 	Limits: []string{
 		"naturally ventilated hours; a screening for overheating, no comfort survey",
 		"the season is May to September north of the equator; south of it November to March (our assumption)",
+		"running mean between 10 and 30 °C, the range of EN 15251's lines (TM52 gives none of its own)",
 		"with data missing, shares are of the occupied hours that could be judged",
 		"TM59, bedrooms 22:00 to 07:00: above 26 °C for at most 1 % of the year's hours",
 	},

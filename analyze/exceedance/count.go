@@ -21,7 +21,7 @@ func (r *Result) Count(s *site.Site, c criteria.Settings, g *grid.Grid, out *out
 	cores.Each(len(r.Zones), func(z int) {
 		zone := &r.Zones[z]
 		cat := categoryOf(c, &s.Zones[z])
-		judges[z] = judgesOf(c, out, cat, &zone.Limits, run.Zones[z].PeopleCanOpen)
+		judges[z] = judgesOf(c, out, cat, &zone.Limits, run.Zones[z].PeopleCanOpen, s.Zones[z].FanSpeedMS)
 		judges[z] = append(judges[z], voteJudges(cat, &felt.Zones[z])...)
 		zone.Criteria = nil
 		for k := range judges[z] {

@@ -23,11 +23,19 @@ type judge struct {
 	votes *votes
 }
 
-// judgesOf lists the criteria of a zone in the order they are printed.
-func judgesOf(c criteria.Settings, out *outdoor.Outdoor, cat comfort.Category, l *Limits, hasAdaptive bool) []judge {
+// judgesOf lists the criteria of a zone in the order they are printed. fanMS is
+// the speed of a fan the zone's people can use, NaN without one: it raises the
+// upper adaptive limits of EN 16798-1 and ASHRAE 55.
+func judgesOf(c criteria.Settings, out *outdoor.Outdoor, cat comfort.Category, l *Limits, hasAdaptive bool, fanMS float64) []judge {
+	withFan := func(b comfort.Band) comfort.Band {
+		if !math.IsNaN(fanMS) {
+			b.HighC = comfort.WithAirMovementC(b.HighC, fanMS)
+		}
+		return b
+	}
 	js := []judge{headlineJudge(c, cat, l)}
 	for _, k := range []comfort.Category{comfort.CategoryI, comfort.CategoryII, comfort.CategoryIII} {
-		js = append(js, enJudge(out, k, l))
+		js = append(js, enJudge(out, k, l, withFan))
 	}
 	if hasAdaptive {
 		js = append(js, freeJudge(out, l, "en15251-"+lower(cat), "EN 15251 category "+cat.String()+" adaptive, in free-running steps; for comparison with older studies",
@@ -36,7 +44,7 @@ func judgesOf(c criteria.Settings, out *outdoor.Outdoor, cat comfort.Category, l
 		for _, a := range []comfort.Acceptability{comfort.Accept80, comfort.Accept90} {
 			js = append(js, freeJudge(out, l, fmt.Sprintf("ashrae55-%d", a), fmt.Sprintf("ASHRAE 55 adaptive, %d %% acceptability, in free-running steps", a),
 				"ASHRAE 55-2023 (read in public texts)", "ASHRAE 55 adaptive", true,
-				func(d *outdoor.Day) comfort.Band { return comfort.ASHRAE55Adaptive(d.RunningMeanASHRAEC, a) }))
+				func(d *outdoor.Day) comfort.Band { return withFan(comfort.ASHRAE55Adaptive(d.RunningMeanASHRAEC, a)) }))
 		}
 		js = append(js, imacJudge(out))
 	}
@@ -76,7 +84,7 @@ func headlineJudge(c criteria.Settings, cat comfort.Category, l *Limits) judge {
 }
 
 // enJudge is EN 16798-1 in one category, without our extensions.
-func enJudge(out *outdoor.Outdoor, cat comfort.Category, l *Limits) judge {
+func enJudge(out *outdoor.Outdoor, cat comfort.Category, l *Limits, withFan func(comfort.Band) comfort.Band) judge {
 	type ofDay struct {
 		free, fixed comfort.Band
 		model       Model
@@ -84,7 +92,7 @@ func enJudge(out *outdoor.Outdoor, cat comfort.Category, l *Limits) judge {
 	days := make([]ofDay, len(out.Days))
 	for d := range out.Days {
 		season, model := seasonOf(out.Days[d].RunningMeanENC)
-		days[d] = ofDay{comfort.EN16798Adaptive(out.Days[d].RunningMeanENC, cat), comfort.OfficeRange(cat, season), model}
+		days[d] = ofDay{withFan(comfort.EN16798Adaptive(out.Days[d].RunningMeanENC, cat)), comfort.OfficeRange(cat, season), model}
 	}
 	return judge{
 		id: "en16798-1-" + lower(cat), words: "EN 16798-1 category " + cat.String() + " as published: adaptive within a running mean of 10 to 30 °C, operative ranges with plant",

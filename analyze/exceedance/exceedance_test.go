@@ -236,10 +236,10 @@ func TestHeadline(t *testing.T) {
 // hour between two runs of plant, but a spell at the record's ends counts.
 func TestShortFreeSpells(t *testing.T) {
 	off, cool := site.PlantOff, site.PlantCool
-	d := newDay(20, make([]float64, 7), []site.PlantState{off, cool, off, cool, off, off, cool})
+	d := newDay(20, make([]float64, 8), []site.PlantState{off, cool, off, cool, off, off, off, cool})
 	d.c.AdaptiveAfterH, d.c.AdaptiveLeastMin = 0, 90
 	got := d.result().Zones[0].Limits.Free
-	for i, want := range []bool{true, false, false, false, true, true, false} {
+	for i, want := range []bool{true, false, false, false, false, true, true, false} {
 		if got[i] != want {
 			t.Errorf("step %d: free %v, want %v", i, got[i], want)
 		}
@@ -259,5 +259,65 @@ func TestPlantUnknown(t *testing.T) {
 	}
 	if c = criterion(t, d.result(), "en16798-1-ii"); c.AppliesH != 2 || c.UnknownH != 2 {
 		t.Errorf("as published: %+v", c)
+	}
+}
+
+// A fan of 0.9 m/s raises the published criteria too (ASHRAE 55 Table 5-13;
+// EN 16798-1 the same): at a running mean of 20 °C 28.4 + 1.8 and 27.5 + 1.8 °C.
+func TestFanInPublishedCriteria(t *testing.T) {
+	d := newDay(20, []float64{29.2, 30.1, 30.3}, states(3, site.PlantOff))
+	for _, tt := range []struct {
+		id           string
+		still, moved float64
+	}{{"en16798-1-ii", 3, 1}, {"ashrae55-80", 3, 2}, {"en15251-ii", 3, 3}} {
+		d.s.Zones[0].FanSpeedMS = nan
+		if c := criterion(t, d.result(), tt.id); c.OverH != tt.still {
+			t.Errorf("%s without a fan: %g h over, want %g", tt.id, c.OverH, tt.still)
+		}
+		d.s.Zones[0].FanSpeedMS = 0.9
+		if c := criterion(t, d.result(), tt.id); c.OverH != tt.moved {
+			t.Errorf("%s with a fan: %g h over, want %g", tt.id, c.OverH, tt.moved)
+		}
+	}
+}
+
+// In steps with plant running moving air counts by ASHRAE 55: at 28 °C a fan
+// that is on brings the vote from beyond 0.5 to within it; ISO 7730's own vote
+// beside it stays beyond (27 °C, 0.3 m/s: 0.44 in Table D.1; 28 °C is warmer).
+func TestMovingAirWithPlant(t *testing.T) {
+	d := newDay(20, []float64{28, 28}, states(2, site.PlantCool))
+	d.s.Zones[0].FanSpeedMS = 0.8
+	d.in[0].FanOn = []float32{0, 1}
+	c := criterion(t, d.result(), "ashrae55-pmv")
+	if c.AppliesH != 2 || c.OverH != 1 || c.UnderH != 0 {
+		t.Errorf("%+v: want the hour without the fan over", c)
+	}
+	// Beyond ISO 7730's range (32 °C of air) an hour is too warm or not judged,
+	// never comfortable.
+	d = newDay(20, []float64{32, 32}, states(2, site.PlantCool))
+	d.c.ClothingClo = 0.3
+	d.s.Zones[0].FanSpeedMS = 1.2
+	d.in[0].FanOn = []float32{0, 1}
+	c = criterion(t, d.result(), "ashrae55-pmv")
+	if c.OverH < 1 || c.OverH+c.NotApplicableH != 2 {
+		t.Errorf("beyond the range: %+v", c)
+	}
+}
+
+// Neither model holds for less than half an hour: a plant step shorter than
+// that keeps the operative range for as long, and a gap between two plant runs
+// shorter than that stays with it.
+func TestLeastSpell(t *testing.T) {
+	plant := states(24, site.PlantOff)
+	plant[5], plant[12], plant[16] = site.PlantCool, site.PlantCool, site.PlantCool
+	d := newDay(20, make([]float64, 24), plant)
+	d.g.StepS = 600
+	d.c.AdaptiveAfterH, d.c.AdaptiveLeastMin = 0, 30
+	free := d.result().Zones[0].Limits.Free
+	for i, f := range free {
+		want := !(i >= 5 && i <= 7 || i >= 12 && i <= 18)
+		if f != want {
+			t.Errorf("step %d: free %v, want %v", i, f, want)
+		}
 	}
 }

@@ -151,16 +151,18 @@ func limitsOfZone(g *grid.Grid, out *outdoor.Outdoor, free []bool, days []dayLim
 
 // freeRunning marks the steps in which a zone counts as free-running: its
 // people can open windows, and neither heating nor cooling nor plant of
-// unknown kind runs or ran within AdaptiveAfterH. Spells shorter than
-// AdaptiveLeastMin stay with the operative range, so that the criterion does
-// not change from step to step.
+// unknown kind runs or ran within AdaptiveAfterH. Free spells shorter than
+// AdaptiveLeastMin stay with the operative range, and the range holds at least
+// as long, so that the criterion does not change from step to step.
 func freeRunning(c criteria.Settings, g *grid.Grid, run *running.Zone) []bool {
 	free := make([]bool, g.N)
 	if !run.PeopleCanOpen {
 		return free
 	}
-	wait := int(math.Ceil(c.AdaptiveAfterH*3600/float64(g.StepS) - 1e-9))
-	since := wait // the record begins as if the plant had been off
+	steps := func(seconds float64) int { return int(math.Ceil(seconds/float64(g.StepS) - 1e-9)) }
+	least := steps(c.AdaptiveLeastMin * 60)
+	wait := max(steps(c.AdaptiveAfterH*3600), least-1) // the step that ran is one itself
+	since := wait                                      // the record begins as if the plant had been off
 	for i := range free {
 		switch run.Plant[i] {
 		case uint8(site.PlantOff), uint8(site.PlantVent):
@@ -170,7 +172,6 @@ func freeRunning(c criteria.Settings, g *grid.Grid, run *running.Zone) []bool {
 			since = 0
 		}
 	}
-	least := int(math.Ceil(c.AdaptiveLeastMin*60/float64(g.StepS) - 1e-9))
 	for from := 0; from < len(free); {
 		to := from + 1
 		for to < len(free) && free[to] == free[from] {

@@ -37,8 +37,11 @@ func assessZone(in *Input, z int, spans *spanIndex) Zone {
 			t = float64(room.OperativeC[i])
 		}
 		day := int(in.Outdoor.DayOf[i])
-		tm52.Add(day, comfort.TM52InSeason(int(in.Outdoor.Days[day].Date.Month), in.Site.Southern()), h, t,
-			comfort.TM52MaxC(in.Outdoor.Days[day].RunningMeanENC, cat))
+		if mean := in.Outdoor.Days[day].RunningMeanENC; mean > 10 && mean < 30 || math.IsNaN(mean) {
+			tm52.Add(day, comfort.TM52InSeason(int(in.Outdoor.Days[day].Date.Month), in.Site.Southern()), h, t, comfort.TM52MaxC(mean, cat))
+		} else {
+			out.TM52OutsideH += h // EN 15251's lines end here
+		}
 		low, high := float64(lim.LowC[i]), float64(lim.HighC[i])
 		known := !math.IsNaN(t) && (!math.IsNaN(low) || !math.IsNaN(high))
 		over, under := known && milli(t) > milli(high), known && milli(t) < milli(low)

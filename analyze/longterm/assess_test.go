@@ -149,6 +149,24 @@ func TestAverageHidesAFew(t *testing.T) {
 	}
 }
 
+// EN 15251's lines end at a running mean of 10 and 30 °C: such days enter no
+// criterion of TM52 and are counted. A southern season is November to March.
+func TestTM52OutsideItsLines(t *testing.T) {
+	for _, mean := range []float64{10, 30, 9, 33} {
+		z := Assess(hourly(time.Date(2025, 7, 1, 9, 0, 0, 0, time.UTC), mean, []float64{1}, 20, 27, []float32{40, 40})).Zones[0]
+		if z.TM52OutsideH != 2 || z.TM52.AnythingJudged || z.TM52.UnknownH != 0 {
+			t.Errorf("running mean %g: %+v, outside %g h", mean, z.TM52, z.TM52OutsideH)
+		}
+	}
+	for month, want := range map[time.Month]float64{time.July: 0, time.January: 2, time.October: 0, time.November: 2, time.March: 2} {
+		in := hourly(time.Date(2025, month, 1, 9, 0, 0, 0, time.UTC), 20, []float64{1}, 20, 27, []float32{26, 26})
+		in.Site.LatitudeDeg = -33
+		if r := Assess(in); r.Zones[0].TM52.SeasonH != want || !r.Southern {
+			t.Errorf("%s in the south: %g h in season, want %g", month, r.Zones[0].TM52.SeasonH, want)
+		}
+	}
+}
+
 // CIBSE TM59:2017: 3285 night hours a year allow 32 hours above 26 °C in a
 // bedroom and not 33; day hours count for neither. A living room has only
 // criterion a; a room whose people cannot open windows is held to 3 % of its

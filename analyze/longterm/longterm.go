@@ -53,7 +53,10 @@ type Zone struct {
 	// TM52Date is the day with the greatest weighted exceedance.
 	TM52     comfort.TM52Result
 	TM52Date site.Date
-	Home     Home
+	// TM52OutsideH are occupied hours with a running mean beyond 10 to 30 °C,
+	// the range of EN 15251's lines; they enter none of the three criteria.
+	TM52OutsideH float64
+	Home         Home
 	// Deviations say how the time outside spreads over days, weeks, months and
 	// the whole period.
 	Deviations []Deviation
@@ -137,7 +140,7 @@ var Doc = method.Doc{
 	Limits: []string{
 		"methods A and B use the headline limits; the optimum of method B is the middle of the limits (our assumption)",
 		"methods C to E leave out steps in which the predicted mean vote is outside the range of ISO 7730",
-		"TM52 was written for buildings without cooling: here a calculation over all occupied hours; its season in the south is November to March (our assumption)",
+		"TM52 was written for buildings without cooling: here a calculation over all occupied hours; its season in the south is November to March (our assumption); days beyond a running mean of 10 to 30 °C, where EN 15251's lines end, are left out and counted",
 		"TM59 only where the site file names a bedroom, living room or kitchen: of the hours audited, as far as known, not of a whole year where less was audited (our reading); 3 % of occupied hours above 26 °C where people cannot open windows",
 		"spans of which less than half the occupied time is known do not count",
 	},

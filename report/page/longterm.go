@@ -46,7 +46,7 @@ func (b *builder) longTerm(zones []int, foot string) []block {
 	if lt.Southern {
 		season = "November to March (our reading of a southern season)"
 	}
-	t.Foot = []string{"TM52 limits: 3 % of occupied time from " + season + ", 6 K·h on the worst day, 4 K at any time; written for buildings without cooling, so here a calculation only. " +
+	t.Foot = []string{"TM52 limits: 3 % of occupied time from " + season + ", 6 K·h on the worst day, 4 K at any time; only days with a running mean of 10 to 30 °C, where its limits end; written for buildings without cooling, so here a calculation only. " +
 		"Weighted hours count more the further a zone is outside (ISO 7730 Annex H, method B), " + b.span.Words + ". Days and weeks: those with more than 5 % of known occupied time outside, of those at least half known. " +
 		words.Dash + " not known."}
 	if foot != "" {

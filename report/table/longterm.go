@@ -26,7 +26,7 @@ func (in *Input) longTerm(z int) any {
 		set("iso7730_d_percent", num(o.MeanPPDPct)).set("iso7730_e_percent_h", num(o.SumPPDPctH)).set("vote_h", num(o.VoteH)).set("no_vote_h", num(o.NoVoteH)).
 		set("tm52", (&object{}).set("judged", tm.AnythingJudged).set("season_h", num(tm.SeasonH)).set("exceeded_h", num(tm.ExceededH)).
 			set("exceeded_share", num(tm.ExceededShare)).set("worst_day_kh", num(tm.WorstDayKh)).set("max_excess_k", num(tm.MaxExcessK)).
-			set("unknown_h", num(tm.UnknownH)).set("fails", tm.Fails[:]).set("overheats", tm.Overheats)).
+			set("unknown_h", num(tm.UnknownH)).set("outside_range_h", num(o.TM52OutsideH)).set("fails", tm.Fails[:]).set("overheats", tm.Overheats)).
 		set("tm59", home(&o.Home)).set("deviations", deviations)
 }
 
