@@ -18,6 +18,9 @@ type Baseline struct {
 	OffsetPPM float64 // median over weeks, NaN with fewer than 2
 	SpreadPPM float64 // half the range over weeks
 	Weeks     int
+	// ExplainedPPM is how far sensor and outdoor level may be off by themselves;
+	// an offset beyond it has another cause.
+	ExplainedPPM float64
 	// Corrected: the offset was taken off. Why says why not, where it was asked.
 	Corrected bool
 	Why       string
@@ -65,12 +68,12 @@ func Baselines(c criteria.Settings, rooms []indoor.Zone, o *outdoor.Outdoor, g *
 	for z := range rooms {
 		b := BaselineOf(rooms[z].CO2PPM, o, g)
 		// What the sensor and the outdoor level may be off by explains so much.
-		most := math.Hypot(c.AccuracyCO2PPM+c.AccuracyCO2Pct/100*o.CO2DefaultPPM, c.OutdoorCO2DoubtPPM)
+		b.ExplainedPPM = math.Hypot(c.AccuracyCO2PPM+c.AccuracyCO2Pct/100*o.CO2DefaultPPM, c.OutdoorCO2DoubtPPM)
 		switch {
 		case c.CO2Baseline != "corrected" || rooms[z].CO2PPM == nil:
 		case math.IsNaN(b.OffsetPPM):
 			b.Why = "fewer than two weeks of CO2"
-		case math.Abs(b.OffsetPPM) > most:
+		case math.Abs(b.OffsetPPM) > b.ExplainedPPM:
 			b.Why = "the offset is more than sensor and outdoor level explain: the room may never be aired out, or the sensor may be broken"
 		default:
 			b.Corrected = true

@@ -133,13 +133,13 @@ func (out *Zone) airChanges(in *Input, z int) {
 		if !counted {
 			a.Estimates[1], a.Estimates[3] = unused, balance
 		}
-		a.take(in, z, len(t.events))
+		a.take(in, z, running.State(s), len(t.events))
 		out.judge(s)
 	}
 	for _, events := range [][]Event{out.Decays, out.Days} {
 		slices.SortStableFunc(events, func(a, b Event) int { return a.FromStep - b.FromStep })
 	}
-	out.NeighbourShare = neighbourShare(in, z, out.Decays)
+	out.neighbours(in, z)
 }
 
 // stands are the ways whose rate may stand for a state. The others are shown
@@ -148,7 +148,7 @@ func (out *Zone) airChanges(in *Input, z int) {
 var stands = map[Way]bool{ByDecay: true, ByCounted: true}
 
 // take makes the most trusted way that is measurable the state's rate.
-func (a *AirChange) take(in *Input, z int, decays int) {
+func (a *AirChange) take(in *Input, z int, s running.State, decays int) {
 	nan := math.NaN()
 	a.MedianPerH, a.LowPerH, a.HighPerH, a.FromPerH, a.ToPerH = nan, nan, nan, nan, nan
 	a.FlowLs, a.FlowLsPerson, a.AtUsualPeoplePPM = nan, nan, nan
@@ -162,7 +162,9 @@ func (a *AirChange) take(in *Input, z int, decays int) {
 		a.NotMeasurable, a.Events, a.Way, a.Method = "", e.Events, e.Way, wayMethods[e.Way]
 		break
 	}
-	a.UpperOnly = a.MedianPerH < slowPerH && len(in.Site.Zones) > 1
+	a.NeighbourPer10LsPerH = nan
+	closed := s == running.Shut && in.Running.Zones[z].NoOpening
+	a.UpperOnly = (a.MedianPerH < slowPerH || closed && a.MedianPerH > 0) && len(in.Site.Zones) > 1
 	zone := &in.Site.Zones[z]
 	volume := zone.AreaM2 * zone.HeightM
 	if math.IsNaN(a.MedianPerH) || !(volume > 0) {
@@ -216,35 +218,47 @@ var wayMethods = map[Way]string{
 	ByScheduled: "balance of CO2 over whole days with the usual people in occupied time (Batterman 2017, at second hand): an upper value, since rarely all are there",
 }
 
-// neighbourShare is the median over decays of the mean excess of the zones on
-// the same floor over this zone's.
-func neighbourShare(in *Input, z int, decays []Event) float64 {
+// neighbours states how far the zones of the same floor stood above outdoors
+// in this zone's decays, and what air exchanged with them adds to their rate.
+func (out *Zone) neighbours(in *Input, z int) {
+	var shares [running.NumStates][]float64
+	for _, d := range out.Decays {
+		if share := neighbourShare(in, z, d); !math.IsNaN(share) {
+			shares[d.State] = append(shares[d.State], share)
+		}
+	}
+	volume := in.Site.Zones[z].AreaM2 * in.Site.Zones[z].HeightM
+	for s := range shares {
+		out.NeighbourShare[s] = median(shares[s])
+		if a := &out.AirChange[s]; volume > 0 && a.Way == ByDecay {
+			a.NeighbourPer10LsPerH = (1 - out.NeighbourShare[s]) * 10 * 3.6 / volume
+		}
+	}
+}
+
+// neighbourShare is the mean excess of the zones on the same floor over this
+// zone's own, in the steps of a decay in which both are known.
+func neighbourShare(in *Input, z int, d Event) float64 {
 	if in.Site.Zones[z].Floor == "" {
 		return math.NaN()
 	}
-	var shares []float64
-	for _, d := range decays {
-		own, others, n := 0.0, 0.0, 0
-		for i := d.FromStep; i < d.ToStep; i++ {
-			mine := float64(in.Indoor[z].CO2PPM[i]) - in.Outdoor.OutdoorCO2(i)
-			if math.IsNaN(mine) {
+	own, others := 0.0, 0.0
+	for i := d.FromStep; i < d.ToStep; i++ {
+		mine := float64(in.Indoor[z].CO2PPM[i]) - in.Outdoor.OutdoorCO2(i)
+		if math.IsNaN(mine) {
+			continue
+		}
+		for k := range in.Site.Zones {
+			if k == z || in.Site.Zones[k].Floor != in.Site.Zones[z].Floor || in.Indoor[k].CO2PPM == nil {
 				continue
 			}
-			for k := range in.Site.Zones {
-				if k == z || in.Site.Zones[k].Floor != in.Site.Zones[z].Floor || in.Indoor[k].CO2PPM == nil {
-					continue
-				}
-				if c := float64(in.Indoor[k].CO2PPM[i]); !math.IsNaN(c) {
-					own, others, n = own+mine, others+math.Max(0, c-in.Outdoor.OutdoorCO2(i)), n+1
-				}
+			if c := float64(in.Indoor[k].CO2PPM[i]); !math.IsNaN(c) {
+				own, others = own+mine, others+math.Max(0, c-in.Outdoor.OutdoorCO2(i))
 			}
 		}
-		if n > 0 && own > 0 {
-			shares = append(shares, others/own)
-		}
 	}
-	if len(shares) == 0 {
+	if !(own > 0) {
 		return math.NaN()
 	}
-	return median(shares)
+	return others / own
 }

@@ -28,10 +28,10 @@ type Zone struct {
 	// counted, one entry for each state of a day; both in order of time.
 	Decays, Days []Event
 	// NeighbourShare is how far the zones of the same floor stood above outdoors
-	// during this zone's decays, as a share of this zone's own excess, median;
-	// NaN when unknown. Air that comes from them is no outdoor air: a decay
-	// measures outdoor air plus (1 - share) of the air exchanged with them.
-	NeighbourShare float64
+	// during this zone's decays, per state, as a share of this zone's own excess,
+	// median; NaN when unknown. Air that comes from them is no outdoor air: a
+	// decay measures outdoor air plus (1 - share) of the air exchanged with them.
+	NeighbourShare [running.NumStates]float64
 	// Required are the amounts of outdoor air asked for, Verdicts how each
 	// state's measured flow stands to them.
 	Required []Requirement
@@ -108,9 +108,13 @@ type AirChange struct {
 	FlowLs, FlowLsPerson          float64 // NaN without volume or people
 	Events                        int
 	Way                           Way
-	// UpperOnly: so slow that air exchanged with neighbours, which counts as
-	// outdoor air, may be most of it.
+	// UpperOnly: air exchanged with neighbours, which counts as outdoor air, may
+	// be most of it: the rate is slow, or the zone has no opening to outdoors and
+	// no plant runs.
 	UpperOnly bool
+	// NeighbourPer10LsPerH is what each 10 L/s exchanged with neighbours adds to
+	// the rate by decays, 1/h; NaN where their level or the volume is unknown.
+	NeighbourPer10LsPerH float64
 	// Estimates are all ways, in the order of trust.
 	Estimates     []Estimate
 	Method        string

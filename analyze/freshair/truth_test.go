@@ -1,8 +1,12 @@
 package freshair
 
 import (
+	"cmp"
+	"maps"
 	"math"
 	"math/rand/v2"
+	"os"
+	"slices"
 	"testing"
 	"time"
 
@@ -37,8 +41,8 @@ func demoSettings() criteria.Settings {
 
 // demoInput reads the truth of the invented building with sensors that have an
 // offset (8 ppm standard deviation), noise (6 ppm) and a resolution of 1 ppm,
-// like those of its logs. Counters are those of all zones when counted.
-func demoInput(t *testing.T, o demo.Options, counted bool) (Input, *demo.Truth) {
+// like those of its logs. Nobody is counted.
+func demoInput(t *testing.T, o demo.Options) (Input, *demo.Truth) {
 	t.Helper()
 	tr, err := demo.Simulate(o)
 	if err != nil {
@@ -56,7 +60,8 @@ func demoInput(t *testing.T, o demo.Options, counted bool) (Input, *demo.Truth) 
 		r := demoRooms[z.ID]
 		in.Site.Zones = append(in.Site.Zones, site.Zone{ID: z.ID, AreaM2: r.areaM2, HeightM: r.heightM, People: r.people, Floor: z.ID[1:2]})
 		co2, bias := make([]float32, tr.N), 8*rng.NormFloat64()
-		run := running.Zone{State: make([]running.State, tr.N), Occupied: make([]running.Occupancy, tr.N), Plant: z.Plant, OpenShare: z.OpenShare}
+		run := running.Zone{State: make([]running.State, tr.N), Occupied: make([]running.Occupancy, tr.N), Plant: z.Plant, OpenShare: z.OpenShare,
+			NoOpening: !r.facade && z.ID != "L2.03"} // that room opens through another
 		for i := range co2 {
 			co2[i] = float32(math.Round(float64(z.CO2PPM[i]) + bias + 6*rng.NormFloat64()))
 			open, on := z.OpenShare[i] > 0.05, z.Plant[i] != uint8(site.PlantOff)
@@ -73,11 +78,7 @@ func demoInput(t *testing.T, o demo.Options, counted bool) (Input, *demo.Truth) 
 				run.Occupied[i] = running.Occupied
 			}
 		}
-		room := indoor.Zone{CO2PPM: co2}
-		if counted {
-			room.People = z.People
-		}
-		in.Indoor = append(in.Indoor, room)
+		in.Indoor = append(in.Indoor, indoor.Zone{CO2PPM: co2})
 		in.Running.Zones = append(in.Running.Zones, run)
 	}
 	plants := map[string][]string{}
@@ -88,6 +89,15 @@ func demoInput(t *testing.T, o demo.Options, counted bool) (Input, *demo.Truth) 
 		in.Site.Plant = append(in.Site.Plant, site.Plant{ID: p.ID, Serves: plants[p.ID]})
 	}
 	return in, &tr
+}
+
+// counted gives every zone a counter of people.
+func counted(in Input, tr *demo.Truth) Input {
+	in.Indoor = slices.Clone(in.Indoor)
+	for k := range in.Indoor {
+		in.Indoor[k].People = tr.Zones[k].People
+	}
+	return in
 }
 
 // trueRate is the outdoor air change of a zone over steps: openings, plant, and
@@ -137,89 +147,150 @@ func (s *score) typical() float64 {
 
 func (s *score) coverage() float64 { return float64(s.covered) / float64(s.n) }
 
-// The invented building's known flows, over many seeds. Rooms whose unit brings
-// outdoor air must be recovered with intervals that hold; rooms with ceiling
-// units have little air of their own, and what comes through doors from
-// neighbours counts as outdoor air in any balance of one room, so for them only
-// the upper bound is held. Core rooms and the meeting room, which live on their
-// neighbours' air, are left out. The tolerances are what was found over twelve
-// seeds, with a margin; nothing published sets them.
-func TestTruthRecovered(t *testing.T) {
-	if testing.Short() {
-		t.Skip("simulates a building many times")
+// under is how often the truth lies below the upper bound.
+func (s *score) under() float64 { return float64(s.below) / float64(s.n) }
+
+// kindOf sorts the zones of the invented building by where their air comes from.
+func kindOf(id string) string {
+	switch r := demoRooms[id]; {
+	case !r.facade || id == "L2.05":
+		return "neighbours' air" // core rooms, and a meeting room aired through doors
+	case r.plant[:3] == "FCU":
+		return "ceiling unit"
 	}
-	type key struct {
-		way     Way
-		state   running.State
-		ceiling bool
+	return "own air"
+}
+
+// tableKey names a row of the table of errors.
+type tableKey struct {
+	what, state, kind string
+}
+
+// errorTable is how the estimates of many buildings compare with the truth.
+type errorTable struct {
+	scores                              map[tableKey]*score
+	upper, upperHeld, right, wrong, few int
+}
+
+func (e *errorTable) at(what, state, kind string) *score {
+	k := tableKey{what, state, kind}
+	if e.scores[k] == nil {
+		e.scores[k] = &score{}
 	}
-	scores := map[key]*score{}
-	upper, upperHeld, right, wrong := 0, 0, 0, 0
-	for seed := uint64(1); seed <= 8; seed++ {
-		for _, counted := range []bool{true, false} {
-			in, tr := demoInput(t, demo.Options{Seed: seed, From: site.Date{Year: 2025, Month: 4, Day: 1}, Days: 60}, counted)
-			r := Assess(in)
-			for k := range r.Zones {
-				z, room := &r.Zones[k], demoRooms[tr.Zones[k].ID]
-				if !room.facade || tr.Zones[k].ID == "L2.05" {
-					continue
+	return e.scores[k]
+}
+
+// stated and flagged are the rates that stand for a state, without and with the
+// mark that they are upper values.
+const stated, flagged = "stated", "stated as upper value"
+
+// add assesses one building, with its people counted or not.
+func (e *errorTable) add(in Input, tr *demo.Truth) {
+	r := Assess(in)
+	for k := range r.Zones {
+		z, kind := &r.Zones[k], kindOf(tr.Zones[k].ID)
+		for s := running.Open; s < running.NumStates; s++ {
+			inDecays, inUse := truths(&in, tr, k, s, z.Decays)
+			a := &z.AirChange[s]
+			for i := range a.Estimates {
+				x := &a.Estimates[i]
+				truth := inUse
+				if x.Way == ByDecay {
+					truth = inDecays
 				}
-				for s := running.Open; s < running.NumStates; s++ {
-					inDecays, inUse := truths(&in, tr, k, s, z.Decays)
-					for i := range z.AirChange[s].Estimates {
-						e := &z.AirChange[s].Estimates[i]
-						at := key{e.Way, s, room.plant[:3] == "FCU"}
-						truth := inUse
-						if e.Way == ByDecay {
-							truth = inDecays
+				if tr.Zones[k].ID == "L2.03" && (s == running.Open || s == running.Both) {
+					truth = nil // its truth is air from the room it opens through, not from outdoors
+				}
+				switch {
+				case x.NotMeasurable != "" || len(truth) == 0:
+				case x.Way == ByScheduled:
+					e.upper++
+					if median(truth) < x.HighPerH {
+						e.upperHeld++
+					}
+				default:
+					e.at(string(x.Way), s.String(), kind).add(x, median(truth))
+					if x.Way == a.Way {
+						what := stated
+						if a.UpperOnly {
+							what = flagged
 						}
-						switch {
-						case e.NotMeasurable != "" || len(truth) == 0:
-						case e.Way == ByScheduled:
-							upper++
-							if median(truth) < e.HighPerH {
-								upperHeld++
-							}
-						default:
-							if scores[at] == nil {
-								scores[at] = &score{}
-							}
-							scores[at].add(e, median(truth))
-						}
+						e.at(what, "all", kind).add(x, median(truth))
+						e.at(what, "all", "all").add(x, median(truth))
 					}
 				}
-			}
-			for _, p := range r.Plants {
-				switch ceiling := tr.Plants[p.Plant].ID[:3] == "FCU"; {
-				case p.Finding == BringsAir && !ceiling, p.Finding == BringsNone && ceiling:
-					right++
-				case p.Finding == BringsAir, p.Finding == BringsNone:
-					wrong++
+				if x.Way == ByDecay && x.NotMeasurable == "" && x.Events < in.Criteria.MinDecayEvents {
+					e.few++
 				}
 			}
 		}
 	}
+	for _, p := range r.Plants {
+		switch ceiling := tr.Plants[p.Plant].ID[:3] == "FCU"; {
+		case p.Finding == BringsAir && !ceiling, p.Finding == BringsNone && ceiling:
+			e.right++
+		case p.Finding == BringsAir, p.Finding == BringsNone:
+			e.wrong++
+		}
+	}
+}
+
+func (e *errorTable) log(t *testing.T) {
+	keys := slices.SortedFunc(maps.Keys(e.scores), func(a, b tableKey) int {
+		return cmp.Or(cmp.Compare(a.what, b.what), cmp.Compare(a.state, b.state), cmp.Compare(a.kind, b.kind))
+	})
+	t.Logf("%-24s %-5s %-15s %4s %5s %7s %8s %6s", "way", "state", "zones", "n", "bias", "half in", "interval", "upper")
+	for _, k := range keys {
+		x := e.scores[k]
+		t.Logf("%-24s %-5s %-15s %4d %5.2f   x%.2f %6.0f %% %4.0f %%", k.what, k.state, k.kind, x.n, x.bias(), x.typical(), 100*x.coverage(), 100*x.under())
+	}
+	t.Logf("with usual people: %d of %d upper values held; plant: %d right, %d wrong", e.upperHeld, e.upper, e.right, e.wrong)
+}
+
+// The known flows of the invented building, over many seeds: bias, spread, and
+// how often intervals hold the truth. Zones that live on their neighbours' air
+// and those with ceiling units have little outdoor air of their own, and what
+// comes through doors counts as outdoor air in any balance of one room; such
+// rates must come out as upper values, or hold. The tolerances are what was
+// found over 24 seeds, with a margin; nothing published sets them.
+//
+// SASHLOG_LONG=1 runs 24 buildings of 60 days and prints the table.
+func TestTruthRecovered(t *testing.T) {
+	if testing.Short() {
+		t.Skip("simulates a building several times")
+	}
+	seeds, days, least := uint64(3), 45, 8
+	if os.Getenv("SASHLOG_LONG") != "" {
+		seeds, days, least = 24, 60, 30
+	}
+	e := &errorTable{scores: map[tableKey]*score{}}
+	for seed := uint64(1); seed <= seeds; seed++ {
+		in, tr := demoInput(t, demo.Options{Seed: seed, From: site.Date{Year: 2025, Month: 4, Day: 1}, Days: days})
+		e.add(counted(in, tr), tr)
+		e.add(in, tr)
+	}
+	e.log(t)
 	groups := 0
-	for k, x := range scores {
-		t.Logf("%-24s %-5s ceiling %-5v %4d estimates, bias %.2f, half within x%.2f, interval holds the truth %.0f %%, upper bound %.0f %%",
-			k.way, k.state, k.ceiling, x.n, x.bias(), x.typical(), 100*x.coverage(), 100*float64(x.below)/float64(x.n))
-		if x.n < 20 {
+	for k, x := range e.scores {
+		if x.n < least || k.kind == "all" {
 			continue
 		}
 		groups++
-		if held := float64(x.below) / float64(x.n); k.ceiling && held < 0.85 {
-			t.Errorf("%+v: the upper bound holds in %.0f %%", k, 100*held)
-		}
-		if k.ceiling {
-			continue
-		}
-		if x.coverage() < 0.80 || x.bias() < 0.75 || x.bias() > 1.25 || x.typical() > 1.35 {
-			t.Errorf("%+v: coverage %.2f, bias %.2f, half within x%.2f", k, x.coverage(), x.bias(), x.typical())
+		switch {
+		case k.what == stated && k.kind == "own air":
+			if x.coverage() < 0.90 || x.bias() < 0.8 || x.bias() > 1.2 || x.typical() > 1.35 {
+				t.Errorf("%+v: coverage %.2f, bias %.2f, half within x%.2f", k, x.coverage(), x.bias(), x.typical())
+			}
+		case k.kind == "own air":
+			if x.coverage() < 0.75 || x.bias() < 0.7 || x.bias() > 1.4 || x.typical() > 1.45 {
+				t.Errorf("%+v: coverage %.2f, bias %.2f, half within x%.2f", k, x.coverage(), x.bias(), x.typical())
+			}
+		case x.under() < 0.85:
+			t.Errorf("%+v: the upper bound holds in %.0f %%", k, 100*x.under())
 		}
 	}
-	t.Logf("scheduled: %d of %d upper values held; plant: %d right, %d wrong", upperHeld, upper, right, wrong)
-	if groups < 10 || upper < 100 || float64(upperHeld) < 0.97*float64(upper) || right < 20 || wrong > 0 {
-		t.Error("too little was measured, or wrongly")
+	if groups < 8 || e.upper < 50 || float64(e.upperHeld) < 0.97*float64(e.upper) || e.right < 6 || e.wrong > 0 || e.few > 0 {
+		t.Errorf("%d groups: too little was measured, or wrongly; %d rates of too few events", groups, e.few)
 	}
 }
 

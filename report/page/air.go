@@ -32,6 +32,9 @@ func (b *builder) air() section {
 	if fa.OutdoorNote != "" {
 		s.Blocks = append(s.Blocks, text(words.Sentence(b.w.Foreign(fa.OutdoorNote))))
 	}
+	if t := b.offsets(); t != "" {
+		s.Blocks = append(s.Blocks, text(t))
+	}
 	s.Blocks = append(s.Blocks, b.co2Curves(), b.co2Table())
 	if t, ok := b.airChanges(); ok {
 		s.Blocks = append(s.Blocks, heading("Air change rates"), text("How often per hour the air of a zone was replaced, in each running state by itself: from how fast CO2 falls after the room empties, or from whole days with people counted. L/s is litres of outdoor air per second."), b.airChangeChart(), b.table(t))
@@ -173,7 +176,7 @@ func (b *builder) co2Table() block {
 func (b *builder) airChanges() (table, bool) {
 	fa := b.in.Results.FreshAir
 	t := table{ID: "air-change", Caption: "Air change rate per zone and running state",
-		Head: []column{col("Zone"), keep("Running state"), num("Median (per h)"), num("95 % interval"), num("Range (per h)"), num("L/s"), num("L/s per person"), num("CO2 at usual people (ppm)"), num("Events")}}
+		Head: []column{col("Zone"), keep("Running state"), num("Median (per h)"), num("95 % interval"), num("Range (per h)"), num("L/s"), num("L/s per person"), num("CO2 at usual people (ppm)"), num("Events"), num("Neighbours’ level"), num("10 L/s of theirs add (per h)")}}
 	zones, foot := b.capped(b.order)
 	any := false
 	methods := map[string]bool{}
@@ -190,7 +193,7 @@ func (b *builder) airChanges() (table, bool) {
 			}
 			any, bare = true, false
 			t.Rows = append(t.Rows, row(name, stateWords[st], upperMark(a), spread(a.LowPerH, a.HighPerH), spread(a.FromPerH, a.ToPerH),
-				words.Number(a.FlowLs, 0), words.Number(a.FlowLsPerson, 1), words.Number(a.AtUsualPeoplePPM, 0), words.Count(int64(a.Events))))
+				words.Number(a.FlowLs, 0), words.Number(a.FlowLsPerson, 1), words.Number(a.AtUsualPeoplePPM, 0), words.Count(int64(a.Events)), words.Share(fa.Zones[z].NeighbourShare[st]), words.Number(a.NeighbourPer10LsPerH, 2)))
 			methods[words.Clean(a.Method)] = a.Method != ""
 			name = ""
 		}
@@ -201,12 +204,16 @@ func (b *builder) airChanges() (table, bool) {
 					break
 				}
 			}
-			t.Rows = append(t.Rows, row(name, "none measurable", words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, words.Dash))
+			t.Rows = append(t.Rows, row(name, "none measurable", words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, words.Dash, words.Dash))
 			reasons = append(reasons, name+": "+b.w.Foreign(why))
 		}
 	}
 	t.Foot = []string{words.Dash + " not known: too few decays, or floor area, height or people are not given."}
-	t.Foot = append(t.Foot, "The interval holds the typical rate 95 times in 100: spread of events, readings that depend on each other, outdoor level, sensor offset and people. In an invented building of known flows it did so 87 to 100 times in 100 for rooms with outdoor air of their own, and far less for rooms that live on their neighbours’ air. “CO2 at usual people” is what the usual number of people would bring the room to within four hours at this rate.")
+	t.Foot = append(t.Foot, "The interval holds the typical rate 95 times in 100: spread of events, readings that depend on each other, outdoor level, sensor offset and people. In invented buildings of known flows it held 99 of 100 rates stated. “CO2 at usual people” is what the usual number of people would bring the room to within four hours at this rate.",
+		"Air from neighbouring rooms looks like outdoor air. “Neighbours’ level”: how far the zones of the same floor stood above outdoors while CO2 fell here, as a share of this zone; the lower it is, the more their air dilutes (above 100 % it holds the level up), and the last column says by how much for each 10 L/s that passes through doors. “≤”: so slow, or so closed off, that their air may be most of it; the outdoor air is then at most that.")
+	if open := b.openUnmeasured(); open != "" {
+		t.Foot = append(t.Foot, open)
+	}
 	if len(reasons) > 0 {
 		t.Foot = append(t.Foot, "Not measurable: "+words.List(reasons, 6)+".")
 	}

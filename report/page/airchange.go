@@ -1,6 +1,7 @@
 package page
 
 import (
+	"fmt"
 	"math"
 
 	"sashlog/analyze/freshair"
@@ -25,6 +26,66 @@ func (b *builder) airChangeChart() block {
 	}
 	return b.draw("air-change-rates", "Air change rate by zone and running state, with 95 % intervals. States of one zone compare well with each other, since sensor and outdoor level are the same.",
 		"There is no air change rate to draw.", func(o chart.Options) (chart.SVG, error) { return chart.AirChange(d, o) })
+}
+
+// offsets says how far the zones' lowest CO2 lay from outdoors, and what was
+// done about it.
+func (b *builder) offsets() string {
+	low, high, n, corrected := math.Inf(1), math.Inf(-1), 0, 0
+	var far []string
+	for z := range b.in.Results.FreshAir.Zones {
+		o := &b.in.Results.FreshAir.Zones[z].Baseline
+		if o.Weeks == 0 || math.IsNaN(o.OffsetPPM) {
+			continue
+		}
+		n++
+		low, high = math.Min(low, o.OffsetPPM), math.Max(high, o.OffsetPPM)
+		if o.Corrected {
+			corrected++
+		}
+		if math.Abs(o.OffsetPPM) > o.ExplainedPPM {
+			far = append(far, fmt.Sprintf("%s (%s ppm)", b.w.Zone(z), words.Number(o.OffsetPPM, 0)))
+		}
+	}
+	if n == 0 {
+		return ""
+	}
+	s := fmt.Sprintf("At its lowest, in the middle week, CO2 lay between %s and %s ppm above the outdoor level in %s; a sensor that is right, in a room aired out once a week, comes to 0. ", words.Number(low, 0), words.Number(high, 0), words.Zones(n))
+	if corrected > 0 {
+		s += "This was taken off as the sensor's offset in " + words.Zones(corrected) + ", as the settings ask."
+	} else {
+		s += "Nothing was taken off (a setting, co2_baseline)."
+	}
+	if len(far) > 0 {
+		s += " More than sensor and outdoor level explain: " + words.List(far, 6) + ". These rooms may never be aired out, or their sensors are off; a check outdoors tells."
+	}
+	return s
+}
+
+// openUnmeasured says in how many zones that ran open no rate could be had, and
+// why in the first of them.
+func (b *builder) openUnmeasured() string {
+	ran, none, example := 0, 0, ""
+	for _, z := range b.order {
+		if z >= len(b.in.Results.FreshAir.Zones) {
+			continue
+		}
+		x := &b.in.Results.FreshAir.Zones[z]
+		if !x.HasCO2 || !(x.State[running.Open].KnownH > 0) {
+			continue
+		}
+		ran++
+		if why := x.AirChange[running.Open].NotMeasurable; why != "" {
+			none++
+			if example == "" {
+				example = b.w.Zone(z) + ": " + b.w.Foreign(why)
+			}
+		}
+	}
+	if none == 0 {
+		return ""
+	}
+	return fmt.Sprintf("Open mode is not measurable in %d of %s that ran open. For example %s.", none, words.Zones(ran), example)
 }
 
 // airBeside are the figures beside the rates: what is asked for, what plant

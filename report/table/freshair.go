@@ -26,6 +26,7 @@ func (in *Input) airChange(z int) *object {
 			set("range_low_per_h", num(a.FromPerH)).set("range_high_per_h", num(a.ToPerH)).
 			set("flow_l_s", num(a.FlowLs)).set("flow_l_s_person", num(a.FlowLsPerson)).set("events", a.Events).
 			set("method", a.Method).set("not_measurable", a.NotMeasurable).set("upper_value_only", a.UpperOnly).
+			set("neighbours_share", num(zone.NeighbourShare[s])).set("per_10_l_s_of_neighbours_per_h", num(a.NeighbourPer10LsPerH)).
 			set("rebreathed_share", num(zone.Rebreathed[s])).set("against", verdicts).set("ways", ways))
 	}
 	return o
@@ -39,9 +40,9 @@ func (in *Input) freshAirOf(z int) *object {
 		needs = append(needs, (&object{}).set("name", r.Name).set("flow_l_s", num(r.Ls)).set("flow_l_s_person", num(r.LsPerson)).set("source", r.Source))
 	}
 	b := &zone.Baseline
-	return (&object{}).set("required", needs).set("neighbours_share", num(zone.NeighbourShare)).
+	return (&object{}).set("required", needs).
 		set("rebreathed_share", num(zone.Rebreathed[running.NumStates])).
-		set("baseline_offset_ppm", num(b.OffsetPPM)).set("baseline_weeks", b.Weeks).set("baseline_corrected", b.Corrected).set("baseline_note", b.Why)
+		set("baseline_offset_ppm", num(b.OffsetPPM)).set("baseline_explained_ppm", num(b.ExplainedPPM)).set("baseline_weeks", b.Weeks).set("baseline_corrected", b.Corrected).set("baseline_note", b.Why)
 }
 
 // plantAir is what running plant adds to the air change of the zones it serves.

@@ -92,9 +92,12 @@ func (m *maker) makeZone(z int) {
 		fz.State[s] = level
 		fz.State[s].KnownH = t.H[stateCols[s]]
 		fz.AirChange[s] = freshair.AirChange{MedianPerH: math.NaN(), LowPerH: math.NaN(), HighPerH: math.NaN(), FlowLs: math.NaN(), FlowLsPerson: math.NaN(),
-			FromPerH: math.NaN(), ToPerH: math.NaN(), OutdoorLowPerH: math.NaN(), OutdoorHighPerH: math.NaN(), AtUsualPeoplePPM: math.NaN(), Events: 1, NotMeasurable: "1 decay, at least 5 are needed"}
+			FromPerH: math.NaN(), ToPerH: math.NaN(), OutdoorLowPerH: math.NaN(), OutdoorHighPerH: math.NaN(), AtUsualPeoplePPM: math.NaN(), Events: 1, NotMeasurable: "1 decay, at least 5 are needed", NeighbourPer10LsPerH: math.NaN()}
+		fz.NeighbourShare[s] = math.NaN()
 	}
-	fz.AirChange[running.Open] = freshair.AirChange{MedianPerH: 3.1, LowPerH: 2.4, HighPerH: 4.1, FromPerH: 1.8, ToPerH: 5.2, FlowLs: 155, FlowLsPerson: 155 / people, OutdoorLowPerH: 2.6, OutdoorHighPerH: 3.7, AtUsualPeoplePPM: 880, Events: 14, Method: "decay after the room empties"}
+	fz.AirChange[running.Open] = freshair.AirChange{MedianPerH: 3.1, LowPerH: 2.4, HighPerH: 4.1, FromPerH: 1.8, ToPerH: 5.2, FlowLs: 155, FlowLsPerson: 155 / people, OutdoorLowPerH: 2.6, OutdoorHighPerH: 3.7, AtUsualPeoplePPM: 880, Events: 14, Method: "decay after the room empties", NeighbourPer10LsPerH: 0.05}
+	fz.NeighbourShare[running.Open] = 0.7
+	fz.Baseline = freshair.Baseline{OffsetPPM: 12 - 90*float64(z), SpreadPPM: 8, Weeks: 9, ExplainedPPM: 70}
 	fz.All = level
 	for s := range fz.Curve {
 		for k := range r.FreshAir.CurvePPM {
