@@ -55,6 +55,9 @@ func violations(t *testing.T, p *browser.Page, part string) []string {
 	return out
 }
 
+// laidOut lays out all chapters, also those out of sight.
+const laidOut = `document.querySelectorAll(".chapter").forEach(c => c.style.contentVisibility = "visible")`
+
 // TestAccessible: no violation in the whole report, the day browser at work in
 // each of its forms; a planted button without a name is found.
 func TestAccessible(t *testing.T) {
@@ -62,7 +65,7 @@ func TestAccessible(t *testing.T) {
 	s := lookSample()
 	d := driver{t, opened(t, write(t, input(s)), 1280, 900)}
 	d.p.Until(t, `document.querySelector("#look-picture svg path")`)
-	d.p.Ask(t, checks+"; 1", nil)
+	d.p.Ask(t, checks+"; "+laidOut+"; 1", nil)
 	d.p.Ask(t, `document.getElementById("look-table").open = true`, nil)
 	d.p.Until(t, `document.querySelector("#look-hours tr")`)
 	for _, v := range violations(t, d.p, "document") {
@@ -100,6 +103,7 @@ func TestNarrow(t *testing.T) {
 		p := opened(t, write(t, in), 360, 800)
 		for _, width := range []int{360, 1280} {
 			p.Resize(t, width, 800)
+			p.Ask(t, laidOut, nil)
 			p.Until(t, `document.querySelector("#look-picture svg") && document.querySelector("#look-picture svg").getBoundingClientRect().width <= innerWidth`)
 			var got struct {
 				Width int
