@@ -54,13 +54,13 @@ func choose(rows *moments, reasons []reason) *model {
 // it would bring.
 func (m *model) candidate(rows *moments, reasons []reason, skip func(r int) bool) (edge, float64) {
 	q := m.openOdds(rows, reasons)
-	coarse, events := rows.some(screenRows), rows.events()
+	coarse, fine := m.sample(rows, q, screenRows), m.sample(rows, q, closeRows)
 	var tries []*tryout
 	for r := range reasons {
 		if skip(r) {
 			continue
 		}
-		t := &tryout{rows: rows, sign: reasons[r].sign(), reason: r, q: q, free: m.free, events: events}
+		t := &tryout{sign: reasons[r].sign(), reason: r}
 		if t.screen(coarse); t.rough.reason >= 0 {
 			tries = append(tries, t)
 		}
@@ -68,107 +68,143 @@ func (m *model) candidate(rows *moments, reasons []reason, skip func(r int) bool
 	sort.SliceStable(tries, func(a, b int) bool { return tries[a].roughGain > tries[b].roughGain })
 	best, bestGain := edge{reason: -1}, 0.0
 	for _, t := range tries[:min(len(tries), closely)] {
-		if e, g := t.closer(); g > bestGain {
+		if e, g := t.closer(fine); g > bestGain {
 			best, bestGain = e, g
 		}
 	}
 	return best, bestGain
 }
 
-// closely is how many reasons are looked at with all rows.
-const closely = 3
+const (
+	// closely is how many reasons are looked at more closely.
+	closely = 3
+	// screenRows is how many rows of either kind, changed and not, a reason is
+	// first looked at with, closeRows how many then; the fit takes all.
+	screenRows = 300
+	closeRows  = 4000
+)
 
-// screenRows is how many rows a reason is first looked at with.
-const screenRows = 300
-
-// some lists at most most rows: all that changed, and every so many others.
-func (m *moments) some(most int) []int {
-	every := max(1, (m.n()+most-1)/most)
-	out := make([]int, 0, most)
-	for i, c := range m.closed {
-		if c != m.opening || i%every == 0 {
-			out = append(out, i)
-		}
-	}
-	return out
+// sample is some of the rows, with what of a tryout does not depend on the
+// reason tried.
+type sample struct {
+	rows *moments
+	free float64 // c of the model
+	list []int
+	// Per row of the list: P(open) of the model, the log-likelihood with it, the
+	// rows it stands for, and whether something else held it anyway.
+	q, was, stands []float64
+	held           []bool
+	f              []float64 // scratch
+	// lost[rest][row] is how often what nothing explains spares a row, once its
+	// share is kept times rests[rest].
+	rests []float64
+	lost  [][]float64
 }
 
-// tryout tries limits of one reason beside a model with P(open) q, c free to
-// rise.
+// sample takes at most most rows that changed and most that did not, evenly.
+func (m *model) sample(rows *moments, q []float64, most int) *sample {
+	s := &sample{rows: rows, free: m.free}
+	events := rows.events()
+	every := [2]int{max(1, (rows.n()-events+most-1)/most), max(1, (events+most-1)/most)}
+	var seen, taken [2]int
+	var kind []int
+	for i, c := range rows.closed {
+		k := 0
+		if c != rows.opening {
+			k = 1
+		}
+		if seen[k]%every[k] == 0 {
+			s.list = append(s.list, i)
+			kind = append(kind, k)
+			taken[k]++
+		}
+		seen[k]++
+	}
+	for at, i := range s.list {
+		k := kind[at]
+		s.q = append(s.q, q[i])
+		s.was = append(s.was, gain(rows.closed[i], q[i]))
+		s.stands = append(s.stands, rows.weight[i]*float64(seen[k])/float64(taken[k]))
+		s.held = append(s.held, rows.closed[i] && q[i] < 1e-4)
+	}
+	s.f = make([]float64, len(s.list))
+	s.rests = []float64{0.7, 0.3}
+	if rows.opening {
+		s.rests = s.rests[:1]
+		return s
+	}
+	for _, rest := range s.rests {
+		c := (1 - (1-m.free)*rest) / m.free
+		lost := make([]float64, len(s.list))
+		for at, i := range s.list {
+			lost[at] = power(c, rows.steps[i])
+		}
+		s.lost = append(s.lost, lost)
+	}
+	return s
+}
+
+// tryout tries limits of one reason beside a model.
 type tryout struct {
-	rows   *moments
 	sign   float64
 	reason int
-	q      []float64
-	free   float64
-	events int
-	f      []float64 // scratch
 
-	rough           edge // found with some of the rows
-	roughGain, rest float64
+	rough     edge // found with few rows
+	roughGain float64
+	rest      int // of the sample's rests
 }
 
-// gain is what a limit brings, over the listed rows (all for nil), of which
-// those that did not change stand for others. The share of unexplained changes
-// is kept times rest for closings; for openings c is what makes the expected
+// odds works out how a limit spares the rows.
+func (t *tryout) odds(s *sample, levelC, blurK float64) {
+	for at, i := range s.list {
+		s.f[at] = s.rows.freeOf(t.reason, t.sign, i, levelC, blurK)
+	}
+}
+
+// gain is what the limit of the odds brings. The share of unexplained changes is
+// kept times a rest for closings; for openings c is what makes the expected
 // number of openings that seen.
-func (t *tryout) gain(levelC, blurK, rest float64, list []int) float64 {
-	n := len(list)
-	at := func(k int) int { return list[k] }
-	if list == nil {
-		n = len(t.q)
-		at = func(k int) int { return k }
-	}
-	if cap(t.f) < n {
-		t.f = make([]float64, n)
-	}
-	f := t.f[:n]
-	events, seen, expected, stay := 0, 0.0, 0.0, 0.0
-	for k := range f {
-		i := at(k)
-		f[k] = t.rows.freeOf(t.reason, t.sign, i, levelC, blurK)
-		if t.rows.closed[i] != t.rows.opening {
-			events++
-			seen += t.rows.weight[i]
-			expected += t.rows.weight[i] * t.q[i] * f[k]
-		} else {
-			stay += t.rows.weight[i] * t.q[i] * f[k]
+func (t *tryout) gain(s *sample, rest int) float64 {
+	var spare []float64
+	ratio := 1.0
+	if s.rows.opening {
+		seen, expected := 0.0, 0.0
+		for at, i := range s.list {
+			if !s.rows.closed[i] {
+				seen += s.stands[at]
+			}
+			expected += s.stands[at] * s.q[at] * s.f[at]
 		}
-	}
-	other := 1.0 // rows that each row without a change stands for
-	if list != nil && n > events {
-		other = float64(len(t.q)-t.events) / float64(n-events)
-	}
-	c := 1 - (1-t.free)*rest
-	if t.rows.opening {
-		c = math.Max(1e-6, math.Min(0.97, t.free*seen/math.Max(least, expected+other*stay)))
+		c := math.Max(1e-6, math.Min(0.97, s.free*seen/math.Max(least, expected)))
+		ratio = c / s.free
+	} else {
+		spare = s.lost[rest]
 	}
 	sum := 0.0
-	for k := range f {
-		i := at(k)
-		was := t.q[i]
-		closed := t.rows.closed[i]
-		if closed && was < 1e-4 && f[k] > 0.5 { // something else held it anyway
+	for at, i := range s.list {
+		f := s.f[at]
+		if s.held[at] && f > 0.5 { // something else held it anyway
 			continue
 		}
-		now := math.Min(1, was*f[k]*power(c/t.free, t.rows.steps[i]))
-		if now == was {
+		by := f
+		if spare != nil {
+			by *= spare[at]
+		} else {
+			by *= power(ratio, s.rows.steps[i])
+		}
+		if by == 1 {
 			continue
 		}
-		g := t.rows.weight[i] * (gain(closed, now) - gain(closed, was))
-		if closed == t.rows.opening {
-			g *= other
-		}
-		sum += g
+		sum += s.stands[at] * (gain(s.rows.closed[i], math.Min(1, s.q[at]*by)) - s.was[at])
 	}
 	return sum
 }
 
-// screen finds roughly the limit that brings most, with some of the rows.
-func (t *tryout) screen(coarse []int) {
+// screen finds roughly the limit that brings most, with few of the rows.
+func (t *tryout) screen(s *sample) {
 	t.rough = edge{reason: -1}
 	lo, hi := math.Inf(1), math.Inf(-1)
-	for _, x := range t.rows.x[t.reason] {
+	for _, x := range s.rows.x[t.reason] {
 		if v := float64(x); !math.IsNaN(v) {
 			lo, hi = math.Min(lo, v), math.Max(hi, v)
 		}
@@ -176,35 +212,33 @@ func (t *tryout) screen(coarse []int) {
 	if !(hi > lo) || hi-lo > 200 {
 		return
 	}
-	rests := []float64{0.7, 0.3}
-	if t.rows.opening {
-		rests = rests[:1]
-	}
 	step := math.Max(0.5, (hi-lo)/30)
 	for l := lo; l <= hi; l += step {
-		for _, x := range rests {
-			if g := t.gain(l, 0.25, x, coarse); g > t.roughGain {
+		t.odds(s, l, 0.25)
+		for x := range s.rests {
+			if g := t.gain(s, x); g > t.roughGain {
 				t.rough, t.roughGain, t.rest = edge{t.reason, l, 0.25}, g, x
 			}
 		}
 	}
 }
 
-// closer looks around the rough limit with all rows.
-func (t *tryout) closer() (edge, float64) {
-	around, rest := t.rough.levelC, t.rest
-	most := 0.0
+// closer looks around the rough limit with more rows.
+func (t *tryout) closer(s *sample) (edge, float64) {
+	around, most := t.rough.levelC, 0.0
 	found := edge{reason: -1}
-	for _, d := range []float64{-0.4, -0.2, 0, 0.2, 0.4} {
-		for _, blur := range []float64{0.12, 0.35} {
-			if g := t.gain(around+d, blur, rest, nil); g > most {
-				found, most = edge{t.reason, around + d, blur}, g
-			}
+	try := func(levelC, blurK float64) {
+		t.odds(s, levelC, blurK)
+		if g := t.gain(s, t.rest); g > most {
+			found, most = edge{t.reason, levelC, blurK}, g
 		}
 	}
-	if g := t.gain(around, 0.8, rest, nil); g > most {
-		found, most = edge{t.reason, around, 0.8}, g
+	for _, d := range []float64{-0.4, -0.2, 0, 0.2, 0.4} {
+		for _, blur := range []float64{0.12, 0.35} {
+			try(around+d, blur)
+		}
 	}
+	try(around, 0.8)
 	return found, most
 }
 
