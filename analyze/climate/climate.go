@@ -37,7 +37,10 @@ type Result struct {
 	// Measured.Methods; nil without it.
 	Agreement   [][]Pair
 	Sensitivity []Moved
-	AirSpeed    *AirSpeed // nil without measured weather
+	// WaySensitivity are the other ways with their own settings moved, on
+	// measured weather.
+	WaySensitivity []WayMoved
+	AirSpeed       *AirSpeed // nil without measured weather
 	// Outdoors and Indoors sort occupied hours by temperature and humidity.
 	Outdoors, Indoors Fields
 	Balance           HeatBalance
@@ -104,6 +107,8 @@ func Offered(in Input) *Result {
 	measured := &record{name: "measured", g: in.Grid, out: in.Outdoor, occ: occ}
 	r.measure(&in, measured)
 	r.Sensitivity = sensitivity(&in)
+	r.WaySensitivity = waySensitivity(&in, measured, r.Balance)
+	changes(r.WaySensitivity, r.Measured.Methods)
 	r.AirSpeed = airSpeed(&in)
 	if typical != nil {
 		r.Year = compareYears(in.Criteria, measured, typical, typicalBare)

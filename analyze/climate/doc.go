@@ -59,7 +59,7 @@ var WaysDoc = method.Doc{
 	Question: "Does the number of suitable hours depend on the building or on how one counts?",
 	Formula: "published band: outdoor_low ≤ T_out ≤ adaptive upper limit of the day, dew point within its limit; adaptive: outdoor air itself within both limits of the day " +
 		"(EN 16798-1, ASHRAE 55 80 %); agreement of two ways: share of occupied hours, known by both, in which both say suited or both say not; " +
-		"sensitivity: the headline counted anew with one setting moved by a stated step and all others kept",
+		"sensitivity: the headline, and each way by its own settings, counted anew with one setting moved by a stated step and all others kept",
 	Limits: []string{
 		"EN 16798-1 adaptive limits: running mean between 10 and 30 °C; ASHRAE 55: prevailing mean 10 to 33.5 °C, calculation only in a building with cooling; hours outside are shown apart, never counted as suited",
 		"air from outdoors warms up in the room: limits on outdoor air itself leave no margin for gains",

@@ -25,14 +25,17 @@ func balanceOf(s *site.Site, c criteria.Settings, run *running.Result) (HeatBala
 			weight += run.Weights[z]
 		}
 	}
-	b := HeatBalance{GainsWm2: c.ClimateGainsWm2, LossWm2K: c.ClimateLossWm2K, MinAirChangePerH: c.ClimateMinAirChangePerH,
-		MaxAirChangePerH: math.Max(c.ClimateMaxAirChangePerH, c.ClimateMinAirChangePerH), HeightM: heightUsualM,
-		HeatingC: c.ClimateHeatingC, CoolingC: math.Max(c.ClimateCoolingC, c.ClimateHeatingC), DewPointMaxC: c.DewPointMaxC}
 	if weight == 0 {
-		return b, fmt.Sprintf("no zone's height is given: %g m assumed (common practice)", heightUsualM)
+		return balanceBy(c, heightUsualM), fmt.Sprintf("no zone's height is given: %g m assumed (common practice)", heightUsualM)
 	}
-	b.HeightM = sum / weight
-	return b, fmt.Sprintf("mean height of the zones, %.2f m", b.HeightM)
+	return balanceBy(c, sum/weight), fmt.Sprintf("mean height of the zones, %.2f m", sum/weight)
+}
+
+// balanceBy is the heat balance of rooms of a height by the settings.
+func balanceBy(c criteria.Settings, heightM float64) HeatBalance {
+	return HeatBalance{GainsWm2: c.ClimateGainsWm2, LossWm2K: c.ClimateLossWm2K, MinAirChangePerH: c.ClimateMinAirChangePerH,
+		MaxAirChangePerH: math.Max(c.ClimateMaxAirChangePerH, c.ClimateMinAirChangePerH), HeightM: heightM,
+		HeatingC: c.ClimateHeatingC, CoolingC: math.Max(c.ClimateCoolingC, c.ClimateHeatingC), DewPointMaxC: c.DewPointMaxC}
 }
 
 // needsOf judges every step of a record by the balance.

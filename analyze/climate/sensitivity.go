@@ -2,7 +2,6 @@ package climate
 
 import (
 	"math"
-	"strconv"
 
 	"sashlog/analyze/cores"
 	"sashlog/analyze/exceedance"
@@ -83,10 +82,6 @@ func variantsOf(in *Input) []variant {
 		out = append(out, variant{Moved{Key: "headline", Words: "criterion of the upper limit", From: in.Criteria.Headline, To: line}, c, true})
 	}
 	return out
-}
-
-func unit(v float64, u string) string {
-	return strconv.FormatFloat(math.Round(v*1e6)/1e6, 'g', -1, 64) + " " + u
 }
 
 // sensitivity counts the headline anew with each setting moved, one at a time.

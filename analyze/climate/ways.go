@@ -80,35 +80,37 @@ func waysOf(c criteria.Settings, r *record, upper []float32, b HeatBalance, need
 	if r.out.DewPointC == nil {
 		dew = ", humidity not logged and not tested"
 	}
-	heat := make([]vote, len(needs))
-	night := make([]vote, len(needs))
-	for i, n := range needs {
-		switch {
-		case n == NeedUnknown:
-			heat[i] = unknown
-		case n.Suited():
-			heat[i] = yes
-		}
-		night[i] = heat[i]
-		if credited[i] {
-			night[i] = yes
-		}
-	}
+	heat, night := make([]vote, len(needs)), make([]vote, len(needs))
+	needVotes(heat, needs, nil)
+	needVotes(night, needs, credited)
 	return []way{
 		{"published band", fmt.Sprintf("outdoor air from %g °C to the adaptive upper limit of the day, no margin", c.OutdoorLowC) + dew,
 			"lower limit from memory: Chen, Tong & Malkawi 2017; upper limit EN 16798-1", headlineBare(published, r, upper)},
-		{"plain band", fmt.Sprintf("outdoor air from %g to %g °C", c.BandLowC, c.BandHighC) + dew, "our assumption",
+		{plainBand, fmt.Sprintf("outdoor air from %g to %g °C", c.BandLowC, c.BandHighC) + dew, "our assumption",
 			r.within(c, func(*outdoor.Day) comfort.Band { return comfort.Band{LowC: c.BandLowC, HighC: c.BandHighC} })},
-		{"adaptive EN 16798-1", fmt.Sprintf("outdoor air itself within the adaptive limits of category %s", cat) + dew, "EN 16798-1:2019",
+		{adaptiveEN, fmt.Sprintf("outdoor air itself within the adaptive limits of category %s", cat) + dew, "EN 16798-1:2019",
 			r.within(c, func(d *outdoor.Day) comfort.Band { return comfort.EN16798Adaptive(d.RunningMeanENC, cat) })},
-		{"adaptive ASHRAE 55", "outdoor air itself within the 80 % limits (calculation only where cooling is installed)" + dew, "ASHRAE 55-2023",
+		{adaptive55, "outdoor air itself within the 80 % limits (calculation only where cooling is installed)" + dew, "ASHRAE 55-2023",
 			r.within(c, func(d *outdoor.Day) comfort.Band {
 				return comfort.ASHRAE55Adaptive(d.RunningMeanASHRAEC, comfort.Accept80)
 			})},
-		{"heat balance", fmt.Sprintf("outdoor air from the balance point %.1f °C to where %g air changes per hour no longer hold %g °C", b.BalancePointC(), b.MaxAirChangePerH, b.CoolingC) + dew,
+		{heatBalance, fmt.Sprintf("outdoor air from the balance point %.1f °C to where %g air changes per hour no longer hold %g °C", b.BalancePointC(), b.MaxAirChangePerH, b.CoolingC) + dew,
 			"from memory: Axley & Emmerich 2002, Emmerich et al. 2011", heat},
-		{"heat balance and night cooling", fmt.Sprintf("the same, and days carried through by the night before with at most %g air changes per hour", b.MaxAirChangePerH),
+		{nightCooling, fmt.Sprintf("the same, and days carried through by the night before with at most %g air changes per hour", b.MaxAirChangePerH),
 			"from memory: Emmerich et al. 2011; Artmann et al. 2007", night},
+	}
+}
+
+// needVotes says what the heat balance says of each step: suited, or credited by
+// the night before (nil: no night).
+func needVotes(votes []vote, needs []Need, credited []bool) {
+	for i, n := range needs {
+		switch {
+		case credited != nil && credited[i], n.Suited():
+			votes[i] = yes
+		case n == NeedUnknown:
+			votes[i] = unknown
+		}
 	}
 }
 
