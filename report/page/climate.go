@@ -125,15 +125,42 @@ func (b *builder) settingsMoved(c *climate.Result) []block {
 		if math.Abs(m.ChangeH) > math.Abs(c.Sensitivity[most].ChangeH) {
 			most = i
 		}
-		change := words.Number(m.ChangeH*k, 0)
-		if m.ChangeH*k >= 0.5 {
-			change = "+" + change
-		}
-		t.Rows = append(t.Rows, row(trimmed(words.Sentence(m.Words)), words.Clean(m.From), words.Clean(m.To), words.HoursNumber(m.SuitedH*k), change))
+		t.Rows = append(t.Rows, row(trimmed(words.Sentence(m.Words)), words.Clean(m.From), words.Clean(m.To), words.HoursNumber(m.SuitedH*k), signed(m.ChangeH*k)))
 	}
 	t.Foot = []string{"Hours of the average occupant " + b.span.Words + ". All other settings as in force; the steps are our choice. What is not logged is not tested and cannot move the answer."}
 	m := c.Sensitivity[most]
-	return []block{heading("Which setting moves the answer most?"), text(fmt.Sprintf("%s, from %s to %s, moves the headline most: by %s %s.", trimmed(words.Sentence(m.Words)), words.Clean(m.From), words.Clean(m.To), words.Hours(math.Abs(m.ChangeH)*k), b.span.Words)), b.table(t)}
+	out := []block{heading("Which setting moves the answer most?"), text(fmt.Sprintf("%s, from %s to %s, moves the headline most: by %s %s.", trimmed(words.Sentence(m.Words)), words.Clean(m.From), words.Clean(m.To), words.Hours(math.Abs(m.ChangeH)*k), b.span.Words)), b.table(t)}
+	if len(c.WaySensitivity) > 0 {
+		out = append(out, b.table(b.waysMoved(c)))
+	}
+	return out
+}
+
+// waysMoved lists the other ways with their own settings moved.
+func (b *builder) waysMoved(c *climate.Result) table {
+	k := b.span.PerYear
+	t := table{ID: "climate-ways-moved", Caption: "The other ways with one of their own settings moved at a time", Small: true,
+		Head: []column{col("Way of counting"), col("Setting"), num("In force"), num("Tried"), num("Suitable (h)"), num("Change (h)")}}
+	last := ""
+	for _, m := range c.WaySensitivity {
+		name := words.Clean(m.Way)
+		if name == last {
+			name = ""
+		} else {
+			last = name
+		}
+		t.Rows = append(t.Rows, row(name, trimmed(words.Sentence(m.Words)), words.Clean(m.From), words.Clean(m.To), words.HoursNumber(m.SuitedH*k), signed(m.ChangeH*k)))
+	}
+	t.Foot = []string{"As above; the published band shares its settings with the headline. The heat balance rests on gains and losses of the building that are assumed: where they move it much, find them out before its hours are quoted."}
+	return t
+}
+
+// signed writes a change in hours with its sign.
+func signed(h float64) string {
+	if h >= 0.5 {
+		return "+" + words.Number(h, 0)
+	}
+	return words.Number(h, 0)
 }
 
 // trimmed takes the full stop off a sentence that goes on.
@@ -173,12 +200,37 @@ func (b *builder) heatBalance(c *climate.Result) []block {
 			s += fmt.Sprintf("hours that more outdoor air would cool ask for %s air changes per hour in the middle, and one in ten for more than %s. ", words.Number(o.RequiredMedianPerH, 1), words.Number(o.Required90PerH, 1))
 		}
 		s += fmt.Sprintf("Nights offer %s each on average (differences of at least %g K; %d known, %d not)", words.Unit(n.CoolingPotentialKh, 0, "K·h"), n.CriticalK, n.Nights, n.UnknownNights)
+		if !math.IsNaN(n.StorageWm2PerAirChange) {
+			s += fmt.Sprintf(", and store %s for the day after per air change per hour at night", words.Unit(n.StorageWm2PerAirChange, 1, "W/m²"))
+		}
 		if n.ShortDays > 0 {
 			s += fmt.Sprintf(". On %s outdoor air alone fell short by day; the night before could have carried %d of them through, if the mass of the building took up the cold", words.Plural(n.ShortDays, "day", "days"), n.CoveredDays)
 		}
 		out = append(out, text(s+"."))
 	}
+	out = append(out, b.table(b.nightMonths(c)))
 	return append(out, note("Open windows at night need protection against falls, intruders, rain and insects, and must not defeat smoke control; local codes decide."))
+}
+
+// nightMonths lists what the nights offered, month by month.
+func (b *builder) nightMonths(c *climate.Result) table {
+	t := table{ID: "climate-nights", Caption: "Climatic cooling potential of the nights by month", Small: true,
+		Head: []column{col("Month"), num("As measured (K·h per night)"), num("Typical year (K·h per night)")}}
+	of := func(o *climate.Offer, m int) float64 {
+		if o == nil {
+			return math.NaN()
+		}
+		return o.Night.ByMonthKh[m]
+	}
+	for m := range 12 {
+		measured, typical := of(c.Measured, m), of(c.Typical, m)
+		if math.IsNaN(measured) && math.IsNaN(typical) {
+			continue
+		}
+		t.Rows = append(t.Rows, row(time.Month(m+1).String(), words.Number(measured, 0), words.Number(typical, 0)))
+	}
+	t.Foot = []string{"Kelvin by which the night air is cooler than a building of 22 to 27 °C, summed from 19:00 to 07:00 (Artmann, Manz & Heiselberg 2007, from memory). With 6 air changes per hour and rooms 2.5 m high, 80 K·h carry off about 400 Wh/m². It counts the air alone: the building must have mass that the air can reach."}
+	return t
 }
 
 func (b *builder) normalYear(c *climate.Result) []block {
@@ -218,53 +270,6 @@ func (b *builder) normalYear(c *climate.Result) []block {
 	}
 	t.Foot = []string{"Occupied hours of the average occupant in the period, without wind, rain and pollution. As usual: within 1.5 K for a month, within 1 K and 10 % of the suitable hours for a year; our assumption, since one typical year shows no spread between years."}
 	return append(out, b.table(t))
-}
-
-func (b *builder) airMovement(c *climate.Result) []block {
-	a := c.AirSpeed
-	if a == nil {
-		return nil
-	}
-	k := b.span.PerYear
-	d := chart.AddedHoursData{Caption: chart.Caption{Title: "Suitable hours that each step of air movement would add", Desc: "One bar per zone, one part per step of air speed, by the cooling effect of moving air."},
-		XTitle: "suitable hours added to still air " + b.span.Words + " (h)"}
-	t := table{ID: "air-movement", Caption: "Hours that moving air would add, per zone",
-		Head: []column{col("Zone"), num("Suitable, still air (h)"), num("0.6 m/s"), num("0.9 m/s"), num("1.2 m/s"), num("by SET 0.3 m/s"), num("0.6"), num("0.9"), num("1.2"), num("Too warm indoors (h)"), num("of it relieved at 0.9 m/s, by SET")}}
-	for _, v := range climate.SpeedsMS {
-		d.Steps = append(d.Steps, words.Unit(v, 1, "m/s"))
-	}
-	line := func(name string, s *climate.SpeedSteps) {
-		h := func(v float64) string { return words.HoursNumber(v * k) }
-		t.Rows = append(t.Rows, row(name, h(s.SuitedH), h(s.AddedIncrementH[1]), h(s.AddedIncrementH[2]), h(s.AddedIncrementH[3]),
-			h(s.AddedEffectH[0]), h(s.AddedEffectH[1]), h(s.AddedEffectH[2]), h(s.AddedEffectH[3]), h(s.WarmH), h(s.RelievedSETH[2])))
-	}
-	line("average occupant", &a.Building)
-	zones, foot := b.capped(b.order)
-	for _, z := range zones {
-		s := &a.Zones[z]
-		if !s.Openings {
-			continue
-		}
-		line(b.w.Zone(z), s)
-		bar := chart.ZoneAdded{Zone: b.w.Zone(z)}
-		last := 0.0
-		for _, v := range s.AddedEffectH {
-			bar.Added = append(bar.Added, math.Max(0, v-last)*k)
-			last = math.Max(last, v)
-		}
-		if !math.IsNaN(s.InstalledMS) {
-			bar.Note = "has a fan, " + words.Unit(s.InstalledMS, 1, "m/s")
-		}
-		d.Zones = append(d.Zones, bar)
-	}
-	t.Foot = []string{"Totals at each speed, " + b.span.Words + ", beyond still air and without the fans that are there. By increments (ASHRAE 55, EN 16798-1) 0.3 m/s is the base and adds nothing; by SET the cooling effect is counted from still air at 50 % humidity. " +
-		"People must be able to control the air movement. Zones without openings are left out. " + words.Dash + " no indoor temperature."}
-	if foot != "" {
-		t.Foot = append(t.Foot, foot)
-	}
-	return []block{heading("What moving air would add"),
-		b.draw("air-movement-steps", "Suitable hours that each step of air movement would add to still air, by the cooling effect of moving air (SET). Steps to the right add little once the weather is too warm anyway.",
-			"Moving air would add no suitable hour.", func(o chart.Options) (chart.SVG, error) { return chart.AddedHours(d, o) }), b.table(t)}
 }
 
 // comfortFields draws where the hours lay outdoors and indoors.

@@ -16,6 +16,7 @@ func (in *Input) climateInto(o *object, rule privacy.Rule) *object {
 	}
 	return o.set("measured", offerObject(c.Measured)).set("typical", offerObject(c.Typical)).set("normal_year", yearObject(c.Year)).
 		set("agreement", agreementList(c)).set("sensitivity", sensitivityList(c.Sensitivity)).
+		set("way_sensitivity", waySensitivityList(c.WaySensitivity)).
 		set("air_movement", in.airMovement(c.AirSpeed, rule)).set("fields", in.fields(c)).set("heat_balance", balanceObject(c))
 }
 
@@ -82,10 +83,22 @@ func agreementList(c *climate.Result) []any {
 func sensitivityList(list []climate.Moved) []any {
 	out := []any{}
 	for _, m := range list {
-		out = append(out, (&object{}).set("key", m.Key).set("words", m.Words).set("from", m.From).set("to", m.To).
-			set("suited_h", figure{num(m.SuitedH), num(m.SuitedH), num(m.SuitedH + m.UnknownH)}).set("change_h", num(m.ChangeH)))
+		out = append(out, movedInto(&object{}, m))
 	}
 	return out
+}
+
+func waySensitivityList(list []climate.WayMoved) []any {
+	out := []any{}
+	for _, m := range list {
+		out = append(out, movedInto((&object{}).set("method", m.Way), m.Moved))
+	}
+	return out
+}
+
+func movedInto(o *object, m climate.Moved) *object {
+	return o.set("key", m.Key).set("words", m.Words).set("from", m.From).set("to", m.To).
+		set("suited_h", figure{num(m.SuitedH), num(m.SuitedH), num(m.SuitedH + m.UnknownH)}).set("change_h", num(m.ChangeH))
 }
 
 func (in *Input) airMovement(a *climate.AirSpeed, rule privacy.Rule) any {

@@ -54,6 +54,8 @@ func (m *maker) makeClimate() {
 			c.Agreement[j][k] = climate.Pair{AgreeShare: 1 - 0.1*math.Abs(float64(j-k)), KnownH: occ, OnlyFirstH: 5 * math.Max(0, float64(j-k)), OnlySecondH: 5 * math.Max(0, float64(k-j))}
 		}
 	}
+	c.WaySensitivity = []climate.WayMoved{{Way: "plain band", Moved: climate.Moved{Key: "band_low_c", Words: "coldest outdoor air of the band", From: "16 °C", To: "14 °C", SuitedH: suited * 1.1, ChangeH: suited * 0.2}},
+		{Way: "heat balance", Moved: climate.Moved{Key: "climate_gains_w_m2", Words: "heat from people, sun and equipment", From: "30 W/m²", To: "40 W/m²", SuitedH: suited * 1.3, UnknownH: 12, ChangeH: -suited * 0.1}}}
 	c.Sensitivity = []climate.Moved{
 		{Key: "outdoor_low_c", Words: "coldest outdoor air that suits", From: "12.8 °C", To: "10.8 °C", SuitedH: suited + 50, ChangeH: 50},
 		{Key: "outdoor_low_c", Words: "coldest outdoor air that suits", From: "12.8 °C", To: "14.8 °C", SuitedH: suited - 40, ChangeH: -40},
