@@ -1,7 +1,9 @@
 package main
 
 import (
+	"bytes"
 	"context"
+	"errors"
 	"fmt"
 	"os"
 	"path/filepath"
@@ -68,14 +70,45 @@ func writeDemo(ctx context.Context, into string, options demo.Options) error {
 	if err != nil {
 		return failed(err)
 	}
-	for _, e := range entries {
+	if name, ok := foreignTo(into, entries); ok {
+		return failed(fmt.Errorf("%q is there already and was not written by the demo; hint: name another folder with --into", filepath.Join(into, name)))
+	}
+	// Earlier files stand aside until all the new ones have their places.
+	aside, err := os.MkdirTemp(into, ".demo-earlier-*")
+	if err != nil {
+		return failed(err)
+	}
+	defer os.RemoveAll(aside)
+	for i, e := range entries {
 		target := filepath.Join(into, e.Name())
-		if err := os.RemoveAll(target); err != nil {
-			return failed(err)
+		err := os.Rename(target, filepath.Join(aside, e.Name()))
+		if err == nil || os.IsNotExist(err) {
+			err = os.Rename(filepath.Join(dir, e.Name()), target)
 		}
-		if err := os.Rename(filepath.Join(dir, e.Name()), target); err != nil {
+		if err != nil {
+			for _, done := range entries[:i+1] {
+				target := filepath.Join(into, done.Name())
+				if _, there := os.Lstat(filepath.Join(aside, done.Name())); there == nil {
+					err = errors.Join(err, os.RemoveAll(target), os.Rename(filepath.Join(aside, done.Name()), target))
+				}
+			}
 			return failed(err)
 		}
 	}
 	return nil
+}
+
+// foreignTo names a file or folder that the demo would replace although it is
+// not the demo's: one of its names stands in a folder whose site file does not
+// say that the demo wrote it.
+func foreignTo(into string, entries []os.DirEntry) (name string, ok bool) {
+	if text, err := os.ReadFile(filepath.Join(into, "site.yaml")); err == nil && bytes.Contains(text, []byte(demo.WrittenBy)) {
+		return "", false
+	}
+	for _, e := range entries {
+		if _, err := os.Lstat(filepath.Join(into, e.Name())); err == nil {
+			return e.Name(), true
+		}
+	}
+	return "", false
 }

@@ -9,11 +9,14 @@ import (
 	"time"
 )
 
+// WrittenBy stands in the first line of a site file that the demo wrote.
+const WrittenBy = "Written by sashlog demo"
+
 // writeSite writes site.yaml.
 func (b *building) writeSite(dir string) error {
 	return writeFile(dir, "site.yaml", func(w *bufio.Writer) error {
 		p := func(format string, args ...any) { fmt.Fprintf(w, format+"\n", args...) }
-		p("# An invented building: nobody works here. Written by sashlog demo, seed %d.", b.options.Seed)
+		p("# An invented building: nobody works here. %s, seed %d.", WrittenBy, b.options.Seed)
 		p("# The place is made up; the time zone is used for its clock rules only and the")
 		p("# coordinates are round numbers that give the sun a height.")
 		p("site:")
