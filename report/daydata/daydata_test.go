@@ -5,6 +5,7 @@ import (
 	"math"
 	"strings"
 	"testing"
+	"time"
 
 	"pgregory.net/rapid"
 
@@ -212,6 +213,26 @@ func TestSameBytes(t *testing.T) {
 		if strings.Join(a.Zones[z].Blocks, " ") != strings.Join(b.Zones[z].Blocks, " ") || a.Zones[z].Spans != b.Zones[z].Spans {
 			t.Errorf("zone %d differs", z)
 		}
+	}
+}
+
+// Days and months begin at local midnight, through the days of 23 and 25 hours
+// (Europe/Zurich: last Sundays of March and October 2031).
+func TestClock(t *testing.T) {
+	zurich, err := time.LoadLocation("Europe/Zurich")
+	if err != nil {
+		t.Fatal(err)
+	}
+	s := sample.Make(sample.Options{Days: 365, Zones: 1, StepS: 3600, People: []float64{9}})
+	s.Grid.Loc = zurich
+	d := made(t, input(s))
+	for day, want := range map[int]int{0: 24, 87: 24, 88: 23, 89: 24, 298: 25, 299: 24} {
+		if got := d.Days[day+1] - d.Days[day]; got != want {
+			t.Errorf("day %d has %d hours, want %d", day, got, want)
+		}
+	}
+	if len(d.Days) != 366 || len(d.Months) != 13 || d.Months[3] != d.Days[90] || len(d.Offsets) != 3 || d.Offsets[1][1] != 7200 || d.Offsets[2][1] != 3600 {
+		t.Errorf("%d days, months %v, offsets %v", len(d.Days)-1, d.Months, d.Offsets)
 	}
 }
 

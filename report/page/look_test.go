@@ -107,6 +107,20 @@ func (d driver) choose(id, value string) {
 	d.p.Ask(d.t, `(() => { const e = document.getElementById("`+id+`"); e.value = "`+value+`"; e.dispatchEvent(new Event("change")); })()`, nil)
 }
 
+// TestSmallRoomsOnly: nothing by step of a room for few people is in the file,
+// also when there is no other room.
+func TestSmallRoomsOnly(t *testing.T) {
+	doc := write(t, input(sample.Make(sample.Options{Days: 14, Zones: 1, People: []float64{1}})))
+	if strings.Contains(doc, `"blocks"`) || strings.Contains(doc, `"hours":`) {
+		t.Error("steps or hours of the only room, for one person, are in the file")
+	}
+	p := opened(t, doc, 800, 900)
+	shown(t, p, "L1.01 Studio 1, Thursday 1 May 2031: occupied")
+	p.Ask(t, `document.getElementById("look-after").click()`, nil)
+	shown(t, p, "L1.01 Studio 1, Friday 2 May 2031: occupied")
+	quiet(t, p)
+}
+
 // TestPicker: hours of a zone and of a range of months are those of the
 // summary, and the tables of the report follow the zone.
 func TestPicker(t *testing.T) {
@@ -154,6 +168,10 @@ func TestPicker(t *testing.T) {
 	d.p.Call(t, "Emulation.setEmulatedMedia", map[string]any{"media": "print"}, nil)
 	if n := rows(); n != 4 {
 		t.Errorf("%d zones in the printed table, want all 4", n)
+	}
+	var printed bool
+	if d.p.Ask(t, `document.getElementById("look").checkVisibility()`, &printed); printed {
+		t.Error("the day browser is printed")
 	}
 	d.p.Call(t, "Emulation.setEmulatedMedia", map[string]any{"media": "screen"}, nil)
 	d.p.Ask(t, `document.getElementById("look-only").click()`, nil)
