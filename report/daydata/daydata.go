@@ -109,12 +109,39 @@ func Make(in Input) (*Data, error) {
 		in.Budget = DefaultBudget
 	}
 	for _, every := range widths(in.Grid.StepS) {
-		d := newPacker(in, every).pack()
-		if d != nil {
+		p := newPacker(in, every)
+		if p.hopeless() {
+			continue
+		}
+		if d := p.pack(); d != nil {
 			return d, nil
 		}
 	}
 	return nil, ErrTooMuch
+}
+
+// hopeless packs a month in the middle of the period of a few zones and says
+// whether the whole would be far beyond the budget, so that time is not spent on
+// finding out.
+func (p *packer) hopeless() bool {
+	var open []int
+	for z := range p.in.Site.Zones {
+		if !p.protected(z) {
+			open = append(open, z)
+		}
+	}
+	const few = 3
+	m := (len(p.data.Months) - 1) / 2
+	from, to := p.data.Months[m], p.data.Months[m+1]
+	if len(open) <= 4*few || to == from {
+		return false
+	}
+	bytes := 0
+	for k := range few {
+		bytes += len(block(p.columns(zoneSeries, open[k*(len(open)-1)/(few-1)], from, to)))
+	}
+	whole := float64(bytes) / few * float64(len(open)) * float64(p.n) / float64(to-from)
+	return whole > 1.3*float64(p.in.Budget)
 }
 
 // widths lists how many steps of the grid may make one step of the data.

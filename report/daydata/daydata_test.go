@@ -158,6 +158,26 @@ func TestBudget(t *testing.T) {
 	}
 }
 
+// Where a few zones show that a width cannot fit, the next is tried, with the
+// same result; one that just fits is not given up.
+func TestHopeless(t *testing.T) {
+	people := make([]float64, 14)
+	for i := range people {
+		people[i] = 9
+	}
+	in := input(sample.Make(sample.Options{Days: 10, Zones: 14, StepS: 300, People: people}))
+	whole := made(t, in).Bytes()
+	for _, c := range []struct {
+		budget int
+		step   int64
+	}{{whole, 300}, {whole * 9 / 10, 900}, {whole * 7 / 10, 900}} {
+		in.Budget = c.budget
+		if d := made(t, in); d.StepS != c.step || d.Bytes() > c.budget {
+			t.Errorf("budget %d of %d: steps of %d s in %d bytes, want %d s", c.budget, whole, d.StepS, d.Bytes(), c.step)
+		}
+	}
+}
+
 // Rooms for one to three people, and rooms that open through them, have no
 // steps, no people, no CO2 and no windows; with measured presence they are told
 // by week. privacy: internal shows all.

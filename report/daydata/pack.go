@@ -8,6 +8,7 @@ import (
 	"fmt"
 	"io"
 	"math"
+	"sync"
 	"sync/atomic"
 
 	"github.com/klauspost/compress/zlib"
@@ -27,7 +28,7 @@ const none = 0
 // values as varints: 0 unknown, else one more than the zigzag of the
 // difference from the last known value (0 before the first).
 func block(columns []column) string {
-	var raw []byte
+	raw := make([]byte, 0, 1<<16)
 	present := uint64(0)
 	for i, c := range columns {
 		if c != nil {
@@ -47,18 +48,29 @@ func block(columns []column) string {
 			last = int64(v)
 		}
 	}
-	var out bytes.Buffer
-	text := base64.NewEncoder(base64.StdEncoding, &out)
-	z, err := zlib.NewWriterLevel(text, 6)
-	if err == nil {
-		_, err = z.Write(raw)
-	}
-	// Writing to memory at a level that exists cannot fail.
-	if err := errors.Join(err, z.Close(), text.Close()); err != nil {
+	w := writers.Get().(*writer)
+	defer writers.Put(w)
+	w.out.Reset()
+	w.z.Reset(&w.out)
+	_, err := w.z.Write(raw)
+	// Writing to memory cannot fail.
+	if err := errors.Join(err, w.z.Close()); err != nil {
 		panic(fmt.Sprintf("daydata: %v", err))
 	}
-	return out.String()
+	return base64.StdEncoding.EncodeToString(w.out.Bytes())
 }
+
+// writer is a compressor used again, since making one costs more than a block.
+type writer struct {
+	out bytes.Buffer
+	z   *zlib.Writer
+}
+
+var writers = sync.Pool{New: func() any {
+	w := &writer{}
+	w.z, _ = zlib.NewWriterLevel(&w.out, 6) // a level that exists
+	return w
+}}
 
 // Unpack reads a block of so many series and steps back; a series that was
 // never logged is nil, an unknown value NaN.

@@ -165,6 +165,10 @@ func (p *packer) codes(of source, from, to int) column {
 	out := make(column, 0, to-from)
 	for i := from; i < to; i++ {
 		a, b := p.grids(i)
+		if b-a == 1 {
+			out = append(out, packed(of(a), 1))
+			continue
+		}
 		best, most := unknown(), 0
 		for k := a; k < b; k++ {
 			v, n := of(k), 0
@@ -188,7 +192,7 @@ func (p *packer) codes(of source, from, to int) column {
 // packed is a value in units of the scale; a value no quantity of a building
 // has is unknown.
 func packed(v, scale float64) int32 {
-	u := math.Round(v / scale)
+	u := math.RoundToEven(v / scale)
 	if !(math.Abs(u) < 1e8) {
 		return missing
 	}
