@@ -81,12 +81,15 @@ func ChangeoverCurve(d ChangeoverCurveData, o Options) (SVG, error) {
 			}
 			strokeCurve(c, p, d.Closed, closeSty)
 			strokeCurve(c, p, d.Opened, openSty)
+			sayCurves(cv, c, p, 20, []namedCurve{{"by the limits open mode ends", d.Closed}, {"begins", d.Opened}},
+				func(x float64) string { return "outdoors " + number(x, 1) + " °C" }, 0, " %")
 			dots := func(list []XY, square bool) {
 				for _, q := range list {
 					if !drawable(q.X) || !drawable(q.Y) || !c.Contains(vg.Point{X: fx(q.X), Y: fy(q.Y)}) {
 						continue
 					}
 					x, y := fx(q.X), fy(q.Y)
+					cv.say(rect(x-2.5, y-2.5, x+2.5, y+2.5), "outdoors "+number(q.X, 1)+" °C: seen to "+map[bool]string{true: "end ", false: "begin "}[square]+number(q.Y, 0)+" %")
 					if square {
 						cv.SetColor(closeInk)
 						cv.Fill(rect(x-1.8, y-1.8, x+1.8, y+1.8).Path())

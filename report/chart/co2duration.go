@@ -117,7 +117,7 @@ func CO2Duration(d CO2DurationData, o Options) (SVG, error) {
 				for i, cu := range z.Curves {
 					named[i] = namedCurve{cu.State.Label(), cu.Points}
 				}
-				sayCurves(cv, c, p, map[int]int{1: 20, 2: 12, 3: 8}[columns], named, func(x float64) string { return clean(z.Zone) + ", exceeded " + number(x, 0) + " % of the time" }, " ppm")
+				sayCurves(cv, c, p, map[int]int{1: 20, 2: 12, 3: 8}[columns], named, func(x float64) string { return clean(z.Zone) + ", exceeded " + number(x, 0) + " % of the time" }, 0, " ppm")
 				if anyKnown(z.Curves) {
 					drawLevels(cv, c, p, d.Limits)
 				} else {

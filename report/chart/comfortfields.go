@@ -2,6 +2,7 @@ package chart
 
 import (
 	"math"
+	"strings"
 
 	"gonum.org/v1/plot/vg"
 	"gonum.org/v1/plot/vg/draw"
@@ -106,6 +107,14 @@ func ComfortFields(d ComfortFieldsData, o Options) (SVG, error) {
 		for k, row := range d.Hours {
 			for c, h := range row {
 				if h.sum() > 0 {
+					var said []string
+					for i, v := range h.parts() {
+						if v > 0 {
+							said = append(said, entries[i].label+" "+hoursText(v)+" h")
+						}
+					}
+					x, y := left+colW*vg.Length(c), 1+rowH*vg.Length(k)
+					cv.say(rect(x, y, x+colW, y+rowH), d.Columns[c]+", "+d.Rows[k]+": "+strings.Join(said, ", "))
 					put(cv, align(sans(smallSize, inkFaint), 0, 0), vg.Point{X: left + colW*vg.Length(c) + 4, Y: 1 + rowH*vg.Length(k) + 15}, hoursText(h.sum())+" h", colW-8)
 				}
 			}

@@ -149,7 +149,7 @@ type namedCurve struct {
 
 // sayCurves tells, in so many slices along the plot, what each curve's value is
 // in the middle of the slice.
-func sayCurves(cv *canvas, c draw.Canvas, p *plot.Plot, slices int, curves []namedCurve, head func(x float64) string, unit string) {
+func sayCurves(cv *canvas, c draw.Canvas, p *plot.Plot, slices int, curves []namedCurve, head func(x float64) string, decimals int, unit string) {
 	fx, _ := p.Transforms(&c)
 	wide := (p.X.Max - p.X.Min) / float64(slices)
 	for k := range slices {
@@ -157,7 +157,7 @@ func sayCurves(cv *canvas, c draw.Canvas, p *plot.Plot, slices int, curves []nam
 		var parts []string
 		for _, cu := range curves {
 			if y, ok := valueAt(cu.pts, x); ok {
-				parts = append(parts, clean(cu.name)+" "+number(y, 0)+unit)
+				parts = append(parts, clean(cu.name)+" "+number(y, decimals)+unit)
 			}
 		}
 		if len(parts) > 0 {

@@ -193,6 +193,11 @@ func (s strip) series(v []float64) []XY {
 	return pts
 }
 
+// clock says the time of an hour on the axis.
+func (s strip) clock(hour float64) string {
+	return s.d.Start.Add(time.Duration(hour * float64(time.Hour))).Format("2 January 15:04")
+}
+
 // shade paints the missed spans over the height of a panel.
 func (s strip) shade(cv *canvas) plot.Plotter {
 	return plotterFunc(func(c draw.Canvas, p *plot.Plot) {
@@ -225,6 +230,7 @@ func (s strip) temperature(cv *canvas) *plot.Plot {
 	p.Add(s.band(cv), s.shade(cv), grid(false, true), s.upright(), plotterFunc(func(c draw.Canvas, p *plot.Plot) {
 		strokeCurve(c, p, s.series(s.d.OutdoorC), hline(inkOutdor, lineData, 5, 1.5))
 		strokeCurve(c, p, s.series(s.d.IndoorC), hline(inkIndoor, lineData))
+		sayCurves(cv, c, p, 24, []namedCurve{{"indoors", s.series(s.d.IndoorC)}, {"outdoors", s.series(s.d.OutdoorC)}, {"comfort from", s.series(s.d.ComfortLowC)}, {"to", s.series(s.d.ComfortHighC)}}, s.clock, 1, " °C")
 	}))
 	return p
 }
@@ -286,6 +292,7 @@ func (s strip) co2(cv *canvas) *plot.Plot {
 	p.Y.Tick.Marker = niceTicks{want: 4}
 	p.Add(s.shade(cv), grid(false, true), s.upright(), plotterFunc(func(c draw.Canvas, p *plot.Plot) {
 		strokeCurve(c, p, s.series(s.d.CO2PPM), hline(inkText, lineData))
+		sayCurves(cv, c, p, 24, []namedCurve{{"CO₂", s.series(s.d.CO2PPM)}}, s.clock, 0, " ppm")
 		if limit > 0 && limit < 1e5 {
 			drawLevels(cv, c, p, []Limit{{limit, "limit " + number(limit, 0) + " ppm"}})
 		}

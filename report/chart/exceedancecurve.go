@@ -81,7 +81,7 @@ func ExceedanceCurve(d ExceedanceCurveData, o Options) (SVG, error) {
 			for i, cu := range d.Curves {
 				named[i] = namedCurve{cu.Name, cu.Points}
 			}
-			sayCurves(cv, c, p, 20, named, func(x float64) string { return "above " + number(x, 1) + " °C" }, " %")
+			sayCurves(cv, c, p, 20, named, func(x float64) string { return "above " + number(x, 1) + " °C" }, 0, " %")
 			for i, l := range d.Limits {
 				x := fx(l.Value)
 				if !c.ContainsX(x) {

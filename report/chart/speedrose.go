@@ -63,6 +63,7 @@ func SpeedRose(d SpeedRoseData, o Options) (SVG, error) {
 			cv.Stroke(ring(mid, radius(s)))
 		}
 		drawPetals(cv, d, mid, radius, colours)
+		sayPetals(cv, d.Sectors, mid, radius)
 		cv.SetColor(inkAxis)
 		cv.SetLineWidth(lineAxis)
 		cv.Stroke(ring(mid, calm))
@@ -184,6 +185,26 @@ func drawPetals(cv *canvas, d SpeedRoseData, mid vg.Point, radius func(float64) 
 			middle := math.Pi/2 - 2*math.Pi*float64(i)/float64(n)
 			cv.Fill(wedge(mid, radius(from), radius(to), middle-half, middle+half))
 		}
+	}
+}
+
+// sayPetals tells the share of each direction at a place in its petal.
+func sayPetals(cv *canvas, sectors [][]float64, mid vg.Point, radius func(float64) vg.Length) {
+	n := len(sectors)
+	for i, row := range sectors {
+		sum := 0.0
+		for _, v := range row {
+			sum += known(v)
+		}
+		if sum < 1e-6 {
+			continue
+		}
+		// A square about the outer part of the petal, as wide as it is there.
+		at := (radius(0) + 2*radius(sum)) / 3
+		half := max(2, at*vg.Length(math.Sin(math.Pi/float64(n))))
+		sin, cos := math.Sincos(2 * math.Pi * float64(i) / float64(n))
+		x, y := mid.X+at*vg.Length(sin), mid.Y+at*vg.Length(cos)
+		cv.say(rect(x-half, y-half, x+half, y+half), "from "+number(360*float64(i)/float64(n), 0)+"°: "+number(sum, 1)+" % of the hours")
 	}
 }
 

@@ -115,6 +115,7 @@ func drawRose(cv *canvas, mid vg.Point, side vg.Length, d WindRosesData, r Named
 	}
 	if len(r.Sectors) > 0 {
 		drawPetals(cv, SpeedRoseData{Bands: d.Bands, Sectors: r.Sectors}, mid, radius, colours)
+		sayPetals(cv, r.Sectors, mid, radius)
 	}
 	cv.SetColor(inkAxis)
 	cv.SetLineWidth(lineAxis)
