@@ -75,6 +75,7 @@ func Advise(in Input) []Finding {
 	a.days = a.dayTable()
 	var all []found
 	for _, look := range []func() []found{a.fewRooms, a.clockStarts, a.outdoorLimits, a.indoorLimits, a.slowReopening, a.neverUsed, a.notOpened,
+		a.overridden, a.lockedOut, a.misledThermostats, a.cycling,
 		a.clashes, a.staleAir, a.warmZones, a.overnightPlant, a.unusedPurge, a.unknownHours} {
 		for _, f := range look() {
 			if f.Hours >= leastH {

@@ -174,7 +174,8 @@ func TestEveryCauseHasAFinding(t *testing.T) {
 	want := map[string]string{
 		"never-used": "next to never opened", "not-interlocked": "while the plant runs", "clock-start": "Plant unit U1 starts at 06:30 by the clock, whatever the weather (on 87 % of working days)",
 		"outdoor-limit-U1": "Plant unit U1 allows no open mode above about 21.0 °C outdoors", "slow-to-reopen": "Zone B goes back to open mode", "few-room-C": "thermostat of zone C",
-		"not-opened": "windows shut and nothing mechanical running",
+		"not-opened": "windows shut and nothing mechanical running", "manual-override": "A manual override was on", "needless-lock": "Windows were locked with nothing mechanical running",
+		"misleading-thermostat": "read warmer than its own room", "short-cycling": "Plant unit U1 starts and stops three times or more",
 	}
 	for _, f := range Advise(in) {
 		filled(t, f)
