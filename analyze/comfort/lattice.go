@@ -39,33 +39,35 @@ func newLattice(axes [4]axis, f func(x [4]float64) float64) *lattice {
 	return &lattice{axes: axes, f: f, node: make([]atomic.Uint32, n)}
 }
 
-// at is the interpolated value at a place inside all axes.
+// at is the interpolated value at a place inside all axes. Corners that weigh
+// nothing are not asked for.
 func (l *lattice) at(x [4]float64) float64 {
-	var base [4]int
-	var share [4]float64
-	for k, a := range l.axes {
-		base[k], share[k] = a.cell(x[k])
+	var index [16]int
+	var weight [16]float64
+	weight[0] = 1
+	n, stride := 1, 1
+	for k := len(x) - 1; k >= 0; k-- {
+		node, share := l.axes[k].cell(x[k])
+		for j := range n {
+			index[j] += node * stride
+		}
+		if share != 0 {
+			for j := range n {
+				index[n+j] = index[j] + stride
+				weight[n+j] = weight[j] * share
+				weight[j] *= 1 - share
+			}
+			n *= 2
+		}
+		stride *= l.axes[k].n
 	}
 	sum := 0.0
-	for corner := range 16 {
-		weight, index := 1.0, 0
-		for k := range l.axes {
-			if corner>>k&1 == 1 {
-				weight *= share[k]
-				index = index*l.axes[k].n + base[k] + 1
-			} else {
-				weight *= 1 - share[k]
-				index = index*l.axes[k].n + base[k]
-			}
-		}
-		if weight == 0 {
-			continue
-		}
-		bits := l.node[index].Load()
+	for j := range n {
+		bits := l.node[index[j]].Load()
 		if bits == 0 {
-			bits = l.fill(index)
+			bits = l.fill(index[j])
 		}
-		sum += weight * float64(math.Float32frombits(^bits))
+		sum += weight[j] * float64(math.Float32frombits(^bits))
 	}
 	return sum
 }

@@ -8,11 +8,13 @@ import "math"
 // [PMVElevated] stay within the bounds below; elsewhere the exact functions
 // are called. Safe for concurrent use; nodes are worked out when first needed.
 type Table struct {
-	met     float64
-	o       SETOptions
-	setC    *lattice
-	coolK   *lattice
-	leastHC [2]float64 // least convection of SET and of the cooling effect
+	met   float64
+	o     SETOptions
+	setC  *lattice
+	coolK *lattice
+	// still is the air speed up to which the heat transfer coefficient of SET
+	// and of the cooling effect does not change.
+	still [2]float64
 }
 
 // Bounds of the differences between [Table] and the exact functions: with
@@ -53,23 +55,24 @@ func NewTable(met float64, o SETOptions) *Table {
 	cooling.ForCoolingEffect = true
 	var speeds [2]axis
 	for k, opt := range []SETOptions{o, cooling} {
-		still, fast := t.convection(0.1, opt), t.convection(tableSpeedMS, opt)
-		t.leastHC[k] = still
-		speeds[k] = axis{low: still, step: (fast - still) / float64(tableSpeedsN-1), n: tableSpeedsN}
+		t.still[k] = t.speed(t.convection(0.1, opt))
+		// Convection grows nearly with the root of the speed.
+		low := math.Sqrt(t.still[k])
+		speeds[k] = axis{low: low, step: (math.Sqrt(tableSpeedMS) - low) / float64(tableSpeedsN-1), n: tableSpeedsN}
 	}
 	t.setC = newLattice([4]axis{tableTempC, tableRHPct, tableClo, speeds[0]}, func(x [4]float64) float64 {
-		return SET(t.still(x), o)
+		return SET(t.at(x), o)
 	})
 	t.coolK = newLattice([4]axis{tableCoolC, tableRHPct, tableClo, speeds[1]}, func(x [4]float64) float64 {
-		ce, _ := CoolingEffectK(t.still(x), cooling)
+		ce, _ := CoolingEffectK(t.at(x), cooling)
 		return ce
 	})
 	return t
 }
 
-// still are the conditions of a node: radiant as air temperature.
-func (t *Table) still(x [4]float64) Conditions {
-	return Conditions{AirC: x[0], RadiantC: x[0], RHPct: x[1], Met: t.met, Clo: x[2], AirSpeedMS: t.speed(x[3])}
+// at are the conditions of a node: radiant as air temperature.
+func (t *Table) at(x [4]float64) Conditions {
+	return Conditions{AirC: x[0], RadiantC: x[0], RHPct: x[1], Met: t.met, Clo: x[2], AirSpeedMS: x[3] * x[3]}
 }
 
 // convection is the heat transfer coefficient the two-node model takes.
@@ -104,9 +107,9 @@ func (t *Table) SET(c Conditions) float64 {
 	if !t.Covers(c) {
 		return SET(c, t.o)
 	}
-	hc := t.atSpeed(c.AirSpeedMS, t.leastHC[0])
-	top := operative(c, hc)
-	return t.setC.at([4]float64{top, humidityAt(c, top), c.Clo, hc})
+	v := math.Max(c.AirSpeedMS, t.still[0])
+	top := t.operative(c, v)
+	return t.setC.at([4]float64{top, humidityAt(c, top), c.Clo, math.Sqrt(v)})
 }
 
 // CoolingEffectK returns the cooling effect of air movement in K, see
@@ -115,14 +118,14 @@ func (t *Table) CoolingEffectK(c Conditions) (ceK float64, found bool) {
 	if !t.Covers(c) {
 		return CoolingEffectK(c, t.o)
 	}
-	hc, still := t.atSpeed(c.AirSpeedMS, t.leastHC[1]), t.leastHC[1]
-	if c.AirSpeedMS <= 0.1 || hc <= still {
+	v := c.AirSpeedMS
+	if v <= t.still[1] {
 		return 0, true
 	}
 	// Moving air brings people closer to the air's temperature than still air.
-	top := operative(c, hc)
-	ce := t.coolK.at([4]float64{top, humidityAt(c, top), c.Clo, hc})
-	ce += operative(c, still) - top
+	top := t.operative(c, v)
+	ce := t.coolK.at([4]float64{top, humidityAt(c, top), c.Clo, math.Sqrt(v)})
+	ce += t.operative(c, t.still[1]) - top
 	return math.Max(0, ce), ce >= 0
 }
 
@@ -139,11 +142,6 @@ func (t *Table) PMVElevated(c Conditions) float64 {
 	return PMV(stillAndCooler(c, ce))
 }
 
-// atSpeed is the heat transfer coefficient at an air speed.
-func (t *Table) atSpeed(speedMS, leastHC float64) float64 {
-	return math.Max(leastHC, 8.600001*math.Pow(speedMS*t.pressure(), 0.53))
-}
-
 func (t *Table) pressure() float64 {
 	if t.o.PressurePa != 0 {
 		return t.o.PressurePa / 101325
@@ -153,10 +151,11 @@ func (t *Table) pressure() float64 {
 
 // operative weights air and radiant temperature as the two-node model begins
 // to, with 4.7 W/(m²K) of radiation.
-func operative(c Conditions, hc float64) float64 {
+func (t *Table) operative(c Conditions, speedMS float64) float64 {
 	if c.AirC == c.RadiantC {
 		return c.AirC
 	}
+	hc := 8.600001 * math.Pow(speedMS*t.pressure(), 0.53)
 	return (hc*c.AirC + 4.7*c.RadiantC) / (hc + 4.7)
 }
 

@@ -35,7 +35,7 @@ func TestTableBoundInEveryCell(t *testing.T) {
 							}
 							x[k] = ax.low + ax.step*(float64(i)+0.5)
 						}
-						if at := tab.still(x); tab.Covers(at) {
+						if at := tab.at(x); tab.Covers(at) {
 							cells++
 							worst.add(tab, at, o)
 						}
