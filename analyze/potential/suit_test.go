@@ -149,3 +149,77 @@ func TestShortRuns(t *testing.T) {
 		}
 	}
 }
+
+// Limits are inside: wind of 10 m/s, fine dust of 35 µg/m³ and a dew point of
+// 17 °C suit; dust is tested where it is logged.
+func TestLimitsAreInside(t *testing.T) {
+	judge := func(wind, dust, dew float64) Suit {
+		out := &outdoor.Outdoor{TempC: f32(20), DewPointC: f32(dew), WindMS: f32(wind), PM25: f32(dust), HumidityLogged: true}
+		return newWeather(settings(), &grid.Grid{N: 1, StepS: 300, Loc: time.UTC}, out).verdicts(f32(26), true)[0]
+	}
+	for _, tt := range []struct {
+		wind, dust, dew float64
+		want            Suit
+	}{
+		{10, 35, 17, Suited}, {10, 35.1, 17, Polluted}, {10.1, 36, 17, TooWindy}, {10, 35, 17.1, TooHumid}, {10, math.NaN(), 17, SuitUnknown}, {3, 0, 5, Suited},
+	} {
+		if got := judge(tt.wind, tt.dust, tt.dew); got != tt.want {
+			t.Errorf("%g m/s, %g µg/m³, dew point %g °C: %v, want %v", tt.wind, tt.dust, tt.dew, got, tt.want)
+		}
+	}
+}
+
+// The plain band includes its ends, and the rise is taken off the comfort
+// limit of the headline only.
+func TestBandAndRise(t *testing.T) {
+	c := settings()
+	c.RiseK = 1
+	out := &outdoor.Outdoor{TempC: f32(12.7, 12.8, 25, 25.1, 27.5, 27.6), DewPointC: repeated(6, 10), HumidityLogged: true}
+	w := newWeather(c, &grid.Grid{N: 6, StepS: 3600, Loc: time.UTC}, out)
+	for i, want := range []Suit{TooCold, Suited, Suited, TooWarm, TooWarm, TooWarm} {
+		if got := w.verdicts(repeated(6, 26), true)[i]; got != want {
+			t.Errorf("headline, step %d: %v, want %v", i, got, want)
+		}
+	}
+	for i, want := range []bool{false, true, true, true, true, false} {
+		if got := w.bandVerdicts(true)[i] == Suited; got != want {
+			t.Errorf("band, step %d: suited %v, want %v", i, got, want)
+		}
+	}
+}
+
+// Rain dries for as long as the setting says, from the last wet step on, and
+// rain nobody measured may have fallen for as long.
+func TestRainDriesBySetting(t *testing.T) {
+	for _, tt := range []struct {
+		min  float64
+		wet  int
+		want Suit
+	}{{0, 1, Suited}, {5, 2, Suited}, {10, 3, Suited}, {12, 4, Suited}} {
+		c := settings()
+		c.RainDryMin, c.MinSuitedRunMin = tt.min, 0
+		rain := repeated(10, 0)
+		rain[2] = 0.1
+		w := newWeather(c, &grid.Grid{N: 10, StepS: 300, Loc: time.UTC}, &outdoor.Outdoor{TempC: repeated(10, 20), RainMMH: rain})
+		v, n := w.verdicts(repeated(10, 26), true), 0
+		for _, s := range v {
+			if s == Rain {
+				n++
+			}
+		}
+		if n != tt.wet || v[2+tt.wet] != tt.want {
+			t.Errorf("%g min: %d wet steps, want %d", tt.min, n, tt.wet)
+		}
+		rain[2] = float32(math.NaN())
+		w = newWeather(c, w.g, &outdoor.Outdoor{TempC: repeated(10, 20), RainMMH: rain})
+		v, n = w.verdicts(repeated(10, 26), true), 0
+		for _, s := range v {
+			if s == SuitUnknown {
+				n++
+			}
+		}
+		if n != tt.wet {
+			t.Errorf("%g min: %d unknown steps, want %d", tt.min, n, tt.wet)
+		}
+	}
+}
