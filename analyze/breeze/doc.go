@@ -73,6 +73,7 @@ var DriveDoc = method.Doc{
 		"decays happen when rooms empty, mostly in the evening, when wind is often weaker than by day; counted days hold for the whole of the open time",
 		"temperature difference and opening area vary too and are not taken out",
 		"groups of fewer rates than the site's minimum, and those whose interval spans more than a factor of 10, are counted and not judged; a slope needs 6 days",
+		"in 24 invented buildings of known flows with people counted, 5,579 days gave 4.5 % of a zone's usual rate per m/s at the mast where 5.5 % was true",
 		"wind with a steadiness below 0.7 over the time of a rate has no direction",
 		"sectors join zones that face different ways where more than one was measured; windward and leeward do not",
 	},

@@ -126,7 +126,7 @@ func (t *tally) try(in *Input, z int, s span) {
 	off := in.offsetDoubtPPM(z)
 	offLow, errOffLow := FitDecay(timeH, ppm, outdoorPPM-off)
 	offHigh, errOffHigh := FitDecay(timeH, ppm, outdoorPPM+off)
-	if errLow != nil || errHigh != nil || errOffLow != nil || errOffHigh != nil { // a floor so near outdoors proves nothing
+	if errLow != nil || errHigh != nil || errOffLow != nil || errOffHigh != nil || !(offLow.AirChangePerH > 0) { // a floor so near outdoors proves nothing
 		t.unclear++
 		return
 	}

@@ -10,6 +10,8 @@ import (
 	"testing"
 	"time"
 
+	"gonum.org/v1/gonum/stat"
+
 	"sashlog/analyze/indoor"
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/running"
@@ -154,12 +156,14 @@ func (s *score) under() float64 { return float64(s.below) / float64(s.n) }
 func kindOf(id string) string {
 	switch r := demoRooms[id]; {
 	case !r.facade || id == "L2.05":
-		return "neighbours' air" // core rooms, and a meeting room aired through doors
+		return neighboursAir // core rooms, and a meeting room aired through doors
 	case r.plant[:3] == "FCU":
 		return "ceiling unit"
 	}
 	return "own air"
 }
+
+const neighboursAir = "neighbours' air"
 
 // tableKey names a row of the table of errors.
 type tableKey struct {
@@ -170,6 +174,42 @@ type tableKey struct {
 type errorTable struct {
 	scores                              map[tableKey]*score
 	upper, upperHeld, right, wrong, few int
+	// windMS, found and true are counted days in open mode, rates relative to
+	// the zone's median.
+	windMS, found, truth []float64
+}
+
+// addOpenDays takes the days of zone k in open mode.
+func (e *errorTable) addOpenDays(in *Input, tr *demo.Truth, k int, days []Event) {
+	var found, truth []float64
+	from := len(e.windMS)
+	for _, d := range days {
+		if d.State != running.Open {
+			continue
+		}
+		var wind, rate []float64
+		for i := d.FromStep; i < d.ToStep; i++ {
+			if in.Running.Zones[k].State[i] == running.Open {
+				wind, rate = append(wind, float64(tr.Outdoor.WindMS[i+tr.Outdoor.Lead])), append(rate, trueRate(tr, k, i, i+1))
+			}
+		}
+		e.windMS, found, truth = append(e.windMS, mean(wind)), append(found, d.AirChangePerH), append(truth, mean(rate))
+	}
+	if len(found) < 5 {
+		e.windMS = e.windMS[:from]
+		return
+	}
+	f, t := median(found), median(truth)
+	for i := range found {
+		e.found, e.truth = append(e.found, found[i]/f), append(e.truth, truth[i]/t)
+	}
+}
+
+// windSlopes are the changes of the relative rate per m/s, found and true.
+func (e *errorTable) windSlopes() (found, truth float64) {
+	_, found = stat.LinearRegression(e.windMS, e.found, nil, false)
+	_, truth = stat.LinearRegression(e.windMS, e.truth, nil, false)
+	return found, truth
 }
 
 func (e *errorTable) at(what, state, kind string) *score {
@@ -189,6 +229,9 @@ func (e *errorTable) add(in Input, tr *demo.Truth) {
 	r := Assess(in)
 	for k := range r.Zones {
 		z, kind := &r.Zones[k], kindOf(tr.Zones[k].ID)
+		if kind != neighboursAir {
+			e.addOpenDays(&in, tr, k, z.Days)
+		}
 		for s := running.Open; s < running.NumStates; s++ {
 			inDecays, inUse := truths(&in, tr, k, s, z.Decays)
 			a := &z.AirChange[s]
@@ -270,6 +313,11 @@ func TestTruthRecovered(t *testing.T) {
 		e.add(in, tr)
 	}
 	e.log(t)
+	found, truth := e.windSlopes()
+	t.Logf("open mode, per m/s of wind: %.3f found, %.3f true, %d days", found, truth, len(e.found))
+	if len(e.found) < 50 || math.Abs(found-truth) > 0.03 {
+		t.Error("the wind's part in the air change is not recovered")
+	}
 	groups := 0
 	for k, x := range e.scores {
 		if x.n < least || k.kind == "all" {

@@ -23,6 +23,7 @@ func (in *Input) airChange(z int) *object {
 			verdicts.set(zone.Required[k].Name, string(v))
 		}
 		o.set(s.String(), (&object{}).set("median_per_h", num(a.MedianPerH)).set("low_per_h", num(a.LowPerH)).set("high_per_h", num(a.HighPerH)).
+			set("outdoor_co2_low_per_h", num(a.OutdoorLowPerH)).set("outdoor_co2_high_per_h", num(a.OutdoorHighPerH)).
 			set("range_low_per_h", num(a.FromPerH)).set("range_high_per_h", num(a.ToPerH)).
 			set("flow_l_s", num(a.FlowLs)).set("flow_l_s_person", num(a.FlowLsPerson)).set("events", a.Events).
 			set("method", a.Method).set("not_measurable", a.NotMeasurable).set("upper_value_only", a.UpperOnly).
