@@ -107,7 +107,7 @@ func shuffle(t *testing.T, path string) {
 	}
 }
 
-// Issue 2, "Must hold": rows in any order give the same outputs. The days
+// Rows in any order give the same outputs. The days
 // hold no repeated local hour.
 func TestShuffledRowsGiveTheSameGrid(t *testing.T) {
 	o := demo.Options{Seed: 3, From: site.Date{Year: 2025, Month: 5, Day: 1}, Days: 40, Zones: 8, Faults: true}

@@ -84,7 +84,7 @@ func criterion(t *testing.T, r *Result, id string) Criterion {
 
 // TestAdaptiveEdge: EN 16798-1 at a running mean of 20 °C gives 25.4 °C and in
 // category II 21.4 to 28.4 °C; 28.40 passes, 28.41 fails (published equation
-// and widths, design 4 section 3.2, recomputed).
+// and widths, recomputed).
 func TestAdaptiveEdge(t *testing.T) {
 	d := newDay(20, []float64{28.40, 28.41, 21.40, 21.39, nan}, states(5, site.PlantOff))
 	c := criterion(t, d.result(), "en16798-1")

@@ -65,7 +65,7 @@ func frame(fromS, toS int64) Frame {
 	return Frame{FromUTC: fromS, PeriodFromUTC: fromS, ToUTC: toS, Loc: time.UTC}
 }
 
-// Design 4 section 9, computed there by hand: 20 at 0 h, 21 at 1 h, 22.5 at
+// A worked example, computed by hand: 20 at 0 h, 21 at 1 h, 22.5 at
 // 1.5 h, 22 at 4 h, until 6 h, has the time-weighted mean 21.791667.
 func TestTimeWeightedMeanOfWorkedExample(t *testing.T) {
 	s := siteOf(site.Point{Quantity: site.AirTemp, Logging: site.COV, Hold: 6 * time.Hour})
@@ -315,7 +315,7 @@ func sameColumns(rt *rapid.T, name string, a, b *Built) {
 	}
 }
 
-// Issue 2, "Must hold": rows in any order and a file split in two give the
+// Rows in any order and a file split in two give the
 // same outputs as the tidy file.
 func TestOrderDoesNotMatter(t *testing.T) {
 	points := []site.Point{

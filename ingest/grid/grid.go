@@ -7,7 +7,7 @@ import (
 )
 
 // LeadDays is how long before the period a grid begins, so that running means
-// exist (design 3).
+// exist.
 const LeadDays = 30
 
 // Grid is a regular time grid with one column per point (same index as

@@ -10,7 +10,7 @@ import (
 	"sashlog/ingest/reading"
 )
 
-// Baselines of CO2 sensors. Design 4 section 5.9: usual sensors are accurate
+// Baselines of CO2 sensors: usual ones are accurate
 // to 50 ppm + 3 % of reading (typical data-sheet figure); the rolling minimum
 // of seven days shows the baseline; outdoor air is about 425 ppm (global mean
 // 2024 about 423 ppm, from memory).
