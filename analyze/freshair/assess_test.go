@@ -194,3 +194,51 @@ func TestNothingLogged(t *testing.T) {
 		t.Errorf("%+v", z)
 	}
 }
+
+// What is left of a room whose neighbour exchanges air with it: V dC/dt =
+// Q (Co - C) + q (Cn - C). With the neighbour kept at a share s of the room's
+// excess the room falls by Q/V + (1 - s) q/V, which is what a decay finds; each
+// 10 L/s of q is stated with its part.
+func TestNeighboursStated(t *testing.T) {
+	const volume, ownLs, doorLs, share = 180.0, 30.0, 20.0, 0.4
+	want := (ownLs + (1-share)*doorLs) * 3.6 / volume
+	in := decaying(t, want, share)
+	in.Site.Zones[0].AreaM2, in.Site.Zones[0].HeightM = 60, 3
+	z := Assess(in).Zones[0]
+	a := z.AirChange[running.Shut]
+	near(t, "rate", a.MedianPerH, want, 0.01)
+	near(t, "share", z.NeighbourShare[running.Shut], share, 0.01)
+	near(t, "10 L/s", a.NeighbourPer10LsPerH, (1-share)*10*3.6/volume, 0.01)
+	near(t, "own air", a.MedianPerH-a.NeighbourPer10LsPerH*doorLs/10, ownLs*3.6/volume, 0.02)
+	if !math.IsNaN(z.NeighbourShare[running.Open]) || a.UpperOnly {
+		t.Errorf("%+v", z.NeighbourShare)
+	}
+	in.Running.Zones[0].NoOpening = true
+	if a := Assess(in).Zones[0].AirChange[running.Shut]; !a.UpperOnly {
+		t.Error("a closed room without openings has no outdoor air of its own")
+	}
+}
+
+// decaying is a room of 4 evenings in which CO2 falls at a rate, beside one
+// that stays at a share of its excess.
+func decaying(t *testing.T, perH, share float64) Input {
+	t.Helper()
+	const perDay, days = 288, 4
+	n := perDay * days
+	room, other := make([]float32, n), make([]float32, n)
+	run := running.Zone{State: make([]running.State, n), Occupied: make([]running.Occupancy, n), Plant: make([]uint8, n), OpenShare: make([]float32, n)}
+	for i := range n {
+		excess := 900.0
+		if h := float64(i%perDay)/12 - 18; h >= 0 {
+			excess *= math.Exp(-perH * h)
+		} else {
+			run.Occupied[i] = running.Occupied
+		}
+		room[i], other[i], run.State[i] = float32(425+excess), float32(425+share*excess), running.Shut
+	}
+	loc := time.FixedZone("standard", 3600)
+	return Input{Site: &site.Site{Zones: []site.Zone{{ID: "A", Floor: "1", People: 5}, {ID: "B", Floor: "1"}}}, Criteria: demoSettings(),
+		Grid:    &grid.Grid{StartUTC: time.Date(2025, 3, 3, 0, 0, 0, 0, loc).Unix(), StepS: 300, N: n, PeriodTo: n, Loc: loc},
+		Outdoor: &outdoor.Outdoor{CO2DefaultPPM: 425}, Indoor: []indoor.Zone{{CO2PPM: room}, {CO2PPM: other}},
+		Running: &running.Result{Zones: []running.Zone{run, run}}}
+}

@@ -219,31 +219,43 @@ var wayMethods = map[Way]string{
 }
 
 // neighbours states how far the zones of the same floor stood above outdoors
-// in this zone's decays, and what air exchanged with them adds to their rate.
+// in the events behind each state's rate (its decays where none stands), and
+// what air exchanged with them adds to the rate.
 func (out *Zone) neighbours(in *Input, z int) {
-	var shares [running.NumStates][]float64
-	for _, d := range out.Decays {
-		if share := neighbourShare(in, z, d); !math.IsNaN(share) {
-			shares[d.State] = append(shares[d.State], share)
-		}
-	}
 	volume := in.Site.Zones[z].AreaM2 * in.Site.Zones[z].HeightM
-	for s := range shares {
-		out.NeighbourShare[s] = median(shares[s])
-		if a := &out.AirChange[s]; volume > 0 && a.Way == ByDecay {
+	for s := range out.AirChange {
+		a := &out.AirChange[s]
+		events := out.Decays
+		if a.Way == ByCounted {
+			events = out.Days
+		}
+		var shares []float64
+		for _, e := range events {
+			if e.State != running.State(s) {
+				continue
+			}
+			if share := neighbourShare(in, z, e); !math.IsNaN(share) {
+				shares = append(shares, share)
+			}
+		}
+		out.NeighbourShare[s] = median(shares)
+		if volume > 0 && a.Way != "" {
 			a.NeighbourPer10LsPerH = (1 - out.NeighbourShare[s]) * 10 * 3.6 / volume
 		}
 	}
 }
 
 // neighbourShare is the mean excess of the zones on the same floor over this
-// zone's own, in the steps of a decay in which both are known.
+// zone's own, in the steps of an event in its state in which both are known.
 func neighbourShare(in *Input, z int, d Event) float64 {
 	if in.Site.Zones[z].Floor == "" {
 		return math.NaN()
 	}
 	own, others := 0.0, 0.0
 	for i := d.FromStep; i < d.ToStep; i++ {
+		if in.Running.Zones[z].State[i] != d.State {
+			continue
+		}
 		mine := float64(in.Indoor[z].CO2PPM[i]) - in.Outdoor.OutdoorCO2(i)
 		if math.IsNaN(mine) {
 			continue

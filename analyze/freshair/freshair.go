@@ -28,9 +28,10 @@ type Zone struct {
 	// counted, one entry for each state of a day; both in order of time.
 	Decays, Days []Event
 	// NeighbourShare is how far the zones of the same floor stood above outdoors
-	// during this zone's decays, per state, as a share of this zone's own excess,
-	// median; NaN when unknown. Air that comes from them is no outdoor air: a
-	// decay measures outdoor air plus (1 - share) of the air exchanged with them.
+	// during the events behind its rate, per state, as a share of this zone's own
+	// excess, median; NaN when unknown. Air that comes from them is no outdoor air:
+	// what is measured is outdoor air plus (1 - share) of the air exchanged with
+	// them (of a balance, nearly).
 	NeighbourShare [running.NumStates]float64
 	// Required are the amounts of outdoor air asked for, Verdicts how each
 	// state's measured flow stands to them.
@@ -113,7 +114,7 @@ type AirChange struct {
 	// no plant runs.
 	UpperOnly bool
 	// NeighbourPer10LsPerH is what each 10 L/s exchanged with neighbours adds to
-	// the rate by decays, 1/h; NaN where their level or the volume is unknown.
+	// the rate, 1/h; NaN where their level or the volume is unknown.
 	NeighbourPer10LsPerH float64
 	// Estimates are all ways, in the order of trust.
 	Estimates     []Estimate

@@ -210,7 +210,7 @@ func (b *builder) airChanges() (table, bool) {
 	}
 	t.Foot = []string{words.Dash + " not known: too few decays, or floor area, height or people are not given."}
 	t.Foot = append(t.Foot, "The interval holds the typical rate 95 times in 100: spread of events, readings that depend on each other, outdoor level, sensor offset and people. In invented buildings of known flows it held 99 of 100 rates stated. “CO2 at usual people” is what the usual number of people would bring the room to within four hours at this rate.",
-		"Air from neighbouring rooms looks like outdoor air. “Neighbours’ level”: how far the zones of the same floor stood above outdoors while CO2 fell here, as a share of this zone; the lower it is, the more their air dilutes (above 100 % it holds the level up), and the last column says by how much for each 10 L/s that passes through doors. “≤”: so slow, or so closed off, that their air may be most of it; the outdoor air is then at most that.")
+		"Air from neighbouring rooms looks like outdoor air. “Neighbours’ level”: how far the zones of the same floor stood above outdoors while the rate was measured here, as a share of this zone; the lower it is, the more their air dilutes (above 100 % it holds the level up), and the last column says by how much for each 10 L/s that passes through doors. “≤”: so slow, or so closed off, that their air may be most of it; the outdoor air is then at most that.")
 	if open := b.openUnmeasured(); open != "" {
 		t.Foot = append(t.Foot, open)
 	}
