@@ -1,6 +1,7 @@
 package compare
 
 import (
+	"fmt"
 	"math"
 
 	"sashlog/analyze/exceedance"
@@ -135,7 +136,11 @@ func outsideHours(in *Input) (out [][]ratio, words string) {
 				}
 			}
 		}
-		return out, "Indian mixed-mode model, 90 % acceptability (Manu et al. 2016), the same line in every running state"
+		words = "Indian mixed-mode model, 90 % acceptability (Manu et al. 2016), the same line in every running state"
+		if applies < days {
+			words += fmt.Sprintf("; %d of %d days lie beyond its range (a 30-day mean of 13 to 38.5 °C) and are left out", days-applies, days)
+		}
+		return out, words
 	}
 	const lowC, highC = 20, 26
 	stepH := in.Grid.StepH()

@@ -35,6 +35,9 @@ func (b *builder) doubtParts() []block {
 		"Together the sensors leave: suited " + words.HoursBetween(total.SuitedH.Value*k, total.SuitedH.Low*k, total.SuitedH.High*k) + ", achieved " +
 			words.HoursBetween(total.AchievedH.Value*k, total.AchievedH.Low*k, total.AchievedH.High*k) + ", missed " +
 			words.HoursBetween(total.MissedH.Value*k, total.MissedH.Low*k, total.MissedH.High*k) + "."}
+	if w := b.gains(d); w != "" {
+		out = append(out, text(w))
+	}
 	bars := chart.DoubtBarsData{Caption: chart.Caption{Title: "What the doubt in the missed hours is made of", Desc: "A bar per source of doubt."}, XTitle: "missed hours of the average occupant (± h " + b.span.Words + ")",
 		Parts: []chart.DoubtPart{{Name: "hours that cannot be judged", Half: d.UnknownHalfH * k, Unknown: true}}}
 	for p := doubt.Part(0); p < doubt.NumParts; p++ {
@@ -44,6 +47,29 @@ func (b *builder) doubtParts() []block {
 	}
 	return append(out, b.draw("doubt-bars", "How far each source of doubt alone could move the hours missed. The longest bar is the one worth shortening first; the table says how.",
 		"No source of doubt moves the missed hours.", func(o chart.Options) (chart.SVG, error) { return chart.DoubtBars(bars, o) }), b.table(t))
+}
+
+// gains says which measurement would take most off the doubt of the missed
+// hours, and which sensor if that is not one.
+func (b *builder) gains(d *doubt.Result) string {
+	k := b.span.PerYear
+	var said []string
+	for _, g := range d.Gains() {
+		from, to := words.HoursNumber(g.FromH*k), words.HoursNumber(g.ToH*k)
+		switch {
+		case g.Unknown && len(said) == 0:
+			said = append(said, "Most would be gained by judging the hours that now cannot be judged (see what these logs can answer): the bounds of the missed hours, ±"+from+" h "+b.span.Words+", would close.")
+			continue
+		case g.Unknown:
+			continue
+		case len(said) == 0:
+			said = append(said, "Most would be gained at "+words.DoubtPart(g.Part)+": twice as accurate, the interval of the missed hours would shrink from ±"+from+" to ±"+to+" h "+b.span.Words+" ("+shrinks(g.Part)+").")
+		default:
+			said = append(said, "Among the sensors most would be gained at "+words.DoubtPart(g.Part)+": twice as accurate, their interval would shrink from ±"+from+" to ±"+to+" h ("+shrinks(g.Part)+").")
+		}
+		break
+	}
+	return strings.Join(said, " ")
 }
 
 func shrinks(p doubt.Part) string {

@@ -16,6 +16,22 @@ func (in *Input) sensorDoubt() any {
 		set("parts", parts).set("building", doubtFigures(&d.Building))
 }
 
+// gains writes what would shrink the doubt of the missed hours, most first.
+func (in *Input) gains() []any {
+	out := []any{}
+	if in.Results.Doubt == nil {
+		return out
+	}
+	for _, g := range in.Results.Doubt.Gains() {
+		what := "hours that cannot be judged are judged"
+		if !g.Unknown {
+			what = g.Part.String() + " measured twice as accurately"
+		}
+		out = append(out, (&object{}).set("what", what).set("from_half_h", num(g.FromH)).set("to_half_h", num(g.ToH)))
+	}
+	return out
+}
+
 func doubtFigures(f *doubt.Figures) *object {
 	of := func(i doubt.Interval) *object {
 		half := &object{}

@@ -113,7 +113,7 @@ func (in *Input) uncertainty() *object {
 		set("judged_share", num(b.JudgedShare)).set("unjudged_h", num(b.H[hours.CUnjudged])).set("unjudged_suited_h", num(b.H[hours.CUnjudgedSuited])).
 		set("weather_unknown_h", num(b.H[hours.CSuitedUnknown])).set("running_unknown_h", num(b.H[hours.CUnknown])).
 		set("occupancy_unknown_h", num(b.H[hours.COccupiedUnknown])).set("achieved_share", bounded(b.AchievedShare)).
-		set("unknown_half_h", in.unknownHalf()).set("sensors", in.sensorDoubt())
+		set("unknown_half_h", in.unknownHalf()).set("sensors", in.sensorDoubt()).set("gains", in.gains())
 }
 
 func (in *Input) unknownHalf() any {
