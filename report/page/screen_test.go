@@ -66,6 +66,9 @@ func TestAccessible(t *testing.T) {
 	d := driver{t, opened(t, write(t, input(s)), 1280, 900)}
 	d.p.Until(t, `document.querySelector("#look-picture svg path")`)
 	d.p.Ask(t, checks+"; "+laidOut+"; 1", nil)
+	// Of what repeats a few are enough.
+	d.p.Ask(t, `document.querySelectorAll("tbody").forEach(b => [...b.rows].slice(4).forEach(r => r.remove()));
+		document.querySelectorAll(".chapter").forEach(c => [...c.querySelectorAll(".finding")].slice(3).forEach(f => f.remove()))`, nil)
 	d.p.Ask(t, `document.getElementById("look-table").open = true`, nil)
 	d.p.Until(t, `document.querySelector("#look-hours tr")`)
 	for _, v := range violations(t, d.p, "document") {
@@ -79,8 +82,8 @@ func TestAccessible(t *testing.T) {
 			t.Errorf("zone %s: %s", zone, v)
 		}
 	}
-	d.p.Ask(t, `document.querySelector("#look").insertAdjacentHTML("beforeend", "<button></button>")`, nil)
-	if found := violations(t, d.p, part); !strings.Contains(strings.Join(found, "\n"), "button-name: ") {
+	d.p.Ask(t, `document.querySelector("#look .pick").insertAdjacentHTML("beforeend", "<button></button>")`, nil)
+	if found := violations(t, d.p, `document.querySelector("#look .pick")`); !strings.Contains(strings.Join(found, "\n"), "button-name: ") {
 		t.Errorf("a button without a name is not found: %q", found)
 	}
 }

@@ -18,7 +18,7 @@ import (
 )
 
 // patience is how long one command may take.
-const patience = 60 * time.Second
+const patience = 3 * time.Minute
 
 // Names are the programs looked for.
 var Names = []string{"chromium", "chromium-browser", "google-chrome"}
@@ -305,7 +305,7 @@ func (p *Page) Ask(t testing.TB, expression string, into any) {
 // Until waits until an expression is true.
 func (p *Page) Until(t testing.TB, expression string) {
 	t.Helper()
-	for end := time.Now().Add(20 * time.Second); time.Now().Before(end); time.Sleep(10 * time.Millisecond) {
+	for end := time.Now().Add(time.Minute); time.Now().Before(end); time.Sleep(10 * time.Millisecond) {
 		var yes bool
 		if p.Ask(t, "!!("+expression+")", &yes); yes {
 			return
