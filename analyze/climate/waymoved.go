@@ -60,7 +60,12 @@ func waySensitivity(in *Input, r *record, balance HeatBalance) []WayMoved {
 	byBalance := func(way string, c criteria.Settings) func() []vote {
 		return func() []vote {
 			b := balanceBy(c, balance.HeightM)
-			needs := needsOf(r, b)
+			needs := make([]Need, r.g.N)
+			for i := range needs {
+				if r.occ[i] > 0 { // nothing else is counted
+					needs[i] = b.Need(float64(r.out.TempC[i]), r.dew(i))
+				}
+			}
 			votes := make([]vote, len(needs))
 			var credited []bool
 			if way == nightCooling {
