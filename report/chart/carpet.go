@@ -23,6 +23,8 @@ type CarpetData struct {
 	// Legend lists the classes to explain, in order. Empty means those that
 	// occur, in the order of Class.
 	Legend []Class
+	// Low carpets are two thirds as high, for pages that hold several.
+	Low bool
 }
 
 // maxCarpetDays bounds the picture: beyond it days are thinner than print can show.
@@ -45,7 +47,11 @@ func Carpet(d CarpetData, o Options) (SVG, error) {
 	}
 	entries := classLegend(classes)
 	_, legendH := layLegend(entries, f.width)
-	return f.render(legendH+172, func(cv *canvas, area draw.Canvas) {
+	height := vg.Length(172)
+	if d.Low {
+		height = 112
+	}
+	return f.render(legendH+height, func(cv *canvas, area draw.Canvas) {
 		drawLegend(cv, 0, area.Max.Y, f.width, entries)
 		p := newPlot()
 		p.X.Min, p.X.Max = 0, float64(len(d.Days))

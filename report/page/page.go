@@ -9,7 +9,7 @@
 //  1. page one: the answer, what the hours went to, worst zones, first actions
 //  2. the year, the weather, the wind, the zones, comfort, fresh air
 //  3. what was missed and why, the findings in full, out of hours
-//  4. what the logs can answer, how good the data are
+//  4. what the logs can answer, how good the data are, a sheet per zone
 //  5. methods, provenance, cautions
 package page
 
@@ -183,7 +183,7 @@ func newBuilder(in Input) *builder {
 func (b *builder) sections() []section {
 	list := []section{
 		b.year(), b.weather(), b.wind(), b.zones(), b.comfort(), b.said(), b.air(), b.lost(), b.changeover(), b.findings(), b.outOfHours(),
-		b.answerable(), b.quality(), b.methods(), b.provenance(), b.cautions(),
+		b.answerable(), b.quality(), b.sheets(), b.methods(), b.provenance(), b.cautions(),
 	}
 	list = slices.DeleteFunc(list, func(s section) bool { return s.ID == "" })
 	for i := range list {

@@ -63,7 +63,7 @@ func TestPrint(t *testing.T) {
 				t.Errorf("page of %g × %g points, want %g × %g", w, h, p.width, p.height)
 			}
 			n, _ := strconv.Atoi(pages[1])
-			if n < 10 || n > 40 {
+			if n < 10 || n > 50 {
 				t.Errorf("%d pages", n)
 			}
 			sheets := strings.Split(run(t, "pdftotext", "-layout", file, "-"), "\f")
