@@ -12,8 +12,8 @@ import (
 type Home struct {
 	// NotApplicable says why there is no outcome; the rest is then empty.
 	NotApplicable string
-	// Mechanical: the people cannot open windows, so the criterion of homes
-	// with mostly mechanical ventilation applies instead of a and b.
+	// Mechanical: the zone has no opening, so the criterion of homes with mostly
+	// mechanical ventilation applies instead of a and b.
 	Mechanical bool
 	// A: share of occupied season hours 1 K and more above TM52's limit.
 	AShare float64
@@ -41,7 +41,7 @@ func homeOf(in *Input, z int, tm52 comfort.TM52Result) Home {
 	case temp == nil:
 		return Home{NotApplicable: "no temperature is logged"}
 	}
-	o := Home{Mechanical: !run.PeopleCanOpen, AShare: tm52.ExceededShare}
+	o := Home{Mechanical: run.NoOpening, AShare: tm52.ExceededShare}
 	h := in.Grid.StepH()
 	for i := in.Grid.PeriodFrom; i < in.Grid.PeriodTo; i++ {
 		t := float64(temp[i])

@@ -141,7 +141,7 @@ var Doc = method.Doc{
 		"methods A and B use the headline limits; the optimum of method B is the middle of the limits (our assumption)",
 		"methods C to E leave out steps in which the predicted mean vote is outside the range of ISO 7730",
 		"TM52 was written for buildings without cooling: here a calculation over all occupied hours; its season in the south is November to March (our assumption); days beyond a running mean of 10 to 30 °C, where EN 15251's lines end, are left out and counted",
-		"TM59 only where the site file names a bedroom, living room or kitchen: of the hours audited, as far as known, not of a whole year where less was audited (our reading); 3 % of occupied hours above 26 °C where people cannot open windows",
+		"TM59 only where the site file names a bedroom, living room or kitchen: of the hours audited, as far as known, not of a whole year where less was audited (our reading); 3 % of occupied hours above 26 °C where a zone has no opening",
 		"spans of which less than half the occupied time is known do not count",
 	},
 	Sources: []string{

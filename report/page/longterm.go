@@ -103,7 +103,7 @@ func (b *builder) homes(lt *longterm.Result) []block {
 			which, nights = "a and b", words.HoursNumber(o.NightOver26H)+" of "+words.HoursNumber(o.NightH)
 		}
 		if o.Mechanical {
-			which, occupied = "windows shut", words.HoursNumber(o.Over26H)+" of "+words.HoursNumber(o.OccupiedH)
+			which, occupied = "no opening", words.HoursNumber(o.Over26H)+" of "+words.HoursNumber(o.OccupiedH)
 		}
 		outcome := "not known"
 		switch {
@@ -117,7 +117,7 @@ func (b *builder) homes(lt *longterm.Result) []block {
 	if len(t.Rows) == 0 {
 		return []block{text("TM59, the criteria for homes, does not apply: the site file names no bedroom, living room or kitchen with a logged temperature.")}
 	}
-	t.Foot = []string{"a: at most 3 % of occupied time in the season 1 K or more above TM52's limit; b, bedrooms: at most 1 % of the hours from 22:00 to 07:00 above 26 °C (33 hours of a year fail); windows people cannot open: at most 3 % of occupied hours above 26 °C. Hours audited, not brought to a year."}
+	t.Foot = []string{"a: at most 3 % of occupied time in the season 1 K or more above TM52's limit; b, bedrooms: at most 1 % of the hours from 22:00 to 07:00 above 26 °C (33 hours of a year fail); no opening: at most 3 % of occupied hours above 26 °C. Hours audited, not brought to a year."}
 	return []block{b.table(t)}
 }
 
