@@ -10,6 +10,7 @@ import (
 	"html/template"
 	"io/fs"
 	"math"
+	"slices"
 	"strings"
 	"time"
 
@@ -172,6 +173,9 @@ func script() (string, error) {
 	return s.String(), nil
 }
 
+// lookUnknown stands for hours that nothing was logged to count.
+const lookUnknown = -1
+
 // lookTotals are the hours of each month: first of the average occupant, then
 // of the zones.
 func (b *builder) lookTotals(months []time.Time) (keys []string, totals [][][]int) {
@@ -185,9 +189,19 @@ func (b *builder) lookTotals(months []time.Time) (keys []string, totals [][][]in
 	}{{"occupied", hours.COccupied}, {"suited", hours.CSuited}, {"over", hours.COver}, {"under", hours.CUnder}, {"co2_over", hours.CCO2Over}} {
 		keys, cols = append(keys, c.key), append(cols, []hours.Col{c.col})
 	}
-	of := func(t hours.Total) []int {
+	warmth, air := make([]bool, len(b.in.Site.Zones)), make([]bool, len(b.in.Site.Zones))
+	for z := range b.in.Site.Zones {
+		c := b.headline(z)
+		warmth[z] = c != nil && c.AppliesH > 0
+		air[z] = z < len(b.in.Results.Indoor) && b.in.Results.Indoor[z].CO2PPM != nil
+	}
+	of := func(t hours.Total, warmth, air bool) []int {
 		out := make([]int, len(cols))
 		for k, list := range cols {
+			if !warmth && (keys[k] == "over" || keys[k] == "under") || !air && keys[k] == "co2_over" {
+				out[k] = lookUnknown
+				continue
+			}
 			sum := 0.0
 			for _, c := range list {
 				sum += t.H[c]
@@ -204,13 +218,13 @@ func (b *builder) lookTotals(months []time.Time) (keys []string, totals [][][]in
 				month = have
 			}
 		}
-		totals[m] = append(totals[m], of(month.Building))
+		totals[m] = append(totals[m], of(month.Building, slices.Contains(warmth, true), slices.Contains(air, true)))
 		for z := range b.in.Site.Zones {
 			var t hours.Total
 			if z < len(month.Zones) {
 				t = month.Zones[z]
 			}
-			totals[m] = append(totals[m], of(t))
+			totals[m] = append(totals[m], of(t, warmth[z], air[z]))
 		}
 	}
 	return keys, totals

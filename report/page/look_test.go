@@ -141,6 +141,9 @@ func TestPicker(t *testing.T) {
 	if got, want := cell("could have been open"), hoursOf(s.Results.Summary.Building.Missed.Value); got != want {
 		t.Errorf("the average occupant could have been open for %s h, want %s", got, want)
 	}
+	if got := cell("above the CO2 limit, where known"); got == "–" {
+		t.Error("CO2 is logged, but its hours are not known")
+	}
 	d.choose("look-zone", "3")
 	d.choose("look-from", "1")
 	d.p.Until(t, `document.getElementById("look-period-title").textContent === "L1.04 Studio 4, June 2031"`)
@@ -206,6 +209,15 @@ func TestPicker(t *testing.T) {
 type driver struct {
 	t *testing.T
 	p *browser.Page
+}
+
+// TestUnknownTotals: what nothing was logged for is not nought.
+func TestUnknownTotals(t *testing.T) {
+	s := sample.Make(sample.Options{Days: 14, Zones: 1, People: []float64{9}})
+	s.Results.Indoor[0].CO2PPM = nil
+	p := opened(t, write(t, input(s)), 800, 900)
+	p.Until(t, `[...document.querySelectorAll("#look-totals tr")].some(r => r.textContent.startsWith("above the CO2 limit, where known––"))`)
+	quiet(t, p)
 }
 
 // TestKeyboard: the tabulator reaches every control in turn, and the keys work

@@ -34,9 +34,10 @@ function drawDay(box, s, day, words) {
   const grid = svg.appendChild(make('svg:g', {}));
   let y = 4;
   for (const p of panelsOf(s)) {
-    svg.append(make('svg:text', { x: 0, y: y + 11, class: 'title' }, p.title, make('svg:tspan', { class: 'faint', dx: 8 }, p.key || '')));
+    const missing = p.main && !p.main.some(list => known(list).length), nothing = p.band && !known(p.band[1]).length;
+    svg.append(make('svg:text', { x: 0, y: y + 11, class: 'title' }, p.title, make('svg:tspan', { class: 'faint', dx: 8 }, missing || nothing ? '' : p.key || '')));
     y += 17;
-    if (p.main && !p.main.some(list => known(list).length)) {
+    if (missing) {
       svg.append(make('svg:text', { x: left, y: y + 10, class: 'faint' }, p.missing));
       y += 20;
       continue;

@@ -4,7 +4,7 @@
 // occupant. Its values stand in the order of data.total_keys.
 function totalsOf(zone, from, to) {
   const out = data.total_keys.map(() => 0);
-  for (let m = from; m <= to; m++) data.totals[m][zone + 1].forEach((v, k) => { out[k] += v / 100; });
+  for (let m = from; m <= to; m++) data.totals[m][zone + 1].forEach((v, k) => { out[k] += v < 0 ? NaN : v / 100; }); // below 0: not known
   return out;
 }
 
@@ -18,13 +18,13 @@ function periodWords(zone, from, to) {
 function periodTable(totals) {
   const occupied = totalAt(totals, 'occupied'), body = make('tbody', {});
   const row = (head, h, of) => body.append(make('tr', {}, make('th', { scope: 'row' }, ...head), make('td', { class: 'n' }, num(h, h < 100 ? 1 : 0)),
-    make('td', { class: 'n' }, of > 0 ? num(100 * h / of, 100 * h / of < 10 ? 1 : 0) + '\u00a0%' : '–')));
+    make('td', { class: 'n' }, of > 0 && h >= 0 ? num(100 * h / of, 100 * h / of < 10 ? 1 : 0) + '\u00a0%' : '–')));
   data.outcomes.forEach((c, k) => { if (k > 0 && totals[k] > 0) row([swatchOf(c, 'total' + k), ' ' + c.label], totals[k], occupied); });
   row([make('b', {}, 'occupied')], occupied, occupied);
   row(['weather suitable'], totalAt(totals, 'suited'), occupied);
-  row(['too warm by the headline criterion'], totalAt(totals, 'over'), occupied);
-  row(['too cool by it'], totalAt(totals, 'under'), occupied);
-  row(['above the CO2 limit'], totalAt(totals, 'co2_over'), occupied);
+  row(['too warm by the headline criterion, where known'], totalAt(totals, 'over'), occupied);
+  row(['too cool by it, where known'], totalAt(totals, 'under'), occupied);
+  row(['above the CO2 limit, where known'], totalAt(totals, 'co2_over'), occupied);
   return make('table', { 'aria-labelledby': 'look-period-title' }, make('thead', {}, make('tr', {}, make('th', { scope: 'col' }, 'Outcome'),
     make('th', { scope: 'col', class: 'n' }, 'Hours'), make('th', { scope: 'col', class: 'n' }, 'Share of occupied'))), body);
 }
