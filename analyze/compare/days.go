@@ -54,7 +54,7 @@ func (d *day) gather(in *Input, group [2][]int, outside [][]ratio, from, to int)
 	zones := 0.0
 	for g, list := range group {
 		for _, z := range list {
-			w := weightOf(in.Site, z)
+			w := WeightOf(in.Site, z)
 			for h := from; h < to; h++ {
 				row := rec.Row(z, h)
 				sec := func(c hours.Col) float64 { return w * float64(rec.Seconds[c][row]) / 3600 }
@@ -92,8 +92,8 @@ func (d *day) gather(in *Input, group [2][]int, outside [][]ratio, from, to int)
 	return true
 }
 
-// weightOf counts a zone by its people where given.
-func weightOf(s *site.Site, z int) float64 {
+// WeightOf counts a zone by its people where given.
+func WeightOf(s *site.Site, z int) float64 {
 	if p := s.Zones[z].People; p > 0 {
 		return p
 	}

@@ -135,7 +135,6 @@ func (t *Trial) Infer(drawings int, seed uint64) Answer {
 	// (seen - drawing's) / (1 - agreement). Those bounds are the interval.
 	var bounds []float64
 	same, greater, less := 0, 0, 0
-	const fuzz = 1e-12
 	count := func(on *sums) {
 		d, agrees := t.difference(on)
 		if math.IsNaN(d) || agrees > 1-1e-9 {
@@ -158,10 +157,7 @@ func (t *Trial) Infer(drawings int, seed uint64) Answer {
 		rng := rand.New(rand.NewPCG(seed, 0xd2a3))
 		count(&on)
 		for range drawings {
-			var on sums
-			for _, list := range t.patterns {
-				on.add(&list[rng.IntN(len(list))])
-			}
+			on := t.redrawn(rng)
 			count(&on)
 		}
 	}
@@ -171,6 +167,39 @@ func (t *Trial) Infer(drawings int, seed uint64) Answer {
 	a.Low, a.High = ends(bounds, same)
 	return a
 }
+
+// PValue is P alone, from so many drawings and no more; for planning, where it is
+// asked for thousands of times.
+func (t *Trial) PValue(drawings int, rng *rand.Rand) float64 {
+	on := t.truth()
+	seen, _ := t.difference(&on)
+	if math.IsNaN(seen) {
+		return math.NaN()
+	}
+	greater, less := 1, 1 // the one drawn
+	for range drawings {
+		on = t.redrawn(rng)
+		d, _ := t.difference(&on)
+		if !(d < seen-fuzz) {
+			greater++
+		}
+		if !(d > seen+fuzz) {
+			less++
+		}
+	}
+	return math.Min(1, 2*float64(min(greater, less))/float64(drawings+1))
+}
+
+// redrawn is one drawing by the schedule's rule.
+func (t *Trial) redrawn(rng *rand.Rand) (on sums) {
+	for _, list := range t.patterns {
+		on.add(&list[rng.IntN(len(list))])
+	}
+	return on
+}
+
+// fuzz keeps differences that are alike but for rounding alike.
+const fuzz = 1e-12
 
 // ends are the least and the greatest difference that leave more than the level
 // in either tail.
