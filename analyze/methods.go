@@ -19,7 +19,9 @@ import (
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/potential"
 	"sashlog/analyze/predicted"
+	"sashlog/analyze/randomisation"
 	"sashlog/analyze/running"
+	"sashlog/analyze/trial"
 	"sashlog/analyze/votes"
 )
 
@@ -27,7 +29,7 @@ import (
 // analyses run; the report's appendix and the list of methods print from it.
 func Methods() []method.Doc {
 	docs := []method.Doc{outdoor.Doc, running.Doc, potential.Doc, hours.Doc, predicted.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc, afterhours.Doc,
-		doubt.Doc, votes.Doc, energy.Doc, changeover.Doc, leaders.Doc, compare.Doc}
+		doubt.Doc, votes.Doc, energy.Doc, changeover.Doc, leaders.Doc, compare.Doc, trial.Doc, randomisation.Doc}
 	docs = append(append(docs, climate.Docs()...), breeze.Docs()...)
 	return append(docs, comfort.Docs()...)
 }

@@ -9,6 +9,8 @@ import (
 	"sashlog/analyze/changeover"
 	"sashlog/analyze/compare"
 	"sashlog/analyze/hours"
+	"sashlog/analyze/running"
+	"sashlog/configs/site"
 )
 
 // steps lists what could be tried, most gain first.
@@ -20,13 +22,13 @@ func steps(in *Input) []Step {
 			if !plant && in.Running.Zones[sub.Index].ServedByPlant {
 				continue // its plant unit stands for it
 			}
-			seen := map[string]bool{}
-			for _, l := range sub.Limits() {
+			limits := limitsOf(in, sub, plant)
+			for k, l := range limits {
 				st, ok := stepOf(in, sub, l, plant)
-				if !ok || seen[st.ID] {
+				if !ok {
 					continue
 				}
-				seen[st.ID] = true
+				st.others = slices.Delete(slices.Clone(limits), k, k+1)
 				st.weigh(in)
 				if st.GainH >= LeastGainH {
 					out = append(out, st)
@@ -37,6 +39,31 @@ func steps(in *Input) []Step {
 	add(in.Changeover.Units, true)
 	add(in.Changeover.Zones, false)
 	sort.SliceStable(out, func(i, j int) bool { return out[i].GainH > out[j].GainH })
+	return out
+}
+
+// leastFollowed is how often a unit must have started upon a room's call.
+const leastFollowed = 10
+
+// limitsOf are the limits a subject shows: outdoors those of the changeover fits,
+// indoors the temperatures at which rooms start the unit.
+func limitsOf(in *Input, sub *changeover.Subject, plant bool) []changeover.Limit {
+	var out []changeover.Limit
+	has := func(l changeover.Limit) bool {
+		return slices.ContainsFunc(out, func(o changeover.Limit) bool { return o.Zone == l.Zone && o.Above == l.Above })
+	}
+	for _, l := range sub.Limits() {
+		if l.Zone < 0 && l.Undetermined == "" && !math.IsNaN(l.LevelC) && !has(l) {
+			out = append(out, l)
+		}
+	}
+	if plant && sub.Index < len(in.Lost.Units) {
+		for _, c := range in.Lost.Units[sub.Index].Calls {
+			if !math.IsNaN(c.AboveC) && (c.Logged || c.Followed >= leastFollowed) {
+				out = append(out, changeover.Limit{Zone: c.Zone, Above: true, LevelC: c.AboveC, LowC: math.NaN(), HighC: math.NaN()})
+			}
+		}
+	}
 	return out
 }
 
@@ -52,10 +79,6 @@ func stepOf(in *Input, sub *changeover.Subject, l changeover.Limit, plant bool) 
 	}
 	st.ID = fmt.Sprintf("%s/%s-%s", sub.ID, where, side)
 	switch {
-	case l.Undetermined != "" || math.IsNaN(l.LevelC):
-		return st, false
-	case l.Zone >= 0 && !l.Above:
-		return st, false // a cold room is heated, whatever the limit
 	case l.Above:
 		st.TrialC = l.LevelC + StepK
 	default:
@@ -85,29 +108,76 @@ func stepOf(in *Input, sub *changeover.Subject, l changeover.Limit, plant bool) 
 	return st, len(st.Zones) > 0
 }
 
-// beyondK is how far a step lies beyond the limit, negative inside it, NaN
-// where unknown or too warm to try.
-func (st *Step) beyondK(in *Input, i int) float64 {
-	if st.Zone < 0 {
-		t := float64(in.Outdoor.TempC[i])
-		if st.Above {
-			return t - st.NowC
+// passed reports whether another limit is passed at a step.
+func (st *Step) passed(in *Input, i int) bool {
+	for _, o := range st.others {
+		t := math.NaN()
+		if o.Zone < 0 {
+			t = float64(in.Outdoor.TempC[i])
+		} else if op := in.Indoor[o.Zone].OperativeC; op != nil {
+			t = float64(op[i])
 		}
-		return st.NowC - t
+		if o.Above && t > o.LevelC || !o.Above && t < o.LevelC {
+			return true
+		}
 	}
+	return false
+}
+
+// reach works out, per step, how far it lies beyond the limit (negative inside
+// it); NaN where unknown, where another limit is passed too, or where the step
+// would be no trial.
+func (st *Step) reach(in *Input) {
+	st.beyondK = make([]float32, in.Grid.N)
+	for i := range st.beyondK {
+		st.beyondK[i] = float32(math.NaN())
+	}
+	if st.Zone >= 0 {
+		st.reachIndoors(in)
+		return
+	}
+	for i := in.Grid.PeriodFrom; i < in.Grid.PeriodTo; i++ {
+		if st.passed(in, i) {
+			continue
+		}
+		if st.beyondK[i] = in.Outdoor.TempC[i] - float32(st.NowC); !st.Above {
+			st.beyondK[i] = -st.beyondK[i]
+		}
+	}
+}
+
+// reachIndoors: a room that calls is cooled at once, so that its temperature
+// says nothing while the plant runs; what counts is a run that its call began,
+// until another limit is passed.
+func (st *Step) reachIndoors(in *Input) {
 	op := in.Indoor[st.Zone].OperativeC
 	if op == nil {
-		return math.NaN()
+		return
 	}
-	t := float64(op[i])
-	if t-st.NowC >= 0 && !(t+indoorMarginK <= float64(in.Exceedance.Zones[st.Zone].Limits.UpperOfDayC[i])) {
-		return math.NaN()
+	state := in.Running.UnitState(in.Site, st.Index)
+	upper := in.Exceedance.Zones[st.Zone].Limits.UpperOfDayC
+	mine := false
+	for i := max(1, in.Grid.PeriodFrom); i < in.Grid.PeriodTo; i++ {
+		on := state[i] != uint8(site.PlantOff) && state[i] != running.PlantUnknown
+		k := float64(max(op[i], op[i-1])) - st.NowC
+		switch {
+		case !on:
+			if mine = false; k < 0 && !st.passed(in, i) {
+				st.beyondK[i] = float32(k)
+			}
+			continue
+		case state[i-1] == uint8(site.PlantOff):
+			mine = k >= -callTouchK && state[i] != uint8(site.PlantHeat) && st.TrialC+indoorMarginK <= float64(upper[i])
+		}
+		if mine = mine && !st.passed(in, i); mine {
+			st.beyondK[i] = 0
+		}
 	}
-	return t - st.NowC
 }
 
 // weigh works out what lies beyond the limit and what the step would gain.
 func (st *Step) weigh(in *Input) {
+	st.reach(in)
 	stepH := in.Grid.StepH()
 	width, inside := math.Abs(st.TrialC-st.NowC), float64(insideK)
 	if st.Zone >= 0 {
@@ -115,7 +185,7 @@ func (st *Step) weigh(in *Input) {
 	}
 	var open, wanted, person float64
 	for i := in.Grid.PeriodFrom; i < in.Grid.PeriodTo; i++ {
-		k := st.beyondK(in, i)
+		k := float64(st.beyondK[i])
 		if math.IsNaN(k) || k < -inside {
 			continue
 		}
@@ -139,6 +209,9 @@ func (st *Step) weigh(in *Input) {
 	if wanted > 0 {
 		st.OpenInside = open / wanted
 	}
+	if st.Zone >= 0 {
+		st.OpenInside *= indoorShare
+	}
 	st.GainH, st.GainPersonH = st.StepH*st.OpenInside, person*st.OpenInside
 }
 
@@ -149,7 +222,7 @@ func (st *Step) gains(in *Input) []float64 {
 	width := math.Abs(st.TrialC - st.NowC)
 	for d, day := range in.Calendar.Days {
 		for i := max(day.FromStep, in.Grid.PeriodFrom); i < min(day.ToStep, in.Grid.PeriodTo); i++ {
-			if k := st.beyondK(in, i); !(k >= 0 && k < width) {
+			if k := float64(st.beyondK[i]); !(k >= 0 && k < width) {
 				continue
 			}
 			for _, z := range st.Zones {

@@ -16,6 +16,7 @@ import (
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/hours"
 	"sashlog/analyze/indoor"
+	"sashlog/analyze/lost"
 	"sashlog/analyze/method"
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/running"
@@ -37,6 +38,7 @@ type Input struct {
 	Exceedance *exceedance.Result
 	Record     *hours.Record
 	Changeover *changeover.Result
+	Lost       *lost.Result
 	Design     schedule.Design
 	// From is the earliest first day; zero: the season in which the step gains
 	// most, after the end of the logs.
@@ -59,15 +61,19 @@ type Step struct {
 	// Above: closed above the limit, else below.
 	Above bool
 	// NowC is the limit the building behaves as if it had, with its 95 %
-	// interval; TrialC that of the trial.
+	// interval (NaN for a room's call); TrialC that of the trial.
 	NowC, LowC, HighC, TrialC float64
 	// Zones it would reach; Untouched zones stand beside them.
 	Zones, Untouched []int
 	// BeyondH are the missed zone-hours of suitable weather beyond the limit,
 	// StepH those within the trial's step; OpenInside is the share of the hours
-	// just inside the limit that were open, and GainH what the step would gain at
+	// just inside the limit that were open (half of that for a room's call, which
+	// the room would reach again 1 K later), and GainH what the step would gain at
 	// that share, in the period. GainPersonH NaN where people are not given.
 	BeyondH, StepH, OpenInside, GainH, GainPersonH float64
+	// others are the subject's other limits: hours beyond those do not count.
+	others  []changeover.Limit
+	beyondK []float32
 }
 
 // Power is how likely a trial of so many fortnights ends with a verdict.
@@ -128,6 +134,11 @@ const (
 	insideK = 2
 	// indoorMarginK is how far below the comfort limit an indoor trial stays.
 	indoorMarginK = 0.5
+	// indoorShare is the part of a run begun by a room's call that the step is
+	// taken to gain: the room warms on, and calls 1 K later.
+	indoorShare = 0.5
+	// callTouchK is how near its call a room counts as calling.
+	callTouchK = 0.1
 	// simulations per length, and drawings within each.
 	simulations, drawings = 300, 199
 )
@@ -136,7 +147,7 @@ const (
 var Doc = method.Doc{
 	Title:    "Plan of the next safe trial",
 	Question: "Which setting to try next, on which days, and how long until a verdict?",
-	Formula: "gain of a step = missed hours of suitable weather within 1 K beyond an observed limit × the share of such hours within 2 K inside it that were open (indoor limits: within 1 K); " +
+	Formula: "gain of a step = missed hours of suitable weather within 1 K beyond an observed limit × the share of such hours within 2 K inside it that were open (a room's call: half the missed hours of the plant's runs that begin with it, × that share within 1 K); hours beyond another limit of the same plant do not count; " +
 		"power: fortnights of the logs are drawn with replacement from the season planned for, their days put on trial by the schedule's own rule, each day's own gain added on trial days, and the verdict's test made (300 trials per length, 199 drawings each); " +
 		"planned are the fewest fortnights that show the gain in 80 % of them",
 	Limits: []string{

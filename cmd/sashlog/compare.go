@@ -2,6 +2,7 @@ package main
 
 import (
 	"context"
+	"errors"
 	"fmt"
 	"io"
 	"path/filepath"
@@ -10,33 +11,47 @@ import (
 	"github.com/spf13/cobra"
 
 	"sashlog/analyze/compare"
+	"sashlog/configs"
 	"sashlog/configs/site"
 	"sashlog/report/page"
+	"sashlog/report/privacy"
 	"sashlog/report/table"
 	"sashlog/report/words"
 )
 
 func newCompare(p process) *cobra.Command {
 	var job auditJob
-	var before, after string
+	var before, after, scheduleFile string
 	var untouched []string
 	var spans [2]compare.Span
 	cmd := &cobra.Command{
-		Use:   "compare SITE.yaml --before FROM..TO --after FROM..TO",
+		Use:   "compare SITE.yaml (--before FROM..TO --after FROM..TO | --schedule FILE)",
 		Short: "say whether a change worked: two periods, the weather allowed for",
 		Long: `compare audits two periods of one building and says whether it ran open more of
 the time it could have, whether people were more or less comfortable on one
 criterion, and whether the air was fresher, on days of like weather. Zones the
 change did not reach, named with --untouched, show what happened anyway.
 
+With --schedule it gives the verdict of a trial that "sashlog trial" planned, by
+drawing its days again: what was run as scheduled, what was not, and whether
+the difference is more than the drawing alone gives.
+
 It writes comparison.html and comparison.json, and says when the periods are
 too short or their weather too unlike for an answer.`,
 		Example: `  sashlog compare site.yaml --before 2025-05-01..2025-06-30 --after 2026-05-01..2026-06-30
-  sashlog compare site.yaml --before 2025-05-01..2025-06-30 --after 2025-07-01..2025-08-31 --untouched L2.01,L2.02`,
+  sashlog compare site.yaml --before 2025-05-01..2025-06-30 --after 2025-07-01..2025-08-31 --untouched L2.01,L2.02
+  sashlog compare site.yaml --schedule sashlog-trial/schedule.csv`,
 		Args: oneSite,
 		RunE: func(c *cobra.Command, args []string) error {
 			job.siteFile = args[0]
 			job.quiet, _ = c.Flags().GetBool("quiet")
+			if c.Flags().Changed("schedule") {
+				if before != "" || after != "" || len(untouched) > 0 {
+					return fail(exitUsage, errors.New("--schedule says which days and zones are compared; hint: leave --before, --after and --untouched out"))
+				}
+				job.command = "sashlog compare " + filepath.Base(job.siteFile) + " --schedule " + filepath.Base(scheduleFile)
+				return job.verdict(c.Context(), p, scheduleFile)
+			}
 			var err error
 			for k, text := range []string{before, after} {
 				if spans[k], err = spanFlag([]string{"--before", "--after"}[k], text); err != nil {
@@ -61,6 +76,7 @@ too short or their weather too unlike for an answer.`,
 	cmd.Flags().StringVar(&before, "before", "", "days before the change, as 2025-05-01..2025-06-30, both included")
 	cmd.Flags().StringVar(&after, "after", "", "days after the change")
 	cmd.Flags().StringSliceVar(&untouched, "untouched", nil, "zones the change did not reach, parted by commas")
+	cmd.Flags().StringVar(&scheduleFile, "schedule", "", "schedule.csv of a trial: its verdict, in place of two periods")
 	return cmd
 }
 
@@ -117,6 +133,46 @@ func (job auditJob) compare(ctx context.Context, p process, spans [2]compare.Spa
 	fmt.Fprintln(p.stdout, path)
 	if !job.quiet {
 		for _, line := range words.Compared(r) {
+			fmt.Fprintln(p.stderr, printable(line))
+		}
+	}
+	return a.tolerated()
+}
+
+// verdict audits the days of a trial's schedule and says what it showed.
+func (job auditJob) verdict(ctx context.Context, p process, file string) error {
+	s, err := configs.ReadSchedule(file)
+	if err != nil {
+		return fail(exitUsage, err)
+	}
+	job.from, job.to = s.Days[0].Date, s.Days[len(s.Days)-1].Date
+	a, err := job.analyse(ctx, p)
+	if err != nil {
+		return err
+	}
+	rule := privacy.For(a.site)
+	var zones [2][]int
+	for k, ids := range [][]string{s.Zones, s.Untouched} {
+		if zones[k], err = zonesNamed(a.site, ids, rule.ID); err != nil {
+			return fail(exitUsage, err)
+		}
+	}
+	res := a.results
+	r := compare.Trial(compare.Input{Site: a.site, Criteria: a.criteria, Grid: a.grid, Calendar: res.Calendar, Outdoor: res.Outdoor, Indoor: res.Indoor,
+		Running: res.Running, Exceedance: res.Exceedance, Record: res.Hours, Seed: s.Seed}, s, zones[0], zones[1])
+	if job.into == "" {
+		job.into = filepath.Join(filepath.Dir(job.siteFile), "sashlog-comparison")
+	}
+	path, err := writeOutputs(ctx, job.into, "comparison.html", []output{
+		{"comparison.json", func(w io.Writer) error { return table.WriteTrialVerdictJSON(w, a.tables(), r) }},
+		{"comparison.html", func(w io.Writer) error { return page.WriteTrialVerdict(w, a.pages(), r) }},
+	})
+	if err != nil {
+		return err
+	}
+	fmt.Fprintln(p.stdout, path)
+	if !job.quiet {
+		for _, line := range words.Tried(r) {
 			fmt.Fprintln(p.stderr, printable(line))
 		}
 	}

@@ -48,7 +48,7 @@ Then, for a building of your own: sashlog audit SITE.yaml`,
 	root.SetFlagErrorFunc(func(c *cobra.Command, err error) error {
 		return fail(exitUsage, fmt.Errorf("%w; hint: %s --help shows what it takes", err, c.CommandPath()))
 	})
-	root.AddCommand(newDemo(p), newScan(p), newAudit(p), newCompare(p), newLoad(p), newMethods(p), newManual(p))
+	root.AddCommand(newDemo(p), newScan(p), newAudit(p), newCompare(p), newTrial(p), newLoad(p), newMethods(p), newManual(p))
 	return root
 }
 

@@ -76,7 +76,7 @@ func (job auditJob) trial(ctx context.Context, p process, in trial.Input) error 
 	}
 	res := a.results
 	in.Site, in.Criteria, in.Grid, in.Calendar, in.Outdoor, in.Indoor = a.site, a.criteria, a.grid, res.Calendar, res.Outdoor, res.Indoor
-	in.Running, in.Exceedance, in.Record, in.Changeover = res.Running, res.Exceedance, res.Hours, res.Changeover
+	in.Running, in.Exceedance, in.Record, in.Changeover, in.Lost = res.Running, res.Exceedance, res.Hours, res.Changeover, res.Lost
 	plan := trial.Next(in)
 	if in.Step != "" && plan.Chosen < 0 && len(plan.Steps) > 0 {
 		return fail(exitUsage, fmt.Errorf("--step: %s", plan.Unusable))
