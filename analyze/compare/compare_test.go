@@ -1,8 +1,9 @@
 package compare
 
 import (
-	"flag"
 	"math"
+	"math/rand/v2"
+	"os"
 	"runtime"
 	"sync"
 	"sync/atomic"
@@ -24,13 +25,29 @@ import (
 	"sashlog/ingest/grid"
 )
 
-var seeds = flag.Int("seeds", 60, "demo buildings in the comparison of a period with a like one")
+// long runs the large tables: SASHLOG_LONG=1.
+var long = os.Getenv("SASHLOG_LONG") != ""
+
+// size is how many are tried: few by default, many for the large tables.
+func size(few, many int) int {
+	if long {
+		return many
+	}
+	return few
+}
 
 func date(m, d int) site.Date { return site.Date{Year: 2025, Month: time.Month(m), Day: d} }
 
 // audited judges the truth of a small demo building as if it were logged
 // without a fault, and compares two spans.
 func audited(t testing.TB, o demo.Options, before, after Span, untouched []int) *Result {
+	in := judged(t, o)
+	in.Before, in.After, in.Untouched = before, after, untouched
+	return Periods(in)
+}
+
+// judged is the demo building with every step judged.
+func judged(t testing.TB, o demo.Options) Input {
 	t.Helper()
 	tr, err := demo.Simulate(o)
 	if err != nil {
@@ -87,7 +104,7 @@ func audited(t testing.TB, o demo.Options, before, after Span, untouched []int) 
 	}
 	cal := calendar.Of(g)
 	list, hourOf := hours.Clock(g, cal)
-	in := Input{Site: s, Criteria: c, Grid: g, Calendar: cal, Before: before, After: after, Untouched: untouched, Seed: o.Seed}
+	in := Input{Site: s, Criteria: c, Grid: g, Calendar: cal, Seed: o.Seed}
 	in.Outdoor = outdoor.Measure(s, c, g, cal)
 	in.Indoor = indoor.Combine(s, c, g)
 	in.Running = running.Judge(s, c, g, cal, in.Indoor)
@@ -97,7 +114,7 @@ func audited(t testing.TB, o demo.Options, before, after Span, untouched []int) 
 	pot := potential.Judge(s, c, g, cal, in.Outdoor, in.Running, in.Exceedance)
 	in.Record = hours.Make(hours.Input{Site: s, Criteria: c, Grid: g, Outdoor: in.Outdoor, Indoor: in.Indoor, Running: in.Running,
 		Exceedance: in.Exceedance, Potential: pot, Calendar: cal, Hours: list})
-	return Periods(in)
+	return in
 }
 
 // each runs many demo buildings on all cores.
@@ -132,10 +149,7 @@ func small(seed uint64) demo.Options {
 // Nothing was changed: a difference may be called one in at most one of twenty
 // buildings. The table shows the rate with its own 95 % interval.
 func TestNothingChanged(t *testing.T) {
-	n := *seeds
-	if testing.Short() {
-		n = 10
-	}
+	n := size(1, 400)
 	var mu sync.Mutex
 	var called, answered, second [NumMeasures]int
 	each(n, func(seed uint64) {
@@ -156,6 +170,9 @@ func TestNothingChanged(t *testing.T) {
 		}
 	})
 	for m := range called {
+		if n < 10 {
+			continue // too few for a rate; see TestNothingChangedDaysDrawnAnew
+		}
 		if answered[m] < n*7/10 {
 			t.Errorf("%v: only %d of %d buildings could be compared", Measure(m), answered[m], n)
 			continue
@@ -169,14 +186,69 @@ func TestNothingChanged(t *testing.T) {
 	}
 }
 
+// The same at the price of two buildings: their days are drawn anew, in runs of
+// a week, into two periods of eight weeks each, so that nothing but chance tells
+// the periods apart.
+func TestNothingChangedDaysDrawnAnew(t *testing.T) {
+	n := size(50, 400)
+	var called, answered [NumMeasures]int
+	var mu sync.Mutex
+	const buildings = 2
+	var pools [buildings][]day
+	each(buildings, func(seed uint64) {
+		in := judged(t, demo.Options{Seed: 100 + seed, From: date(5, 20), Days: 75, Zones: 3})
+		in.Before = firstYear
+		outside, _ := outsideHours(&in)
+		pools[seed-1] = daysOf(&in, [2][]int{{0, 1}, nil}, outside)
+	})
+	each(n, func(seed uint64) {
+		rng := rand.New(rand.NewPCG(seed, 9))
+		pool := pools[seed%buildings]
+		var days []day
+		for k := range 2 {
+			for range 8 {
+				at := rng.IntN(len(pool))
+				for d := range 5 {
+					x := pool[(at+d)%len(pool)]
+					x.after = k == 1
+					days = append(days, x)
+				}
+			}
+		}
+		m := matched(days)
+		if m.BeforeShare < LeastMatched || m.AfterShare < LeastMatched {
+			return
+		}
+		var r Result
+		for k := range r.Outcomes {
+			r.Outcomes[k].Measure = Measure(k)
+		}
+		r.estimate(days, false, seed)
+		mu.Lock()
+		defer mu.Unlock()
+		for m := range r.Outcomes {
+			if o := &r.Outcomes[m]; o.Unusable == "" {
+				answered[m]++
+				if o.Verdict == Better || o.Verdict == Worse {
+					called[m]++
+				}
+			}
+		}
+	})
+	for m := range called {
+		share := float64(called[m]) / float64(answered[m])
+		t.Logf("%-15v %4d compared, %5.1f %% (±%.1f) wrongly called different", Measure(m), answered[m], 100*share, 100*binomial95(share, answered[m]))
+		if answered[m] < n/2 || share-binomial95(share, answered[m]) > 0.05 {
+			t.Errorf("%v: %d of %d compared, %.1f %% called different, more than 5 %%", Measure(m), answered[m], n, 100*share)
+		}
+	}
+}
+
 // Wider changeover limits, no start by the clock and a conference room that no
 // longer calls for everybody open the building more often: nearly every
 // building shows it, none the contrary.
 func TestPlantedImprovement(t *testing.T) {
-	n := 16
-	if testing.Short() {
-		n = 4
-	}
+	n := size(2, 60)
 	var mu sync.Mutex
 	better, worse, compared := 0, 0, 0
 	gain := 0.0
@@ -244,7 +316,7 @@ func TestWeatherIsAllowedFor(t *testing.T) {
 	var days []*day
 	add := func(n int, after bool, tempC, share float64) {
 		for range n {
-			d := &day{after: after, tempC: tempC}
+			d := &day{after: after, alike: true, tempC: tempC}
 			d.of[0][AchievedShare] = ratio{10 * share, 10}
 			days = append(days, d)
 		}
@@ -253,8 +325,7 @@ func TestWeatherIsAllowedFor(t *testing.T) {
 	add(12, false, 21, 0.8)
 	add(12, true, 15, 0.5)
 	add(4, true, 21, 0.8)
-	bins := map[int]bool{7: true, 10: true}
-	before, after := weigh(days, bins, 0, AchievedShare)
+	before, after := weigh(days, 0, AchievedShare)
 	if math.Abs(before-after) > 1e-12 || math.Abs(after-0.575) > 1e-12 {
 		t.Errorf("weighted %g and %g, want 0.575 twice", before, after)
 	}

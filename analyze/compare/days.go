@@ -18,6 +18,7 @@ type ratio struct{ part, whole float64 }
 type day struct {
 	date    site.Date
 	after   bool
+	alike   bool    // has enough counterparts of like weather
 	tempC   float64 // mean outdoor temperature of occupied hours
 	suitedH float64
 	of      [2][NumMeasures]ratio // compared, untouched

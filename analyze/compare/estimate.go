@@ -28,7 +28,7 @@ func Periods(in Input) *Result {
 	outside, words := outsideHours(&in)
 	r.Criterion = words
 	days := daysOf(&in, group, outside)
-	bins, m := matched(days)
+	m := matched(days)
 	r.Matched = m
 	switch {
 	case len(group[0]) == 0:
@@ -45,18 +45,18 @@ func Periods(in Input) *Result {
 	if r.Unusable != "" {
 		return r
 	}
-	r.estimate(days, bins, len(group[1]) > 0, in.Seed)
+	r.estimate(days, len(group[1]) > 0, in.Seed)
 	return r
 }
 
 // differences are what one resample says of one measure.
 type differences struct{ main, untouched, second float64 }
 
-func differencesOf(days []*day, bins map[int]bool, m Measure, controls bool) differences {
-	before, after := weigh(days, bins, 0, m)
+func differencesOf(days []*day, m Measure, controls bool) differences {
+	before, after := weigh(days, 0, m)
 	d := differences{main: after - before, second: regress(days, 0, m)}
 	if controls {
-		b, a := weigh(days, bins, 1, m)
+		b, a := weigh(days, 1, m)
 		d.untouched = a - b
 		d.main -= d.untouched
 		d.second -= regress(days, 1, m)
@@ -64,7 +64,7 @@ func differencesOf(days []*day, bins map[int]bool, m Measure, controls bool) dif
 	return d
 }
 
-func (r *Result) estimate(days []day, bins map[int]bool, controls bool, seed uint64) {
+func (r *Result) estimate(days []day, controls bool, seed uint64) {
 	var periods [2][]*day
 	var all []*day
 	for i := range days {
@@ -83,7 +83,7 @@ func (r *Result) estimate(days []day, bins map[int]bool, controls bool, seed uin
 			draw = append(draw, blocks(rng, p)...)
 		}
 		for m := range resampled {
-			d := differencesOf(draw, bins, Measure(m), controls)
+			d := differencesOf(draw, Measure(m), controls)
 			for k, v := range [...]float64{d.main, d.untouched, d.second} {
 				if !math.IsNaN(v) {
 					resampled[m][k] = append(resampled[m][k], v)
@@ -99,8 +99,8 @@ func (r *Result) estimate(days []day, bins map[int]bool, controls bool, seed uin
 	for m := range r.Outcomes {
 		o := &r.Outcomes[m]
 		o.Before, o.After = plain(all, false, 0, Measure(m)), plain(all, true, 0, Measure(m))
-		o.BeforeAdjusted, o.AfterMatched = weigh(all, bins, 0, Measure(m))
-		d := differencesOf(all, bins, Measure(m), controls)
+		o.BeforeAdjusted, o.AfterMatched = weigh(all, 0, Measure(m))
+		d := differencesOf(all, Measure(m), controls)
 		o.Difference = interval(d.main, resampled[m][0], widen)
 		if controls {
 			o.Untouched = interval(d.untouched, resampled[m][1], widen)

@@ -10,7 +10,7 @@ import (
 func (d *day) bin() int { return int(math.Floor(d.tempC / BinK)) }
 
 // matched marks the days that have enough counterparts.
-func matched(days []day) (bins map[int]bool, m Matched) {
+func matched(days []day) (m Matched) {
 	counts := map[int][2]int{}
 	for i := range days {
 		c := counts[days[i].bin()]
@@ -20,10 +20,6 @@ func matched(days []day) (bins map[int]bool, m Matched) {
 		}
 		c[k]++
 		counts[days[i].bin()] = c
-	}
-	bins = map[int]bool{}
-	for b, c := range counts {
-		bins[b] = c[0] >= LeastInBin && c[1] >= LeastInBin
 	}
 	var used [2]int
 	for i := range days {
@@ -35,7 +31,8 @@ func matched(days []day) (bins map[int]bool, m Matched) {
 			m.BeforeDays++
 			m.BeforeMeanC += d.tempC
 		}
-		if bins[d.bin()] {
+		c := counts[d.bin()]
+		if d.alike = c[0] >= LeastInBin && c[1] >= LeastInBin; d.alike {
 			if d.after {
 				used[1]++
 			} else {
@@ -46,29 +43,25 @@ func matched(days []day) (bins map[int]bool, m Matched) {
 	m.BeforeMeanC /= float64(m.BeforeDays)
 	m.AfterMeanC /= float64(m.AfterDays)
 	m.BeforeShare, m.AfterShare = float64(used[0])/float64(m.BeforeDays), float64(used[1])/float64(m.AfterDays)
-	return bins, m
+	return m
 }
 
 // weigh compares days of like weather: the ratio of the later days and that of
 // the earlier ones weighted to the later ones' classes.
-func weigh(days []*day, bins map[int]bool, g int, m Measure) (before, after float64) {
+func weigh(days []*day, g int, m Measure) (before, after float64) {
 	type cell struct {
 		sum [2]ratio
 		n   [2]float64
 	}
-	cells := map[int]*cell{}
-	var order []int
+	// Called for every resample: no map. Classes of 2 K from -64 to 64 °C.
+	const classes = 64
+	var cells [classes]cell
 	for _, d := range days {
-		b := d.bin()
-		if !bins[b] {
+		b := d.bin() + classes/2
+		if !d.alike || b < 0 || b >= classes {
 			continue
 		}
-		c := cells[b]
-		if c == nil {
-			c = &cell{}
-			cells[b] = c
-			order = append(order, b)
-		}
+		c := &cells[b]
 		k := 0
 		if d.after {
 			k = 1
@@ -78,8 +71,8 @@ func weigh(days []*day, bins map[int]bool, g int, m Measure) (before, after floa
 		c.sum[k].whole += d.of[g][m].whole
 	}
 	var was, is ratio
-	for _, b := range order {
-		c := cells[b]
+	for b := range cells {
+		c := &cells[b]
 		if c.n[0] == 0 || c.n[1] == 0 {
 			continue // a resample may leave a class empty
 		}
