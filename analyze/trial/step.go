@@ -151,10 +151,10 @@ func (st *Step) reach(in *Input) {
 // until another limit is passed.
 func (st *Step) reachIndoors(in *Input) {
 	op := in.Indoor[st.Zone].OperativeC
-	if op == nil {
+	state := in.Running.UnitState(in.Site, st.Index)
+	if op == nil || len(state) < in.Grid.N {
 		return
 	}
-	state := in.Running.UnitState(in.Site, st.Index)
 	upper := in.Exceedance.Zones[st.Zone].Limits.UpperOfDayC
 	mine := false
 	for i := max(1, in.Grid.PeriodFrom); i < in.Grid.PeriodTo; i++ {
