@@ -76,7 +76,7 @@ func Run(in Input) *Results {
 	r.Answerable = answerable.Ask(s, g)
 	r.Findings = advice.Advise(advice.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
 		Exceedance: r.Exceedance, Potential: r.Potential, Record: r.Hours, Summary: r.Summary, FreshAir: r.FreshAir,
-		Lost: r.Lost, AfterHours: r.AfterHours})
+		Lost: r.Lost, AfterHours: r.AfterHours, Changeover: r.Changeover, Leaders: r.Leaders})
 	return r
 }
 

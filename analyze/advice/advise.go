@@ -6,10 +6,12 @@ import (
 
 	"sashlog/analyze/afterhours"
 	"sashlog/analyze/calendar"
+	"sashlog/analyze/changeover"
 	"sashlog/analyze/exceedance"
 	"sashlog/analyze/freshair"
 	"sashlog/analyze/hours"
 	"sashlog/analyze/indoor"
+	"sashlog/analyze/leaders"
 	"sashlog/analyze/lost"
 	"sashlog/analyze/outdoor"
 	"sashlog/analyze/potential"
@@ -34,6 +36,9 @@ type Input struct {
 	FreshAir   *freshair.Result
 	Lost       *lost.Result
 	AfterHours *afterhours.Result
+	// Changeover and Leaders add dates of change and what-ifs; nil when not known.
+	Changeover *changeover.Result
+	Leaders    *leaders.Result
 }
 
 // mostFindings is how many findings are listed, mostAlike how many of one kind
@@ -75,7 +80,7 @@ func Advise(in Input) []Finding {
 	a.days = a.dayTable()
 	var all []found
 	for _, look := range []func() []found{a.fewRooms, a.clockStarts, a.outdoorLimits, a.indoorLimits, a.slowReopening, a.neverUsed, a.notOpened,
-		a.overridden, a.lockedOut, a.misledThermostats, a.cycling,
+		a.overridden, a.lockedOut, a.misledThermostats, a.cycling, a.tightened,
 		a.clashes, a.staleAir, a.warmZones, a.overnightPlant, a.unusedPurge, a.unknownHours} {
 		for _, f := range look() {
 			if f.Hours >= leastH {

@@ -49,6 +49,9 @@ func (a *adviser) fewRooms() []found {
 			UndoIf:  fmt.Sprintf("zone %s stays above its comfort limit for more than 3 %% of occupied hours", room),
 			Caution: "Heat in a core room can be a matter of health or of equipment: watch the room while the setting is tried. " + plantCaution,
 		}}
+		if l := a.leaderOf(led); l != nil {
+			f.DoNext += ". " + instead(room, l)
+		}
 		s.fill(a, &f.Finding)
 		f.Evidence = Evidence{Points: a.points([]int{led}, site.ThermostatTemp, site.AirTemp, site.OperativeTemp, site.SetpointCool, site.PlantStatus),
 			Figure: FigureEpisodes}
