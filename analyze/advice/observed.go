@@ -39,7 +39,8 @@ func instead(room string, l *leaders.Leader) string {
 		return fmt.Sprintf("%s up to %s zone-hours freed in the other rooms, %s more too warm in zone %s", from, whole(i.FreedH), own, room)
 	}
 	return fmt.Sprintf("On the %s it led in the logs: ", count(l.Starts, "run", "runs")) + one(&l.Ignored, "with its call left out") + "; " +
-		one(&l.Moved, "with the mean of the other rooms in its place") + "; " + one(&l.TwoCalls, "with two calls needed")
+		one(&l.Moved, "with the mean of the other rooms in its place") + "; " + one(&l.TwoCalls, "with two calls needed") +
+		". In the rest of those runs other rooms, the weather or the clock asked for the plant as well; the room's own hours assume that it goes on warming as it did before such starts, by 2 K at most"
 }
 
 // tightened finds settings that became tighter within the period: dates at which

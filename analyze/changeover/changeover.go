@@ -9,7 +9,7 @@ type Limit struct {
 	Zone int
 	// Above: it is closed above the level, else below.
 	Above bool
-	// LevelC with its 95 % interval. BlurK is how blurred the edge is: from 12 %
+	// LevelC with its 95 % interval, NaN where it explains too little. BlurK is how blurred the edge is: from 12 %
 	// to 88 % closed lie 4·BlurK.
 	LevelC, LowC, HighC, BlurK float64
 	// Changes the limit explains, of All seen.

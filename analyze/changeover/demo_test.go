@@ -57,7 +57,7 @@ func TestDemoBuilding(t *testing.T) {
 	if testing.Short() {
 		t.Skip("audits whole years; left out of -short")
 	}
-	seeds := 2
+	seeds := 1
 	if os.Getenv("SASHLOG_LONG") != "" {
 		seeds = 6
 	}
@@ -181,7 +181,7 @@ func TestDemoBuilding(t *testing.T) {
 		}
 	}
 	t.Logf("both core rooms that call are listed in %d of %d, the room that truly took most is first or second in %d; false changes of behaviour: %d", core, seeds, first, shifts)
-	if core < seeds-1 || first < seeds-1 {
+	if core < max(1, seeds-1) || first < max(1, seeds-1) {
 		t.Errorf("core rooms listed in %d, worst room first or second in %d of %d", core, first, seeds)
 	}
 	if shifts > 1 {

@@ -201,6 +201,10 @@ func (m *model) limit(rows *moments, s0 *subject, j int, opening bool, rng *rand
 			l.HeldOff += rows.weight[i] * q * p / math.Max(least, 1-p)
 		}
 	}
+	if l.Changes < changesMin && l.HeldOff < heldOffMin { // never used: not worth a surface
+		l.LowC, l.HighC, l.Undetermined = math.NaN(), math.NaN(), "explains fewer than six changes"
+		return &fitted{l, nil}
+	}
 	s := m.surfaceOf(rows, reasons, j)
 	l.LowC, l.HighC = s.interval(0, len(s.days), rng)
 	lo, hi := math.Inf(1), math.Inf(-1)
@@ -210,8 +214,6 @@ func (m *model) limit(rows *moments, s0 *subject, j int, opening bool, rng *rand
 		}
 	}
 	switch {
-	case l.Changes < changesMin && l.HeldOff < heldOffMin:
-		l.Undetermined = "explains fewer than six changes"
 	case !(e.levelC >= lo-beyondK && e.levelC <= hi+beyondK):
 		l.Undetermined = "lies beyond the temperatures seen"
 	case !(l.HighC-l.LowC <= widestK):
