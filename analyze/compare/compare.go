@@ -6,7 +6,8 @@
 //     weighted to the later one's weather, and a regression gives a second opinion
 //  3. estimate.go: the differences, those of untouched zones taken off, with
 //     intervals from resampled blocks of days
-//  4. verdict.go: a plain answer, or why there is none
+//     and a plain answer, or why there is none
+//  4. scheduled.go: the verdict of a trial, by drawing its days again
 package compare
 
 import (
@@ -164,6 +165,7 @@ var Doc = method.Doc{
 		"at least 15 occupied days in each period, half of them with a counterpart of like weather",
 		"comfort is held to one criterion that does not depend on the running state: the Indian mixed-mode model within its range, else a fixed 20 to 26 °C (our assumption)",
 		"what else changed with the setting cannot be told apart without untouched zones",
+		"the second opinion is a regression; no thermal model of the zones is consulted",
 	},
 	Sources: []string{
 		method.Memory("Künsch 1989, Annals of Statistics 17:1217, and Politis & Romano 1992, blocks resampled in a circle"),

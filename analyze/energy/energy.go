@@ -82,6 +82,7 @@ var Doc = method.Doc{
 	Limits: []string{
 		"what the unit would have used anyway (standby, other zones) is in the bounds, not taken off",
 		"opening later or longer changes the heat stored in the building; that is not counted",
+		"hours a unit ran with its power unknown are counted and shown, and in none of the sums",
 		"shares of rated power and the yield of cooling are our assumptions",
 	},
 	Sources:  []string{"arithmetic on the logs; factors are our assumption"},
