@@ -137,7 +137,7 @@ func powerOf(in *Input, u int, out *Unit) func(i int, state uint8) (Range, bool)
 		out.Source = metered
 		return func(i int, _ uint8) (Range, bool) {
 			v := float64(list[i])
-			return Range{v, v, v}, !math.IsNaN(v)
+			return Range{v, v - meterError*math.Abs(v), v + meterError*math.Abs(v)}, !math.IsNaN(v)
 		}
 	}
 	if list := column(in, u, site.CoolingPower); list != nil {

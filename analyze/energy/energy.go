@@ -73,18 +73,22 @@ var (
 // and split units give 2.5 to 5 kWh of cooling per kWh.
 var seasonalCOP = Range{3.5, 2.5, 5}
 
+// meterError is how far metered electricity may be off, as a share: class 2 of
+// IEC 62053-21, 2 %, from memory.
+const meterError = 0.02
+
 // Doc documents the package.
 var Doc = method.Doc{
 	Title:    "Energy of hours that could have been open",
 	Question: "What did the plant use in missed hours and with windows open beside it, and what does that cost?",
 	Formula: "sum over steps of power × share of the unit's occupied zones that could have been open; low: only steps in which all of them could, high: steps in which any could. " +
-		"Power: metered electricity; else metered cooling / 3.5 (2.5 to 5); else rated power × 0.5 (0.15 to 1) while heating or cooling and × 0.25 (0.05 to 0.5) while moving air only",
+		"Power: metered electricity ± 2 %; else metered cooling / 3.5 (2.5 to 5); else rated power × 0.5 (0.15 to 1) while heating or cooling and × 0.25 (0.05 to 0.5) while moving air only",
 	Limits: []string{
 		"what the unit would have used anyway (standby, other zones) is in the bounds, not taken off",
 		"opening later or longer changes the heat stored in the building; that is not counted",
 		"hours a unit ran with its power unknown are counted and shown, and in none of the sums",
 		"shares of rated power and the yield of cooling are our assumptions",
 	},
-	Sources:  []string{"arithmetic on the logs; factors are our assumption"},
+	Sources:  []string{"arithmetic on the logs; factors are our assumption", method.Memory("2 % of metered electricity: IEC 62053-21, class 2")},
 	Standing: method.OurAssumption,
 }

@@ -46,7 +46,7 @@ func (b *builder) cost() []block {
 		t.Rows = append(t.Rows, row(b.w.Foreign(u.ID), u.Source, words.HoursNumber(u.RunH*k), words.HoursNumber(u.KnownH*k), number(u.Used), number(u.MissedConditioned), number(u.MissedVentilated), number(u.Clash)))
 	}
 	t.Foot = []string{"Figures " + b.span.Words + ". A unit's energy is shared by its occupied zones; the least counts only hours in which all of them could have been open, the most every hour in which any could. " +
-		"Rated: without a meter a unit is taken to use half its rated power while heating or cooling (15 to 100 %) and a quarter while moving air (5 to 50 %), our assumption; metered cooling gives electricity divided by 3.5 (2.5 to 5)."}
+		"Metered: ± 2 %, the error a class 2 meter may have (IEC 62053-21, from memory). Rated: without a meter a unit is taken to use half its rated power while heating or cooling (15 to 100 %) and a quarter while moving air (5 to 50 %), our assumption; metered cooling gives electricity divided by 3.5 (2.5 to 5)."}
 	return append(out, b.table(t))
 }
 
