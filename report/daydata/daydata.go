@@ -126,7 +126,7 @@ func Make(in Input) (*Data, error) {
 func (p *packer) hopeless() bool {
 	var open []int
 	for z := range p.in.Site.Zones {
-		if !p.protected(z) {
+		if !p.in.Rule.Protected(z) {
 			open = append(open, z)
 		}
 	}
@@ -216,7 +216,7 @@ func (p *packer) pack() *Data {
 	cores.Each(len(d.Zones), func(z int) {
 		zone := &d.Zones[z]
 		zone.Label = p.in.Label(z)
-		if p.protected(z) {
+		if p.in.Rule.Protected(z) {
 			zone.Protected, zone.Weekly = true, p.in.Rule.ByWeek(z)
 			zone.Spans, zone.SpanCount = p.spans(z)
 			left.take(zone.Spans)
@@ -230,20 +230,6 @@ func (p *packer) pack() *Data {
 		return nil
 	}
 	return d
-}
-
-// protected reports whether a zone may not be shown by steps: a room for few
-// people, or one that opens through such a room and so shows its windows.
-func (p *packer) protected(z int) bool {
-	if p.in.Rule.Protected(z) {
-		return true
-	}
-	for _, id := range p.in.Site.Zones[z].Openings.Through {
-		if k := p.in.Site.ZoneIndex(id); k >= 0 && p.in.Rule.Protected(k) {
-			return true
-		}
-	}
-	return false
 }
 
 func unknown() float64 { return math.NaN() }

@@ -81,7 +81,7 @@ func (b *builder) privacySentences() []string {
 		return []string{"Internal report (privacy: internal): rooms for one to three people are shown in full. Do not pass it on."}
 	}
 	if protected > 0 {
-		out = append(out, privacyNote+" "+words.Zones(protected)+" of this kind "+isAre(protected)+" shown without presence, counts and votes, and never finer than by day and week.")
+		out = append(out, privacyNote+" "+words.Zones(protected)+" of this kind, or opening through one, "+isAre(protected)+" shown without presence, counts and votes, and never finer than by day and week.")
 	}
 	if unstated > 0 {
 		out = append(out, "For "+words.Zones(unstated)+" the usual number of people is not given, so this report cannot tell whether "+map[bool]string{true: "it is a room", false: "they are rooms"}[unstated == 1]+" for one to three people; give the numbers before passing it on.")

@@ -65,13 +65,24 @@ func (r Rule) Coded() bool { return r.codes }
 
 // Protected reports whether the zone is a room for one to three people whose
 // times must not be shown: no presence, no counts, no votes, nothing finer
-// than a day. A zone whose usual number is not given is not protected;
+// than a day; or one that opens through such a room and so shows its windows. A
+// zone whose usual number is not given is not protected;
 // Unstated counts those, and outputs say so.
 func (r Rule) Protected(zone int) bool {
 	if r.internal || zone < 0 || zone >= len(r.zones) {
 		return false
 	}
-	return few(r.zones[zone].People)
+	if few(r.zones[zone].People) {
+		return true
+	}
+	for _, id := range r.zones[zone].Openings.Through {
+		for i := range r.zones {
+			if r.zones[i].ID == id && few(r.zones[i].People) {
+				return true
+			}
+		}
+	}
+	return false
 }
 
 // ByWeek reports whether a protected zone is told by week: its occupied hours

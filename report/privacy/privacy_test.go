@@ -11,18 +11,19 @@ import (
 func sample(p site.Privacy) *site.Site {
 	return &site.Site{Privacy: p, Zones: []site.Zone{
 		{ID: "L1.02", Name: "Room East", People: 2}, {ID: "L1.02 east", People: 12},
-		{ID: "hall", Name: "Hall", People: math.NaN()}, {ID: "box", People: 1}, {ID: "store", People: 0}}}
+		{ID: "hall", Name: "Hall", People: math.NaN()}, {ID: "box", People: 1}, {ID: "store", People: 0},
+		{ID: "inner", People: 9, Openings: site.Openings{Through: []string{"box"}}}, {ID: "inner 2", People: 9, Openings: site.Openings{Through: []string{"L1.02 east"}}}}}
 }
 
 func TestProtected(t *testing.T) {
 	r := privacy.For(sample(site.Privacy{}))
-	for i, want := range []bool{true, false, false, true, false} {
+	for i, want := range []bool{true, false, false, true, false, true, false} {
 		if got := r.Protected(i); got != want {
 			t.Errorf("zone %d: protected %v, want %v", i, got, want)
 		}
 	}
-	if p, u := r.Count(); p != 2 || u != 1 {
-		t.Errorf("count: %d protected and %d unstated, want 2 and 1", p, u)
+	if p, u := r.Count(); p != 3 || u != 1 {
+		t.Errorf("count: %d protected and %d unstated, want 3 and 1", p, u)
 	}
 	if !r.ProtectedTogether([]int{0, 3}) || r.ProtectedTogether([]int{0, 1}) || r.ProtectedTogether([]int{0, 2}) {
 		t.Error("three people together are protected; fourteen, or an unstated number, are not")
