@@ -23,7 +23,7 @@ func (b *builder) changeover() section {
 		"Where they differ from what is set, something else acts: another programme, a sensor, a habit."))
 	s.Blocks = append(s.Blocks, b.changed(c)...)
 	if len(c.Units) > 0 {
-		s.Blocks = append(s.Blocks, b.limitTable(c), b.rhythmTable(c))
+		s.Blocks = append(s.Blocks, b.limitTable(c), b.rhythmTable(c), b.seasonTable(c))
 		s.Blocks = append(s.Blocks, b.curves(c)...)
 	}
 	s.Blocks = append(s.Blocks, b.delayTable(c))
@@ -132,6 +132,27 @@ func (b *builder) rhythmTable(c *changeover.Result) block {
 			words.Number(u.Closed.MedianMin, 0), words.Number(u.Closed.ShortMin, 0), fmt.Sprintf("%d of %d", u.Closed.UnderQuarterH, u.Closed.N), week))
 	}
 	t.Foot = []string{"Typical is the median, short the shortest tenth, of spells that both began and ended in occupied time. Many short runs wear plant and windows and annoy people: the dead band or the shortest run is then too small. The last column gives the weekdays on which the unit was off least and most, as shares of occupied time."}
+	return b.table(t)
+}
+
+// seasonTable shows in which months the units stayed off.
+func (b *builder) seasonTable(c *changeover.Result) block {
+	t := table{ID: "changeover-season", Caption: "Share of occupied time the plant units were off, by month (%)", Head: []column{col("Unit")}}
+	for _, m := range []string{"Jan", "Feb", "Mar", "Apr", "May", "Jun", "Jul", "Aug", "Sep", "Oct", "Nov", "Dec"} {
+		t.Head = append(t.Head, num(m))
+	}
+	for i := range c.Units {
+		cells := []string{b.w.Foreign(c.Units[i].ID)}
+		for _, v := range c.Units[i].OpenShareMonth {
+			if math.IsNaN(v) {
+				cells = append(cells, words.Dash)
+				continue
+			}
+			cells = append(cells, words.Number(100*v, 0))
+		}
+		t.Rows = append(t.Rows, row(cells...))
+	}
+	t.Foot = []string{"Of the occupied time in which the unit's state is known; " + words.Dash + ": none. Heating counts as running."}
 	return b.table(t)
 }
 
