@@ -103,6 +103,9 @@ func (a *adviser) since(unit, day int, keep func(ep *lost.Episode) bool, at func
 }
 
 func (a *adviser) tighterLimit(u *changeover.Subject, l changeover.Limit) []found {
+	if l.Zone >= 0 && !(a.Site.Zones[l.Zone].People > 3) {
+		return nil // the level of a small room's thermostat tells who is there
+	}
 	series, where := a.Outdoor.TempC, "outdoors"
 	if l.Zone >= 0 {
 		series, where = a.Indoor[l.Zone].OperativeC, "in zone "+a.Site.Zones[l.Zone].ID
