@@ -18,8 +18,9 @@
 //  15. energy: what did the plant use in hours that could have been open?
 //  16. changeover: which limits does the building behave as if it had, and when did they change?
 //  17. leaders: which room's thermostat closes the building?
-//  18. answerable: what can these logs answer at all?
-//  19. advice: what should be done first?
+//  18. zonemodel: how warm would each zone have become with its windows open?
+//  19. answerable: what can these logs answer at all?
+//  20. advice: what should be done first?
 package analyze
 
 import (
@@ -44,6 +45,7 @@ import (
 	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/analyze/votes"
+	"sashlog/analyze/zonemodel"
 	"sashlog/configs/criteria"
 	"sashlog/configs/site"
 	"sashlog/ingest/grid"
@@ -54,6 +56,9 @@ type Input struct {
 	Site     *site.Site
 	Criteria criteria.Settings
 	Grid     *grid.Grid
+	// ZoneModels asks for a thermal model of every zone, which takes several
+	// seconds for a year of a dozen zones.
+	ZoneModels bool
 }
 
 // Results holds every answer; nothing in it is computed again further right.
@@ -76,6 +81,7 @@ type Results struct {
 	LongTerm   *longterm.Result
 	Changeover *changeover.Result
 	Leaders    *leaders.Result
+	ZoneModel  *zonemodel.Result // nil unless asked for
 	Doubt      *doubt.Result
 	Votes      *votes.Result // nil without votes
 	Energy     *energy.Result

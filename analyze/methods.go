@@ -23,13 +23,14 @@ import (
 	"sashlog/analyze/running"
 	"sashlog/analyze/trial"
 	"sashlog/analyze/votes"
+	"sashlog/analyze/zonemodel"
 )
 
 // Methods lists the documentation of every method in use, in the order the
 // analyses run; the report's appendix and the list of methods print from it.
 func Methods() []method.Doc {
 	docs := []method.Doc{outdoor.Doc, running.Doc, potential.Doc, hours.Doc, predicted.Doc, exceedance.Doc, longterm.Doc, freshair.Doc, lost.Doc, afterhours.Doc,
-		doubt.Doc, votes.Doc, energy.Doc, changeover.Doc, leaders.Doc, compare.Doc, trial.Doc, randomisation.Doc}
+		doubt.Doc, votes.Doc, energy.Doc, changeover.Doc, leaders.Doc, zonemodel.Doc, compare.Doc, trial.Doc, randomisation.Doc}
 	docs = append(append(docs, climate.Docs()...), breeze.Docs()...)
 	return append(docs, comfort.Docs()...)
 }

@@ -23,6 +23,7 @@ import (
 	"sashlog/analyze/predicted"
 	"sashlog/analyze/running"
 	"sashlog/analyze/votes"
+	"sashlog/analyze/zonemodel"
 )
 
 // Run answers every question, in the order of the package comment.
@@ -73,6 +74,10 @@ func Run(in Input) *Results {
 		Running: r.Running, Potential: r.Potential, Lost: r.Lost, Seed: 1})
 	r.Leaders = leaders.Find(leaders.Input{Site: s, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
 		Exceedance: r.Exceedance, Record: r.Hours, Lost: r.Lost, Changeover: r.Changeover, Seed: 1})
+	if in.ZoneModels {
+		r.ZoneModel = zonemodel.Learn(zonemodel.Input{Site: s, Criteria: c, Grid: g, Calendar: r.Calendar, Outdoor: r.Outdoor, Indoor: r.Indoor,
+			Running: r.Running, Exceedance: r.Exceedance, Record: r.Hours, Seed: 1})
+	}
 	r.Answerable = answerable.Ask(s, g)
 	r.Findings = advice.Advise(advice.Input{Site: s, Criteria: c, Grid: g, Outdoor: r.Outdoor, Indoor: r.Indoor, Running: r.Running,
 		Exceedance: r.Exceedance, Potential: r.Potential, Record: r.Hours, Summary: r.Summary, FreshAir: r.FreshAir,

@@ -27,6 +27,8 @@ const (
 	// apart.
 	maxCondition = 1e5
 	lags         = 8
+	// leastReadings is a week of quarters of an hour.
+	leastReadings = 672
 )
 
 // Learn fits a model to every zone's logs, tries it on days held out, and says
@@ -65,6 +67,10 @@ func (w *weather) learn(in *Input, z int, sunWm2 []float64) Zone {
 	best, err := choose(learned, dayOf, form{sun: sunWm2 != nil, people: s.hasPeople}, w.windKnown)
 	if err != nil {
 		out.Refused = err.Error()
+		return out
+	}
+	if best.n < leastReadings || best.covariance == nil {
+		out.Refused = fmt.Sprintf("the zone's temperature is known in only %d quarters of an hour to learn from; %d are needed", best.n, leastReadings)
 		return out
 	}
 	out.describe(best, s)
@@ -167,8 +173,10 @@ func choose(s *series, dayOf []int32, f form, wind bool) (*fitted, error) {
 	return best, err
 }
 
-// z90 makes a 90 % interval of a standard deviation.
-const z90 = 1.6448536269514722
+// wide90 makes a 90 % interval of a standard deviation that rests on some days.
+func wide90(days int) float64 {
+	return distuv.StudentsT{Mu: 0, Sigma: 1, Nu: float64(max(1, days-1))}.Quantile(0.95)
+}
 
 func (o *Zone) describe(m *fitted, s *zoneSeries) {
 	o.Constants, o.Opening = 1, "a rate proportional to how far the windows are open"
@@ -186,9 +194,10 @@ func (o *Zone) describe(m *fitted, s *zoneSeries) {
 	}
 	usual := drive{share: sum / n, windMS: windSum / n}
 	o.FastH, o.SlowH = m.rates.constantsH(m.rates.exchangePerH(&usual, 0))
+	wide := wide90(m.days)
 	for k, p := range m.list {
 		sd := math.Sqrt(m.covariance.At(k, k))
-		e := Estimate{m.x[k], m.x[k] - z90*sd, m.x[k] + z90*sd}
+		e := Estimate{m.x[k], m.x[k] - wide*sd, m.x[k] + wide*sd}
 		if priors[p].log {
 			e = Estimate{math.Exp(e.Value), math.Exp(e.Low), math.Exp(e.High)}
 		}

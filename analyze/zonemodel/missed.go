@@ -108,8 +108,10 @@ func (w *weather) expect(in *Input, z int, s *zoneSeries, states []state, m *fit
 		out.UnknownH += at[0]
 	}
 	slices.Sort(totals)
-	out.ComfortableH = Estimate{stat.Mean(totals, nil), stat.Quantile(0.05, stat.LinInterp, totals, nil),
-		stat.Quantile(0.95, stat.LinInterp, totals, nil) + out.OutsideH + out.UnknownH}
+	// A mean may lie beyond the quantiles where few members differ from the rest.
+	mean := stat.Mean(totals, nil)
+	out.ComfortableH = Estimate{mean, math.Min(mean, stat.Quantile(0.05, stat.LinInterp, totals, nil)),
+		math.Max(mean, stat.Quantile(0.95, stat.LinInterp, totals, nil)) + out.OutsideH + out.UnknownH}
 }
 
 // seen is the range of outdoor temperatures with windows open, and how far they

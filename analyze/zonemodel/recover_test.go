@@ -80,7 +80,7 @@ func TestParametersComeBack(t *testing.T) {
 				}
 				truth, sd := p.free(*c.r.at(p)), math.Sqrt(m.covariance.At(k, k))
 				n++
-				if math.Abs(m.x[k]-truth) <= z90*sd {
+				if math.Abs(m.x[k]-truth) <= wide90(m.days)*sd {
 					covered++
 				}
 				if math.Abs(m.x[k]-truth) > 6*sd {

@@ -37,6 +37,7 @@ type auditJob struct {
 	quiet    bool
 	pdf      bool
 	figures  bool
+	models   bool   // fit a thermal model to every zone
 	paper    string // A4 or Letter
 	command  string // as shown in the report
 }
@@ -88,6 +89,7 @@ It ends with 1 when more readings were rejected than the site file tolerates.`,
 	cmd.Flags().StringVar(&from, "from", "", "first local day of the period, as 2025-05-01")
 	cmd.Flags().StringVar(&to, "to", "", "last local day of the period, inclusive")
 	cmd.Flags().BoolVar(&job.pdf, "pdf", false, "also print the report to report.pdf, with a Chromium browser of this machine")
+	cmd.Flags().BoolVar(&job.models, "models", false, "also fit a thermal model to every zone and say how many missed hours it expects to have been comfortable with windows open; takes several seconds more")
 	cmd.Flags().BoolVar(&job.figures, "figures", false, "also write every figure as SVG and its data as CSV, as figure-NN-name.svg and .csv")
 	cmd.Flags().StringVar(&job.paper, "paper", "A4", "paper the report prints to: A4 or Letter")
 	return cmd
@@ -163,7 +165,7 @@ func (job auditJob) analyse(ctx context.Context, p process) (*audited, error) {
 		tellIssues(p, ledger)
 	}
 	a := &audited{site: loaded.Site, criteria: loaded.Criteria, grid: g, ledger: ledger,
-		results: analyze.Run(analyze.Input{Site: loaded.Site, Criteria: loaded.Criteria, Grid: g}),
+		results: analyze.Run(analyze.Input{Site: loaded.Site, Criteria: loaded.Criteria, Grid: g, ZoneModels: job.models}),
 		origin: provenance.Provenance{Version: versionWords(), Generated: p.now().UTC().Format(time.RFC3339), Command: job.command,
 			CriteriaHash: criteria.Hash(loaded.Criteria)}}
 	for _, f := range loaded.Files {

@@ -41,6 +41,7 @@ func (b *builder) lost() section {
 		s.Blocks = append(s.Blocks, text("Windows were open outside limits (the weather did not suit, and for longer than a short airing) for "+b.perDay(sum.IllTimed)+" per working day."))
 	}
 	s.Blocks = append(s.Blocks, b.causes(), b.episodes())
+	s.Blocks = append(s.Blocks, b.missedModel()...)
 	s.Blocks = append(s.Blocks, b.cost()...)
 	s.Blocks = append(s.Blocks, b.strips()...)
 	return s

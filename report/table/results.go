@@ -140,6 +140,9 @@ func (in *Input) zoneList(rule privacy.Rule) []any {
 		}
 		o.set("people_h", plain(people)).set("comfort", in.comfort(z)).set("predicted", in.predicted(z)).set("long_term", in.longTerm(z)).set("sensor_interval", in.zoneDoubt(z)).set("co2", in.co2(z)).set("air_change", in.airChange(z)).set("fresh_air", in.freshAirOf(z)).
 			set("lost_to_h", causes(in.Results.Lost.ByCauseH[z]))
+		if in.Results.ZoneModel != nil {
+			o.set("missed_model", in.missedModel(z))
+		}
 		out = append(out, o)
 	}
 	return out
