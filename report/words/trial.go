@@ -57,7 +57,7 @@ func Planned(in Input, p *trial.Plan) []string {
 	length := fmt.Sprintf("Trials of this length, simulated on the logged days with the gain planted (%s of the possible open hours), showed it in %s of %s; half the gain in %s.",
 		SharePoints(pw.EffectShare), Share(pw.Finds), Count(int64(p.Simulations)), Share(pw.Half))
 	if p.TooShort {
-		length += " The season is too short for a verdict that can be relied on: even the best length finds the gain in fewer than " + Share(trial.LeastPower) + " of trials. Run it for safety's sake, take the verdict as a hint, or go on next season with the same schedule."
+		length += " The season is too short for a verdict that can be relied on: even the best length finds the gain in fewer than " + Share(trial.LeastPower) + " of trials. Take its verdict as a hint only, or begin in a season that gains more."
 	}
 	out = append(out, length)
 	if len(st.Untouched) == 0 {
