@@ -271,6 +271,37 @@ func TestWarmNightAndUnknown(t *testing.T) {
 	}
 }
 
+// Where the outdoor temperature is known but not that of the days before, the
+// finding sends nobody to the outdoor sensor.
+func TestUnknownForWantOfEarlierDays(t *testing.T) {
+	for name, earlier := range map[string]bool{"days before": true, "missing weather": false} {
+		in := quiet()
+		n := days * dayN
+		in.Outdoor.TempC, in.Outdoor.DayOf = make([]float32, n), make([]int32, n)
+		for i := range n {
+			in.Outdoor.DayOf[i] = int32(i / dayN)
+			if !earlier {
+				in.Outdoor.TempC[i] = float32(math.NaN())
+			}
+		}
+		for d := range in.Outdoor.Days {
+			in.Outdoor.Days[d].RunningMeanENC = math.NaN()
+		}
+		in.Summary.Zones[2].H[hours.CUnjudged] = 200
+		for i := range in.Record.Class[2] {
+			if in.Record.Class[2][i] != hours.NotOccupied {
+				in.Record.Class[2][i] = hours.Unjudged
+			}
+		}
+		fs := Advise(in)
+		if len(fs) != 1 || !strings.Contains(fs[0].What, name) || strings.Contains(fs[0].CheckOnSite, "sensors log") == earlier {
+			t.Errorf("%s: %+v", name, fs)
+			continue
+		}
+		filled(t, fs[0])
+	}
+}
+
 func TestRankAndCap(t *testing.T) {
 	in := quiet()
 	lose(&in, 2, lost.NotOpened, 30, 0, -1)      // 60 person-hours

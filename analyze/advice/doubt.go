@@ -2,6 +2,7 @@ package advice
 
 import (
 	"fmt"
+	"math"
 
 	"sashlog/analyze/hours"
 	"sashlog/analyze/running"
@@ -16,12 +17,12 @@ const unknownShare = 0.05
 func (a *adviser) unknownHours() []found {
 	unjudged := func(z int) float64 { return a.Summary.Zones[z].H[hours.CUnjudged] }
 	s := a.sizeOf(unjudged, unjudged, unjudged)
-	occupied, windows, plant, weather := 0.0, 0.0, 0.0, 0.0
+	occupied, windows, plant, weather, earlier := 0.0, 0.0, 0.0, 0.0, 0.0
 	var days [][]float64
 	for z := range a.Site.Zones {
 		occupied += a.Summary.Zones[z].H[hours.COccupied]
-		w, p, o := a.whyUnknown(z)
-		windows, plant, weather = windows+w, plant+p, weather+o
+		w, p, o, e := a.whyUnknown(z)
+		windows, plant, weather, earlier = windows+w, plant+p, weather+o, earlier+e
 	}
 	if occupied == 0 || s.h < unknownShare*occupied {
 		return nil
@@ -35,7 +36,12 @@ func (a *adviser) unknownHours() []found {
 	what, check, do := "a mix of missing readings", "Look through the table of readings for points that fall silent", "Repair the points with the longest gaps first"
 	quantities := []site.Quantity{site.Window, site.WindowOpening, site.PlantStatus, site.OutdoorTemp}
 	switch {
-	case weather >= windows && weather >= plant:
+	case earlier > 0 && earlier >= weather && earlier >= windows && earlier >= plant:
+		what = "missing outdoor temperatures of the days before, which the comfort limits follow"
+		check = "See from which day on the outdoor temperature is logged: limits need the week before, and again a week after a gap of days"
+		do = "Add the outdoor temperature of at least the week before the period, best of 30 days, from the same log or the hourly file of the nearest weather station; fill gaps of days in the same way"
+		quantities = []site.Quantity{site.OutdoorTemp}
+	case weather+earlier > 0 && weather+earlier >= windows && weather+earlier >= plant:
 		what, check = "missing weather", "See whether the outdoor sensors log, and whether the weather file covers the whole period"
 		do = "Fill the gap with the hourly file of the nearest weather station"
 		quantities = []site.Quantity{site.OutdoorTemp, site.OutdoorHumidity, site.Rain, site.WindSpeed}
@@ -69,13 +75,15 @@ func (a *adviser) unknownHours() []found {
 }
 
 // whyUnknown splits a zone's unjudged hours by what is missing first: weather,
-// then windows, then plant.
-func (a *adviser) whyUnknown(z int) (windows, plant, weather float64) {
+// or only that of the days before, then windows, then plant.
+func (a *adviser) whyUnknown(z int) (windows, plant, weather, earlier float64) {
 	run := &a.Running.Zones[z]
 	h := a.Grid.StepH()
 	for i := a.Grid.PeriodFrom; i < a.Grid.PeriodTo; i++ {
 		switch c := a.Record.Class[z][i]; {
 		case c != hours.Unjudged && c != hours.UnjudgedSuited:
+		case run.State[i] != running.Unknown && a.onlyEarlier(i):
+			earlier += h
 		case run.State[i] != running.Unknown:
 			weather += h
 		case run.Plant[i] == running.PlantUnknown:
@@ -84,5 +92,15 @@ func (a *adviser) whyUnknown(z int) (windows, plant, weather float64) {
 			windows += h
 		}
 	}
-	return windows, plant, weather
+	return windows, plant, weather, earlier
+}
+
+// onlyEarlier reports whether the outdoor temperature of a step is known, but
+// not the running mean of the days before.
+func (a *adviser) onlyEarlier(step int) bool {
+	o := a.Outdoor
+	if step >= len(o.TempC) || step >= len(o.DayOf) || math.IsNaN(float64(o.TempC[step])) {
+		return false
+	}
+	return math.IsNaN(o.Days[o.DayOf[step]].RunningMeanENC)
 }

@@ -22,6 +22,16 @@ func TestShareWithUnknownWeather(t *testing.T) {
 
 // A run of openings beside an unknown step may have been longer than an
 // airing.
+func TestMechFreeWithUnknownWeather(t *testing.T) {
+	var x Total
+	x.H[COccupied], x.H[CSuited], x.H[CSuitedPlantOff], x.H[CSuitedPlantUnknown], x.H[CSuitedUnknown] = 100, 10, 6, 1, 20
+	x.bound()
+	// 21 of 30 hours may have gone either way.
+	if r := x.MechFreeShare; math.Abs(r.Value-6.0/9) > 1e-12 || math.Abs(r.Low-6.0/30) > 1e-12 || math.Abs(r.High-27.0/30) > 1e-12 {
+		t.Errorf("%+v", r)
+	}
+}
+
 func TestAiringBesideUnknown(t *testing.T) {
 	g := &grid.Grid{StepS: 300}
 	o, s, u := running.Open, running.Shut, running.Unknown

@@ -96,7 +96,8 @@ func (t *Total) bound() {
 	t.NoOpening = upTo(h[CNoOpening])
 	t.Both = upTo(h[CBoth], h[CUnknown])
 	t.AchievedShare = shareOf(h[CAchieved], h[CMissed], stateUnknown+suitUnknown+vacantOrNot)
-	t.MechFreeShare = shareOf(h[CSuitedPlantOff], h[CSuited]-h[CSuitedPlantOff]-h[CSuitedPlantUnknown], h[CSuitedPlantUnknown])
+	t.MechFreeShare = shareOf(h[CSuitedPlantOff], h[CSuited]-h[CSuitedPlantOff]-h[CSuitedPlantUnknown],
+		h[CSuitedPlantUnknown]+suitUnknown+vacantOrNot)
 	t.JudgedShare = math.NaN()
 	if base := h[COccupied] - h[CNoOpening]; base > 0 {
 		t.JudgedShare = 1 - h[CUnjudged]/base

@@ -78,7 +78,7 @@ func Answer(in Input) string {
 		if known(b.MechFreeShare.Value) {
 			t += "; the plant was off in " + ShareBetween(b.MechFreeShare.Value, b.MechFreeShare.Low, b.MechFreeShare.High) + " of that time"
 		}
-		return t + ". No window contact is logged, so whether windows were open cannot be said."
+		return t + ". No window contact is logged, so whether windows were open cannot be said." + weatherUnknown(in)
 	}
 	t := "On an average working day the weather suited open mode (windows open, mechanical plant off) for " + day(b.Suited) + ". "
 	unknown := b.H[hours.CUnjudgedSuited]
@@ -100,10 +100,17 @@ func Answer(in Input) string {
 	if muchUnknown {
 		t += " For " + Duration(s.PerDay(unknown)) + " of it the windows or the plant are unknown."
 	}
+	return t + weatherUnknown(in)
+}
+
+// weatherUnknown says for how much of the time the weather is not known, where
+// it matters.
+func weatherUnknown(in Input) string {
+	b := in.Results.Summary.Building
 	if w := b.H[hours.CSuitedUnknown]; w > 0.05*b.Occupied.Value {
-		t += " In " + Share(w/b.Occupied.Value) + " of the occupied hours the weather is not known; they count as unsuited here, so the true hours may be more (weather suitable: " + s.PerDayBetween(b.Suited) + ")."
+		return " In " + Share(w/b.Occupied.Value) + " of the occupied hours the weather is not known; they count as unsuited here, so the true hours may be more (weather suitable: " + in.SpanOf().PerDayBetween(b.Suited) + ")."
 	}
-	return t
+	return ""
 }
 
 // figures are the three headline figures, or what stands in for them.
@@ -115,7 +122,11 @@ func figures(in Input) []Figure {
 	unknown := func(label, meaning string) Figure {
 		return Figure{Label: label, Meaning: meaning, PerDay: Dash, PerYear: Dash, Span: s.Words}
 	}
-	suited := figure("Weather suitable", "occupied hours with outdoor air within the limits", b.Suited)
+	offered := b.Suited
+	if offered.Value == 0 && offered.High > 0 { // nothing known to suit is not nothing that suited
+		offered.Value = math.NaN()
+	}
+	suited := figure("Weather suitable", "occupied hours with outdoor air within the limits", offered)
 	if in.CanSay() == NoWeather || in.CanSay() == NoOpenings || in.CanSay() == NoOccupied {
 		suited = unknown(suited.Label, "not known: "+map[CanSay]string{NoWeather: "no measured weather", NoOpenings: "no zone has an opening", NoOccupied: "no occupied time in the period"}[in.CanSay()])
 	}
