@@ -14,6 +14,7 @@ var Doc = method.Doc{
 		"heating with a window open is never open mode",
 		"where only some openings have contacts, \"all shut\" is unknown",
 		"a step with less than half of its time covered by readings is unknown",
+		"a state logged on change holds until the next record, 25 h at most unless the points table says otherwise: within that time a silent logger looks like a state that lasts, which no bound covers",
 	},
 	Sources:  []string{"definitions of this project, in the trade's words"},
 	Standing: method.OurAssumption,
