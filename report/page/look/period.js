@@ -4,7 +4,7 @@
 // occupant. Its values stand in the order of data.total_keys.
 function totalsOf(zone, from, to) {
   const out = data.total_keys.map(() => 0);
-  for (let m = from; m <= to; m++) data.totals[m][zone + 1].forEach((v, k) => { out[k] += v < 0 ? NaN : v / 100; }); // below 0: not known
+  for (let m = from; m <= to; m++) data.totals[m][zone + 1].forEach((v, k) => { out[k] += v < 0 ? Number.NaN : v / 100; }); // below 0: not known
   return out;
 }
 
